@@ -1,0 +1,25 @@
+import { z } from 'zod';
+
+/** UUID version 7 (RFC 9562): made by the client, ordered by time. Ids made by the server are of the same kind. */
+export const id = z.uuid();
+
+/** An instant with its offset (RFC 3339). */
+export const instant = z.iso.datetime({ offset: true });
+/** A calendar day at the place it speaks of. */
+export const day = z.iso.date();
+/** A booking month, `2026-11`. */
+export const month = z.string().regex(/^\d{4}-(0[1-9]|1[0-2])$/);
+
+/** A decimal as a person typed it: no exponent, point as separator, at most 12 digits before and 9 after it. */
+export const decimalText = z.string().regex(/^-?\d{1,12}(\.\d{1,9})?$/);
+
+export const shortText = (max: number) => z.string().trim().min(1).max(max);
+
+/** Keyset pages: `cursor` is opaque and belongs to one sort and filter. */
+export const pageQuery = z.strictObject({
+  cursor: z.string().max(500).optional(),
+  limit: z.coerce.number().int().min(1).max(200).default(50),
+});
+
+export const pageOf = <T extends z.ZodType>(item: T) =>
+  z.strictObject({ items: z.array(item), nextCursor: z.string().nullable() });
