@@ -1,0 +1,4 @@
+import server from './server.es.json';
+
+/** Every Spanish sentence by its key; the same keys as in English. */
+export const catalogueEs: Readonly<Record<string, string>> = { ...server };
