@@ -127,8 +127,7 @@ async function startOnSomePort(options: {
   for (let attempt = 1; ; attempt++) {
     const offset = keepLogSmall(logFile);
     const configuration = { ...durable, port };
-    const how = { stopSignal: 'INT', removeFolder: null } as const;
-    const server = spawnPostgres({ programs, dataFolder: data, user, logFile, configuration, ...how });
+    const server = spawnPostgres({ programs, dataFolder: data, user, logFile, configuration, removeFolder: null });
     const onSlow = () => say('PostgreSQL is still starting; after a crash it first reads its journal again ...');
     try {
       if (await waitUntilReady(server, connectionUrl('postgres', secrets.superuser, port, 'postgres'), onSlow)) {

@@ -14,24 +14,22 @@ export interface SupervisedPostgres {
 /**
  * Runs PostgreSQL and, beside it, a `cat` that waits for the end of its input. That input is a pipe from this process: it
  * ends when `stop` closes it and also when this process is killed, so PostgreSQL never outlives the program it belongs to.
- * $1 is the signal to stop it with, $2 a folder to remove afterwards or nothing.
+ * SIGINT is PostgreSQL's fast shutdown. $1 is a folder to remove after it ended in order, or nothing.
  */
 const supervisor = `
 exec 3<&0
-signal=$1; folder=$2; shift 2
+folder=$1; shift
 "$@" </dev/null 3<&- &
 server=$!
-{ cat <&3 >/dev/null; kill -s "$signal" "$server" 2>/dev/null; } &
+{ cat <&3 >/dev/null; kill -s INT "$server" 2>/dev/null; } &
 watch=$!
 exec 3<&-
-wait "$server"
+wait "$server" && [ -n "$folder" ] && rm -rf "$folder"
 kill "$watch" 2>/dev/null
-[ -z "$folder" ] || rm -rf "$folder"
 `;
 
 /**
  * @param removeFolder folder that goes away with PostgreSQL; null keeps everything
- * @param stopSignal INT waits for the files to be written, QUIT does not
  */
 export function spawnPostgres(options: {
   programs: string;
@@ -39,7 +37,6 @@ export function spawnPostgres(options: {
   user: DatabaseUser | null;
   logFile: string;
   configuration: Record<string, string | number>;
-  stopSignal: 'INT' | 'QUIT';
   removeFolder: string | null;
 }): SupervisedPostgres {
   const flags = Object.entries(options.configuration).flatMap(([name, value]) => ['-c', `${name}=${value}`]);
@@ -47,7 +44,7 @@ export function spawnPostgres(options: {
   const log = openSync(options.logFile, 'a', 0o600);
   const child = spawn(
     '/bin/sh',
-    ['-c', supervisor, 'sh', options.stopSignal, options.removeFolder ?? '', ...postgres],
+    ['-c', supervisor, 'sh', options.removeFolder ?? '', ...postgres],
     // Detached: a session of its own, so that Ctrl-C in the terminal reaches this program only, and PostgreSQL stops last.
     { ...asDatabaseUser(options.user), detached: true, stdio: ['pipe', log, log] },
   );
