@@ -1,0 +1,117 @@
+import type { GwpSet } from '../reference/gwp.ts';
+import type { CAUTION_SIGNALS, ChargeResponse } from './charge.schema.ts';
+
+/** Values for a message; numbers are not yet formatted, the catalogue's text names their unit. */
+export type MessageParams = Readonly<Record<string, string | number>>;
+
+export type StepUnit = ChargeResponse['steps'][number]['unit'];
+
+/** Keys of the catalogue under `step.` */
+export type StepCode =
+  | 'totalLength'
+  | 'sizeLength'
+  | 'sharedLength'
+  | 'lengthBeyond'
+  | 'sizeLengthBeyond'
+  | 'lineCharge'
+  | 'sizeCharge'
+  | 'branchCharge'
+  | 'lineSum'
+  | 'creditedMass'
+  | 'bracket'
+  | 'formulaName'
+  | 'formula'
+  | 'fixedMass'
+  | 'clamp'
+  | 'allowance'
+  | 'extra'
+  | 'rounded'
+  | 'change'
+  | 'total'
+  | 'co2e'
+  | 'pipeContent';
+
+/** Keys of the catalogue under `source.` */
+export type SourceCode =
+  | 'lineSet'
+  | 'precharge'
+  | 'rate'
+  | 'makersLetter'
+  | 'shortLine'
+  | 'allowances'
+  | 'rounding'
+  | 'factoryCharge'
+  | 'arithmetic'
+  | 'gwp'
+  | 'tube';
+
+export interface ChargeStep {
+  code: StepCode;
+  params: MessageParams;
+  /** The line set that a step is about; null: the whole. */
+  of: 'previousLineSet' | null;
+  /** Can be checked with a pencil: `12.0 m - 7.5 m`. */
+  expression: string;
+  value: number;
+  unit: StepUnit;
+  source: { code: SourceCode; params: MessageParams };
+}
+
+/** Keys of the catalogue under `warning.` */
+export type WarningCode =
+  | 'rateTooLow'
+  | 'rateTooHigh'
+  | 'plausibilityNotKnown'
+  | 'plausibilityNotKnownForSize'
+  | 'riseNotChecked'
+  | 'previousLineSetNotUsed'
+  | 'prechargeNotUsed'
+  | 'mainHasOwnPrecharge'
+  | 'sizeNotInFormula'
+  | 'commaInFormula'
+  | 'clampedAtZero'
+  | 'gwpNotCovered'
+  | 'gwpPartly'
+  | 'gwpToBeConfirmed';
+export interface ChargeWarning {
+  code: WarningCode;
+  params: MessageParams;
+}
+
+/** Keys of the catalogue under `caution.` */
+export type CautionCode =
+  | 'highlyFlammable'
+  | 'flammable'
+  | 'toxic'
+  | 'roomCheckNeeded'
+  | 'roomCheckNeededToBeConfirmed'
+  | 'noRoomCheck'
+  | 'noRoomCheckToBeConfirmed'
+  | 'roomByLocalCode'
+  | 'recoverNeverVent'
+  | 'compressorUnderVacuum'
+  | 'blendAsLiquid'
+  | 'frostbite'
+  | 'rateForThisRefrigerant'
+  | 'manualGoverns';
+export type CautionSignal = (typeof CAUTION_SIGNALS)[number];
+export interface ChargeCaution {
+  code: CautionCode;
+  signal: CautionSignal;
+  params: MessageParams;
+}
+
+/** The result with codes in place of sentences: `present-charge.ts` says them in a language. */
+export interface ChargeResult {
+  extraG: number;
+  totalG: number;
+  weighInG: number;
+  recoverG: number;
+  co2eT: number | null;
+  gwpSet: GwpSet;
+  ratePlausibility: ChargeResponse['ratePlausibility'];
+  steps: ChargeStep[];
+  warnings: ChargeWarning[];
+  cautions: ChargeCaution[];
+  versions: Record<string, string>;
+}
