@@ -9,6 +9,8 @@ import { Problem } from './http/problem.ts';
 import { problemHandler } from './http/problem-handler.ts';
 import { requestLog } from './http/request-log.ts';
 import { securityHeaders } from './http/security-headers.ts';
+import { openApiRoutes } from './openapi/openapi.router.ts';
+import { referencePage } from './openapi/reference-page.ts';
 
 /** Puts the server together from its parts; the tests build the same. Listening is `main.ts`'s. */
 export function createApp(parts: Parts): Express {
@@ -24,15 +26,17 @@ export function createApp(parts: Parts): Express {
 
   const health = healthRoutes(parts);
   const resources = RESOURCES.map((factory) => factory(parts));
-  const all = [health, ...resources];
+  const described = [health, ...resources];
+  const openApi = openApiRoutes(parts, described);
 
   app.use('/api', (_req, res, next) => {
     res.set('Cache-Control', 'no-store');
     next();
   });
-  app.use('/api/v1', health.router);
+  app.use('/api/v1', health.router, openApi.router);
   for (const { router } of resources) app.use('/api/v1', router);
-  app.use('/api/v1', methodCheck(all.flatMap(({ operations }) => operations)));
+  app.use('/api/v1', methodCheck([...described, openApi].flatMap(({ operations }) => operations)));
+  app.use('/api/docs', referencePage());
 
   if (parts.clientFolder) app.use(clientFiles(parts.clientFolder));
   app.use(() => {
