@@ -45,7 +45,7 @@ export function ensureBuilt({ root, side }) {
   const inputHash = hashOfInputs(root, side);
   const beside = path.join(root, 'dist', `.${side}-${process.pid}`);
   const outgoing = `${beside}-old`;
-  console.log(`Building the ${side} ...`);
+  console.error(`Building the ${side} ...`);
   const mode = side === 'server' ? ['--mode', 'server'] : [];
   const vite = path.join(root, 'node_modules/vite/bin/vite.js');
   try {

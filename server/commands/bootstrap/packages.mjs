@@ -39,7 +39,7 @@ export function ensurePackages({ root, withDevelopment }) {
 }
 
 function install(root, withDevelopment) {
-  console.log('Installing packages from the lock file (npm ci) ...');
+  console.error('Installing packages from the lock file (npm ci) ...');
   const which = withDevelopment ? '--include=dev' : '--omit=dev';
   const npm = spawnSync('npm', ['ci', which, '--no-audit', '--no-fund', '--loglevel=error'], {
     cwd: root,

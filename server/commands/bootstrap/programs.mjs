@@ -75,7 +75,7 @@ function aptLine(debianPackage) {
 }
 
 function installFromDebian(debianPackage) {
-  console.log(`Installing Debian's ${debianPackage} once: ${aptLine(debianPackage)}`);
+  console.error(`Installing Debian's ${debianPackage} once: ${aptLine(debianPackage)}`);
   const options = {
     env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
     stdio: ['ignore', 'ignore', 'inherit'],

@@ -29,6 +29,7 @@ async function start({ root, rest }) {
   if (!process.env.DATABASE_URL) providePostgres();
   ensureBuilt({ root, side: 'client' });
   const folder = ensureBuilt({ root, side: 'server' });
+  process.env.NODE_ENV ??= 'production';
   process.setSourceMapsEnabled(true);
   const { main } = await import(pathToFileURL(path.join(folder, 'start.js')).href);
   await main(rest);
@@ -37,6 +38,7 @@ async function start({ root, rest }) {
 async function dev({ root, rest }) {
   ensurePackages({ root, withDevelopment: true });
   if (!process.env.DATABASE_URL) providePostgres();
+  process.env.NODE_ENV ??= 'development';
   await runTypeScript(root, 'server/commands/dev.ts', rest);
 }
 
