@@ -1,0 +1,14 @@
+import { CreatePeople1764547200001 } from './migrations/1764547200001-create-people.ts';
+import { CreateRegisters1764547200002 } from './migrations/1764547200002-create-registers.ts';
+import { CreateLog1764547200003 } from './migrations/1764547200003-create-log.ts';
+import { CreatePosting1764547200004 } from './migrations/1764547200004-create-posting.ts';
+import { ProtectRows1764547200005 } from './migrations/1764547200005-protect-rows.ts';
+
+/** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
+export const MIGRATIONS = [
+  CreatePeople1764547200001,
+  CreateRegisters1764547200002,
+  CreateLog1764547200003,
+  CreatePosting1764547200004,
+  ProtectRows1764547200005,
+] as const;
