@@ -1,0 +1,69 @@
+import i18next from 'i18next';
+import { useCallback } from 'react';
+import { initReactI18next, useTranslation } from 'react-i18next';
+import type { Locale } from '../../shared/session/session.schema.ts';
+import { readPreferences, subscribeToPreferences } from './preferences.ts';
+
+/**
+ * The message catalogue in the browser: one file per part and language in `shared/messages`, flat keys. A route loads
+ * the parts that it needs, in the one language that is shown; the charge screen does not carry the words of the log.
+ */
+const FILES = import.meta.glob<Record<string, string>>('../../shared/messages/*.json', { import: 'default' });
+
+export type Language = 'en' | 'es';
+export type Params = Record<string, string | number>;
+export type Translate = (key: string, params?: Params) => string;
+
+export const languageOf = (locale: Locale): Language => (locale.startsWith('es') ? 'es' : 'en');
+
+const wanted = new Set<string>();
+
+async function loadPart(part: string, language: Language): Promise<void> {
+  const load = FILES[`../../shared/messages/${part}.${language}.json`];
+  if (!load) throw new Error(`There is no message file ${part}.${language}.json`);
+  i18next.addResourceBundle(language, 'translation', await load(), false, true);
+}
+
+/** Makes the messages of these parts available; await it in a route's loader, before its page is drawn. */
+export async function loadMessages(...parts: string[]): Promise<void> {
+  const language = languageOf(readPreferences().locale);
+  const missing = parts.filter((part) => !wanted.has(part));
+  await Promise.all(missing.map((part) => loadPart(part, language)));
+  for (const part of missing) wanted.add(part);
+}
+
+async function followLocale(): Promise<void> {
+  const language = languageOf(readPreferences().locale);
+  document.documentElement.lang = readPreferences().locale;
+  if (i18next.language === language) return;
+  await Promise.all([...wanted].map((part) => loadPart(part, language)));
+  await i18next.changeLanguage(language);
+}
+
+/** Starts the catalogue with the frame's messages and keeps it in the language of the preferences. */
+export async function startMessages(): Promise<void> {
+  const language = languageOf(readPreferences().locale);
+  await i18next.use(initReactI18next).init({
+    lng: language,
+    fallbackLng: false,
+    resources: {},
+    keySeparator: false,
+    nsSeparator: false,
+    interpolation: { escapeValue: false }, // React escapes
+    react: { useSuspense: false },
+    partialBundledLanguages: true,
+  });
+  document.documentElement.lang = readPreferences().locale;
+  await loadMessages('frame');
+  subscribeToPreferences(() => void followLocale());
+}
+
+/** `t(key, params)` in the language shown; the component draws again when the language changes. */
+export function useMessages(): Translate {
+  const { t } = useTranslation();
+  return useCallback<Translate>((key, params) => t(key, params ?? {}), [t]);
+}
+
+/** For code outside components (a loader's refusal, a page title). */
+export const translate: Translate = (key, params) => i18next.t(key, params ?? {});
+export const hasMessage = (key: string): boolean => i18next.exists(key);

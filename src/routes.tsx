@@ -1,0 +1,55 @@
+import { Outlet, type RouteObject } from 'react-router-dom';
+import { Frame } from './app/frame.tsx';
+import { PageSkeleton } from './app/page-skeleton.tsx';
+import { RouteProblem } from './app/route-problem.tsx';
+
+/**
+ * Every URL with its page. Each page is loaded when it is first opened and exports `Component`, and where it needs
+ * data or messages a `loader`. An error stays inside its page: the frame and what was typed remain.
+ */
+const pages: RouteObject[] = [
+  { path: 'more', lazy: () => import('./features/session/more.route.tsx') },
+  { path: 'preferences', lazy: () => import('./features/session/preferences.route.tsx') },
+  { path: 'choose-firm', lazy: () => import('./features/session/choose-firm.route.tsx') },
+  { path: 'sign-in', lazy: () => import('./features/session/sign-in.route.tsx') },
+  { path: 'forgotten-password', lazy: () => import('./features/session/forgotten-password.route.tsx') },
+  { path: 'reset-password', lazy: () => import('./features/session/reset-password.route.tsx') },
+  { path: 'invitation', lazy: () => import('./features/session/invitation.route.tsx') },
+];
+
+export const routes: RouteObject[] = [
+  {
+    path: '/',
+    element: <Frame />,
+    errorElement: <RouteProblem bare />,
+    HydrateFallback: PageSkeleton,
+    children: [
+      {
+        element: <Outlet />,
+        children: [...pages.map((page): RouteObject => ({ ...page, errorElement: <RouteProblem /> })), notFound()],
+      },
+    ],
+  },
+];
+
+function notFound(): RouteObject {
+  return {
+    path: '*',
+    loader: () => {
+      throw new Response(null, { status: 404 });
+    },
+    errorElement: <RouteProblem />,
+  };
+}
+
+const SIGNED_OUT = [
+  '/charge',
+  '/preferences',
+  '/more',
+  '/sign-in',
+  '/forgotten-password',
+  '/reset-password',
+  '/invitation',
+];
+/** Pages that someone who is not signed in may stay on. */
+export const worksSignedOut = (pathname: string): boolean => SIGNED_OUT.includes(pathname);
