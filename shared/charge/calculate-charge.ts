@@ -64,7 +64,8 @@ export function calculateCharge(request: ChargeRequest, context: ChargeContext):
   }
   if (previous) refusals.push(...checkLengths(previous, limits));
 
-  if (!rule) return { ok: false, refusals };
+  const refuse = (): Outcome<never> => ({ ok: false, refusals: withoutRepeats(refusals) });
+  if (!rule) return refuse();
   const newTrace: Trace = { steps, of: null };
   const lineG = lineSet && take(lineCharge(lineSet, rule, newTrace, warnings));
   const newG = lineG === null ? null : withAllowances(lineG, basis, newTrace);
@@ -74,7 +75,7 @@ export function calculateCharge(request: ChargeRequest, context: ChargeContext):
     const previousLineG = take(lineCharge(previous, rule, trace, warnings));
     if (previousLineG !== null) previousG = withAllowances(previousLineG, basis, trace);
   }
-  if (newG === null || (changes && previousG === null)) return { ok: false, refusals };
+  if (newG === null || (changes && previousG === null)) return refuse();
 
   const figures = weigh(request, newG, previousG, newTrace);
   if (figures.totalG < 0) {
@@ -88,7 +89,7 @@ export function calculateCharge(request: ChargeRequest, context: ChargeContext):
     });
   }
   refusals.push(...checkTotalCharge(figures.totalG, limits));
-  if (refusals.length > 0 || !facts || !lineSet) return { ok: false, refusals };
+  if (refusals.length > 0 || !facts || !lineSet) return refuse();
 
   const co2eT = co2Equivalent(figures.totalG, request, facts, newTrace, warnings);
   const ratePlausibility = judgeRate(lineSet, rule.rate, facts, newTrace, warnings);
@@ -101,7 +102,7 @@ export function calculateCharge(request: ChargeRequest, context: ChargeContext):
     gwpSet: request.gwpSet,
     ratePlausibility,
     steps,
-    warnings,
+    warnings: withoutRepeats(warnings),
     cautions: cautionsFor(request, facts, figures),
     versions: { ...facts.versions },
   });
@@ -111,9 +112,9 @@ export function calculateCharge(request: ChargeRequest, context: ChargeContext):
 function withAllowances(lineG: number, basis: ChargeBasis, trace: Trace): number {
   const terms = [lineG];
   for (const { label, gEach, count, factor } of basis.allowances ?? []) {
-    const isPlain = (factor ?? 1) === 1;
-    const text = `${count} x ${grams(gEach)}${isPlain ? '' : ` x ${plain(factor)}`}`;
-    const allowanceG = snapped(count * gEach * (factor ?? 1));
+    const times = factor ?? 1;
+    const text = `${count} x ${grams(gEach)}${times === 1 ? '' : ` x ${plain(times)}`}`;
+    const allowanceG = snapped(count * gEach * times);
     terms.push(note(trace, 'allowance', text, allowanceG, 'g', 'allowances', { label }));
   }
   if (terms.length === 1) return lineG;
@@ -192,4 +193,14 @@ function warnAboutMains(lineSet: LineSet, lengthM: number, warnings: ChargeWarni
   if (mains.length === 0 || lengthM === 0) return;
   const params = { branches: mains.map((main) => main.name).join(', '), lengthM };
   warnings.push({ code: 'mainHasOwnPrecharge', params });
+}
+
+/** Two line sets under one rule meet the same obstacle twice. */
+function withoutRepeats<T extends ChargeWarning | Refusal>(list: readonly T[]): T[] {
+  if (list.length < 2) return [...list];
+  const told = new Set<string>();
+  return list.filter((item) => {
+    const text = JSON.stringify(item);
+    return told.has(text) ? false : told.add(text);
+  });
 }

@@ -7,43 +7,47 @@ export type MessageParams = Readonly<Record<string, string | number>>;
 export type StepUnit = ChargeResponse['steps'][number]['unit'];
 
 /** Keys of the catalogue under `step.` */
-export type StepCode =
-  | 'totalLength'
-  | 'sizeLength'
-  | 'sharedLength'
-  | 'lengthBeyond'
-  | 'sizeLengthBeyond'
-  | 'lineCharge'
-  | 'sizeCharge'
-  | 'branchCharge'
-  | 'lineSum'
-  | 'creditedMass'
-  | 'bracket'
-  | 'formulaName'
-  | 'formula'
-  | 'fixedMass'
-  | 'clamp'
-  | 'allowance'
-  | 'extra'
-  | 'rounded'
-  | 'change'
-  | 'total'
-  | 'co2e'
-  | 'pipeContent';
+export const STEP_CODES = [
+  'totalLength',
+  'sizeLength',
+  'sharedLength',
+  'lengthBeyond',
+  'sizeLengthBeyond',
+  'lineCharge',
+  'sizeCharge',
+  'branchCharge',
+  'lineSum',
+  'creditedMass',
+  'bracket',
+  'formulaName',
+  'formula',
+  'fixedMass',
+  'clamp',
+  'allowance',
+  'extra',
+  'rounded',
+  'change',
+  'total',
+  'co2e',
+  'pipeContent',
+] as const;
+export type StepCode = (typeof STEP_CODES)[number];
 
 /** Keys of the catalogue under `source.` */
-export type SourceCode =
-  | 'lineSet'
-  | 'precharge'
-  | 'rate'
-  | 'makersLetter'
-  | 'shortLine'
-  | 'allowances'
-  | 'rounding'
-  | 'factoryCharge'
-  | 'arithmetic'
-  | 'gwp'
-  | 'tube';
+export const SOURCE_CODES = [
+  'lineSet',
+  'precharge',
+  'rate',
+  'makersLetter',
+  'shortLine',
+  'allowances',
+  'rounding',
+  'factoryCharge',
+  'arithmetic',
+  'gwp',
+  'tube',
+] as const;
+export type SourceCode = (typeof SOURCE_CODES)[number];
 
 export interface ChargeStep {
   code: StepCode;
@@ -58,42 +62,46 @@ export interface ChargeStep {
 }
 
 /** Keys of the catalogue under `warning.` */
-export type WarningCode =
-  | 'rateTooLow'
-  | 'rateTooHigh'
-  | 'plausibilityNotKnown'
-  | 'plausibilityNotKnownForSize'
-  | 'riseNotChecked'
-  | 'previousLineSetNotUsed'
-  | 'prechargeNotUsed'
-  | 'mainHasOwnPrecharge'
-  | 'sizeNotInFormula'
-  | 'commaInFormula'
-  | 'clampedAtZero'
-  | 'gwpNotCovered'
-  | 'gwpPartly'
-  | 'gwpToBeConfirmed';
+export const WARNING_CODES = [
+  'rateTooLow',
+  'rateTooHigh',
+  'plausibilityNotKnown',
+  'plausibilityNotKnownForSize',
+  'riseNotChecked',
+  'previousLineSetNotUsed',
+  'prechargeNotUsed',
+  'mainHasOwnPrecharge',
+  'sizeNotInFormula',
+  'commaInFormula',
+  'clampedAtZero',
+  'gwpNotCovered',
+  'gwpPartly',
+  'gwpToBeConfirmed',
+] as const;
+export type WarningCode = (typeof WARNING_CODES)[number];
 export interface ChargeWarning {
   code: WarningCode;
   params: MessageParams;
 }
 
 /** Keys of the catalogue under `caution.` */
-export type CautionCode =
-  | 'highlyFlammable'
-  | 'flammable'
-  | 'toxic'
-  | 'roomCheckNeeded'
-  | 'roomCheckNeededToBeConfirmed'
-  | 'noRoomCheck'
-  | 'noRoomCheckToBeConfirmed'
-  | 'roomByLocalCode'
-  | 'recoverNeverVent'
-  | 'compressorUnderVacuum'
-  | 'blendAsLiquid'
-  | 'frostbite'
-  | 'rateForThisRefrigerant'
-  | 'manualGoverns';
+export const CAUTION_CODES = [
+  'highlyFlammable',
+  'flammable',
+  'toxic',
+  'roomCheckNeeded',
+  'roomCheckNeededToBeConfirmed',
+  'noRoomCheck',
+  'noRoomCheckToBeConfirmed',
+  'roomByLocalCode',
+  'recoverNeverVent',
+  'compressorUnderVacuum',
+  'blendAsLiquid',
+  'frostbite',
+  'rateForThisRefrigerant',
+  'manualGoverns',
+] as const;
+export type CautionCode = (typeof CAUTION_CODES)[number];
 export type CautionSignal = (typeof CAUTION_SIGNALS)[number];
 export interface ChargeCaution {
   code: CautionCode;
