@@ -85,8 +85,7 @@ class CylinderJudging {
   private boughtUnweighed: boolean;
   private missing: bigint;
   private readonly added: AddedEntry[] = [];
-  private readonly flags: LedgerFlag[] = [];
-  private readonly gaps = new Map<FlagCode, bigint>();
+  private readonly found = new Map<FlagCode, bigint>();
   private readonly register: CylinderRegister;
   private readonly before: CylinderState;
   private readonly group: EnteredGroup;
@@ -112,7 +111,7 @@ class CylinderJudging {
       if (this.opened && isBeyond(gap, variance)) {
         const difference = isBeyond(gap, variance, 3) ? 'cylinderNotExplained' : 'cylinderLookAgain';
         const code = this.boughtUnweighed ? 'supplierShortFill' : difference;
-        this.gaps.set(code, (this.gaps.get(code) ?? 0n) + gap);
+        this.flag(code, gap);
       }
     }
     this.opened = true;
@@ -175,7 +174,12 @@ class CylinderJudging {
   }
 
   finish(): CylinderStep {
-    for (const [code, gap] of this.gaps) if (gap !== 0n) this.flag(code, gap);
+    const place = cylinderPlace(this.register.cylinderId);
+    const flags = [...this.found]
+      .filter(([, massMicrograms]) => massMicrograms !== 0n)
+      .map(([code, massMicrograms]): LedgerFlag => {
+        return { code, place, groupId: this.group.id, refrigerant: null, massMicrograms, standing: false, figures: {} };
+      });
     const state: CylinderState = {
       lastPosition: { occurredAt: this.group.occurredAt, sequence: this.group.sequence },
       book: this.book,
@@ -184,17 +188,16 @@ class CylinderJudging {
       missingMicrograms: this.missing,
       standing: cylinderStandingFlags(this.register, this.before, this.book, this.missing, this.group.id),
     };
-    return { state, added: netted(this.added), flags: this.flags };
+    return { state, added: netted(this.added), flags };
   }
 
   bookNow(): MassByRefrigerant {
     return this.book;
   }
 
-  private flag(code: FlagCode, massMicrograms: bigint | null): void {
-    const place = cylinderPlace(this.register.cylinderId);
-    const groupId = this.group.id;
-    this.flags.push({ code, place, groupId, refrigerant: null, massMicrograms, standing: false, figures: {} });
+  /** One flag of a kind for a group: two readings that cancel leave none. */
+  private flag(code: FlagCode, massMicrograms: bigint): void {
+    this.found.set(code, (this.found.get(code) ?? 0n) + massMicrograms);
   }
 }
 

@@ -16,6 +16,11 @@ export function plusAll(book: MassByRefrigerant, change: MassByRefrigerant): Mas
   return refrigerantsOf(change).reduce((sum, refrigerant) => plus(sum, refrigerant, massOf(change, refrigerant)), book);
 }
 
+export function smaller(one: bigint, other: bigint): bigint {
+  if (one < other) return one;
+  return other;
+}
+
 /** More than one refrigerant in it: to a reclaimer only. */
 export const isMixed = (book: MassByRefrigerant): boolean => Object.values(book).filter((mass) => mass > 0n).length > 1;
 
