@@ -1,6 +1,6 @@
 import { migrate } from '../../server/database/migrate.ts';
 import { ensureRoles } from '../../server/database/roles.ts';
-import { runOnce, templateDatabase } from './cloned-database.ts';
+import { templateDatabase } from './cloned-database.ts';
 import { startThrowawayPostgres, type ThrowawayPostgres } from './throwaway-postgres.ts';
 
 /**
@@ -11,11 +11,9 @@ import { startThrowawayPostgres, type ThrowawayPostgres } from './throwaway-post
 export async function startMigratedPostgres({ durable = false } = {}): Promise<ThrowawayPostgres> {
   const postgres = await startThrowawayPostgres({ durable });
   try {
-    await runOnce(postgres.url('postgres', 'postgres'), `CREATE DATABASE ${templateDatabase}`);
     const passwords = { owner: 'test', app: 'test', jobs: 'test', backup: 'test' };
-    const superuserUrl = postgres.url('postgres', templateDatabase);
+    const superuserUrl = postgres.url('postgres', 'postgres');
     await ensureRoles({ superuserUrl, database: templateDatabase, passwords });
-    await runOnce(superuserUrl, `ALTER DATABASE ${templateDatabase} OWNER TO tarewright_owner`);
     await migrate({ ownerUrl: postgres.url('tarewright_owner', templateDatabase) });
     return postgres;
   } catch (error) {

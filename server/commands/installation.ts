@@ -1,0 +1,88 @@
+import { findExistingCluster } from '../cluster/data-folder.ts';
+import { lockFolder } from '../cluster/folder-lock.ts';
+import { whyNotListen } from '../cluster/free-port.ts';
+import { prepareHome, readSecrets } from '../cluster/home.ts';
+import { readSettings, type Settings } from '../settings.ts';
+import { StartRefusal } from './bootstrap/start-refusal.mjs';
+import type { DatabaseUrls } from './database-urls.ts';
+import { type DemoSignIn, loadDemoIfEmpty } from './demo.ts';
+import { prepareDatabase } from './prepare-database.ts';
+import { projectRoot } from './project-root.ts';
+
+/** What `start` and `dev` both stand on: the locked data folder and a migrated, filled database. */
+export interface Installation {
+  settings: Settings & { sessionSecret: string };
+  databaseUrls: DatabaseUrls;
+  demoPeople: DemoSignIn[];
+  demoPassword: string;
+  /** Resolves when the own PostgreSQL ended. */
+  databaseEnded: Promise<void>;
+  /** Stops the database, last of all, and gives the folder free. */
+  close(): Promise<void>;
+}
+
+const reasons: Record<string, string> = {
+  EADDRINUSE: 'is already in use: stop what listens there, or set PORT to another one',
+  EACCES: 'may not be listened on by this user: set PORT to 1024 or more',
+  EADDRNOTAVAIL: 'is not an address of this computer: set HOST to one that is',
+  ENOTFOUND: 'is not a known host name: set HOST to an address of this computer',
+};
+
+async function checkPort({ host, port }: Settings): Promise<void> {
+  const code = await whyNotListen(host, port);
+  if (code) throw new StartRefusal(`${host}:${port} ${reasons[code] ?? `cannot be listened on (${code})`}.`);
+}
+
+/** @throws StartRefusal with one line; nothing is left running then */
+export async function openInstallation(say: (line: string) => void): Promise<Installation> {
+  const settings = readSettings(process.env, projectRoot);
+  prepareHome(settings.home);
+  const unlock = lockFolder(settings.home);
+  try {
+    await checkPort(settings);
+    const recordsExist = settings.databaseUrl === null && findExistingCluster(settings.home) !== null;
+    const secrets = readSecrets(settings.home, { recordsExist });
+    const database = await prepareDatabase({ settings, secrets, say });
+    try {
+      const demo = { databaseUrls: database.urls, password: secrets.demo, now: new Date() };
+      return {
+        settings: { ...settings, sessionSecret: settings.sessionSecret ?? secrets.session },
+        databaseUrls: database.urls,
+        demoPeople: settings.demo ? await loadDemoIfEmpty(demo) : [],
+        demoPassword: secrets.demo,
+        databaseEnded: database.ended,
+        async close() {
+          await database.stop();
+          unlock();
+        },
+      };
+    } catch (error) {
+      await database.stop();
+      throw error;
+    }
+  } catch (error) {
+    unlock();
+    throw error;
+  }
+}
+
+const isLoopback = (host: string) => /^(127\.|::1$|localhost$)/.test(host);
+
+/** The lines that a person sees when it is ready. */
+export function describeInstallation({ settings, demoPeople, demoPassword }: Installation): string[] {
+  const lines = [`Tarewright is ready: ${settings.publicUrl}`];
+  if (settings.publicUrl !== `http://${settings.host}:${settings.port}`)
+    lines.push(`It listens on ${settings.host}:${settings.port}.`);
+  if (demoPeople.length > 0) {
+    lines.push('', `Demo people (invented), each with the password ${demoPassword}`);
+    const width = (key: 'email' | 'name' | 'role') => Math.max(...demoPeople.map((person) => person[key].length));
+    for (const { firm, name, role, email } of demoPeople)
+      lines.push(
+        `  ${email.padEnd(width('email'))}  ${role.padEnd(width('role'))}  ${name.padEnd(width('name'))}  ${firm}`,
+      );
+    if (!isLoopback(settings.host))
+      lines.push('  Others can reach this server: set TAREWRIGHT_DEMO=0 before the first start with real records.');
+  }
+  lines.push('', 'Ctrl-C stops it.');
+  return lines;
+}
