@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { type ApiRoutes, apiRoutes, ok } from './api-routes.ts';
+import { databaseFits } from './database-fits.ts';
 import type { Parts } from './parts.ts';
 import { Problem } from './problem.ts';
 
@@ -34,7 +35,7 @@ export function healthRoutes(parts: Parts): ApiRoutes {
     async () => {
       try {
         if (migrated) await parts.dataSource.query('SELECT 1');
-        else migrated = !(await parts.dataSource.showMigrations()); // never undone while this process runs
+        else migrated = await databaseFits(parts.dataSource); // never undone while this process runs
       } catch (error) {
         throw new Problem('notReady', { cause: error });
       }

@@ -8,13 +8,16 @@ const READING = new Set(['GET', 'HEAD', 'OPTIONS']);
  * `Sec-Fetch-Site`; the allowed origin comes from the settings, never from the Host header. Requests without our
  * cookie carry no one's rights and pass, as do those with a token (which never look at the cookie).
  */
-export function originCheck(allowedOrigin: string, carriesCookie: (cookieHeader: string) => boolean): RequestHandler {
+export function originCheck(
+  allowedOrigins: readonly string[],
+  carriesCookie: (cookieHeader: string) => boolean,
+): RequestHandler {
   return (req, _res, next) => {
     if (READING.has(req.method) || req.headers.authorization !== undefined) return next();
     if (!carriesCookie(req.headers.cookie ?? '')) return next();
     const site = req.get('sec-fetch-site');
     const origin = req.get('origin');
-    const ours = origin === undefined ? site === 'same-origin' : origin === allowedOrigin;
+    const ours = origin === undefined ? site === 'same-origin' : allowedOrigins.includes(origin);
     if (!ours || (site !== undefined && site !== 'same-origin')) throw new Problem('otherOrigin');
     next();
   };

@@ -1,8 +1,10 @@
 import type { Logger } from 'pino';
 import type { DataSource } from 'typeorm';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
+import type { MailCatcher } from '../mail/mail-catcher.ts';
 import type { Mailer } from '../mail/mailer.ts';
 import type { Settings } from '../settings.ts';
+import type { BackgroundWork } from './background-work.ts';
 
 /**
  * What the server is put together from. Handed to every router and service; nothing below reads the environment, the
@@ -14,6 +16,9 @@ export interface Parts {
   dataSource: DataSource;
   reference: ReferenceData;
   mailer: Mailer;
+  /** Where mail is kept instead of sent and may be read on this machine; null: a mail server sends it, or nobody may. */
+  keptMail: MailCatcher | null;
+  background: BackgroundWork;
   log: Logger;
   now(): Date;
   /** A UUID version 7. */

@@ -1,11 +1,9 @@
 import express, { type Request, type Router } from 'express';
+import { isLoopbackAddress, isLoopbackName } from '../http/loopback.ts';
 import { Problem } from '../http/problem.ts';
 import { localeOf } from '../http/request-locale.ts';
 import { messageFor } from '../messages/translate.ts';
 import type { KeptMail, MailCatcher } from './mail-catcher.ts';
-
-const LOOPBACK = /^(127\.\d+\.\d+\.\d+|::1|::ffff:127\.\d+\.\d+\.\d+)$/;
-const LOOPBACK_NAMES = new Set(['localhost', '127.0.0.1', '::1', '[::1]']);
 
 /**
  * `/dev/mail`: the mails that were kept instead of sent. They hold links that open accounts, so the page answers only
@@ -35,7 +33,7 @@ export function keptMailPage(catcher: MailCatcher): Router {
 
 function fromThisMachine(req: Request): boolean {
   const name = req.headers.host?.replace(/:\d+$/, '') ?? '';
-  return LOOPBACK.test(req.socket.remoteAddress ?? '') && LOOPBACK_NAMES.has(name);
+  return isLoopbackAddress(req.socket.remoteAddress) && isLoopbackName(name);
 }
 
 function article({ receivedAt, to, subject, text }: KeptMail): string {
