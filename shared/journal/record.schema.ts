@@ -129,7 +129,10 @@ export const entryRecord = z.strictObject({
   takenBack: z.boolean(),
   correctsGroupId: id.nullable(),
   reversesEntryId: id.nullable(),
-  /** The unit at one of the ends, else the group's; and the site that the unit stood at then: what a reader may see. */
+  /**
+   * The unit at one of the ends, else the one in whose timeline the server judged this, else the group's; and the site
+   * that it stood at then, which is what a reader may see.
+   */
   unitId: id.nullable(),
   siteId: id.nullable(),
 });
@@ -193,15 +196,20 @@ export const derivedRows = z.strictObject({
       z.strictObject({
         id,
         code: z.string(),
-        subjectKind: z.enum(['unit', 'cylinder', 'group']),
+        subjectKind: z.enum(['unit', 'cylinder', 'reclaimer', 'group']),
         subjectId: id,
         groupId: id,
         openedByGroupId: id,
         refrigerant: refrigerant.nullable(),
         massMicrograms: micrograms.nullable(),
+        figures: z.record(z.string(), micrograms),
+        standing: z.boolean(),
         at: instantUtc,
       }),
     )
+    .optional(),
+  flagsChanged: z
+    .array(z.strictObject({ id, massMicrograms: micrograms.nullable(), figures: z.record(z.string(), micrograms) }))
     .optional(),
   flagsClosed: z.array(z.strictObject({ id, closedByGroupId: id, at: instantUtc })).optional(),
   /** Words beside the chain: `hash` of salt (hex, at least 16 bytes) and content stands in the record `recordId`. */

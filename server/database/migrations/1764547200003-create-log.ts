@@ -295,6 +295,9 @@ const BOOKS = `
     group_id uuid not null,
     refrigerant refrigerant_name,
     mass_micrograms bigint,
+    figures jsonb not null default '{}',
+    -- True: says how the place stands now. False: belongs to its group for good.
+    standing boolean not null,
     opened_at timestamptz not null,
     opened_by_group_id uuid not null,
     closed_at timestamptz,
@@ -303,7 +306,7 @@ const BOOKS = `
     constraint flag_group_fkey foreign key (firm_id, group_id) references entry_group (firm_id, id),
     constraint flag_opened_by_fkey foreign key (firm_id, opened_by_group_id) references entry_group (firm_id, id),
     constraint flag_closed_by_fkey foreign key (firm_id, closed_by_group_id) references entry_group (firm_id, id),
-    constraint flag_subject_kind_check check (subject_kind in ('unit', 'cylinder', 'group')),
+    constraint flag_subject_kind_check check (subject_kind in ('unit', 'cylinder', 'reclaimer', 'group')),
     constraint flag_closed_check check ((closed_at is null) = (closed_by_group_id is null))
   );
   create index flag_open_idx on flag (firm_id, opened_at, id) where closed_at is null;

@@ -183,13 +183,16 @@ const DERIVED = `
         set known = excluded.known, state = excluded.state, last_occurred_at = excluded.last_occurred_at,
           sequence = excluded.sequence;
 
-    insert into flag (firm_id, id, code, subject_kind, subject_id, group_id, refrigerant, mass_micrograms, opened_at,
-        opened_by_group_id)
+    insert into flag (firm_id, id, code, subject_kind, subject_id, group_id, refrigerant, mass_micrograms, figures,
+        standing, opened_at, opened_by_group_id)
       select p_head.firm_id, f.id, f.code, f."subjectKind", f."subjectId", f."groupId", f.refrigerant,
-        f."massMicrograms", f.at, f."openedByGroupId"
+        f."massMicrograms", coalesce(f.figures, '{}'), f.standing, f.at, f."openedByGroupId"
       from jsonb_to_recordset(p_derived -> 'flagsOpened')
         f(id uuid, code text, "subjectKind" text, "subjectId" uuid, "groupId" uuid, refrigerant text,
-          "massMicrograms" bigint, at timestamptz, "openedByGroupId" uuid);
+          "massMicrograms" bigint, figures jsonb, standing boolean, at timestamptz, "openedByGroupId" uuid);
+    update flag set mass_micrograms = f."massMicrograms", figures = coalesce(f.figures, '{}')
+      from jsonb_to_recordset(p_derived -> 'flagsChanged') f(id uuid, "massMicrograms" bigint, figures jsonb)
+      where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;
     update flag set closed_at = f.at, closed_by_group_id = f."closedByGroupId"
       from jsonb_to_recordset(p_derived -> 'flagsClosed') f(id uuid, at timestamptz, "closedByGroupId" uuid)
       where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;

@@ -17,8 +17,10 @@ export const CHECKS: readonly string[] = [
     select jsonb_build_object('groupId', g.id, 'entryId', e.id) into v_wrong
       from entry_group g join entry e on e.firm_id = g.firm_id and e.group_id = g.id
       where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence
-        and (e.recorded_at <> g.recorded_at or (e.unit_id is distinct from g.unit_id
-          and e.unit_id is distinct from e.from_id and e.unit_id is distinct from e.to_id))
+        and (e.recorded_at <> g.recorded_at
+          or ('unit' in (e.from_place, e.to_place) and (e.unit_id is null or e.unit_id not in (
+            case when e.from_place = 'unit' then e.from_id else e.to_id end,
+            case when e.to_place = 'unit' then e.to_id else e.from_id end))))
       limit 1;
     if found then perform refuse('TW002', 'record_form', v_wrong); end if;
 
@@ -152,7 +154,7 @@ export const CHECKS: readonly string[] = [
     if found then perform refuse('TW011', 'past_limit_reason', v_wrong); end if;
   end $$`,
 
-  // A book becomes known by a factory, opening or settling entry or statement, and unknown again only by a reversal.
+  // A book becomes known by a factory, opening or settling entry or statement, and unknown again only by a reversal or another answer.
   `create function check_known(p_head firm_head, p_derived jsonb) returns void language plpgsql as $$
   declare
     v_wrong jsonb;
@@ -162,7 +164,7 @@ export const CHECKS: readonly string[] = [
       join place_state s on s.firm_id = p_head.firm_id and s.place = 'unit' and s.place_id = d.id
       where d.place = 'unit' and s.known and not d.known
         and not exists (select from entry_group g where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence
-          and g.reverses_group_id is not null) limit 1;
+          and (g.reverses_group_id is not null or g.answers_group_id is not null)) limit 1;
     if found then perform refuse('TW008', 'book_stays_known', v_wrong); end if;
 
     select jsonb_build_object('place', 'unit', 'id', d.id) into v_wrong
@@ -194,7 +196,7 @@ export const CHECKS: readonly string[] = [
     select jsonb_build_object('place', 'unit', 'id', e.to_id) into v_wrong
       from entry e
       where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.to_place = 'unit'
-        and e.from_place in ('factory', 'opening') and (e.kind in ('factoryCharge', 'opening') or e.added_by_server)
+        and e.from_place in ('factory', 'opening')
         and e.reverses_entry_id is null
         and not exists (select from entry r where r.firm_id = e.firm_id and r.reverses_entry_id = e.id)
         and not exists (select from place_state s
