@@ -1,5 +1,76 @@
-import type { MixedList } from 'typeorm';
+import { BalanceEntity } from '../books/balance.entity.ts';
+import { MonthSumEntity } from '../books/month-sum.entity.ts';
+import { PlaceStateEntity } from '../books/place-state.entity.ts';
+import { ChargeSheetEntity } from '../charge-sheets/charge-sheet.entity.ts';
+import { CustomerEntity } from '../customers/customer.entity.ts';
+import { CylinderEntity } from '../cylinders/cylinder.entity.ts';
+import { CylinderTareEntity } from '../cylinders/cylinder-tare.entity.ts';
+import { EntryEntity } from '../entries/entry.entity.ts';
+import { EntryGroupEntity } from '../entries/entry-group.entity.ts';
+import { GroupDocumentEntity } from '../entries/group-document.entity.ts';
+import { ReadingEntity } from '../entries/reading.entity.ts';
+import { StatementEntity } from '../entries/statement.entity.ts';
+import { FirmEntity } from '../firm/firm.entity.ts';
+import { FlagEntity } from '../flags/flag.entity.ts';
+import { InvitationEntity } from '../invitations/invitation.entity.ts';
+import { JobEntity } from '../jobs/job.entity.ts';
+import { FirmHeadEntity } from '../journal/firm-head.entity.ts';
+import { JournalRecordEntity } from '../journal/journal-record.entity.ts';
+import { PersonalTextEntity } from '../journal/personal-text.entity.ts';
+import { PartyEntity } from '../parties/party.entity.ts';
+import { LastSignInEntity } from '../people/last-sign-in.entity.ts';
+import { MembershipEntity } from '../people/membership.entity.ts';
+import { PersonEntity } from '../people/person.entity.ts';
+import { PasswordResetEntity } from '../session/password-reset.entity.ts';
+import { PersonSecretEntity } from '../session/person-secret.entity.ts';
+import { SessionEntity } from '../session/session.entity.ts';
+import { SignInFailureEntity } from '../session/sign-in-failure.entity.ts';
+import { SiteEntity } from '../sites/site.entity.ts';
+import { PersonalTokenEntity } from '../tokens/personal-token.entity.ts';
+import { ToolEntity } from '../tools/tool.entity.ts';
+import { ChargeBasisEntity } from '../units/charge-basis.entity.ts';
+import { LineSetEntity } from '../units/line-set.entity.ts';
+import { UnitEntity } from '../units/unit.entity.ts';
+import { UnitFullChargeEntity } from '../units/unit-full-charge.entity.ts';
+import { UnitRefrigerantEntity } from '../units/unit-refrigerant.entity.ts';
+import { UnitSiteEntity } from '../units/unit-site.entity.ts';
 
-/** Every table that is read or written through TypeORM. */
-// biome-ignore lint/complexity/noBannedTypes: TypeORM's own type of an entity class
-export const ENTITIES: MixedList<Function> = [];
+/** Every table, in the order of the migrations. */
+export const ENTITIES = [
+  FirmEntity,
+  PersonEntity,
+  MembershipEntity,
+  LastSignInEntity,
+  InvitationEntity,
+  PersonSecretEntity,
+  SessionEntity,
+  SignInFailureEntity,
+  PasswordResetEntity,
+  PersonalTokenEntity,
+  CustomerEntity,
+  SiteEntity,
+  PartyEntity,
+  ToolEntity,
+  JobEntity,
+  UnitEntity,
+  UnitRefrigerantEntity,
+  UnitFullChargeEntity,
+  UnitSiteEntity,
+  ChargeBasisEntity,
+  LineSetEntity,
+  ChargeSheetEntity,
+  CylinderEntity,
+  CylinderTareEntity,
+  FirmHeadEntity,
+  JournalRecordEntity,
+  PersonalTextEntity,
+  EntryGroupEntity,
+  EntryEntity,
+  ReadingEntity,
+  StatementEntity,
+  GroupDocumentEntity,
+  BalanceEntity,
+  MonthSumEntity,
+  PlaceStateEntity,
+  FlagEntity,
+];

@@ -1,0 +1,19 @@
+import { Column, Entity, Index, PrimaryColumn } from 'typeorm';
+
+/** Written by connect-pg-simple; `personId` is taken from the content by the database. */
+@Entity('session')
+@Index('session_expire_idx', ['expire'])
+@Index('session_person_idx', ['personId'])
+export class SessionEntity {
+  @PrimaryColumn({ type: 'varchar', primaryKeyConstraintName: 'session_pkey' })
+  sid!: string;
+
+  @Column({ type: 'json' })
+  sess!: unknown;
+
+  @Column({ type: 'timestamp', precision: 6 })
+  expire!: Date;
+
+  @Column({ type: 'uuid', nullable: true, insert: false, update: false })
+  personId!: string | null;
+}
