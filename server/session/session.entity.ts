@@ -1,6 +1,6 @@
 import { Column, Entity, Index, PrimaryColumn } from 'typeorm';
 
-/** Written by connect-pg-simple; `personId` is taken from the content by the database. */
+/** Written by connect-pg-simple; `personId` is set by the database from the content. */
 @Entity('session')
 @Index('session_expire_idx', ['expire'])
 @Index('session_person_idx', ['personId'])
@@ -14,6 +14,6 @@ export class SessionEntity {
   @Column({ type: 'timestamp', precision: 6 })
   expire!: Date;
 
-  @Column({ type: 'uuid', nullable: true, insert: false, update: false })
+  @Column({ type: 'uuid', nullable: true })
   personId!: string | null;
 }

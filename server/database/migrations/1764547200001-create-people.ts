@@ -105,14 +105,24 @@ const SIGN_IN = `
     sid varchar not null,
     sess json not null,
     expire timestamp(6) not null,
-    -- passport's serialised user: the person's id itself or { personId }.
-    person_id uuid generated always as (
-      substring(coalesce(sess #>> '{passport,user,personId}', sess #>> '{passport,user}', sess #>> '{personId}')
-        from '^[0-9a-fA-F]{8}-[0-9a-fA-F]{4}-[0-9a-fA-F]{4}-[0-9a-fA-F]{4}-[0-9a-fA-F]{12}$')::uuid) stored,
+    person_id uuid,
     constraint session_pkey primary key (sid)
   );
   create index session_expire_idx on session (expire);
   create index session_person_idx on session (person_id);
+
+  -- Whose session it is, so that all of a person's can be ended. It stands in what passport keeps: the person's id itself
+  -- or { personId }. A trigger, because TypeORM wants a table of its own for a generated column.
+  create function name_session_person() returns trigger language plpgsql
+    set search_path = pg_catalog, public, pg_temp as $$
+  begin
+    new.person_id := substring(
+      coalesce(new.sess #>> '{passport,user,personId}', new.sess #>> '{passport,user}', new.sess #>> '{personId}')
+      from '^[0-9a-fA-F]{8}-[0-9a-fA-F]{4}-[0-9a-fA-F]{4}-[0-9a-fA-F]{4}-[0-9a-fA-F]{12}$')::uuid;
+    return new;
+  end $$;
+  create trigger session_person before insert or update on session
+    for each row execute function name_session_person();
 
   -- One row for each refused sign-in; throttle_key is a hash of the address or of the account asked for.
   create table sign_in_failure (
