@@ -44,3 +44,10 @@ export function requirePermission(req: Request, permission: Permission): Actor {
   if (!mayActor(actor, permission)) throw new Problem('notPermitted', { params: { permission } });
   return actor;
 }
+
+/** @throws Problem 401 without sign-in, 403 with a token: what concerns the account itself is the person's alone */
+export function requireSession(req: Request): Actor {
+  const actor = actorOf(req);
+  if (actor.tokenScopes !== null) throw new Problem('notPermitted', { params: { permission: 'session' } });
+  return actor;
+}

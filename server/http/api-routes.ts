@@ -3,15 +3,18 @@ import type { z } from 'zod';
 import { id } from '../../shared/lists/list.schema.ts';
 import type { Permission } from '../../shared/permissions/roles.ts';
 import type { ProblemCode } from '../../shared/problems/problem-codes.ts';
-import { type Actor, actorOf, requirePermission } from './actor.ts';
+import { type Actor, actorOf, requirePermission, requireSession } from './actor.ts';
 import { checkAnswer } from './check-answer.ts';
 import { readJsonBody } from './json-body.ts';
 import { parseBody, parseQuery } from './parse.ts';
 import type { Parts } from './parts.ts';
 import { Problem } from './problem.ts';
 
-/** `public`: nobody need be signed in. `signedIn`: everybody who is. Else the permission that it takes. */
-export type Access = 'public' | 'signedIn' | Permission;
+/**
+ * `public`: nobody need be signed in. `signedIn`: everybody who is. `session`: likewise, but not with a token. Else the
+ * permission that it takes.
+ */
+export type Access = 'public' | 'signedIn' | 'session' | Permission;
 
 /** A schema, or the media type of an answer that is no JSON; null: no content. */
 export type AnswerShape = z.ZodType | { mediaType: string; description: string } | null;
@@ -121,5 +124,6 @@ export function apiRoutes(parts: Parts, tag: string) {
 
 function actorFor(access: Access, req: Request): Actor | undefined {
   if (access === 'public') return req.actor;
-  return access === 'signedIn' ? actorOf(req) : requirePermission(req, access);
+  if (access === 'signedIn') return actorOf(req);
+  return access === 'session' ? requireSession(req) : requirePermission(req, access);
 }

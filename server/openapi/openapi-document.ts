@@ -12,12 +12,15 @@ const PROBLEM_MEDIA_TYPE = 'application/problem+json';
  * The OpenAPI 3.1 document of what is mounted: built from the same operations, and their schemas are the ones that
  * validate.
  */
-export function openApiDocument(resources: readonly ApiRoutes[], version: string, publicUrl: string) {
+export function openApiDocument(
+  resources: readonly ApiRoutes[],
+  { version, publicUrl, cookieName }: { version: string; publicUrl: string; cookieName: string },
+) {
   const registry = new OpenAPIRegistry();
   registry.registerComponent('securitySchemes', 'session', {
     type: 'apiKey',
     in: 'cookie',
-    name: 'tarewright',
+    name: cookieName,
     description: 'Set by POST /session. Changing requests also need an Origin of this service.',
   });
   registry.registerComponent('securitySchemes', 'token', {
@@ -39,9 +42,15 @@ export function openApiDocument(resources: readonly ApiRoutes[], version: string
         'application/problem+json (RFC 9457) with a code, a request id and the place of each error as a JSON Pointer.',
     },
     servers: [{ url: `${publicUrl}/api/v1` }],
-    tags: resources.map(({ tag }) => ({ name: tag })),
+    tags: [...new Set(resources.map(({ tag }) => tag))].map((name) => ({ name })),
   });
 }
+
+const SECURITY: Record<string, Record<string, string[]>[]> = {
+  public: [],
+  session: [{ session: [] }],
+  signedIn: [{ session: [] }, { token: [] }],
+};
 
 function routeOf(operation: Operation, tag: string): RouteConfig {
   const { method, path, summary, description, access, body, query } = operation;
@@ -53,8 +62,8 @@ function routeOf(operation: Operation, tag: string): RouteConfig {
     summary,
     ...(description ? { description } : {}),
     operationId: operationIdOf(operation),
-    security: access === 'public' ? [] : [{ session: [] }, { token: [] }],
-    ...(access === 'public' || access === 'signedIn' ? {} : { 'x-permission': access }),
+    security: SECURITY[access] ?? SECURITY.signedIn,
+    ...(access in SECURITY ? {} : { 'x-permission': access }),
     request: {
       ...(names.length > 0 ? { params: z.object(Object.fromEntries(names.map((name) => [name, id]))) } : {}),
       ...(query ? { query: query as z.ZodObject } : {}),

@@ -10,6 +10,7 @@ export const PROBLEM_STATUS = {
   wrongCredentials: 401,
   tokenNotValid: 401,
   notPermitted: 403,
+  noActiveFirm: 403,
   otherOrigin: 403,
   notFound: 404,
   methodNotAllowed: 405,

@@ -32,18 +32,16 @@ export const firm = z.strictObject({
   gwpSet,
 });
 
-export const emailAddress = z
-  .email()
-  .max(254)
-  .transform((text) => text.trim().toLowerCase());
-/** Length is what makes a password strong (NIST SP 800-63B 5.1.1.2); no composition rules. */
+/** Blanks around it and capitals come from phone keyboards; both are taken away before it is judged. */
+export const emailAddress = z.string().max(300).trim().toLowerCase().pipe(z.email().max(254));
+/** Length is what makes a password strong (NIST SP 800-63B, 5.1.1.2); no composition rules. */
 export const newPassword = z.string().min(12).max(200);
 
 export const signInRequest = z.strictObject({ email: emailAddress, password: z.string().min(1).max(200) });
 export const chooseFirmRequest = z.strictObject({ firmId: id });
 
 export const sessionResponse = z.strictObject({
-  person: z.strictObject({ id, name: z.string(), email: z.string(), preferences }),
+  person: z.strictObject({ id, name: z.string(), email: z.string(), preferences, version: z.int() }),
   firm,
   /** All firms of this person; a session has chosen one. */
   firms: z.array(z.strictObject({ id, name: z.string() })),
@@ -59,6 +57,9 @@ export const updateMeRequest = z.strictObject({
   preferences: preferences.partial().optional(),
 });
 export const changePasswordRequest = z.strictObject({ currentPassword: z.string().min(1).max(200), newPassword });
+
+/** One's own account; `version` belongs into `If-Match` when changing it. */
+export const meResponse = sessionResponse.shape.person;
 
 export const requestPasswordReset = z.strictObject({ email: emailAddress });
 export const completePasswordReset = z.strictObject({ token: z.string().min(20).max(200), newPassword });
