@@ -1,0 +1,75 @@
+import type { Fixture } from '../calculations/fixture.ts';
+import type { RoomLimitRequest, RoomLimitResponse } from './room-limit.schema.ts';
+
+export const roomLimitFixtures: readonly Fixture<RoomLimitRequest, RoomLimitResponse>[] = [
+  {
+    name: '2.50 kg R-32, wall unit, 20 m2: allowed up to 4.599 kg',
+    source: 'published R-32 table of the 2018 edition reproduces the formulas; worked by hand',
+    request: { refrigerant: 'R-32', chargeG: 2500, areaM2: 20, mounting: 'wall' },
+    result: {
+      m1G: 1842,
+      m2G: 15964,
+      m3G: 79820,
+      formulaLimitG: 4598.863,
+      limitG: 4598.863,
+      limitGovernedBy: 'squareRoot',
+      minimumAreaM2: 6.032,
+      minimumAreaGovernedBy: 'linearCap',
+      verdict: 'allowed',
+      clause: 'IEC 60335-2-40:2018, Annex GG: 0.75 x LFL x h0 x A',
+      status: 'confirmed',
+    },
+  },
+  {
+    name: '3.00 kg R-454B, ceiling unit, 6 m2: over, and its LFL is from memory',
+    source: 'worked by hand with LFL 0.296: square form 6.24, cap 6.14 m2',
+    request: {
+      refrigerant: 'R-454B',
+      chargeG: 3000,
+      areaM2: 6,
+      releaseHeightM: 2.2,
+      mounting: null,
+      manualTable: null,
+    },
+    result: {
+      m1G: 1776,
+      m2G: 15392,
+      m3G: 76960,
+      formulaLimitG: 2930.4,
+      limitG: 2930.4,
+      limitGovernedBy: 'linearCap',
+      minimumAreaM2: 6.241,
+      minimumAreaGovernedBy: 'squareRoot',
+      verdict: 'over',
+      clause: 'IEC 60335-2-40:2018, Annex GG: 2.5 x LFL^(5/4) x h0 x A^(1/2)',
+      status: 'toBeConfirmed',
+    },
+  },
+  {
+    name: '2.0 kg R-32 on the floor by the manual’s own table: the next larger row governs',
+    source: 'published floor-unit table: 1.84 kg 28.81 m2, 2.30 kg 45.02 m2',
+    request: {
+      refrigerant: 'R-32',
+      chargeG: 2000,
+      areaM2: 40,
+      mounting: 'floor',
+      manualTable: [
+        { chargeG: 1840, minimumAreaM2: 28.81 },
+        { chargeG: 2300, minimumAreaM2: 45.02 },
+      ],
+    },
+    result: {
+      m1G: 1842,
+      m2G: 15964,
+      m3G: 79820,
+      formulaLimitG: 2167.925,
+      limitG: 1840,
+      limitGovernedBy: 'manualTable',
+      minimumAreaM2: 45.02,
+      minimumAreaGovernedBy: 'manualTable',
+      verdict: 'over',
+      clause: 'manualTable: 2300 g, 45.02 m2',
+      status: 'confirmed',
+    },
+  },
+];
