@@ -11,8 +11,7 @@ export function findJointTorque(
   const joint = nearestByOd(joints, (row) => row.odMm, odMm);
   if (!joint) {
     const allowed = joints.map((row) => row.odMm);
-    const params = { given: odMm, allowed: allowed.join(', ') };
-    return refused({ code: 'noGeneralTorque', path: '/odMm', given: odMm, allowed, params });
+    return refused({ code: 'noGeneralTorque', path: '/odMm', given: odMm, allowed });
   }
   return done({
     minNm: joint.torqueMinNm,

@@ -11,7 +11,7 @@ export const jointTorqueResponse = z.strictObject({
   maxNm: asPrinted('N m'),
   minFtLbf: asPrinted('ft lbf'),
   maxFtLbf: asPrinted('ft lbf'),
-  acrossFlatsMm: z.number().describe('mm, nut for R-410A and R-32'),
+  acrossFlatsMm: z.number().describe('mm, nut for R-410A and R-32, 0 decimals'),
   source: z.string(),
 });
 export type JointTorqueResponse = z.output<typeof jointTorqueResponse>;

@@ -43,6 +43,8 @@ describe('The GWP of a blend', () => {
     expect(gwp('R-438A', 'US-84.64').leftOut).toEqual(['R-600', 'R-601a']);
     expect(gwp('R-454B', 'US-AIM')).toMatchObject({ leftOut: ['R-1234yf'], status: 'yes' });
     expect(gwp('R-454B', 'AR4').status).toBe('memory');
+    expect(gwp('R-454B', 'EU-2024-573').status).toBe('yes');
+    expect(gwp('R-454B', 'US-84.64').status).toBe('yes');
     expect(gwp('R-454B', 'US-AIM').source).toBe(
       'US exchange values, 42 U.S.C. 7675(c) (HFC share only): R-32 68.9 % x 675; no value in this set: R-1234yf',
     );

@@ -66,12 +66,7 @@ export function gwpOfRefrigerant(
       path: paths.gwpSet,
       given: set,
       allowed: setsWithValue(reference.gwpComponents, component),
-      params: {
-        refrigerant: designation,
-        component,
-        given: set,
-        allowed: setsWithValue(reference.gwpComponents, component).join(', '),
-      },
+      params: { refrigerant: designation, component },
     });
 
   let sum = 0;
@@ -85,7 +80,7 @@ export function gwpOfRefrigerant(
     if (value !== null) {
       sum += massPct * value;
       terms.push(single ? `${component} ${value}` : `${component} ${massPct} % x ${value}`);
-      if (row.status === 'memory') status = 'memory';
+      if (row.fromMemory.includes(set)) status = 'memory';
       continue;
     }
     const isOzoneDepleting =

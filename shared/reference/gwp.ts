@@ -10,7 +10,8 @@ const value = z.number().min(0).nullable();
 export const gwpComponent = z.strictObject({
   component: z.string().min(1),
   gwp: z.strictObject({ AR4: value, AR5: value, AR6: value, 'US-AIM': value, 'US-84.64': value, 'EU-2024-573': value }),
-  status: z.enum(['yes', 'memory']),
+  /** The sets whose value was written from memory; all others were read in the source. */
+  fromMemory: z.array(gwpSet),
   source: z.string().min(1),
 });
 export type GwpComponent = z.output<typeof gwpComponent>;

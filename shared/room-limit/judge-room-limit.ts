@@ -68,15 +68,14 @@ export function judgeRoomLimit(request: RoomLimitRequest, reference: ReferenceDa
 function refusalsOf(request: RoomLimitRequest, { designation, safetyClass }: Refrigerant): Refusal[] {
   const refusals: Refusal[] = [];
   if (safetyClass.startsWith('B') && safetyClass !== 'B1') {
-    const allowed = ['A1', 'A2L', 'A2', 'A3', 'B1'];
-    const params = { refrigerant: designation, safetyClass, allowed: 'A2L, A2, A3' };
+    const allowed = ['A2L', 'A2', 'A3'];
+    const params = { refrigerant: designation, safetyClass };
     refusals.push({ code: 'classNotCovered', path: '/refrigerant', given: designation, allowed, params });
   }
   const heights = [request.releaseHeightM, request.mounting].filter((given) => given != null);
   if (heights.length !== 1) {
     const path = heights.length === 0 ? '' : '/mounting';
-    const params = { allowed: 'releaseHeightM, mounting' };
-    refusals.push({ code: 'exactlyOneOf', path, allowed: ['releaseHeightM', 'mounting'], params });
+    refusals.push({ code: 'exactlyOneOf', path, allowed: ['releaseHeightM', 'mounting'] });
   }
   return refusals;
 }

@@ -32,7 +32,6 @@ export function findSaturation(request: SaturationRequest, reference: ReferenceD
     code: 'exactlyOneOf',
     path: tempC == null ? '' : '/tempC',
     allowed: ['pressureKPaAbs', 'tempC'],
-    params: { allowed: 'pressureKPaAbs, tempC' },
   });
 }
 

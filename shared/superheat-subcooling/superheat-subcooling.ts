@@ -35,7 +35,6 @@ export function superheatSubcooling(
       code: 'atLeastOneOf',
       path: '',
       allowed: ['suction', 'liquid'],
-      params: { allowed: 'suction, liquid' },
     });
   }
   if (atmosphereKPaAbs != null && altitudeM != null) {
@@ -44,7 +43,6 @@ export function superheatSubcooling(
       path: '/altitudeM',
       given: altitudeM,
       allowed: ['atmosphereKPaAbs', 'altitudeM'],
-      params: { allowed: 'atmosphereKPaAbs, altitudeM' },
     });
   }
   const lessKPa = altitudeM != null ? atmosphereAtAltitude(altitudeM) : (atmosphereKPaAbs ?? STANDARD_ATMOSPHERE_KPA);

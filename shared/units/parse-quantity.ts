@@ -78,7 +78,7 @@ export function parseQuantity<Kind extends QuantityKind>(
 
   const split = splitParts(kind, text);
   if (split.fault === 'unknownUnit') {
-    return refuse('unknownUnit', { allowed: units, params: { unit: split.word, allowed: units.join(', ') } });
+    return refuse('unknownUnit', { allowed: units, params: { unit: split.word } });
   }
   if (split.fault || split.parts.length === 0 || split.parts.length > 2) return refuse('notANumber');
 
@@ -113,7 +113,7 @@ export function parseQuantity<Kind extends QuantityKind>(
   if (typed.tooLarge) {
     return refuse('partTooLarge', {
       allowed: typed.tooLarge.below,
-      params: { unit: typed.tooLarge.unit, allowed: typed.tooLarge.below },
+      params: { unit: typed.tooLarge.unit },
     });
   }
   const isZero = new Fraction(typed.value).equals(0);
