@@ -3,6 +3,7 @@ import {
   accessSync,
   chmodSync,
   constants,
+  existsSync,
   mkdirSync,
   readFileSync,
   renameSync,
@@ -21,7 +22,7 @@ import { StartRefusal } from '../commands/bootstrap/start-refusal.mjs';
  */
 export function prepareHome(folder: string): void {
   try {
-    mkdirSync(folder, { recursive: true, mode: 0o711 });
+    makeFolders(folder);
     accessSync(folder, constants.R_OK | constants.W_OK | constants.X_OK);
     const probe = path.join(folder, `.probe-${process.pid}`);
     writeFileSync(probe, ''); // a read-only file system passes the check of rights for root
@@ -32,6 +33,13 @@ export function prepareHome(folder: string): void {
       `The data folder ${folder} cannot be read and written (${code ?? message}): give it to this user, or set TAREWRIGHT_HOME to another folder.`,
     );
   }
+}
+
+/** Node.js' own `recursive` never ends where the system says ENOENT to everything, as in /proc. */
+function makeFolders(folder: string): void {
+  if (existsSync(folder)) return;
+  if (path.dirname(folder) !== folder) makeFolders(path.dirname(folder));
+  mkdirSync(folder, { mode: 0o711 });
 }
 
 const secret = z.string().min(20);
