@@ -52,6 +52,12 @@ describe('A vacuum decay test', () => {
     expect(judge([250, 690, 700], { holdLimitMicron: 700 }).verdict).toBe('pass');
   });
 
+  it('takes a limit that was converted from Pa as the limit: 66.6611842105263 Pa are 500 micron', () => {
+    const converted = 66.6611842105263 / 0.133322368421052;
+    expect(converted).toBeGreaterThan(500);
+    expect(judge([converted, converted, converted]).verdict).toBe('pass');
+  });
+
   it('asks to look again where the limit held but the rise goes on', () => {
     expect(judge([100, 200, 300]).verdict).toBe('lookAgain');
     expect(judge([100, 100, 300])).toMatchObject({ shapeRatio: null, pattern: 'rising', verdict: 'lookAgain' });

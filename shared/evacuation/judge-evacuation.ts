@@ -6,6 +6,7 @@ import type { EvacuationRequest, EvacuationResponse } from './evacuation.schema.
 
 /** Target and limit of several installation manuals; ASHRAE 15.2 and 147 were not read. */
 export const TARGET_MICRON = 500;
+export const HOLD_LIMIT_MICRON = 500;
 /** A split-unit manual waits ten minutes after closing the valve; others ask for 20 min or hours. */
 export const HOLD_MINUTES = 10;
 /** A heuristic, not a standard: below it the rise levels off (moisture, outgassing), above it goes on (leak). */
@@ -85,8 +86,8 @@ function verdictOf(
   heldMinutes: number,
   pattern: EvacuationResponse['pattern'],
 ): EvacuationResponse['verdict'] {
-  if (first.micron > (request.targetMicron ?? TARGET_MICRON)) return 'notReached';
-  if (heldMinutes < (request.holdMinutes ?? HOLD_MINUTES)) return 'tooShort';
-  if (last.micron > (request.holdLimitMicron ?? TARGET_MICRON)) return 'fail';
+  if (snap12(first.micron) > snap12(request.targetMicron ?? TARGET_MICRON)) return 'notReached';
+  if (heldMinutes < snap12(request.holdMinutes ?? HOLD_MINUTES)) return 'tooShort';
+  if (snap12(last.micron) > snap12(request.holdLimitMicron ?? HOLD_LIMIT_MICRON)) return 'fail';
   return pattern === 'rising' ? 'lookAgain' : 'pass';
 }

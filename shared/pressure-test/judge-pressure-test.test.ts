@@ -72,6 +72,7 @@ describe('The real-gas note', () => {
 
   it('is known from 0 to 40 °C and 10 to 45 bar absolute, bounds included', () => {
     expect(judge({ startTempC: 0, endTempC: 40 }).realGasNoteKPa).not.toBeNull();
+    expect(judge({ endTempC: 40.00000000000001 }).realGasNoteKPa).not.toBeNull();
     expect(judge({ startTempC: -0.001 }).realGasNoteKPa).toBeNull();
     expect(judge({ endTempC: 40.001 }).realGasNoteKPa).toBeNull();
     expect(judge({ startKPaGauge: 898.675 }).realGasNoteKPa).not.toBeNull();

@@ -53,7 +53,7 @@ export function judgePressureTest(request: PressureTestRequest): Outcome<Pressur
 
 function realGasNoteKPa(request: PressureTestRequest, startKPaAbs: number, idealChangeKPa: number): number | null {
   const pressure = snap12(startKPaAbs);
-  const temps = [request.startTempC, request.endTempC];
+  const temps = [snap12(request.startTempC), snap12(request.endTempC)];
   const isInside =
     pressure >= REAL_GAS_RANGE.minKPaAbs &&
     pressure <= REAL_GAS_RANGE.maxKPaAbs &&
@@ -81,7 +81,7 @@ function verdictOf(
   isNoteKnown: boolean,
 ): PressureTestResponse['verdict'] {
   if (againstExpectedKPa < -uncertaintyKPa) return 'fail';
-  if (request.minutes < (request.minimumMinutes ?? MINIMUM_MINUTES)) return 'tooShort';
+  if (snap12(request.minutes) < snap12(request.minimumMinutes ?? MINIMUM_MINUTES)) return 'tooShort';
   const degreesApart = Math.abs(snapSum(request.endTempC, -request.startTempC));
   const cannotTell =
     againstExpectedKPa > uncertaintyKPa ||

@@ -45,6 +45,7 @@ describe('The limits that need no area', () => {
       formulaLimitG: null,
       clause: 'IEC 60335-2-40:2018, Annex GG: m1 = 6 m3 x LFL',
     });
+    expect(judge({ chargeG: 1842.0000000000002, ...wall }).verdict).toBe('noCheckNeeded');
     expect(judge({ chargeG: 1842.001, ...wall }).verdict).toBe('areaNeeded');
   });
 

@@ -3,6 +3,7 @@ import { done, type Outcome, type Refusal, refused } from '../problems/outcome.t
 import type { ReferenceData } from '../reference/reference-data.ts';
 import type { Refrigerant } from '../reference/refrigerant.ts';
 import { requireRefrigerant } from '../reference/require-row.ts';
+import { snap12 } from '../units/round.ts';
 import { capGovernsBelowM2, largestChargeG, type RoomFormula, smallestAreaM2 } from './area-formula.ts';
 import { readManualTable } from './manual-table.ts';
 import {
@@ -104,8 +105,8 @@ function roomOf(request: RoomLimitRequest, refrigerant: Refrigerant): Room | nul
     standard,
     figures,
     formula: { lflKgM3, heightM: height.heightM, hasLinearCap: hasLinearCap(standard) },
-    chargeG: request.chargeG,
-    areaM2: request.areaM2 ?? null,
+    chargeG: snap12(request.chargeG),
+    areaM2: request.areaM2 == null ? null : snap12(request.areaM2),
     m1G: limitG(figures.m1M3),
     m2G: limitG(figures.m2M3),
     m3G: limitG(figures.m3M3),
