@@ -1,8 +1,6 @@
+import type { MessageParams } from '../calculations/say-messages.ts';
 import type { GwpSet } from '../reference/gwp.ts';
-import type { CAUTION_SIGNALS, ChargeResponse } from './charge.schema.ts';
-
-/** Values for a message; numbers are not yet formatted, the catalogue's text names their unit. */
-export type MessageParams = Readonly<Record<string, string | number>>;
+import type { ChargeResponse } from './charge.schema.ts';
 
 export type StepUnit = ChargeResponse['steps'][number]['unit'];
 
@@ -65,6 +63,7 @@ export interface ChargeStep {
 export const WARNING_CODES = [
   'rateTooLow',
   'rateTooHigh',
+  'plausibilityDoubtful',
   'plausibilityNotKnown',
   'plausibilityNotKnownForSize',
   'riseNotChecked',
@@ -102,7 +101,7 @@ export const CAUTION_CODES = [
   'manualGoverns',
 ] as const;
 export type CautionCode = (typeof CAUTION_CODES)[number];
-export type CautionSignal = (typeof CAUTION_SIGNALS)[number];
+export type CautionSignal = ChargeResponse['cautions'][number]['signal'];
 export interface ChargeCaution {
   code: CautionCode;
   signal: CautionSignal;

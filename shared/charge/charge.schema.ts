@@ -1,4 +1,6 @@
 import { z } from 'zod';
+import { returned } from '../calculations/decimals.ts';
+import { cautionsField } from '../calculations/fields.ts';
 import { gwpSet } from '../reference/gwp.ts';
 import { ROUNDING_DIRECTIONS } from '../units/round.ts';
 
@@ -132,39 +134,37 @@ export const chargeRequest = z.strictObject({
 });
 export type ChargeRequest = z.output<typeof chargeRequest>;
 
-/** Signal words and their order as in ANSI Z535. */
-export const CAUTION_SIGNALS = ['danger', 'warning', 'caution', 'notice'] as const;
-
-/** Decimals: g, m 3, g/m 3 in steps and 1 in the plausible band, t 5. */
 export const chargeResponse = z.strictObject({
-  extraG: z.number(),
-  /** Factory charge + extra. */
-  totalG: z.number(),
-  weighInG: z.number().min(0),
-  recoverG: z.number().min(0),
-  /** Of `totalG`; null where the set gives this refrigerant no value (a warning says so). */
-  co2eT: z.number().nullable(),
+  extraG: returned('g', 'the change in a line-set change; below zero: recover'),
+  totalG: returned('g', 'factory charge + extra of the (new) line set'),
+  weighInG: returned('g').min(0),
+  recoverG: returned('g').min(0),
+  co2eT: returned(
+    't',
+    'of totalG; null where the set gives this refrigerant no value, which a warning says',
+  ).nullable(),
   gwpSet,
-  /** One for each branch whose rate and pipe can be compared. */
-  ratePlausibility: z.array(
-    z.strictObject({
-      branch: z.string(),
-      lowGPerM: z.number(),
-      highGPerM: z.number(),
-      verdict: z.enum(['plausible', 'tooLow', 'tooHigh']),
-    }),
-  ),
+  ratePlausibility: z
+    .array(
+      z.strictObject({
+        branch: z.string(),
+        lowGPerM: z.number().describe('g/m, 1 decimal'),
+        highGPerM: z.number().describe('g/m, 1 decimal'),
+        verdict: z.enum(['plausible', 'tooLow', 'tooHigh']),
+      }),
+    )
+    .describe('one for each branch whose rate and pipe can be compared'),
   steps: z.array(
     z.strictObject({
       label: z.string(),
-      expression: z.string(),
-      value: z.number(),
+      expression: z.string().describe('the arithmetic with its figures: 12.0 m - 7.5 m'),
+      value: z.number().describe('m, g and g/m 3 decimals, t 5 decimals'),
       unit: z.enum(['m', 'g', 'g/m', 't', '']),
       source: z.string(),
     }),
   ),
   warnings: z.array(z.strictObject({ code: z.string(), message: z.string() })),
-  cautions: z.array(z.strictObject({ code: z.string(), signal: z.enum(CAUTION_SIGNALS), message: z.string() })),
-  versions: z.record(z.string(), z.string()),
+  cautions: cautionsField,
+  versions: z.record(z.string(), z.string()).describe('of the rules and of each table that was used'),
 });
 export type ChargeResponse = z.output<typeof chargeResponse>;

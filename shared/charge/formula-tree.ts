@@ -137,7 +137,7 @@ function buildFunction(name: string, parts: Evaluate[]): Evaluate {
     case 'floor': {
       if (!first || second) throw wrongCount('1');
       const step = name === 'ceil' ? Math.ceil : Math.floor;
-      return (values) => finite(step(finite(first(values))));
+      return (values) => finite(step(first(values)));
     }
     case 'round': {
       if (!first || parts.length > 2) throw wrongCount('1, 2');

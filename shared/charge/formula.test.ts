@@ -124,6 +124,7 @@ describe('A formula', () => {
     expect(result(`${'('.repeat(30)}L${')'.repeat(30)}`)).toBe(12.3);
     expect(result(`${'('.repeat(41)}L${')'.repeat(41)}`)).toBe('formulaTooComplex');
     expect(result(`${'('.repeat(249)}L${')'.repeat(249)}`)).toBe('formulaTooComplex');
+    expect(result('('.repeat(41))).toBe('formulaTooComplex');
     expect(result(`${'-'.repeat(499)}L`)).toBe('formulaTooComplex');
     expect(result(`2${'^2'.repeat(249)}`)).toBe('formulaTooComplex');
   });

@@ -1,5 +1,6 @@
+import type { MessageParams } from '../calculations/say-messages.ts';
 import type { ChargeResponse } from './charge.schema.ts';
-import type { ChargeResult, ChargeStep, MessageParams } from './charge-result.ts';
+import type { ChargeResult, ChargeStep } from './charge-result.ts';
 
 /** A sentence of the catalogue by its key. */
 export type Say = (key: string, params: MessageParams) => string;

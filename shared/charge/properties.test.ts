@@ -2,11 +2,13 @@ import { readFileSync } from 'node:fs';
 import path from 'node:path';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { z } from 'zod';
 import { catalogueEn } from '../messages/catalogue-en.ts';
 import { catalogueEs } from '../messages/catalogue-es.ts';
 import { referenceData } from '../reference/reference-data.fixture.ts';
 import { calculateCharge } from './calculate-charge.ts';
 import { type ChargeBasis, chargeRequest, chargeResponse } from './charge.schema.ts';
+import { chargeCalculation } from './charge-calculation.ts';
 import { charge, extraG, outcomeOf, type Pipe, pipe, request } from './charge-request.fixture.ts';
 import { CAUTION_CODES, SOURCE_CODES, STEP_CODES, WARNING_CODES } from './charge-result.ts';
 import { presentCharge } from './present-charge.ts';
@@ -180,5 +182,42 @@ describe('What the engine says', () => {
       'step.ofPreviousLineSet',
     ];
     expect(keys.filter((key) => !catalogueEn[key] || !catalogueEs[key])).toEqual([]);
+  });
+});
+
+describe('The call', () => {
+  it('describes every number of its answer with a unit and decimals', () => {
+    const properties = z.toJSONSchema(chargeResponse).properties as Record<string, object>;
+    for (const name of ['extraG', 'totalG', 'weighInG', 'recoverG', 'co2eT']) {
+      expect(JSON.stringify(properties[name]), name).toMatch(/"description":"[^"]*decimal/);
+    }
+  });
+
+  it('calculates every rate, formulas included, and says it in both languages without a gap', () => {
+    const { calculate, present, request: schema, response } = chargeCalculation;
+    const asked = schema.parse(
+      request(
+        {
+          refrigerant: 'R-454B',
+          rate: { kind: 'formula', expression: 'max(0, L635 - Lp) * 20' },
+          limits: { maxRiseM: 10 },
+          allowances: [{ label: 'receiver', gEach: 40, count: 1 }],
+          rounding: { toG: 1, direction: 'up' },
+        },
+        [pipe(12.34), pipe(3, 9.52)],
+        { job: 'lineSetChange', previousLineSet: request({}, [pipe(9)]).lineSet },
+      ),
+    );
+    const outcome = calculate(asked, referenceData);
+    if (!outcome.ok) throw new Error(JSON.stringify(outcome.refusals));
+    for (const catalogue of [catalogueEn, catalogueEs]) {
+      const answer = present(outcome.value, (key, params) =>
+        (catalogue[key] ?? `{{no ${key}}}`).replace(/\{\{(\w+)[^}]*\}\}/g, (whole, name) =>
+          String(params[name] ?? whole),
+        ),
+      );
+      expect(response.parse(answer)).toEqual(answer);
+      expect(JSON.stringify(answer)).not.toMatch(/\{\{|undefined|NaN/);
+    }
   });
 });

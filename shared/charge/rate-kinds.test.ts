@@ -206,6 +206,9 @@ describe('A formula', () => {
     expect(extraG({ precharge: null, rate: formula('L * 20 - Lp * 20') })).toBe(240);
     const branch = { scope: 'branch' as const, lengthM: 5 };
     expect(extraG({ precharge: branch, rate: formula('Lp') }, [pipe(12), pipe(9)])).toBe(10);
+    const tree = [pipe(12, 9.52, { name: 'main' }), pipe(9, 6.35, { name: 'A', parent: 'main' })];
+    expect(extraG({ precharge: branch, rate: formula('Lp') }, tree)).toBe(10);
+    expect(extraG({ precharge: { scope: 'systemPerBranch', lengthM: 5 }, rate: formula('Lp') }, tree)).toBe(5);
   });
 
   it('takes a credited mass off, which no name in it could bring in', () => {

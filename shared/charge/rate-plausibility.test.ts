@@ -110,6 +110,12 @@ describe('The plausible band', () => {
     expect(charge({}, [pipe(9, 34.9)]).warnings.map(({ code }) => code)).toEqual(['plausibilityNotKnownForSize']);
   });
 
+  it('says when the density that it rests on is of low confidence', () => {
+    const codes = (refrigerant: string) => charge({ refrigerant }).warnings.map(({ code }) => code);
+    expect(codes('R-466A')).toContain('plausibilityDoubtful');
+    expect(codes('R-410A')).not.toContain('plausibilityDoubtful');
+  });
+
   it('has no rate to judge in brackets, formulas and a fixed mass', () => {
     const precharge = null;
     const kinds = [

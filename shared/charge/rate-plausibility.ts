@@ -23,6 +23,7 @@ export function judgeRate(
     warnings.push({ code: 'plausibilityNotKnown', params: { refrigerant: designation, tempC: PLAUSIBILITY_TEMP_C } });
     return [];
   }
+  if (facts.isDensityDoubtful) warnings.push({ code: 'plausibilityDoubtful', params: { refrigerant: designation } });
   const judged: ChargeResult['ratePlausibility'] = [];
   const told = new Set<PipeSize | number>();
   for (const { name, size, odMm } of lineSet.branches) {

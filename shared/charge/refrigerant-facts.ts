@@ -4,6 +4,7 @@ import { type Gwp, gwpOfRefrigerant } from '../reference/gwp-of-blend.ts';
 import type { ReferenceData } from '../reference/reference-data.ts';
 import type { Refrigerant } from '../reference/refrigerant.ts';
 import { liquidDensityKgM3 } from '../reference/saturation.ts';
+import { findClassFigures } from '../room-limit/standard-figures.ts';
 import { roundTo, snap12 } from '../units/round.ts';
 import type { PipeSize } from './pipe-size.ts';
 
@@ -19,6 +20,8 @@ export interface RefrigerantFacts {
   refrigerant: Refrigerant;
   /** kg/m3 of saturated liquid at 40 °C; null where the table has no such row or is not loaded. */
   liquidDensityKgM3: number | null;
+  /** The table says of itself that its densities may be off. */
+  isDensityDoubtful: boolean;
   /** The largest charge that needs no room check, IEC 60335-2-40:2018; null where that standard's sum is not for this class. */
   noRoomCheckUpToG: number | null;
   band(size: PipeSize): Band | null;
@@ -32,8 +35,8 @@ export const PLAUSIBILITY_TEMP_C = 40;
 const LOW_SHARE = 0.4;
 const HIGH_SHARE = 1.7;
 
-/** m3 that give m1 together with the LFL: IEC 60335-2-40:2018 (ed. 6), by safety class. */
-const M1_VOLUME_M3: Partial<Record<Refrigerant['safetyClass'], number>> = { A2L: 6, A2: 4, A3: 4 };
+/** Named in the sentences about the room. */
+const NO_ROOM_CHECK_STANDARD = 'IEC 60335-2-40:2018';
 
 /** Of the arithmetic in this folder; raised when the same request would give another figure. */
 export const CHARGE_RULES_VERSION = '1';
@@ -61,7 +64,7 @@ function makeFacts(reference: ReferenceData, refrigerant: Refrigerant): Refriger
   const table = reference.findSaturationTable(refrigerant.designation);
   const density = table ? liquidDensityKgM3(table, PLAUSIBILITY_TEMP_C, { path: '' }) : null;
   const densityKgM3 = density?.ok ? density.value : null;
-  const m1VolumeM3 = M1_VOLUME_M3[refrigerant.safetyClass];
+  const m1M3 = findClassFigures(NO_ROOM_CHECK_STANDARD, refrigerant.safetyClass)?.m1M3;
   const { lflKgM3 } = refrigerant;
   const bands = new Map<PipeSize, Band | null>();
   const gwps = new Map<GwpSet, Outcome<Gwp>>();
@@ -77,7 +80,8 @@ function makeFacts(reference: ReferenceData, refrigerant: Refrigerant): Refriger
   return {
     refrigerant,
     liquidDensityKgM3: densityKgM3,
-    noRoomCheckUpToG: m1VolumeM3 !== undefined && lflKgM3 !== null ? snap12(m1VolumeM3 * lflKgM3 * 1000) : null,
+    isDensityDoubtful: table?.confidence === 'low',
+    noRoomCheckUpToG: m1M3 !== undefined && lflKgM3 !== null ? snap12(m1M3 * lflKgM3 * 1000) : null,
     band(size) {
       let band = bands.get(size);
       if (band === undefined) {

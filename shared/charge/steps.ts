@@ -1,5 +1,6 @@
+import type { MessageParams } from '../calculations/say-messages.ts';
 import { roundTo, snap12, snapSum } from '../units/round.ts';
-import type { ChargeStep, MessageParams, SourceCode, StepCode, StepUnit } from './charge-result.ts';
+import type { ChargeStep, SourceCode, StepCode, StepUnit } from './charge-result.ts';
 
 /**
  * The arithmetic as a person would write it down. Figures in an expression carry up to six decimals, so that working
