@@ -3,6 +3,7 @@ import { returned } from '../calculations/decimals.ts';
 import { cautionsField } from '../calculations/fields.ts';
 import { gwpSet } from '../reference/gwp.ts';
 import { ROUNDING_DIRECTIONS } from '../units/round.ts';
+import { MAX_EXPRESSION_LENGTH } from './formula-contract.ts';
 
 /**
  * Request and response of `POST /calculations/charge`. Unknown keys are refused; what is optional may be absent or null.
@@ -13,7 +14,6 @@ const MAX_LENGTH_M = 10_000;
 const MAX_MASS_G = 10_000_000;
 const MAX_G_PER_M = 100_000;
 export const MAX_BRANCHES = 100;
-export const MAX_EXPRESSION_LENGTH = 500;
 
 const lengthM = z.number().min(0).max(MAX_LENGTH_M);
 const massG = z.number().min(0).max(MAX_MASS_G);

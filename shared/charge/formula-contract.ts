@@ -17,3 +17,6 @@ export interface CompiledFormula {
 export type CompileFormula = (expression: string, declared: ReadonlySet<string>) => Outcome<CompiledFormula>;
 
 export const FORMULA_PATH = '/basis/rate/expression';
+
+/** Characters. Manuals' formulas have a few dozen. */
+export const MAX_EXPRESSION_LENGTH = 500;

@@ -1,8 +1,7 @@
 import type { FactoryFunctionMap, MathNode } from 'mathjs';
 import { create, parseDependencies } from 'mathjs/number';
 import { done, type Outcome, type Refusal, refused } from '../problems/outcome.ts';
-import { MAX_EXPRESSION_LENGTH } from './charge.schema.ts';
-import { type CompiledFormula, FORMULA_PATH } from './formula-contract.ts';
+import { type CompiledFormula, FORMULA_PATH, MAX_EXPRESSION_LENGTH } from './formula-contract.ts';
 import { buildFormula, FormulaRefused, NoNumber } from './formula-tree.ts';
 
 /**
