@@ -11,9 +11,11 @@ import { Problem } from './http/problem.ts';
 import { problemHandler } from './http/problem-handler.ts';
 import { requestLog } from './http/request-log.ts';
 import { securityHeaders } from './http/security-headers.ts';
+import { invitationRoutes } from './invitations/invitations.router.ts';
 import { keptMailPage } from './mail/kept-mail-page.ts';
 import { openApiRoutes } from './openapi/openapi.router.ts';
 import { referencePage } from './openapi/reference-page.ts';
+import { peopleRoutes } from './people/people.router.ts';
 import { authenticate } from './session/authenticate.ts';
 import { meRoutes } from './session/me.router.ts';
 import { poolOf } from './session/pool.ts';
@@ -21,6 +23,7 @@ import { sessionRoutes } from './session/session.router.ts';
 import { carriesCookie, sessionCookie, sessionMiddleware } from './session/session-cookie.ts';
 import { SessionStore } from './session/session-store.ts';
 import { signInWith } from './session/sign-in.ts';
+import { tokenRoutes } from './tokens/tokens.router.ts';
 
 /** Puts the server together from its parts; the tests build the same. Listening is `main.ts`'s. */
 export function createApp(parts: Parts): Express {
@@ -43,6 +46,9 @@ export function createApp(parts: Parts): Express {
   const resources = [
     sessionRoutes(parts, store, signIn),
     meRoutes(parts, signIn),
+    peopleRoutes(parts),
+    invitationRoutes(parts, signIn),
+    tokenRoutes(parts),
     ...RESOURCES.map((factory) => factory(parts)),
   ];
   const openApi = openApiRoutes(parts, [...open, ...resources], cookie.name);

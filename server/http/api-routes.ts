@@ -25,10 +25,11 @@ export interface Operation<
   B extends z.ZodType = z.ZodType,
   Q extends z.ZodType = z.ZodType,
   R extends Record<number, AnswerShape> = Record<number, AnswerShape>,
+  P extends `/${string}` = `/${string}`,
 > {
   method: 'get' | 'post' | 'put' | 'patch' | 'delete';
   /** Below `/api/v1`, parameters in braces: `/customers/{id}`. Parameters are UUIDs; anything else is a 404. */
-  path: `/${string}`;
+  path: P;
   summary: string;
   description?: string;
   access: A;
@@ -45,14 +46,17 @@ export interface Operation<
   needsVersion?: boolean;
 }
 
-export interface Call<A extends Access, B extends z.ZodType, Q extends z.ZodType> {
+/** The names in braces of a path: `/units/{id}` has `id`. */
+type BracesOf<P extends string> = P extends `${string}{${infer Name}}${infer Rest}` ? Name | BracesOf<Rest> : never;
+
+export interface Call<A extends Access, B extends z.ZodType, Q extends z.ZodType, P extends string> {
   req: Request;
   res: Response;
   actor: A extends 'public' ? Actor | undefined : Actor;
   body: z.output<B>;
   query: z.output<Q>;
   /** Values of the braces, each a UUID. */
-  params: Record<string, string>;
+  params: { [name in BracesOf<P>]: string };
 }
 
 type BodyOf<S extends AnswerShape> = S extends z.ZodType ? z.input<S> : undefined;
@@ -65,6 +69,8 @@ export type Answer<R extends Record<number, AnswerShape>> = {
 /** Answers of a handler; one that writes to `res` itself (a download) returns nothing. */
 export const ok = <T>(body: T, headers: Record<string, string> = {}) => ({ status: 200 as const, body, headers });
 export const created = <T>(body: T, headers: Record<string, string> = {}) => ({ status: 201 as const, body, headers });
+/** Taken on; what comes of it is not part of the answer. */
+export const accepted = () => ({ status: 202 as const });
 export const noContent = () => ({ status: 204 as const });
 /** With the version that a later `If-Match` has to name. */
 export const versioned = <T extends { version: number }>(body: T) => ok(body, { ETag: `"${body.version}"` });
@@ -91,14 +97,15 @@ export function apiRoutes(parts: Parts, tag: string) {
     add<
       A extends Access,
       R extends Record<number, AnswerShape>,
+      const P extends `/${string}`,
       B extends z.ZodType = z.ZodUndefined,
       Q extends z.ZodType = z.ZodUndefined,
     >(
-      operation: Operation<A, B, Q, R>,
-      handle: (call: Call<A, B, Q>) => Promise<Answer<R> | undefined> | Answer<R> | undefined,
+      operation: Operation<A, B, Q, R, P>,
+      handle: (call: Call<A, B, Q, P>) => Promise<Answer<R> | undefined> | Answer<R> | undefined,
     ): void {
       operations.push(operation as unknown as Operation);
-      const expressPath = operation.path.replaceAll(/\{(\w+)\}/g, ':$1');
+      const expressPath = (operation.path as string).replaceAll(/\{(\w+)\}/g, ':$1');
       router[operation.method](expressPath, ...(operation.before ?? []), async (req, res) => {
         const actor = actorFor(operation.access, req);
         const params = req.params as Record<string, string>;
@@ -107,11 +114,11 @@ export function apiRoutes(parts: Parts, tag: string) {
         const answer = await handle({
           req,
           res,
-          actor: actor as Call<A, B, Q>['actor'],
+          actor: actor as Call<A, B, Q, P>['actor'],
           body: operation.body ? parseBody(operation.body, req) : undefined,
           query: operation.query ? parseQuery(operation.query, req) : undefined,
           params,
-        } as Call<A, B, Q>);
+        } as Call<A, B, Q, P>);
         if (answer === undefined) return;
         if (parts.checkAnswers) checkAnswer(operation as unknown as Operation, answer);
         res.status(answer.status).set(answer.headers ?? {});

@@ -42,6 +42,17 @@ export async function addMembership(
   ]);
 }
 
+/** The row, locked until the transaction ends. */
+export function lockMembership(
+  manager: EntityManager,
+  firmId: string,
+  personId: string,
+): Promise<MembershipEntity | null> {
+  return manager
+    .getRepository(MembershipEntity)
+    .findOne({ where: { firmId, personId }, lock: { mode: 'pessimistic_write' } });
+}
+
 /** Changes what a person may do in the firm, and chains what stood before and after. Returns the new version. */
 export async function changeMembership(
   parts: Pick<Parts, 'now' | 'newId'>,

@@ -1,14 +1,7 @@
-import {
-  changePasswordRequest,
-  meResponse,
-  sessionResponse,
-  updateMeRequest,
-} from '../../shared/session/session.schema.ts';
-import { type ApiRoutes, apiRoutes, ok, versioned } from '../http/api-routes.ts';
-import { versionOfIfMatch } from '../http/if-match.ts';
+import { changePasswordRequest, meResponse, updateMeRequest } from '../../shared/session/session.schema.ts';
+import { type ApiRoutes, apiRoutes, noContent, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { changePassword, readMe, updateMe } from './me.service.ts';
-import { describeSession } from './session.service.ts';
 import type { SignIn } from './sign-in.ts';
 
 /** One's own account: the same in every firm. */
@@ -23,7 +16,7 @@ export function meRoutes(parts: Parts, signIn: SignIn): ApiRoutes {
       access: 'signedIn',
       responses: { 200: meResponse },
     },
-    async ({ actor }) => versioned(await readMe(parts, actor)),
+    async ({ actor }) => ok(await readMe(parts, actor)),
   );
 
   routes.add(
@@ -31,29 +24,29 @@ export function meRoutes(parts: Parts, signIn: SignIn): ApiRoutes {
       method: 'patch',
       path: '/me',
       summary: 'Change one’s name or what one sees (language, units, theme)',
+      description: 'What is not named stays. Nobody else can change it, so no version is asked for.',
       access: 'session',
-      needsVersion: true,
       body: updateMeRequest,
       responses: { 200: meResponse },
     },
-    async ({ req, actor, body }) => versioned(await updateMe(parts, actor, versionOfIfMatch(req), body)),
+    async ({ actor, body }) => ok(await updateMe(parts, actor, body)),
   );
 
   routes.add(
     {
-      method: 'post',
+      method: 'put',
       path: '/me/password',
       summary: 'Change one’s password',
       description: 'Ends every other session; this one goes on under a new id.',
       access: 'session',
       body: changePasswordRequest,
-      responses: { 200: sessionResponse },
+      responses: { 204: null },
       problems: ['tooManySignIns'],
     },
     async ({ req, actor, body }) => {
       await changePassword(parts, actor, body, req.ip ?? '');
-      const user = await signIn.as(req, actor.personId, actor.firmId);
-      return ok(await describeSession(parts, { ...user, tokenScopes: null }));
+      await signIn.as(req, actor.personId, actor.firmId);
+      return noContent();
     },
   );
   return routes;

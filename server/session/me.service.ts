@@ -6,6 +6,7 @@ import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { replacePassword } from '../people/account.ts';
 import { hashPassword } from './password.ts';
+import { tellOfChangedPassword } from './password-mail.ts';
 import { requireFirm, requirePerson, updatePerson } from './session.repository.ts';
 import { presentMe } from './session.service.ts';
 import { verifyCredentials } from './sign-in.service.ts';
@@ -16,17 +17,13 @@ export function readMe(parts: Parts, { personId, firmId }: Actor): Promise<Sessi
   );
 }
 
-/** @throws Problem 412 when the account is no longer at this version */
 export async function updateMe(
   parts: Parts,
   actor: Actor,
-  version: number,
   change: z.output<typeof updateMeRequest>,
 ): Promise<Session['person']> {
   const { personId } = actor;
-  await asPerson(parts.dataSource, personId, async (manager) => {
-    if (!(await updatePerson(manager, personId, version, change))) throw new Problem('stale', { params: { version } });
-  });
+  await asPerson(parts.dataSource, personId, (manager) => updatePerson(manager, personId, change));
   return readMe(parts, actor);
 }
 
@@ -54,21 +51,5 @@ export async function changePassword(
   await asPerson(parts.dataSource, actor.personId, (manager) =>
     replacePassword(parts, manager, actor.personId, passwordHash),
   );
-  parts.background.run('tell a person that the password was changed', async () => {
-    await parts.mailer.send({
-      kind: 'passwordChanged',
-      to: me.email,
-      locale: me.preferences.locale,
-      values: {
-        name: me.name,
-        at: instantText(parts.now(), me.preferences.locale),
-        link: `${parts.settings.publicUrl}/forgot-password`,
-      },
-    });
-  });
-}
-
-/** In UTC: a mail is read anywhere. */
-export function instantText(at: Date, locale: string): string {
-  return `${new Intl.DateTimeFormat(locale, { dateStyle: 'long', timeStyle: 'short', timeZone: 'UTC' }).format(at)} UTC`;
+  tellOfChangedPassword(parts, { name: me.name, email: me.email, locale: me.preferences.locale });
 }

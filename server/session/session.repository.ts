@@ -65,19 +65,17 @@ export async function requirePerson(manager: EntityManager, personId: string): P
   return only(rows);
 }
 
-/** True when the row was still at this version. Names and preferences that are not given stay. */
+/** Names and preferences that are not given stay. */
 export async function updatePerson(
   manager: EntityManager,
   personId: string,
-  version: number,
   change: { name?: string | undefined; preferences?: Partial<Preferences> | undefined },
-): Promise<boolean> {
-  const [, changed]: [unknown[], number] = await manager.query(
-    `UPDATE person SET name = coalesce($3, name), preferences = preferences || $4::jsonb, version = version + 1
-      WHERE id = $1 AND version = $2`,
-    [personId, version, change.name ?? null, JSON.stringify(change.preferences ?? {})],
+): Promise<void> {
+  await manager.query(
+    `UPDATE person SET name = coalesce($2, name), preferences = preferences || $3::jsonb, version = version + 1
+      WHERE id = $1`,
+    [personId, change.name ?? null, JSON.stringify(change.preferences ?? {})],
   );
-  return changed === 1;
 }
 
 export async function requireFirm(manager: EntityManager, firmId: string): Promise<Session['firm']> {

@@ -1,7 +1,14 @@
-import { chooseFirmRequest, sessionResponse, signInRequest } from '../../shared/session/session.schema.ts';
-import { type ApiRoutes, apiRoutes, noContent, ok } from '../http/api-routes.ts';
+import {
+  chooseFirmRequest,
+  completePasswordReset,
+  requestPasswordReset,
+  sessionResponse,
+  signInRequest,
+} from '../../shared/session/session.schema.ts';
+import { type ApiRoutes, accepted, apiRoutes, noContent, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { endSession } from './authenticate.ts';
+import { finishPasswordReset, startPasswordReset } from './password-reset.service.ts';
 import { chooseFirm, describeSession } from './session.service.ts';
 import type { SessionStore } from './session-store.ts';
 import type { SignIn } from './sign-in.ts';
@@ -49,8 +56,8 @@ export function sessionRoutes(parts: Parts, store: SessionStore, signIn: SignIn)
 
   routes.add(
     {
-      method: 'post',
-      path: '/session/sign-out-everywhere',
+      method: 'delete',
+      path: '/session/everywhere',
       summary: 'End every session of this person, this one too',
       access: 'session',
       responses: { 204: null },
@@ -64,7 +71,7 @@ export function sessionRoutes(parts: Parts, store: SessionStore, signIn: SignIn)
 
   routes.add(
     {
-      method: 'post',
+      method: 'put',
       path: '/session/firm',
       summary: 'Work for another of one’s firms from now on',
       access: 'session',
@@ -74,6 +81,38 @@ export function sessionRoutes(parts: Parts, store: SessionStore, signIn: SignIn)
     async ({ req, actor, body }) => {
       const chosen = { sid: req.sessionID, personId: actor.personId, firmId: body.firmId };
       return ok(await chooseFirm(parts, store, chosen));
+    },
+  );
+
+  routes.add(
+    {
+      method: 'post',
+      path: '/session/password-reset',
+      summary: 'Ask for a link that sets a new password',
+      description: 'The answer is the same whether or not the address is known. The link works once, for an hour.',
+      access: 'public',
+      body: requestPasswordReset,
+      responses: { 202: null },
+    },
+    ({ req, body }) => {
+      startPasswordReset(parts, body.email, req.ip ?? '');
+      return accepted();
+    },
+  );
+
+  routes.add(
+    {
+      method: 'put',
+      path: '/session/password-reset',
+      summary: 'Set a new password by the mailed link',
+      description: 'Ends every session of the person.',
+      access: 'public',
+      body: completePasswordReset,
+      responses: { 204: null },
+    },
+    async ({ body }) => {
+      await finishPasswordReset(parts, body.token, body.newPassword);
+      return noContent();
     },
   );
   return routes;

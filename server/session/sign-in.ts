@@ -41,26 +41,26 @@ export function signInWith(parts: Parts): SignIn {
       passport.authenticate('local', { session: false }, answer)(req, res, reject);
     });
 
-  const start = (req: Request, personId: string, firmId: string): Promise<SessionUser> => {
+  const start = async (req: Request, personId: string, firmId: string): Promise<SessionUser> => {
     const at = parts.now().toISOString();
     const user: SessionUser = { personId, firmId, signedInAt: at, seenAt: at };
-    return new Promise((resolve, reject) => {
+    await new Promise<void>((resolve, reject) => {
       // The id changes, so that one planted before sign-in is worth nothing, and what the session held is dropped.
       req.session.regenerate((error: unknown) => {
         if (error) return reject(error);
         req.session.passport = { user };
-        req.session.save((failed: unknown) => (failed ? reject(failed) : resolve(user)));
+        req.session.save((failed: unknown) => (failed ? reject(failed) : resolve()));
       });
     });
+    await noteSignIn(parts, personId, firmId);
+    return user;
   };
 
   return {
     async withPassword(req, res) {
       const personId = await judge(req, res);
       const firmId = await firmToStartIn(parts, personId);
-      const user = await start(req, personId, firmId);
-      await noteSignIn(parts, personId, firmId);
-      return user;
+      return start(req, personId, firmId);
     },
     as: start,
   };

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { day, id, instant, shortText } from '../lists/list.schema.ts';
+import { day, id, instant, pageQuery, shortText } from '../lists/list.schema.ts';
 import { role, tokenScope } from '../permissions/roles.ts';
 import { emailAddress, locale, newPassword } from '../session/session.schema.ts';
 
@@ -32,6 +32,11 @@ export const inviteRequest = z.strictObject({
   siteIds: z.array(id).nullable().optional(),
   locale: locale.optional(),
 });
+export const listPeopleQuery = pageQuery.extend({
+  role: role.optional(),
+  active: z.enum(['true', 'false']).optional(),
+});
+
 export const invitation = z.strictObject({
   id,
   email: z.string(),
@@ -43,6 +48,19 @@ export const invitation = z.strictObject({
   acceptedAt: instant.nullable(),
 });
 export type Invitation = z.output<typeof invitation>;
+/** What became of the mail is said at once; it can be sent again. */
+export const sentInvitation = invitation.extend({ mailSent: z.boolean() });
+export type SentInvitation = z.output<typeof sentInvitation>;
+
+/** What the page behind the mailed link shows before anything is typed. */
+export const invitationTokenRequest = z.strictObject({ token: z.string().min(20).max(200) });
+export const invitationPreview = z.strictObject({
+  firmName: z.string(),
+  email: z.string(),
+  name: z.string(),
+  /** The address has an account already: its password is asked for and not a new one. */
+  hasAccount: z.boolean(),
+});
 export const acceptInvitationRequest = z.strictObject({
   token: z.string().min(20).max(200),
   name: shortText(120),
