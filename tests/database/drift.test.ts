@@ -19,7 +19,9 @@ describe('Entities', () => {
     const drift = await dataSource.driver.createSchemaBuilder().log();
 
     // Checks and domains stand in the migrations alone; each is attacked in the tests beside this one.
-    expect(drift.upQueries.map(({ query }) => query).filter((query) => !/DROP CONSTRAINT "\w+_check"/.test(query))).toEqual([]);
+    expect(
+      drift.upQueries.map(({ query }) => query).filter((query) => !/DROP CONSTRAINT "\w+_check"/.test(query)),
+    ).toEqual([]);
   });
 
   it('leave no table out', async () => {

@@ -1,4 +1,4 @@
-import { CHECKS } from './1764547200004-posting-checks.ts';
+import { CHECKS, QUESTIONS } from './1764547200004-posting-checks.ts';
 import { ForwardOnlyMigration } from './forward-only-migration.ts';
 
 /**
@@ -9,7 +9,7 @@ import { ForwardOnlyMigration } from './forward-only-migration.ts';
  */
 export class CreatePosting1764547200004 extends ForwardOnlyMigration {
   readonly name = 'CreatePosting1764547200004';
-  readonly statements = [HEAD, JOURNAL, GROUPS, ENTRIES, BOOKS, DERIVED, ...CHECKS, POST];
+  readonly statements = [HEAD, JOURNAL, GROUPS, ENTRIES, BOOKS, DERIVED, QUESTIONS, ...CHECKS, POST];
 }
 
 const HEAD = `
@@ -126,7 +126,9 @@ const ENTRIES = `
         (doc ->> 'atLeast')::boolean, (doc ->> 'takenBack')::boolean, (doc ->> 'correctsGroupId')::uuid,
         (doc ->> 'reversesEntryId')::uuid, (doc ->> 'unitId')::uuid, (doc ->> 'siteId')::uuid
       from unnest(p_docs) with ordinality d(doc, n)
-      join entry_group g on g.firm_id = p_head.firm_id and g.id = (doc ->> 'groupId')::uuid and g.sequence > p_head.sequence
+      -- A group of an earlier call is caught by check_groups: this call then holds no record that names the entry.
+      cross join lateral (select x.id, x.kind, x.recorded_by from entry_group x
+        where x.firm_id = p_head.firm_id and x.id = (doc ->> 'groupId')::uuid offset 0) g
       where doc ->> 'type' = 'entry' order by n;
   end $$;
 `;
@@ -145,8 +147,8 @@ const BOOKS = `
             (e.from_place::text, e.from_id, e.from_as::text, -e.mass_micrograms)) p(place, id, place_as, mass)
           where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
           group by p.place, p.id, p.place_as, e.refrigerant) c
-      left join balance b
-        on b.firm_id = p_head.firm_id and b.place_key = c.place_key and b.refrigerant = c.refrigerant
+      left join lateral (select x.mass_micrograms from balance x
+        where x.firm_id = p_head.firm_id and x.place_key = c.place_key and x.refrigerant = c.refrigerant offset 0) b on true
   $$;
 
   create function add_to_books(p_head firm_head, p_changes balance_change[]) returns void language plpgsql as $$
@@ -170,13 +172,13 @@ const BOOKS = `
 
 /** What the server judged: snapshots of places, flags, and words kept beside the chain. */
 const DERIVED = `
-  create function store_derived(p_head firm_head, p_derived jsonb) returns void language plpgsql as $$
+  create function store_derived(p_head firm_head, p_record_count integer, p_derived jsonb) returns void language plpgsql as $$
   declare
     v_wrong jsonb;
   begin
     insert into place_state as s (firm_id, place, place_id, known, state, last_occurred_at, sequence)
       select p_head.firm_id, d.place, d.id, d.known, coalesce(d.state, '{}'), d."lastOccurredAt",
-        (select max(j.sequence) from journal_record j where j.firm_id = p_head.firm_id)
+        p_head.sequence + p_record_count
       from jsonb_to_recordset(p_derived -> 'placeStates')
         d(place text, id uuid, known boolean, state jsonb, "lastOccurredAt" timestamptz)
       on conflict (firm_id, place, place_id) do update
@@ -204,8 +206,10 @@ const DERIVED = `
         t(id uuid, "recordId" uuid, field text, salt text, content text);
     select jsonb_build_object('id', t.id, 'recordId', t.record_id) into v_wrong
       from jsonb_to_recordset(p_derived -> 'texts') d(id uuid)
-      join personal_text t on t.firm_id = p_head.firm_id and t.id = d.id
-      join journal_record j on j.firm_id = p_head.firm_id and j.record_id = t.record_id
+      cross join lateral (select x.id, x.record_id, x.hash from personal_text x
+        where x.firm_id = p_head.firm_id and x.id = d.id offset 0) t
+      cross join lateral (select x.sequence, x.content from journal_record x
+        where x.firm_id = p_head.firm_id and x.record_id = t.record_id offset 0) j
       where j.sequence <= p_head.sequence or position(encode(t.hash, 'hex') in j.content) = 0 limit 1;
     if found then perform refuse('TW017', 'text_hash_in_record', v_wrong); end if;
   end $$;
@@ -239,7 +243,7 @@ const POST = `
       perform check_cylinder_contents(v_head, v_changes);
     end if;
     perform check_known(v_head, p_derived);
-    perform store_derived(v_head, p_derived);
+    perform store_derived(v_head, cardinality(p_texts), p_derived);
     perform check_units(v_head, v_changes, p_derived);
     update firm_head h set sequence = v_head.sequence + cardinality(p_texts), hash = v_hash
       where h.firm_id = v_head.firm_id;

@@ -1,22 +1,28 @@
-/** The rules of the log, checked over all rows of one call; part of migration 1764547200004 and never edited again. */
+/**
+ * The rules of the log, checked over all rows of one call; part of migration 1764547200004 and never edited again.
+ *
+ * `offset 0` keeps each inner look-up a look-up by its key. Otherwise a plan made while the tables were small, which a
+ * pooled connection keeps, may read all rows of a firm for each group, and a large call becomes quadratic.
+ */
 export const CHECKS: readonly string[] = [
   // Groups stand or fall whole: the group's record names its entries, and exactly these are posted with it.
   `create function check_groups(p_head firm_head, p_docs jsonb[]) returns void language plpgsql as $$
   declare
     v_wrong jsonb;
   begin
-    select jsonb_build_object('groupId', coalesce(told.id, d.doc ->> 'groupId'), 'told', told.ids, 'given', array_agg(d.doc ->> 'id' order by d.n))
-      into v_wrong
-      from (select doc, n from unnest(p_docs) with ordinality u(doc, n) where doc ->> 'type' = 'entry') d
+    select jsonb_build_object('groupId', coalesce(told.id, given.id), 'told', told.ids, 'given', given.ids) into v_wrong
+      from (select doc ->> 'groupId' as id, jsonb_agg(doc ->> 'id' order by n) as ids
+        from unnest(p_docs) with ordinality u(doc, n) where doc ->> 'type' = 'entry' group by 1) given
       full join (select doc ->> 'id' as id, doc -> 'entryIds' as ids from unnest(p_docs) u(doc)
-        where doc ->> 'type' = 'group' and doc -> 'entryIds' <> '[]') told on told.id = d.doc ->> 'groupId'
-      group by told.id, told.ids, d.doc ->> 'groupId'
-      having told.ids is distinct from jsonb_agg(d.doc ->> 'id' order by d.n) limit 1;
+        where doc ->> 'type' = 'group' and doc -> 'entryIds' <> '[]') told on told.id = given.id
+      where told.ids is distinct from given.ids limit 1;
     if found then perform refuse('TW004', 'group_whole', v_wrong); end if;
 
-    select jsonb_build_object('groupId', g.id, 'entryId', e.id) into v_wrong
-      from entry_group g join entry e on e.firm_id = g.firm_id and e.group_id = g.id
-      where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence
+    select jsonb_build_object('groupId', e.group_id, 'entryId', e.id) into v_wrong
+      from entry e
+      cross join lateral (select x.recorded_at from entry_group x
+        where x.firm_id = e.firm_id and x.id = e.group_id offset 0) g
+      where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
         and (e.recorded_at <> g.recorded_at
           or ('unit' in (e.from_place, e.to_place) and (e.unit_id is null or e.unit_id not in (
             case when e.from_place = 'unit' then e.from_id else e.to_id end,
@@ -27,8 +33,10 @@ export const CHECKS: readonly string[] = [
     -- A reversal mirrors what it reverses: every entered mass of the group, the other way round, at the same time.
     select jsonb_build_object('groupId', e.group_id, 'entryId', e.id, 'reversesEntryId', e.reverses_entry_id) into v_wrong
       from entry e
-      join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
-      left join entry o on o.firm_id = e.firm_id and o.id = e.reverses_entry_id
+      cross join lateral (select x.reverses_group_id from entry_group x
+        where x.firm_id = e.firm_id and x.id = e.group_id offset 0) g
+      left join lateral (select x.* from entry x
+        where x.firm_id = e.firm_id and x.id = e.reverses_entry_id offset 0) o on true
       where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.reverses_entry_id is not null
         and (o.id is null or e.refrigerant <> o.refrigerant or e.mass_micrograms <> o.mass_micrograms
           or e.occurred_at <> o.occurred_at
@@ -39,22 +47,25 @@ export const CHECKS: readonly string[] = [
     if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
     select jsonb_build_object('groupId', g.id, 'entryId', o.id) into v_wrong
       from entry_group g
-      join entry o on o.firm_id = g.firm_id and o.group_id = g.reverses_group_id and not o.added_by_server
+      cross join lateral (select x.id from entry x
+        where x.firm_id = g.firm_id and x.group_id = g.reverses_group_id and not x.added_by_server offset 0) o
       where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence and g.reverses_group_id is not null
-        and not exists (select from entry e
-          where e.firm_id = g.firm_id and e.group_id = g.id and e.reverses_entry_id = o.id) limit 1;
+        and not exists (select from entry x
+          where x.firm_id = g.firm_id and x.reverses_entry_id = o.id and x.group_id = g.id offset 0) limit 1;
     if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
 
     -- A weigh-in is closed once; if what closed it was reversed, it may be closed again.
     select jsonb_build_object('groupId', g.id, 'closesGroupId', g.closes_group_id) into v_wrong
       from entry_group g
-      join entry_group w on w.firm_id = g.firm_id and w.id = g.closes_group_id
+      cross join lateral (select x.id, x.open_weigh_in from entry_group x
+        where x.firm_id = g.firm_id and x.id = g.closes_group_id offset 0) w
       where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence and g.closes_group_id is not null
         and (not w.open_weigh_in
-          or exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = w.id)
+          or exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = w.id offset 0)
           or exists (select from entry_group c
             where c.firm_id = g.firm_id and c.closes_group_id = w.id and c.id <> g.id
-              and not exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = c.id)))
+              and not exists (select from entry_group r
+                where r.firm_id = c.firm_id and r.reverses_group_id = c.id offset 0) offset 0))
       limit 1;
     if found then perform refuse('TW013', 'weigh_in_open', v_wrong); end if;
   end $$`,
@@ -105,79 +116,57 @@ export const CHECKS: readonly string[] = [
 
   // Asked for, not refused for good: a second refrigerant, and contents past the limit, need their group's reason.
   // What corrects or reverses an earlier group is not what put it there, so it is not asked.
+  `create function group_without_reason(p_head firm_head, p_cylinder uuid, p_refrigerant text) returns uuid
+    language sql stable as $$
+    select e.group_id from entry e
+      cross join lateral (select x.reason from entry_group x
+        where x.firm_id = e.firm_id and x.id = e.group_id offset 0) g
+      where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.to_id = p_cylinder
+        and (p_refrigerant is null or e.refrigerant = p_refrigerant)
+        and e.corrects_group_id is null and e.reverses_entry_id is null and coalesce(trim(g.reason), '') = ''
+      order by e.sequence limit 1
+  $$`,
+
   `create function check_cylinder_contents(p_head firm_head, p_changes balance_change[]) returns void language plpgsql as $$
   declare
     v_wrong jsonb;
   begin
-    with arrived as (
-      select c.place_id, c.refrigerant from unnest(p_changes) c
-        where c.place = 'cylinder' and c.before_micrograms <= 0 and c.before_micrograms + c.change_micrograms > 0
-    ), mixed as (
-      select a.place_id, a.refrigerant from arrived a
-        where exists (select from balance b
-          where b.firm_id = p_head.firm_id and b.place_key = 'cylinder:' || a.place_id and b.refrigerant <> a.refrigerant
-            and b.mass_micrograms > 0
-            and (not exists (select from arrived other
-                where other.place_id = a.place_id and other.refrigerant = b.refrigerant)
-              -- of several that came into an empty cylinder in this call, the first needs no reason
-              or (select min(e.sequence) from entry e where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
-                  and e.to_id = a.place_id and e.refrigerant = b.refrigerant)
-                < (select min(e.sequence) from entry e where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
-                  and e.to_id = a.place_id and e.refrigerant = a.refrigerant)))
-    )
-    select jsonb_build_object('place', 'cylinder', 'id', m.place_id, 'refrigerant', m.refrigerant, 'groupId', g.id)
+    select jsonb_build_object('place', 'cylinder', 'id', m.place_id, 'refrigerant', m.refrigerant, 'groupId', m.group_id)
       into v_wrong
-      from mixed m
-      join entry e on e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.to_id = m.place_id
-        and e.refrigerant = m.refrigerant and e.corrects_group_id is null and e.reverses_entry_id is null
-      join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
-      where coalesce(trim(g.reason), '') = '' limit 1;
+      from (
+        select c.place_id, c.refrigerant, group_without_reason(p_head, c.place_id, c.refrigerant) as group_id
+          from unnest(p_changes) c
+          where c.place = 'cylinder' and c.before_micrograms <= 0 and c.before_micrograms + c.change_micrograms > 0
+            and exists (select from balance b
+              where b.firm_id = p_head.firm_id and b.place_key = c.place_key and b.refrigerant <> c.refrigerant
+                and b.mass_micrograms > 0 and not came_first(p_head, p_changes, c, b.refrigerant) offset 0) offset 0
+      ) m where m.group_id is not null limit 1;
     if found then perform refuse('TW010', 'second_refrigerant_reason', v_wrong); end if;
 
-    with risen as (
-      select c.place_id from unnest(p_changes) c where c.place = 'cylinder'
-        group by c.place_id having sum(c.change_micrograms) > 0
-    ), past as (
-      select y.id, y.limit_micrograms, s.content from risen r
-        join cylinder y on y.firm_id = p_head.firm_id and y.id = r.place_id and y.limit_micrograms is not null
-        cross join lateral (select sum(b.mass_micrograms) as content from balance b
-          where b.firm_id = p_head.firm_id and b.place = 'cylinder' and b.place_id = y.id) s
-        where s.content > y.limit_micrograms
-    )
-    select jsonb_build_object('place', 'cylinder', 'id', p.id, 'groupId', g.id,
+    select jsonb_build_object('place', 'cylinder', 'id', p.place_id, 'groupId', p.group_id,
         'bookMicrograms', p.content::text, 'limitMicrograms', p.limit_micrograms::text) into v_wrong
-      from past p
-      join entry e on e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.to_id = p.id
-        and e.corrects_group_id is null and e.reverses_entry_id is null
-      join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
-      where coalesce(trim(g.reason), '') = '' limit 1;
+      from (
+        select r.place_id, s.content, y.limit_micrograms, group_without_reason(p_head, r.place_id, null) as group_id
+          from (select c.place_id, c.place_key from unnest(p_changes) c where c.place = 'cylinder'
+            group by c.place_id, c.place_key having sum(c.change_micrograms) > 0) r
+          cross join lateral (select x.limit_micrograms from cylinder x
+            where x.firm_id = p_head.firm_id and x.id = r.place_id offset 0) y
+          cross join lateral (select sum(b.mass_micrograms) as content from balance b
+            where b.firm_id = p_head.firm_id and b.place_key = r.place_key) s
+          where s.content > y.limit_micrograms offset 0
+      ) p where p.group_id is not null limit 1;
     if found then perform refuse('TW011', 'past_limit_reason', v_wrong); end if;
   end $$`,
 
-  // A book becomes known by a factory, opening or settling entry or statement, and unknown again only by a reversal or another answer.
+  // A book becomes known by a factory, opening or settling entry or statement, and unknown again only by a reversal or
+  // another answer.
   `create function check_known(p_head firm_head, p_derived jsonb) returns void language plpgsql as $$
   declare
     v_wrong jsonb;
+    v_withdraws boolean := exists (select from entry_group g
+      where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence
+        and (g.reverses_group_id is not null or g.answers_group_id is not null));
   begin
-    select jsonb_build_object('place', 'unit', 'id', d.id) into v_wrong
-      from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid, known boolean)
-      join place_state s on s.firm_id = p_head.firm_id and s.place = 'unit' and s.place_id = d.id
-      where d.place = 'unit' and s.known and not d.known
-        and not exists (select from entry_group g where g.firm_id = p_head.firm_id and g.sequence > p_head.sequence
-          and (g.reverses_group_id is not null or g.answers_group_id is not null)) limit 1;
-    if found then perform refuse('TW008', 'book_stays_known', v_wrong); end if;
-
-    select jsonb_build_object('place', 'unit', 'id', d.id) into v_wrong
-      from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid, known boolean)
-      where d.place = 'unit' and d.known
-        and not exists (select from place_state s
-          where s.firm_id = p_head.firm_id and s.place = 'unit' and s.place_id = d.id and s.known)
-        and not exists (select from entry e where e.firm_id = p_head.firm_id and e.to_id = d.id
-          and e.from_place in ('factory', 'opening'))
-        and not exists (select from statement t where t.firm_id = p_head.firm_id and t.unit_id = d.id
-          and t.condition in ('empty', 'full')) limit 1;
-    if found then perform refuse('TW016', 'book_known_by_something', v_wrong); end if;
-
     select jsonb_build_object('place', d.place, 'id', d.id) into v_wrong
       from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid)
       where not case d.place
@@ -185,6 +174,21 @@ export const CHECKS: readonly string[] = [
         when 'cylinder' then exists (select from cylinder y where y.firm_id = p_head.firm_id and y.id = d.id)
         else false end limit 1;
     if found then perform refuse('TW005', 'place_registered', v_wrong); end if;
+
+    select jsonb_build_object('place', 'unit', 'id', d.id) into v_wrong
+      from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid, known boolean)
+      where d.place = 'unit' and not d.known and not v_withdraws and unit_is_known(p_head.firm_id, d.id) limit 1;
+    if found then perform refuse('TW008', 'book_stays_known', v_wrong); end if;
+
+    select jsonb_build_object('place', 'unit', 'id', d.id) into v_wrong
+      from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid, known boolean)
+      where d.place = 'unit' and d.known and not case
+        when unit_is_known(p_head.firm_id, d.id) then true
+        when exists (select from statement t where t.firm_id = p_head.firm_id and t.unit_id = d.id
+          and t.condition in ('empty', 'full')) then true
+        else exists (select from entry e where e.firm_id = p_head.firm_id and e.to_id = d.id
+          and e.from_place in ('factory', 'opening')) end limit 1;
+    if found then perform refuse('TW016', 'book_known_by_something', v_wrong); end if;
   end $$`,
 
   `create function check_units(p_head firm_head, p_changes balance_change[], p_derived jsonb) returns void
@@ -196,11 +200,9 @@ export const CHECKS: readonly string[] = [
     select jsonb_build_object('place', 'unit', 'id', e.to_id) into v_wrong
       from entry e
       where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence and e.to_place = 'unit'
-        and e.from_place in ('factory', 'opening')
-        and e.reverses_entry_id is null
-        and not exists (select from entry r where r.firm_id = e.firm_id and r.reverses_entry_id = e.id)
-        and not exists (select from place_state s
-          where s.firm_id = e.firm_id and s.place = 'unit' and s.place_id = e.to_id and s.known) limit 1;
+        and e.from_place in ('factory', 'opening') and e.reverses_entry_id is null
+        and not exists (select from entry r where r.firm_id = e.firm_id and r.reverses_entry_id = e.id offset 0)
+        and not unit_is_known(e.firm_id, e.to_id) limit 1;
     if found then perform refuse('TW016', 'book_known_by_something', v_wrong); end if;
 
     select jsonb_build_object('place', 'unit', 'id', u.id, 'refrigerant', b.refrigerant,
@@ -209,9 +211,32 @@ export const CHECKS: readonly string[] = [
         select c.place_id as id from unnest(p_changes) c where c.place = 'unit'
         union select d.id from jsonb_to_recordset(p_derived -> 'placeStates') d(place text, id uuid) where d.place = 'unit'
       ) u
-      join place_state s on s.firm_id = p_head.firm_id and s.place = 'unit' and s.place_id = u.id and s.known
-      join balance b on b.firm_id = p_head.firm_id and b.place = 'unit' and b.place_id = u.id
-      where b.mass_micrograms < 0 limit 1;
+      cross join lateral (select x.refrigerant, x.mass_micrograms from balance x
+        where x.firm_id = p_head.firm_id and x.place_key = 'unit:' || u.id offset 0) b
+      where b.mass_micrograms < 0 and unit_is_known(p_head.firm_id, u.id) limit 1;
     if found then perform refuse('TW007', 'unit_not_below_zero', v_wrong); end if;
   end $$`,
 ];
+
+/** What the checks ask for again and again; made before them. */
+export const QUESTIONS = `
+  create function unit_is_known(p_firm uuid, p_unit uuid) returns boolean language sql stable as $$
+    select exists (select from place_state s
+      where s.firm_id = p_firm and s.place = 'unit' and s.place_id = p_unit and s.known)
+  $$;
+
+  -- Of several refrigerants that came into an empty cylinder in one call, the first needs no reason.
+  create function came_first(p_head firm_head, p_changes balance_change[], p_change balance_change, p_other text)
+    returns boolean language sql stable as $$
+    select not exists (select from unnest(p_changes) c
+        where c.place_key = p_change.place_key and c.refrigerant <> p_change.refrigerant and c.before_micrograms > 0)
+      and not exists (select from balance b
+        where b.firm_id = p_head.firm_id and b.place_key = p_change.place_key and b.mass_micrograms > 0
+          and b.refrigerant <> p_change.refrigerant
+          and not exists (select from unnest(p_changes) c where c.place_key = b.place_key and c.refrigerant = b.refrigerant))
+      and (select min(e.sequence) from entry e where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
+          and e.to_id = p_change.place_id and e.refrigerant = p_change.refrigerant)
+        < (select min(e.sequence) from entry e where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
+          and e.to_id = p_change.place_id and e.refrigerant = p_other)
+  $$;
+`;

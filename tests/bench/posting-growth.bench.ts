@@ -1,0 +1,66 @@
+import { place, textOf } from '../database/record-texts.ts';
+import { type Connection, connect, createTestFirm, POST } from '../database/test-firm.ts';
+import { cloneTemplate } from '../support/cloned-database.ts';
+import type { Bench } from './bench.ts';
+
+/** Texts of so many entries in groups of two: bought into a cylinder, charged from it into a unit. */
+function textsOf(firm: Awaited<ReturnType<typeof createTestFirm>>, entryCount: number): string[] {
+  return Array.from({ length: entryCount / 2 }, (_, index) => {
+    const cylinder = place('cylinder', firm.recoveryCylinderId);
+    const unit = index % 2 === 0 ? firm.unitId : firm.otherUnitId;
+    return firm.group({
+      kind: 'extraCharge',
+      unitId: unit,
+      siteId: firm.siteId,
+      entries: [
+        { from: place('supplier', firm.supplierId), to: cylinder, massMicrograms: '91000000' },
+        { from: cylinder, to: place('unit', unit) },
+      ],
+    });
+  })
+    .flat()
+    .map(textOf);
+}
+
+async function secondsToPost(app: Connection, entryCount: number): Promise<number> {
+  const firm = await createTestFirm(app);
+  const texts = textsOf(firm, entryCount);
+  return app.as(firm.scope, async (query) => {
+    const start = performance.now();
+    await query(POST, [texts, null]);
+    return (performance.now() - start) / 1000;
+  });
+}
+
+/**
+ * Ten times the entries in one transaction take about ten times as long. Each size posts into a firm of its own; the
+ * middle of three runs each, after one that warms up.
+ */
+export const bench: Bench = {
+  async run({ startPostgres, say }) {
+    const { port } = await startPostgres();
+    const database = await cloneTemplate({ port });
+    const app = connect(database);
+    try {
+      await secondsToPost(app, 1_000);
+      const middle = async (entryCount: number): Promise<number> => {
+        const seconds: number[] = [];
+        for (let run = 0; run < 3; run++) seconds.push(await secondsToPost(app, entryCount));
+        say(`${entryCount} entries: ${seconds.map((each) => each.toFixed(2)).join(', ')} s`);
+        return seconds.sort((a, b) => a - b)[1] as number;
+      };
+      const against = await middle(10_000);
+      const value = await middle(100_000);
+      return {
+        name: 'posting-growth',
+        value,
+        unit: 's',
+        against,
+        againstWhat: '10,000 entries in one transaction',
+        bar: { atMost: 12 },
+      };
+    } finally {
+      await app.close();
+    }
+  },
+};
