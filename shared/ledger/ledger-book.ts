@@ -1,7 +1,15 @@
 import { done, type Outcome, type Refusal, refused } from '../problems/outcome.ts';
-import { type AddedChange, changesAgainst, postedAsAdded } from './added-entry.ts';
+import { changesAgainst, postedAsAdded } from './added-entry.ts';
+import {
+  type Balances,
+  type BookEntry,
+  enteredEntry,
+  monthAfter,
+  reversalEntry,
+  serverEntry,
+  withEntries,
+} from './book-entry.ts';
 import { type CylinderRegister, type CylinderState, emptyCylinderState } from './cylinder-state.ts';
-import type { HowKnown } from './entry-group.schema.ts';
 import { finalBalanceRefusals } from './final-balance.ts';
 import { flagsAfterStep, type LedgerFlag } from './flag.ts';
 import { groupFlags } from './group-flags.ts';
@@ -18,29 +26,10 @@ import {
   touchesCylinder,
   touchesUnit,
 } from './judged-group.ts';
-import { type MassByRefrigerant, massOf, plus, refrigerantsOf } from './mass-by-refrigerant.ts';
+import { type MassByRefrigerant, massOf, refrigerantsOf } from './mass-by-refrigerant.ts';
 import { cylinderPlace, type Place, placeKey, unitPlace } from './place.ts';
 import { cylinderFromSnapshot, isInOrder, toSnapshot, unitFromSnapshot } from './snapshot.ts';
 import { emptyUnitState, type UnitRegister, type UnitState } from './unit-state.ts';
-
-export interface BookEntry {
-  /** The record it was posted in. */
-  readonly groupId: string;
-  readonly correctsGroupId: string | null;
-  readonly refrigerant: string;
-  readonly massMicrograms: bigint;
-  readonly from: Place;
-  readonly to: Place;
-  readonly occurredAt: number;
-  readonly bookingMonth: string;
-  readonly late: boolean;
-  readonly howKnown: HowKnown | null;
-  readonly addedByServer: boolean;
-  /** The timeline that it was judged in; null for what was entered. */
-  readonly judgedPlace: Place | null;
-  readonly atLeast: boolean;
-  readonly takenBack: boolean;
-}
 
 interface Judged<State> {
   readonly state: State;
@@ -57,12 +46,6 @@ interface Posting {
   readonly unit?: UnitRegister;
 }
 
-const monthOf = (at: number): string => new Date(at).toISOString().slice(0, 7);
-const nextMonth = (month: string): string => {
-  const [year = 0, number = 0] = month.split('-').map(Number);
-  return new Date(Date.UTC(year, number, 1)).toISOString().slice(0, 7);
-};
-
 /**
  * The whole log in memory, posted to as the server posts: judged in order on the state as it stands, the whole timeline
  * replayed for what arrives late, is reversed, revised or answered, and the change alone posted. It is what the tests
@@ -75,7 +58,7 @@ export class LedgerBook {
   private readonly units = new Map<string, UnitRegister>();
   private cylinderStates = new Map<string, Judged<CylinderState>>();
   private unitStates = new Map<string, Judged<UnitState>>();
-  private balances = new Map<string, { place: Place; book: MassByRefrigerant }>();
+  private balances: Balances = new Map();
   private firstOpenMonth = '0000-00';
   private sequence = 0;
 
@@ -86,7 +69,7 @@ export class LedgerBook {
     this.units.set(register.unitId, register);
   }
   closeMonth(month: string): void {
-    this.firstOpenMonth = nextMonth(month);
+    this.firstOpenMonth = monthAfter(month);
   }
 
   post(group: Omit<EnteredGroup, 'sequence'>): Outcome<readonly BookEntry[]> {
@@ -159,13 +142,18 @@ export class LedgerBook {
     }
     const touched = touchedPlaces(posting, [...added, ...(reversed ? [reversed] : [])]);
     const entered = [
-      ...added.flatMap((group) => group.masses.map((mass) => this.enteredEntry(group, mass))),
-      ...(reversed ? reversed.masses.map((mass) => this.reversalEntry(posting.recordId, reversed, mass)) : []),
+      ...added.flatMap((group) => group.masses.map((mass) => enteredEntry(group, mass, this.firstOpenMonth))),
+      ...(reversed
+        ? reversed.masses.map((mass) => reversalEntry(posting.recordId, reversed, mass, this.firstOpenMonth))
+        : []),
     ];
     const cylinders = touched.cylinderIds.map((id) => [id, this.judgeCylinder(id, posting, added, groups)] as const);
     const units = touched.unitIds.map((id) => [id, this.judgeUnit(id, posting, added, groups)] as const);
     const changes = [...cylinders, ...units].flatMap(([, judged]) => judged.changes);
-    const entries = [...entered, ...changes.map((change) => this.addedBookEntry(posting.recordId, change, groups))];
+    const entries = [
+      ...entered,
+      ...changes.map((change) => serverEntry(posting.recordId, change, groups, this.firstOpenMonth)),
+    ];
     const balances = withEntries(this.balances, entries);
     const knownUnits = new Map(units.map(([id, { state }]) => [id, state.known]));
     const refusals = this.floorRefusals(touched, balances, knownUnits, posting.added?.[0]?.masses ?? []);
@@ -245,7 +233,7 @@ export class LedgerBook {
 
   private floorRefusals(
     touched: { cylinderIds: readonly string[]; unitIds: readonly string[] },
-    balances: Map<string, { place: Place; book: MassByRefrigerant }>,
+    balances: Balances,
     knownUnits: Map<string, boolean>,
     masses: EnteredGroup['masses'],
   ): Refusal[] {
@@ -260,46 +248,6 @@ export class LedgerBook {
       }),
       masses,
     );
-  }
-
-  private enteredEntry(group: JudgedGroup, mass: JudgedMass): BookEntry {
-    return { ...this.bookEntry(group.id, null, group.occurredAt, mass), howKnown: mass.howKnown };
-  }
-  private reversalEntry(recordId: string, group: JudgedGroup, mass: JudgedMass): BookEntry {
-    const mirrored = { ...mass, from: mass.to, to: mass.from };
-    return { ...this.bookEntry(recordId, group.id, group.occurredAt, mirrored), howKnown: mass.howKnown };
-  }
-  private addedBookEntry(recordId: string, change: AddedChange, groups: Map<string, JudgedGroup>): BookEntry {
-    const occurredAt = groups.get(change.groupId)?.occurredAt ?? 0;
-    const groupId = change.correctsGroupId === null ? change.groupId : recordId;
-    const { judgedPlace, atLeast, takenBack } = change;
-    const entry = this.bookEntry(groupId, change.correctsGroupId, occurredAt, change);
-    return { ...entry, addedByServer: true, judgedPlace, atLeast, takenBack };
-  }
-  private bookEntry(
-    groupId: string,
-    correctsGroupId: string | null,
-    occurredAt: number,
-    { refrigerant, massMicrograms, from, to }: Pick<JudgedMass, 'refrigerant' | 'massMicrograms' | 'from' | 'to'>,
-  ): BookEntry {
-    const month = monthOf(occurredAt);
-    const late = month < this.firstOpenMonth;
-    return {
-      groupId,
-      correctsGroupId,
-      refrigerant,
-      massMicrograms,
-      from,
-      to,
-      occurredAt,
-      bookingMonth: late ? this.firstOpenMonth : month,
-      late,
-      howKnown: null,
-      addedByServer: false,
-      judgedPlace: null,
-      atLeast: false,
-      takenBack: false,
-    };
   }
 }
 
@@ -316,20 +264,4 @@ function touchedPlaces(posting: Posting, groups: readonly JudgedGroup[]) {
   if (posting.cylinder) cylinderIds.add(posting.cylinder.cylinderId);
   if (posting.unit) unitIds.add(posting.unit.unitId);
   return { cylinderIds: [...cylinderIds], unitIds: [...unitIds] };
-}
-
-function withEntries(
-  balances: ReadonlyMap<string, { place: Place; book: MassByRefrigerant }>,
-  entries: readonly BookEntry[],
-): Map<string, { place: Place; book: MassByRefrigerant }> {
-  const after = new Map(balances);
-  const add = (place: Place, refrigerant: string, mass: bigint): void => {
-    const key = placeKey(place);
-    after.set(key, { place, book: plus(after.get(key)?.book ?? {}, refrigerant, mass) });
-  };
-  for (const { from, to, refrigerant, massMicrograms } of entries) {
-    add(from, refrigerant, -massMicrograms);
-    add(to, refrigerant, massMicrograms);
-  }
-  return after;
 }

@@ -1,3 +1,5 @@
+import { snap12 } from '../units/round.ts';
+
 /** One weighing scale, as its tool record says. Grams, except `spanErrorRelative` (0.001 is 0.1 %). */
 export interface Scale {
   /** The step of the display, d. */
@@ -34,7 +36,10 @@ export function grossVarianceG2(scale: Scale, contentMicrograms: bigint): number
   return netVarianceG2(scale, contentMicrograms) + scale.offsetG ** 2 / 3;
 }
 
-/** Is the mass more than `times` the standard uncertainty? Exactly at the limit is still within. */
+/**
+ * Is the mass more than `times` the standard uncertainty? Exactly at the limit is within, whatever the noise of the sum
+ * of variances: six net masses with d = 5 g have 2 u of 10 g, and 10 g are within.
+ */
 export function isBeyond(massMicrograms: bigint, varianceG2: number, times = 2): boolean {
-  return Math.abs(gramsOf(massMicrograms)) > times * Math.sqrt(varianceG2);
+  return Math.abs(gramsOf(massMicrograms)) > snap12(times * Math.sqrt(varianceG2));
 }

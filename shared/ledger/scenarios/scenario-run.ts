@@ -1,10 +1,11 @@
+import type { BookEntry } from '../book-entry.ts';
 import { countedAdditions, fullChargeRises } from '../counted-additions.ts';
 import type { CylinderRegister } from '../cylinder-state.ts';
 import { emissions } from '../emissions.ts';
 import { entryGroupRequest } from '../entry-group.schema.ts';
 import { gramsText } from '../grams-text.ts';
 import { type EnteredGroup, enteredGroup } from '../judged-group.ts';
-import { type BookEntry, LedgerBook } from '../ledger-book.ts';
+import { LedgerBook } from '../ledger-book.ts';
 import { type MassByRefrigerant, refrigerantsOf } from '../mass-by-refrigerant.ts';
 import { type Place, placeKey, toPlace } from '../place.ts';
 import type { Scale } from '../scale.ts';
