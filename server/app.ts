@@ -1,6 +1,8 @@
 import compression from 'compression';
 import express, { type Express } from 'express';
 import { RESOURCES } from './api.ts';
+import { calculationRoutes } from './calculations/calculations.router.ts';
+import { clientErrorRoutes } from './http/client-errors.ts';
 import { clientFiles } from './http/client-files.ts';
 import { healthRoutes } from './http/health.ts';
 import { ownOrigins } from './http/loopback.ts';
@@ -42,7 +44,7 @@ export function createApp(parts: Parts): Express {
   const signIn = signInWith(parts);
   const cookie = sessionCookie(publicUrl);
   /** Nobody need be signed in for these, so no session is read for them. */
-  const open = [healthRoutes(parts)];
+  const open = [healthRoutes(parts), calculationRoutes(parts), clientErrorRoutes(parts)];
   const resources = [
     sessionRoutes(parts, store, signIn),
     meRoutes(parts, signIn),

@@ -1,6 +1,9 @@
+import calculations from './calculations.en.json';
 import charge from './charge.en.json';
-import frame from './frame.en.json';
 import server from './server.en.json';
 
-/** Every English sentence by its key. A new file of sentences is added here and in `catalogue-es.ts`. */
-export const catalogueEn: Readonly<Record<string, string>> = { ...charge, ...frame, ...server };
+/**
+ * Every English sentence that the server says: problems, results, mails. A new file of them is added here and in
+ * `catalogue-es.ts`; files that only a screen uses are loaded by the screen.
+ */
+export const catalogueEn: Readonly<Record<string, string>> = { ...calculations, ...charge, ...server };
