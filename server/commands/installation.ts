@@ -9,7 +9,13 @@ import { type DemoSignIn, loadDemoIfEmpty } from './demo.ts';
 import { prepareDatabase } from './prepare-database.ts';
 import { projectRoot } from './project-root.ts';
 
-/** What `start` and `dev` both stand on: the locked data folder and a migrated, filled database. */
+/** The data folder, held by this process, and a port that it can have. */
+export interface Claim {
+  settings: Settings;
+  release(): void;
+}
+
+/** What `start` and `dev` both stand on: a migrated, filled database. */
 export interface Installation {
   settings: Settings & { sessionSecret: string };
   databaseUrls: DatabaseUrls;
@@ -17,7 +23,7 @@ export interface Installation {
   demoPassword: string;
   /** Resolves when the own PostgreSQL ended. */
   databaseEnded: Promise<void>;
-  /** Stops the database, last of all, and gives the folder free. */
+  /** Stops the own PostgreSQL. */
   close(): Promise<void>;
 }
 
@@ -33,35 +39,37 @@ async function checkPort({ host, port }: Settings): Promise<void> {
   if (code) throw new StartRefusal(`${host}:${port} ${reasons[code] ?? `cannot be listened on (${code})`}.`);
 }
 
-/** @throws StartRefusal with one line; nothing is left running then */
-export async function openInstallation(say: (line: string) => void): Promise<Installation> {
+/** @throws StartRefusal with one line */
+export async function claimHome(): Promise<Claim> {
   const settings = readSettings(process.env, projectRoot);
   prepareHome(settings.home);
-  const unlock = lockFolder(settings.home);
+  const release = lockFolder(settings.home);
   try {
     await checkPort(settings);
-    const recordsExist = settings.databaseUrl === null && findExistingCluster(settings.home) !== null;
-    const secrets = readSecrets(settings.home, { recordsExist });
-    const database = await prepareDatabase({ settings, secrets, say });
-    try {
-      const demo = { databaseUrls: database.urls, password: secrets.demo, now: new Date() };
-      return {
-        settings: { ...settings, sessionSecret: settings.sessionSecret ?? secrets.session },
-        databaseUrls: database.urls,
-        demoPeople: settings.demo ? await loadDemoIfEmpty(demo) : [],
-        demoPassword: secrets.demo,
-        databaseEnded: database.ended,
-        async close() {
-          await database.stop();
-          unlock();
-        },
-      };
-    } catch (error) {
-      await database.stop();
-      throw error;
-    }
+    return { settings, release };
   } catch (error) {
-    unlock();
+    release();
+    throw error;
+  }
+}
+
+/** @throws StartRefusal with one line; no database is left running then */
+export async function openInstallation({ settings }: Claim, say: (line: string) => void): Promise<Installation> {
+  const recordsExist = settings.databaseUrl === null && findExistingCluster(settings.home) !== null;
+  const secrets = readSecrets(settings.home, { recordsExist });
+  const database = await prepareDatabase({ settings, secrets, say });
+  try {
+    const demo = { databaseUrls: database.urls, password: secrets.demo, now: new Date() };
+    return {
+      settings: { ...settings, sessionSecret: settings.sessionSecret ?? secrets.session },
+      databaseUrls: database.urls,
+      demoPeople: settings.demo ? await loadDemoIfEmpty(demo) : [],
+      demoPassword: secrets.demo,
+      databaseEnded: database.ended,
+      close: database.stop,
+    };
+  } catch (error) {
+    await database.stop();
     throw error;
   }
 }
