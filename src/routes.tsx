@@ -8,6 +8,7 @@ import { RouteProblem } from './app/route-problem.tsx';
  * data or messages a `loader`. An error stays inside its page: the frame and what was typed remain.
  */
 const pages: RouteObject[] = [
+  { path: 'charge', lazy: () => import('./features/charge/charge.route.tsx') },
   { path: 'more', lazy: () => import('./features/session/more.route.tsx') },
   { path: 'preferences', lazy: () => import('./features/session/preferences.route.tsx') },
   { path: 'choose-firm', lazy: () => import('./features/session/choose-firm.route.tsx') },

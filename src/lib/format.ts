@@ -94,6 +94,13 @@ export function lengthQuantity(preferences: Pick<Preferences, 'locale' | 'length
   return { value: `${sign}${formatNumber(locale, feet)}${NBSP}ft ${formatNumber(locale, inches, 1)}`, unit: 'in' };
 }
 
+/** Grams a metre in the unit in which the person's manuals print rates. */
+function rateQuantity({ locale, mass }: Pick<Preferences, 'locale' | 'mass'>, gPerM: number): Quantity {
+  return mass === 'oz' || mass === 'lbOz'
+    ? { value: formatNumber(locale, gPerM / GPM_PER_OZ_PER_FT, 3), unit: 'oz/ft' }
+    : { value: formatNumber(locale, gPerM, 2), unit: 'g/m' };
+}
+
 const joined = ({ value, unit }: Quantity) => `${value}${NBSP}${unit}`;
 
 /** All formats of one person, as plain functions. */
@@ -113,10 +120,8 @@ export function formatsFor(preferences: Preferences) {
     length: (lengthM: number) => joined(lengthQuantity(preferences, lengthM)),
     metres: (lengthM: number) => `${formatNumber(locale, lengthM, 2, 1)}${NBSP}m`,
     feet: (lengthM: number) => `${formatNumber(locale, lengthM / METRES_PER_FOOT, 2)}${NBSP}ft`,
-    rate: (gPerM: number) =>
-      preferences.mass === 'oz' || preferences.mass === 'lbOz'
-        ? `${formatNumber(locale, gPerM / GPM_PER_OZ_PER_FT, 3)}${NBSP}oz/ft`
-        : `${formatNumber(locale, gPerM, 2)}${NBSP}g/m`,
+    rate: (gPerM: number) => joined(rateQuantity(preferences, gPerM)),
+    rateFigure: (gPerM: number) => rateQuantity(preferences, gPerM).value,
     tonnes: (co2eT: number) => `${formatNumber(locale, co2eT, 3, 3)}${NBSP}t`,
     /** `30 Nov 2026`; a calendar day as it stands (`2026-11-30`) is shown without a zone. */
     day: (day: string) => formatDate(locale, new Date(`${day}T12:00:00Z`), 'UTC', { dateStyle: 'medium' }),

@@ -35,16 +35,17 @@ export async function loadMessages(...parts: string[]): Promise<void> {
 async function followLocale(): Promise<void> {
   const language = languageOf(readPreferences().locale);
   document.documentElement.lang = readPreferences().locale;
-  if (i18next.language === language) return;
-  await Promise.all([...wanted].map((part) => loadPart(part, language)));
-  await i18next.changeLanguage(language);
+  if (i18next.language === readPreferences().locale) return;
+  if (!i18next.language.startsWith(language)) await Promise.all([...wanted].map((part) => loadPart(part, language)));
+  await i18next.changeLanguage(readPreferences().locale);
 }
 
 /** Starts the catalogue with the frame's messages and keeps it in the language of the preferences. */
 export async function startMessages(): Promise<void> {
-  const language = languageOf(readPreferences().locale);
   await i18next.use(initReactI18next).init({
-    lng: language,
+    // The words by the language alone, the figures inside them by the region too.
+    lng: readPreferences().locale,
+    load: 'languageOnly',
     fallbackLng: false,
     resources: {},
     keySeparator: false,

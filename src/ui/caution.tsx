@@ -14,7 +14,7 @@ const PANEL: Record<Signal, string> = {
 /** One hazard where the work is: the signal word with its symbol and colour, then what to do, in ordinary ink. */
 export function Caution({ signal, children }: { signal: Signal; children: ReactNode }) {
   return (
-    <p className="grid grid-cols-[7.25rem_minmax(0,1fr)] items-start gap-x-3 text-[0.9375rem] leading-snug">
+    <p className="grid items-start justify-items-start gap-x-3 gap-y-1 text-[0.9375rem] leading-snug xs:grid-cols-[7.75rem_minmax(0,1fr)]">
       <SignalWord signal={signal} />
       <span className="pt-px">{children}</span>
     </p>
@@ -25,7 +25,7 @@ export function SignalWord({ signal }: { signal: Signal }) {
   const t = useMessages();
   return (
     <strong
-      className={`type-label inline-flex min-h-6 items-center gap-1.5 px-2 text-[0.875rem] leading-none font-[700] ${PANEL[signal]}`}
+      className={`type-label inline-flex min-h-6 items-center gap-1.5 px-2 xs:w-full text-[0.875rem] leading-none font-[700] ${PANEL[signal]}`}
     >
       {signal === 'notice' ? null : <AlertSymbol />}
       {t(`ui.signal.${signal}`)}

@@ -135,7 +135,7 @@ export function SelectField({
           <select
             {...ids}
             {...select}
-            className={`w-full min-w-0 appearance-none truncate bg-transparent py-1 pr-8 pl-3 ${layout === 'row' ? 'text-right [text-align-last:right]' : ''}`}
+            className={`w-full min-w-0 appearance-none truncate bg-transparent py-1 pr-8 pl-3 ${big ? 'type-narrow text-[1.125rem]' : ''} ${layout === 'row' ? 'text-right [text-align-last:right]' : ''}`}
           >
             {placeholder === undefined ? null : <option value="">{placeholder}</option>}
             {choices?.map((choice) => (

@@ -1,7 +1,7 @@
 import type { Refusal } from '../../shared/problems/outcome.ts';
 import { formatForInput } from '../../shared/units/format-quantity.ts';
 import { parseQuantity, type UnderstoodPart } from '../../shared/units/parse-quantity.ts';
-import { fromBase, type QuantityKind, toBase, type UnitOf } from '../../shared/units/quantities.ts';
+import { QUANTITIES, type QuantityKind, toBase, type UnitOf } from '../../shared/units/quantities.ts';
 import type { SeparatorMeaning } from '../../shared/units/read-number.ts';
 
 /**
@@ -51,7 +51,8 @@ export function quantityOf<Kind extends QuantityKind>(
   unit: UnitOf<Kind>,
   locale: string,
 ): QuantityDraft<Kind> {
-  return showTyped(kind, { value: decimalText(fromBase(kind, unit, base)), unit }, unit, locale);
+  const baseUnit = QUANTITIES[kind].base as UnitOf<Kind>;
+  return showTyped(kind, { value: decimalText(base), unit: baseUnit }, unit, locale);
 }
 
 /** A field that holds what a person typed earlier, exactly. */
@@ -91,13 +92,13 @@ function showTyped<Kind extends QuantityKind>(
   unit: UnitOf<Kind>,
   locale: string,
 ): QuantityDraft<Kind> {
-  const decimals = typed.unit === unit ? 9 : DISPLAY_DECIMALS;
+  const decimals = typed.unit === unit ? 9 : (DISPLAY_DECIMALS[unit] ?? 2);
   const base = toBase(kind, typed.unit, Number(typed.value));
   return { text: formatForInput(kind, base, unit, { locale, decimals }), unit, held: typed };
 }
 
 /** Enough to recognise the value by; the value itself is held beside the text. */
-const DISPLAY_DECIMALS = 4;
+const DISPLAY_DECIMALS: Readonly<Record<string, number>> = { kg: 4, t: 4, 'kg/m': 5, 'oz/ft': 4, MPa: 4, bar: 3 };
 
 /** A double as a plain decimal without binary noise. */
 const decimalText = (value: number) => {

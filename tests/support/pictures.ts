@@ -76,7 +76,13 @@ export async function takePictures(browser: Browser, options: PictureOptions) {
             locale,
           ];
           const file = path.join(folder, `${parts.join('.')}.png`);
-          await page.screenshot({ path: file, fullPage: options.full ?? true });
+          if (options.full ?? true) {
+            // A window as high as the page, so that bars stuck to its edges stand where they belong.
+            const height = await page.evaluate(() => document.documentElement.scrollHeight);
+            await page.setViewportSize({ width, height: Math.max(height, HEIGHTS[width] ?? 900) });
+          }
+          await page.screenshot({ path: file });
+          await page.setViewportSize({ width, height: HEIGHTS[width] ?? 900 });
           files.push(file);
           const overflow = await page.evaluate(
             () => document.documentElement.scrollWidth - document.documentElement.clientWidth,

@@ -10,6 +10,7 @@ import {
   type LaidMark,
   type LaidSegment,
   layOutBeam,
+  type PlacedName,
   POISE_HEIGHT,
 } from './lay-out-beam.ts';
 
@@ -270,19 +271,23 @@ function Texts({ layout }: { layout: BeamLayout }) {
           {figure.text}
         </text>
       ))}
-      {layout.below.map((label) => (
-        <g key={label.key} transform={`translate(${label.x.toFixed(2)} ${layout.rowBelowY(label.row)})`}>
-          <rect
-            y={-8}
-            width="8"
-            height="8"
-            className={label.kind === 'free' ? 'fill-transparent stroke-edge' : FILL[label.kind]}
-          />
-          <text x={13} className="fill-ink-soft">
-            {label.text}
-          </text>
-        </g>
+      {layout.below.map((name) => (
+        <Name key={name.key} name={name} y={layout.rowBelowY(name.row)} />
+      ))}
+      {layout.namesAbove.map((name) => (
+        <Name key={name.key} name={name} y={layout.rowAboveY(name.row)} />
       ))}
     </>
+  );
+}
+
+function Name({ name, y }: { name: PlacedName; y: number }) {
+  return (
+    <g transform={`translate(${name.x.toFixed(2)} ${y})`}>
+      <rect y={-8} width="8" height="8" className={FILL[name.kind]} />
+      <text x={13} className="fill-ink-soft">
+        {name.text}
+      </text>
+    </g>
   );
 }

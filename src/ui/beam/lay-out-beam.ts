@@ -23,6 +23,10 @@ export interface Tick {
 export interface PlacedText extends PlacedLabel {
   text: string;
 }
+/** The name of a segment, with its swatch. */
+export interface PlacedName extends PlacedText {
+  kind: BeamSegment['kind'];
+}
 export interface LaidSegment extends BeamSegment {
   x: number;
   width: number;
@@ -52,8 +56,9 @@ export interface BeamLayout {
   figuresY: number;
   /** Above the beam; `y` of a row's baseline by `rowY`. */
   above: PlacedText[];
-  /** Names of the segments, under the figures, each with its swatch. */
-  below: (PlacedText & { kind: BeamSegment['kind'] })[];
+  /** Names of the segments under the figures; of a two-sided beam's upper side above it. */
+  below: PlacedName[];
+  namesAbove: PlacedName[];
   rowAboveY: (row: number) => number;
   rowBelowY: (row: number) => number;
 }
@@ -80,20 +85,22 @@ export function layOutBeam(spec: BeamSpec, width: number, format: (value: number
   const poiseX = spec.poise ? x(spec.poise.at) : null;
 
   const above = placeAbove(spec, marks, poiseX, width);
-  const rowsAbove = above.reduce((rows, label) => Math.max(rows, label.row + 1), 0);
+  // With two sides each has its names on its own: above what lies on the beam, below what hangs under it.
+  const namesAbove = counter.length > 0 ? placeNames(segments, width) : [];
+  const rowsAbove = [...above, ...namesAbove].reduce((rows, label) => Math.max(rows, label.row + 1), 0);
   const beamY = rowsAbove * ROW + (poiseX === null && marks.length === 0 ? 4 : POISE_HEIGHT + 4) + BAR;
 
   const { ticks, majors } = ticksOf(spec, scale, right - left);
   const underBeam = beamY + (counter.length > 0 ? BAR + 4 : 0);
   const figuresY = underBeam + TICKS + FIGURES;
-  const below = placeBelow([...segments, ...counter], width);
+  const below = placeNames(counter.length > 0 ? counter : segments, width);
   const rowsBelow = below.reduce((rows, label) => Math.max(rows, label.row + 1), 0);
   return {
     width,
     beamY,
     left,
     right,
-    zeroX: least <= 0 && most >= 0 && spec.domain[0] === 0 ? x(0) : null,
+    zeroX: spec.domain[0] === 0 && most > 0 && counter.length === 0 ? x(0) : null,
     segments,
     counter,
     poiseX,
@@ -105,6 +112,7 @@ export function layOutBeam(spec: BeamSpec, width: number, format: (value: number
     figures: figuresOf(majors, spec.unit, width, format),
     figuresY,
     above,
+    namesAbove,
     below,
     rowAboveY: (row) => (rowsAbove - row) * ROW - 4,
     rowBelowY: (row) => figuresY + 6 + (row + 1) * ROW - 4,
@@ -128,7 +136,7 @@ function placeAbove(spec: BeamSpec, marks: readonly LaidMark[], poiseX: number |
   return placed.map((label) => ({ ...label, text: texts.get(label.key) ?? '' }));
 }
 
-function placeBelow(segments: readonly LaidSegment[], width: number): BeamLayout['below'] {
+function placeNames(segments: readonly LaidSegment[], width: number): PlacedName[] {
   const named = segments.filter((segment) => segment.label !== '');
   const wishes = named.map((segment, index): LabelWish => {
     const text = textWidth(segment.label, FONT) + SWATCH;

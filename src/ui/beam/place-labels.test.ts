@@ -16,6 +16,7 @@ function expectReadable(spec: BeamSpec, width: number) {
   for (const [labels, stems] of [
     [layout.above, true],
     [layout.below, false],
+    [layout.namesAbove, false],
   ] as const) {
     for (const [index, label] of labels.entries()) {
       expect(label.x).toBeGreaterThanOrEqual(0);
