@@ -155,8 +155,7 @@ function WhyNot({ answer }: { answer: Exclude<ChargeAnswer, { is: 'done' }> }) {
 
 function focusField(pointer: string): void {
   const field = document.getElementsByName(pointer)[0];
-  const closed = field?.closest('details:not([open])');
-  if (closed instanceof HTMLDetailsElement) closed.open = true;
+  for (let up = field?.closest('details'); up; up = up.parentElement?.closest('details')) up.open = true;
   field?.scrollIntoView({ block: 'center', behavior: 'smooth' });
   field?.focus({ preventScroll: true });
 }

@@ -1,10 +1,12 @@
 import { type ReactNode, useEffect, useMemo, useRef, useState } from 'react';
 import { useFormat } from '../../lib/format.ts';
+import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
+import { Disclosure } from '../../ui/disclosure.tsx';
 import { Page } from '../../ui/page.tsx';
 import { Answer } from './answer.tsx';
 import type { ChargeDraft } from './charge-draft.ts';
-import { type ChargeForm, ChargeFormContext, useDraftActions } from './charge-form.ts';
+import { type ChargeForm, ChargeFormContext, useChargeForm, useDraftActions, useOpen } from './charge-form.ts';
 import { MainFields } from './main-fields.tsx';
 import { Co2Section, JobSection, LimitsSection, PipeDetailSection, ScaleSection } from './more-sections.tsx';
 import { allRefrigerants } from './reference-tables.ts';
@@ -47,7 +49,7 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
   const draftActions = useDraftActions(change);
   const form = useMemo<ChargeForm>(() => ({ draft, errorAt, ...draftActions }), [draft, errorAt, draftActions]);
   const { ref, outOfSight } = useOutOfSight();
-  const flammable = allRefrigerants.find((row) => row.designation === draft.refrigerant)?.lflKgM3 != null;
+  const wide = useMedia('(width >= 64rem)');
   const state: ChargeState = { answer, overRoom: room?.verdict === 'over' };
   return (
     <Page
@@ -65,7 +67,7 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
       next={next?.(state)}
     >
       <ChargeFormContext value={form}>
-        <div className="page-gutter grid w-full max-w-[90rem] gap-x-12 lg:grid-cols-[minmax(0,30rem)_minmax(0,1fr)] desk:pt-3">
+        <div className="page-gutter grid w-full max-w-[90rem] gap-x-12 desk:pt-3 lg:grid-cols-[minmax(0,30rem)_minmax(0,1fr)]">
           <div className="contents lg:col-start-2 lg:row-start-1 lg:block">
             <div className="order-1 lg:sticky lg:top-14 lg:z-1 lg:bg-ground">
               <Answer ref={ref} draft={draft} answer={answer} room={room} onExample={onExample} />
@@ -78,25 +80,59 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
           </div>
           <form
             noValidate
-            className="order-2 pt-3 lg:col-start-1 lg:row-start-1 lg:pt-0"
+            className="contents lg:col-start-1 lg:row-start-1 lg:block"
             onSubmit={(event) => event.preventDefault()}
           >
-            <MainFields />
-            <div className="mt-4 border-t border-rule">
-              <JobSection />
-              <RuleSection />
-              <LimitsSection />
-              <PipeDetailSection />
-              {flammable ? <RoomSection /> : null}
-              <ScaleSection>{cylinders}</ScaleSection>
-              <Co2Section />
+            <div className="order-2 pt-3 lg:pt-0">
+              <MainFields />
+              <div className="mt-3 border-t border-rule">
+                <ScaleSection>{cylinders}</ScaleSection>
+                <MoreFigures flat={wide} answer={answer} />
+              </div>
             </div>
-            {foot ? <div className="pt-4">{foot}</div> : null}
+            {foot ? <div className="order-4 pt-5">{foot}</div> : null}
           </form>
         </div>
       </ChargeFormContext>
       {answer.is === 'done' ? null : <p className="sr-only">{t('chargeScreen.noFigure')}</p>}
     </Page>
+  );
+}
+
+/** Places of fields that stand in the part of the form that a phone keeps closed. */
+const BEHIND =
+  /^\/(basis\/(limits|allowances|rounding)|previousLineSet|lineSet\/branches\/\d+\/(riseM|bends|equivalentMPerBend))/;
+
+/** What fewer jobs need: side by side on a desk, behind one line on a phone. */
+function MoreFigures({ flat, answer }: { flat: boolean; answer: ChargeAnswer }) {
+  const t = useMessages();
+  const { draft } = useChargeForm();
+  const wrong =
+    answer.is === 'refused'
+      ? answer.refusals.some(({ path }) => BEHIND.test(path))
+      : answer.is === 'incomplete' && [...answer.missing, ...answer.unreadable].some((pointer) => BEHIND.test(pointer));
+  const [open, setOpen] = useOpen(wrong);
+  const flammable = allRefrigerants.find((row) => row.designation === draft.refrigerant)?.lflKgM3 != null;
+  const sections = (
+    <>
+      <JobSection />
+      <RuleSection />
+      <LimitsSection />
+      <PipeDetailSection />
+      {flammable ? <RoomSection /> : null}
+      <Co2Section />
+    </>
+  );
+  if (flat) return sections;
+  return (
+    <Disclosure
+      title={t('chargeScreen.more')}
+      summary={draft.job === 'newInstall' ? t('chargeScreen.more.summary') : t(`chargeScreen.job.${draft.job}`)}
+      open={open}
+      onToggle={setOpen}
+    >
+      <div className="border-t border-rule pl-3">{sections}</div>
+    </Disclosure>
   );
 }
 

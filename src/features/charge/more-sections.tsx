@@ -9,7 +9,7 @@ import { type ChargeDraft, emptyPipe, fieldUnits } from './charge-draft.ts';
 import { useChargeForm, useOpen } from './charge-form.ts';
 import { Co2 } from './co2.tsx';
 import { CountField } from './count-field.tsx';
-import { GWP_SET_CHOICES, RATE_KIND_CHOICES } from './fixed-choices.ts';
+import { GWP_SET_CHOICES } from './fixed-choices.ts';
 import { pipeChoices } from './pipe-choices.ts';
 import { PipeList } from './pipe-list.tsx';
 import { QuantityField } from './quantity-field.tsx';
@@ -223,5 +223,3 @@ export function Co2Section() {
     </Disclosure>
   );
 }
-
-export { RATE_KIND_CHOICES };
