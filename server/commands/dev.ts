@@ -58,7 +58,8 @@ async function waitForApi(api: ChildProcess, port: number): Promise<void> {
 /** The client from its sources, with hot reload; what is not the client's goes to the API. */
 async function makeClient(settings: Installation['settings'], apiPort: number): Promise<ViteDevServer> {
   const { createServer } = await import('vite');
-  const proxy = { '/api': { target: `http://127.0.0.1:${apiPort}`, changeOrigin: false } };
+  const toApi = { target: `http://127.0.0.1:${apiPort}`, changeOrigin: false };
+  const proxy = { '/api': toApi, '/dev/mail': toApi };
   const server = { host: settings.host, port: settings.port, strictPort: true, proxy };
   return createServer({ root: projectRoot, logLevel: 'warn', clearScreen: false, server });
 }

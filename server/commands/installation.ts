@@ -1,7 +1,9 @@
+import path from 'node:path';
 import { findExistingCluster } from '../cluster/data-folder.ts';
 import { lockFolder } from '../cluster/folder-lock.ts';
 import { whyNotListen } from '../cluster/free-port.ts';
 import { prepareHome, readSecrets } from '../cluster/home.ts';
+import { isLoopbackName } from '../http/loopback.ts';
 import { readSettings, type Settings } from '../settings.ts';
 import { StartRefusal } from './bootstrap/start-refusal.mjs';
 import type { DatabaseUrls } from './database-urls.ts';
@@ -74,7 +76,11 @@ export async function openInstallation({ settings }: Claim, say: (line: string) 
   }
 }
 
-const isLoopback = (host: string) => /^(127\.|::1$|localhost$)/.test(host);
+/** The page of kept mail opens accounts, so the server shows it only where nobody else can ask; the files are always there. */
+function whereMailIs({ host, publicUrl, trustProxy, demo, home }: Settings): string {
+  const onlyHere = isLoopbackName(host) && isLoopbackName(new URL(publicUrl).hostname) && trustProxy === false;
+  return onlyHere && demo ? `${publicUrl}/dev/mail` : path.join(home, 'mail');
+}
 
 /** The lines that a person sees when it is ready. */
 export function describeInstallation({ settings, demoPeople, demoPassword }: Installation): string[] {
@@ -88,9 +94,10 @@ export function describeInstallation({ settings, demoPeople, demoPassword }: Ins
       lines.push(
         `  ${email.padEnd(width('email'))}  ${role.padEnd(width('role'))}  ${name.padEnd(width('name'))}  ${firm}`,
       );
-    if (!isLoopback(settings.host))
+    if (!isLoopbackName(settings.host))
       lines.push('  Others can reach this server: set TAREWRIGHT_DEMO=0 before the first start with real records.');
   }
+  if (!settings.smtpUrl) lines.push('', `Mail is kept and not sent: ${whereMailIs(settings)}`);
   lines.push('', 'Ctrl-C stops it.');
   return lines;
 }
