@@ -24,6 +24,7 @@ export function problemHandler(parts: Parts): ErrorRequestHandler {
 export function sendProblem(parts: Parts, req: Request, res: Response, problem: Problem): void {
   res
     .status(problem.status)
+    .set(problem.status === 401 ? { 'WWW-Authenticate': 'Bearer realm="tarewright"' } : {})
     .set(problem.headers)
     .set('Cache-Control', 'no-store')
     .type('application/problem+json')

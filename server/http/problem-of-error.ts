@@ -6,7 +6,12 @@ import { Problem, problemOfRefusals } from './problem.ts';
  */
 export function problemOfError(error: unknown): Problem {
   if (error instanceof Problem) return error;
-  return problemOfHttpError(error) ?? problemOfDatabaseError(error) ?? new Problem('internal', { cause: error });
+  return (
+    problemOfHttpError(error) ??
+    problemOfDatabaseError(error) ??
+    problemOfLostConnection(error) ??
+    new Problem('internal', { cause: error })
+  );
 }
 
 /** Errors of Express and its body reader carry a status below 500 and, the reader's, a type. */
@@ -30,6 +35,19 @@ function databaseErrorOf(error: unknown): DatabaseError | null {
   const outer = error as { driverError?: DatabaseError } & DatabaseError;
   const inner = outer?.driverError ?? outer;
   return typeof inner?.code === 'string' && /^[0-9A-Z]{5}$/.test(inner.code) ? inner : null;
+}
+
+/** What Node.js and the driver say when nothing answers at the database's address, or the connection broke. */
+const NO_CONNECTION = new Set(['ECONNREFUSED', 'ECONNRESET', 'EPIPE', 'ENOENT', 'ENOTFOUND', 'ETIMEDOUT']);
+const BROKEN =
+  /^(Connection terminated|Client has encountered a connection error|timeout exceeded when trying to connect)/;
+
+function problemOfLostConnection(error: unknown): Problem | null {
+  if (!(error instanceof Error)) return null;
+  const { code, syscall } = error as NodeJS.ErrnoException;
+  const refused = code !== undefined && NO_CONNECTION.has(code) && /^(connect|read|write)$/.test(syscall ?? '');
+  if (!refused && !BROKEN.test(error.message)) return null;
+  return new Problem('notReady', { cause: error, headers: { 'Retry-After': '5' } });
 }
 
 function problemOfDatabaseError(error: unknown): Problem | null {

@@ -55,11 +55,16 @@ export interface TestApp {
 interface TestAppOptions {
   environment?: NodeJS.ProcessEnv;
   parts?: Partial<Parts>;
+  /** The application reaches PostgreSQL through this port instead of its own: for tests that cut the wire. */
+  databasePort?: (port: number) => Promise<number>;
 }
 
 /** The whole server on a fresh database of its own, with a real SMTP server that keeps the mail, listening on loopback. */
-export async function startTestApp({ environment = {}, parts: changed = {} }: TestAppOptions = {}): Promise<TestApp> {
+export async function startTestApp(options: TestAppOptions = {}): Promise<TestApp> {
+  const { environment = {}, parts: changed = {}, databasePort } = options;
   const database = await createTestDatabase();
+  const databaseUrl = new URL(database.urls.app);
+  if (databasePort) databaseUrl.port = String(await databasePort(Number(databaseUrl.port)));
   const lines: string[] = [];
   const logTo = new Writable({
     write(chunk, _encoding, done) {
@@ -76,7 +81,7 @@ export async function startTestApp({ environment = {}, parts: changed = {} }: Te
   await listen(server);
   const url = `http://127.0.0.1:${(server.address() as AddressInfo).port}`;
   const settings = readSettings({ PUBLIC_URL: url, LOG_LEVEL: 'info', ...environment }, '/nowhere');
-  const dataSource = await createDataSource({ url: database.urls.app, poolSize: 8 }).initialize();
+  const dataSource = await createDataSource({ url: databaseUrl.href, poolSize: 8 }).initialize();
   const catcher = await startMailCatcher({ folder: null, log, now, newId });
   const parts: Parts = {
     settings: { ...settings, sessionSecret: 'a secret that only the tests know, of some length' },
