@@ -1,5 +1,6 @@
 import { z } from 'zod';
-import { ATMOSPHERE_KINDS, kindNeedsId, PLACE_KINDS } from './place.ts';
+import { typedMass, typedSignedMass } from '../units/mass.ts';
+import { ATMOSPHERE_KINDS, kindNeedsId, PLACE_KINDS, type PlaceKind } from './place.ts';
 
 /** What a group is called. A label for people: it changes no balance. */
 export const GROUP_KINDS = [
@@ -42,7 +43,6 @@ export type EmptyBy = (typeof EMPTY_BY)[number];
 export const HOW_KNOWN = ['weighed', 'estimated', 'invoice', 'label', 'factory', 'certificate'] as const;
 export type HowKnown = (typeof HOW_KNOWN)[number];
 export const DOCUMENT_KINDS = ['invoice', 'certificate', 'deliveryNote', 'other'] as const;
-export const MASS_UNITS = ['g', 'kg', 'oz', 'lb'] as const;
 
 /** Sizes that keep one request readable and cheap to judge. */
 export const GROUP_LIMITS = { readings: 50, entries: 100, statements: 10, documents: 20 } as const;
@@ -66,21 +66,12 @@ const clientMadeId = z.uuidv7();
 const instant = z.iso.datetime({ offset: true });
 const refrigerantName = z.string().regex(/^R-[0-9A-Za-z()]{1,15}$/);
 
-/** A typed decimal: a point, no sign, no exponent; kept as typed, because legal comparisons use it. */
-const DECIMAL = /^\d{1,9}(\.\d{1,9})?$/;
-const SIGNED_DECIMAL = /^-?\d{1,9}(\.\d{1,9})?$/;
-const isZero = (decimal: string): boolean => !/[1-9]/.test(decimal);
-
-export const massUnitSchema = z.enum(MASS_UNITS);
-export const massSchema = z.strictObject({ value: z.string().regex(DECIMAL), unit: massUnitSchema });
-export const positiveMassSchema = z.strictObject({
-  value: z
-    .string()
-    .regex(DECIMAL)
-    .refine((value) => !isZero(value), { message: 'More than zero', params: { code: 'massNotPositive' } }),
-  unit: massUnitSchema,
+/** More than nothing. A value that is no decimal has been refused already. */
+const positiveMass = typedMass.refine(({ value }) => !/^[0.]*$/.test(value), {
+  path: ['value'],
+  message: 'More than zero',
+  params: { code: 'massNotPositive', allowed: 0 },
 });
-export type TypedMass = z.output<typeof massSchema>;
 
 export const placeSchema = z
   .strictObject({
@@ -107,14 +98,19 @@ export const readingSchema = z
     moment: z.enum(READING_MOMENTS),
     /** `gross` includes the tare; `zeroed` is what the scale shows since it was zeroed (minus 90) and states nothing. */
     mode: z.enum(READING_MODES),
-    value: z.string().regex(SIGNED_DECIMAL),
-    unit: massUnitSchema,
+    value: typedSignedMass.shape.value,
+    unit: typedSignedMass.shape.unit,
     /** Was the hose filled and purged when this reading was taken? Its content then counts as content of the cylinder. */
     hoseFull: z.boolean().nullish(),
-    hose: massSchema.nullish(),
+    hose: typedMass.nullish(),
   })
   .superRefine((reading, ctx) => {
-    if (reading.mode === 'gross' && reading.value.startsWith('-')) {
+    const { value, unit } = reading;
+    const isDecimal = typedSignedMass.shape.value.safeParse(value).success;
+    if (isDecimal && !typedSignedMass.safeParse({ value, unit }).success) {
+      refuse(ctx, 'massTooLarge', ['value'], 'Largest mass: 4,000 t');
+    }
+    if (reading.mode === 'gross' && value.startsWith('-')) {
       refuse(ctx, 'grossReadingNegative', ['value'], 'A gross reading is not below zero');
     }
     if (reading.hoseFull && !reading.hose) {
@@ -126,7 +122,7 @@ export const enteredMassSchema = z.strictObject({
   id: clientMadeId,
   /** Null only from a mixed cylinder: the server then writes one entry per refrigerant by the book. */
   refrigerant: refrigerantName.nullish(),
-  mass: positiveMassSchema,
+  mass: positiveMass,
   from: placeSchema,
   to: placeSchema,
   howKnown: z.enum(HOW_KNOWN),
@@ -150,7 +146,7 @@ export const documentSchema = z.strictObject({
   number: storableText(80).min(1),
   date: z.iso.date(),
   refrigerant: refrigerantName.nullish(),
-  mass: positiveMassSchema.nullish(),
+  mass: positiveMass.nullish(),
 });
 
 /** Body of `POST /entry-groups`. Optional fields may be absent or null; unknown keys are refused. */
@@ -195,6 +191,16 @@ export const entryGroupRequest = z
     }
     entries.forEach((entry, index) => {
       const { from, to } = entry;
+      for (const end of ['from', 'to'] as const) {
+        if (group.kind !== 'monthClose' && isJudgesPlace(entry[end].place)) {
+          refuse(
+            ctx,
+            'placeOnlyByServer',
+            ['entries', index, end, 'place'],
+            'Only the judge and month close post here',
+          );
+        }
+      }
       if (from.place === to.place && (from.id ?? null) === (to.id ?? null) && (from.as ?? null) === (to.as ?? null)) {
         refuse(ctx, 'entryToItself', ['entries', index, 'to'], 'From and to are the same place');
       }
@@ -228,6 +234,10 @@ export const entryGroupRequest = z
     );
   });
 export type EntryGroupRequest = z.output<typeof entryGroupRequest>;
+
+/** The differences that follow from statements: posted by hand they would hide one another. */
+const JUDGES_PLACES: readonly PlaceKind[] = ['cylinderDifference', 'unitDifference', 'supplierShortFill'];
+const isJudgesPlace = (kind: PlaceKind): boolean => JUDGES_PLACES.includes(kind);
 
 /** A second reading of one cylinder at one moment, or a second answer for one unit, would leave open which one holds. */
 function refuseRepeats(ctx: z.RefinementCtx, list: string, keys: string[], field: string): void {
