@@ -1,6 +1,5 @@
 import i18next from 'i18next';
-import { useCallback } from 'react';
-import { initReactI18next, useTranslation } from 'react-i18next';
+import { useMemo, useSyncExternalStore } from 'react';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { readPreferences, subscribeToPreferences } from './preferences.ts';
 
@@ -42,7 +41,7 @@ async function followLocale(): Promise<void> {
 
 /** Starts the catalogue with the frame's messages and keeps it in the language of the preferences. */
 export async function startMessages(): Promise<void> {
-  await i18next.use(initReactI18next).init({
+  await i18next.init({
     // The words by the language alone, the figures inside them by the region too.
     lng: readPreferences().locale,
     load: 'languageOnly',
@@ -51,7 +50,6 @@ export async function startMessages(): Promise<void> {
     keySeparator: false,
     nsSeparator: false,
     interpolation: { escapeValue: false }, // React escapes
-    react: { useSuspense: false },
     partialBundledLanguages: true,
   });
   document.documentElement.lang = readPreferences().locale;
@@ -61,8 +59,14 @@ export async function startMessages(): Promise<void> {
 
 /** `t(key, params)` in the language shown; the component draws again when the language changes. */
 export function useMessages(): Translate {
-  const { t } = useTranslation();
-  return useCallback<Translate>((key, params) => t(key, params ?? {}), [t]);
+  const language = useSyncExternalStore(subscribe, () => i18next.language);
+  // A new function for a new language, so that whatever was drawn with the old one is drawn again.
+  return useMemo<Translate>(() => (key, params) => i18next.t(key, { lng: language, ...params }), [language]);
+}
+
+function subscribe(listener: () => void): () => void {
+  i18next.on('languageChanged', listener);
+  return () => i18next.off('languageChanged', listener);
 }
 
 /** For code outside components (a loader's refusal, a page title). */

@@ -1,4 +1,4 @@
-import { type InputHTMLAttributes, type ReactNode, type Ref, type SelectHTMLAttributes, useId } from 'react';
+import { type InputHTMLAttributes, memo, type ReactNode, type Ref, type SelectHTMLAttributes, useId } from 'react';
 
 /**
  * `row`: label left, blank right, as on a test certificate; for field screens and long forms.
@@ -138,20 +138,7 @@ export function SelectField({
             className={`w-full min-w-0 appearance-none truncate bg-transparent py-1 pr-8 pl-3 ${big ? 'type-narrow text-[1.125rem]' : ''} ${layout === 'row' ? 'text-right [text-align-last:right]' : ''}`}
           >
             {placeholder === undefined ? null : <option value="">{placeholder}</option>}
-            {choices?.map((choice) => (
-              <option key={choice.value} value={choice.value}>
-                {choice.label}
-              </option>
-            ))}
-            {groups?.map((group) => (
-              <optgroup key={group.label} label={group.label}>
-                {group.choices.map((choice) => (
-                  <option key={choice.value} value={choice.value}>
-                    {choice.label}
-                  </option>
-                ))}
-              </optgroup>
-            ))}
+            <Options choices={choices} groups={groups} />
           </select>
           <Chevron />
         </span>
@@ -159,6 +146,34 @@ export function SelectField({
     </Field>
   );
 }
+
+/** Long lists are drawn once, as long as the same list is handed in. */
+const Options = memo(function Options({
+  choices,
+  groups,
+}: {
+  choices: readonly Choice[] | undefined;
+  groups: readonly { label: string; choices: readonly Choice[] }[] | undefined;
+}) {
+  return (
+    <>
+      {choices?.map((choice) => (
+        <option key={choice.value} value={choice.value}>
+          {choice.label}
+        </option>
+      ))}
+      {groups?.map((group) => (
+        <optgroup key={group.label} label={group.label}>
+          {group.choices.map((choice) => (
+            <option key={choice.value} value={choice.value}>
+              {choice.label}
+            </option>
+          ))}
+        </optgroup>
+      ))}
+    </>
+  );
+});
 
 /** The small mark at the right edge of what opens. */
 export function Chevron({ className = 'right-3' }: { className?: string }) {

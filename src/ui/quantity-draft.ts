@@ -106,8 +106,29 @@ const decimalText = (value: number) => {
   return text.replace(/\.?0+$/, '');
 };
 
-/** What a field holds: a value, nothing yet, a question, or a refusal. */
+const read = new WeakMap<object, Map<string, unknown>>();
+
+/** What a field holds: a value, nothing yet, a question, or a refusal. A draft that did not change is read once. */
 export function readQuantity<Kind extends QuantityKind>(
+  kind: Kind,
+  draft: QuantityDraft<Kind>,
+  options: ReadOptions,
+): QuantityReading<Kind> {
+  let readings = read.get(draft);
+  if (!readings) {
+    readings = new Map();
+    read.set(draft, readings);
+  }
+  const key = `${kind} ${options.locale} ${options.allowNegative ?? ''}`;
+  let reading = readings.get(key) as QuantityReading<Kind> | undefined;
+  if (!reading) {
+    reading = readOnce(kind, draft, options);
+    readings.set(key, reading);
+  }
+  return reading;
+}
+
+function readOnce<Kind extends QuantityKind>(
   kind: Kind,
   draft: QuantityDraft<Kind>,
   options: ReadOptions,

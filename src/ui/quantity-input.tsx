@@ -1,4 +1,4 @@
-import { type ReactNode, useMemo, useState } from 'react';
+import { memo, type ReactNode, useMemo, useState } from 'react';
 import { formatQuantity, unitSymbol } from '../../shared/units/format-quantity.ts';
 import { QUANTITIES, type QuantityKind, type UnitOf } from '../../shared/units/quantities.ts';
 import { formatNumber, NBSP } from '../lib/format.ts';
@@ -59,7 +59,7 @@ const METRIC = new Set<string>([
  * A blank for a quantity. It takes what people write (`12ft 6in`, `3/8`, `11 lb 4.5 oz`, `7,5`), says what it
  * understood, and asks where a separator may mean two things. The unit at its right edge changes the display only.
  */
-export function QuantityInput<Kind extends QuantityKind>(props: Props<Kind>) {
+function QuantityInputOnce<Kind extends QuantityKind>(props: Props<Kind>) {
   const { kind, label, draft, onChange, units, layout = 'row', big = layout === 'row', allowNegative } = props;
   const t = useMessages();
   const { locale } = usePreferences();
@@ -119,6 +119,9 @@ export function QuantityInput<Kind extends QuantityKind>(props: Props<Kind>) {
     </Field>
   );
 }
+
+/** Drawn again only when what it shows has changed: hand in a stable `onChange` on a screen that answers while typing. */
+export const QuantityInput = memo(QuantityInputOnce) as typeof QuantityInputOnce;
 
 function UnitSwitch<Kind extends QuantityKind>({
   kind,

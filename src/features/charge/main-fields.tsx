@@ -5,7 +5,7 @@ import { Button } from '../../ui/button.tsx';
 import { SelectField } from '../../ui/field.tsx';
 import { emptyPipe, fieldUnits, nextPipeName } from './charge-draft.ts';
 import { useChargeForm } from './charge-form.ts';
-import { pipeChoices } from './pipe-choices.ts';
+import { usePipeChoices } from './pipe-choices.ts';
 import { PipeList } from './pipe-list.tsx';
 import { PrechargeField } from './precharge-field.tsx';
 import { QuantityField } from './quantity-field.tsx';
@@ -20,7 +20,7 @@ export function MainFields() {
   const t = useMessages();
   const preferences = usePreferences();
   const { draft, set, setRow, addRow, errorAt } = useChargeForm();
-  const pipes = useMemo(() => pipeChoices(preferences), [preferences]);
+  const pipes = usePipeChoices();
   const refrigerants = useMemo(() => refrigerantGroups(t), [t]);
   const pipe = draft.pipes[0];
   return (
@@ -51,10 +51,7 @@ export function MainFields() {
             label={t('chargeScreen.liquidPipe')}
             name="/lineSet/branches/0/liquidOdMm"
             placeholder={t('chargeScreen.choose')}
-            groups={[
-              { label: t('chargeScreen.inchSeries'), choices: pipes.inch },
-              { label: t('chargeScreen.metricSeries'), choices: pipes.metric },
-            ]}
+            groups={pipes}
             value={pipe.liquidOd}
             error={errorAt('/lineSet/branches/0/liquidOdMm')}
             onChange={(event) => setRow('pipes', pipe.key, { liquidOd: event.target.value })}

@@ -10,7 +10,7 @@ import { useChargeForm, useOpen } from './charge-form.ts';
 import { Co2 } from './co2.tsx';
 import { CountField } from './count-field.tsx';
 import { GWP_SET_CHOICES } from './fixed-choices.ts';
-import { pipeChoices } from './pipe-choices.ts';
+import { usePipeChoices } from './pipe-choices.ts';
 import { PipeList } from './pipe-list.tsx';
 import { QuantityField } from './quantity-field.tsx';
 
@@ -56,9 +56,8 @@ export function JobSection() {
 /** What counts for the limits and the record, not for the charge. */
 export function PipeDetailSection() {
   const t = useMessages();
-  const preferences = usePreferences();
   const { draft, setRow, errorAt } = useChargeForm();
-  const choices = pipeChoices(preferences);
+  const choices = usePipeChoices();
   const wrong = draft.pipes.some((_, index) => errorAt(`/lineSet/branches/${index}/riseM`) !== undefined);
   const [open, setOpen] = useOpen(wrong);
   const given = draft.pipes.filter((pipe) => pipe.rise.text !== '' || pipe.bends !== '').length;
@@ -106,10 +105,7 @@ export function PipeDetailSection() {
               layout="row"
               label={t('chargeScreen.gasPipe')}
               placeholder={t('chargeScreen.notGiven')}
-              groups={[
-                { label: t('chargeScreen.inchSeries'), choices: choices.inch },
-                { label: t('chargeScreen.metricSeries'), choices: choices.metric },
-              ]}
+              groups={choices}
               value={pipe.gasOd}
               onChange={(event) => setRow('pipes', pipe.key, { gasOd: event.target.value })}
             />

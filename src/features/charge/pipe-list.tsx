@@ -1,11 +1,10 @@
-import { useMemo } from 'react';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
 import { FieldError, SelectField, TextField } from '../../ui/field.tsx';
 import { emptyPipe, fieldUnits, nextPipeName, type PipeDraft } from './charge-draft.ts';
 import { useChargeForm } from './charge-form.ts';
-import { type PipeChoices, pipeChoices } from './pipe-choices.ts';
+import { type PipeChoices, usePipeChoices } from './pipe-choices.ts';
 import { QuantityField } from './quantity-field.tsx';
 import { RemoveButton } from './remove-button.tsx';
 
@@ -22,7 +21,7 @@ export function PipeList({
   const t = useMessages();
   const preferences = usePreferences();
   const { draft, addRow, errorAt } = useChargeForm();
-  const choices = useMemo(() => pipeChoices(preferences), [preferences]);
+  const choices = usePipeChoices();
   const pipes = draft[list];
   const error = errorAt(`${at}/branches`) ?? errorAt(at);
   return (
@@ -102,10 +101,7 @@ function PipeRow({
         label={t('chargeScreen.liquidPipe')}
         name={`${at}/liquidOdMm`}
         placeholder={t('chargeScreen.choose')}
-        groups={[
-          { label: t('chargeScreen.inchSeries'), choices: choices.inch },
-          { label: t('chargeScreen.metricSeries'), choices: choices.metric },
-        ]}
+        groups={choices}
         value={pipe.liquidOd}
         error={errorAt(`${at}/liquidOdMm`)}
         onChange={(event) => setRow(list, pipe.key, { liquidOd: event.target.value })}

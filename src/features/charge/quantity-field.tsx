@@ -1,3 +1,4 @@
+import { useCallback, useRef } from 'react';
 import type { QuantityKind, UnitOf } from '../../../shared/units/quantities.ts';
 import type { QuantityDraft } from '../../ui/quantity-draft.ts';
 import { QuantityInput } from '../../ui/quantity-input.tsx';
@@ -34,6 +35,9 @@ interface Props<Kind extends keyof typeof UNITS & QuantityKind> {
 export function QuantityField<Kind extends keyof typeof UNITS & QuantityKind>({ pointer, ...props }: Props<Kind>) {
   const { errorAt } = useChargeForm();
   const max = props.max ?? MOST[props.kind];
+  const latest = useRef(props.onChange);
+  latest.current = props.onChange;
+  const onChange = useCallback((value: QuantityDraft<Kind>) => latest.current(value), []);
   return (
     <QuantityInput
       units={UNITS[props.kind] as readonly UnitOf<Kind>[]}
@@ -42,6 +46,7 @@ export function QuantityField<Kind extends keyof typeof UNITS & QuantityKind>({ 
       min={props.min ?? (props.allowNegative ? -max : 0)}
       max={max}
       error={errorAt(pointer)}
+      onChange={onChange}
     />
   );
 }

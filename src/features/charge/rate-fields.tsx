@@ -1,4 +1,3 @@
-import { useMemo } from 'react';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
@@ -7,7 +6,7 @@ import { emptyQuantity } from '../../ui/quantity-draft.ts';
 import { BOUNDS } from './bounds.ts';
 import { fieldUnits, rowKey } from './charge-draft.ts';
 import { useChargeForm } from './charge-form.ts';
-import { pipeChoices } from './pipe-choices.ts';
+import { usePipeChoices } from './pipe-choices.ts';
 import { QuantityField } from './quantity-field.tsx';
 import { RemoveButton } from './remove-button.tsx';
 
@@ -46,7 +45,7 @@ function RateBySize() {
   const t = useMessages();
   const preferences = usePreferences();
   const { draft, setRow, addRow, removeRow, errorAt } = useChargeForm();
-  const pipes = useMemo(() => pipeChoices(preferences), [preferences]);
+  const pipes = usePipeChoices();
   const units = fieldUnits(preferences);
   return (
     <RowList title={t('chargeScreen.rateBySize')} error={errorAt('/basis/rate/sizes')}>
@@ -57,10 +56,7 @@ function RateBySize() {
             label={t('chargeScreen.liquidPipe')}
             name={`/basis/rate/sizes/${index}/liquidOdMm`}
             placeholder={t('chargeScreen.choose')}
-            groups={[
-              { label: t('chargeScreen.inchSeries'), choices: pipes.inch },
-              { label: t('chargeScreen.metricSeries'), choices: pipes.metric },
-            ]}
+            groups={pipes}
             value={row.od}
             error={errorAt(`/basis/rate/sizes/${index}/liquidOdMm`)}
             onChange={(event) => setRow('sizes', row.key, { od: event.target.value })}
