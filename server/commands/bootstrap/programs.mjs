@@ -76,12 +76,11 @@ function aptLine(debianPackage) {
 
 function installFromDebian(debianPackage) {
   console.error(`Installing Debian's ${debianPackage} once: ${aptLine(debianPackage)}`);
-  const options = {
-    env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
-    stdio: ['ignore', 'ignore', 'inherit'],
-  };
-  spawnSync('apt-get', ['update', '-q'], options);
-  spawnSync('apt-get', ['install', '-y', '-q', '--no-install-recommends', debianPackage], options);
+  const env = { ...process.env, DEBIAN_FRONTEND: 'noninteractive' };
+  const run = (...words) => spawnSync('apt-get', words, { env, stdio: ['ignore', 'ignore', 'pipe'], encoding: 'utf8' });
+  run('update', '-q');
+  const installed = run('install', '-y', '-q', '--no-install-recommends', debianPackage);
+  if (installed.status !== 0) console.error(installed.stderr?.trim()); // it warns a lot where all is well
 }
 
 /** The program, installed from Debian where this process may do so; otherwise the one line that a person has to run. */
