@@ -11,6 +11,7 @@ import { originCheck } from './http/origin-check.ts';
 import type { Parts } from './http/parts.ts';
 import { Problem } from './http/problem.ts';
 import { problemHandler } from './http/problem-handler.ts';
+import { problemListRoutes } from './http/problem-list.ts';
 import { requestLog } from './http/request-log.ts';
 import { securityHeaders } from './http/security-headers.ts';
 import { invitationRoutes } from './invitations/invitations.router.ts';
@@ -44,7 +45,7 @@ export function createApp(parts: Parts): Express {
   const signIn = signInWith(parts);
   const cookie = sessionCookie(publicUrl);
   /** Nobody need be signed in for these, so no session is read for them. */
-  const open = [healthRoutes(parts), calculationRoutes(parts), clientErrorRoutes(parts)];
+  const open = [healthRoutes(parts), calculationRoutes(parts), clientErrorRoutes(parts), problemListRoutes(parts)];
   const resources = [
     sessionRoutes(parts, store, signIn),
     meRoutes(parts, signIn),
