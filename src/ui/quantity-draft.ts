@@ -36,8 +36,15 @@ export interface ReadOptions {
 
 /** The decimal separator that this locale's people type. */
 export function decimalSeparatorOf(locale: string): '.' | ',' {
-  return (1.5).toLocaleString(locale).includes(',') ? ',' : '.';
+  let separator = separators.get(locale);
+  if (!separator) {
+    separator = (1.5).toLocaleString(locale).includes(',') ? ',' : '.';
+    separators.set(locale, separator);
+  }
+  return separator;
 }
+
+const separators = new Map<string, '.' | ','>();
 
 export const emptyQuantity = <Kind extends QuantityKind>(unit: UnitOf<Kind>): QuantityDraft<Kind> => ({
   text: '',
