@@ -44,6 +44,9 @@ export const HOW_KNOWN = ['weighed', 'estimated', 'invoice', 'label', 'factory',
 export type HowKnown = (typeof HOW_KNOWN)[number];
 export const DOCUMENT_KINDS = ['invoice', 'certificate', 'deliveryNote', 'other'] as const;
 
+/** A mass as typed, as these requests carry it. */
+export type { TypedMass } from '../units/mass.ts';
+
 /** Sizes that keep one request readable and cheap to judge. */
 export const GROUP_LIMITS = { readings: 50, entries: 100, statements: 10, documents: 20 } as const;
 

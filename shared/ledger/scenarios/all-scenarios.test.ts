@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { BookEntry } from '../book-entry.ts';
 import { gramsText } from '../grams-text.ts';
 import { SCENARIOS } from './all-scenarios.ts';
 import type { OpenFlag, PostedLine } from './scenario.ts';
@@ -30,6 +31,7 @@ describe.each(SCENARIOS)('$id $title', ({ cases }) => {
         expect(outcome, where).toMatchObject({ ok: true });
         const posted = outcome.ok ? outcome.value.map((entry) => run.lineOf(entry)) : [];
         expect(lines(posted), `${where} posts`).toEqual(lines(step.posted));
+        expect(outcome.ok && outcome.value.every((entry) => hasTimeOfStatement(run, entry)), where).toBe(true);
       }
       const booked = Object.keys(step.books).map((symbol) => [symbol, run.bookOf(symbol)]);
       expect(Object.fromEntries(booked), `${where} books`).toEqual(step.books);
@@ -46,6 +48,10 @@ describe.each(SCENARIOS)('$id $title', ({ cases }) => {
     expect(counted).toMatchObject(end.counted);
   });
 });
+
+/** A correction, like a reversal, has the `occurredAt` of what it corrects. */
+const hasTimeOfStatement = ({ ledger }: ScenarioRun, entry: BookEntry): boolean =>
+  entry.occurredAt === ledger.groups.get(entry.correctsGroupId ?? entry.groupId)?.occurredAt;
 
 /** Every refrigerant sums to zero over all places; no cylinder and no known unit stands below zero. */
 function expectSoundBooks({ ledger }: ScenarioRun): void {
