@@ -112,23 +112,26 @@ const GROUPS = `
 `;
 
 const ENTRIES = `
-  create function insert_entries(p_head firm_head, p_docs jsonb[]) returns void language plpgsql as $$
+  -- Entries meet their groups by hashing: nested loops over two long lists would be quadratic.
+  create function insert_entries(p_head firm_head, p_docs jsonb[]) returns void language plpgsql
+    set enable_nestloop = off as $$
   begin
     insert into entry (firm_id, id, sequence, group_id, kind, refrigerant, mass_micrograms, typed_value, typed_unit,
         from_place, from_id, from_as, to_place, to_id, to_as, how_known, occurred_at, recorded_at, recorded_by,
         booking_month, late, added_by_server, at_least, taken_back, corrects_group_id, reverses_entry_id, unit_id, site_id)
-      select p_head.firm_id, (doc ->> 'id')::uuid, p_head.sequence + n, g.id, g.kind, doc ->> 'refrigerant',
+      select p_head.firm_id, (doc ->> 'id')::uuid, p_head.sequence + n, (doc ->> 'groupId')::uuid, g.kind,
+        doc ->> 'refrigerant',
         (doc ->> 'massMicrograms')::bigint, doc #>> '{typed,value}', doc #>> '{typed,unit}',
         doc #>> '{from,place}', (doc #>> '{from,id}')::uuid, doc #>> '{from,as}',
         doc #>> '{to,place}', (doc #>> '{to,id}')::uuid, doc #>> '{to,as}', doc ->> 'howKnown',
-        (doc ->> 'occurredAt')::timestamptz, (doc ->> 'recordedAt')::timestamptz, g.recorded_by,
-        doc ->> 'bookingMonth', (doc ->> 'late')::boolean, (doc ->> 'addedByServer')::boolean,
+        (doc ->> 'occurredAt')::timestamptz, (doc ->> 'recordedAt')::timestamptz,
+        (doc ->> 'recordedBy')::uuid, doc ->> 'bookingMonth', (doc ->> 'late')::boolean, (doc ->> 'addedByServer')::boolean,
         (doc ->> 'atLeast')::boolean, (doc ->> 'takenBack')::boolean, (doc ->> 'correctsGroupId')::uuid,
         (doc ->> 'reversesEntryId')::uuid, (doc ->> 'unitId')::uuid, (doc ->> 'siteId')::uuid
       from unnest(p_docs) with ordinality d(doc, n)
-      -- A group of an earlier call is caught by check_groups: this call then holds no record that names the entry.
-      cross join lateral (select x.id, x.kind, x.recorded_by from entry_group x
-        where x.firm_id = p_head.firm_id and x.id = (doc ->> 'groupId')::uuid offset 0) g
+      -- An entry without its group in this call is not inserted, and check_groups refuses the call.
+      join (select u.doc ->> 'id' as id, u.doc ->> 'kind' as kind from unnest(p_docs) u(doc)
+        where u.doc ->> 'type' = 'group') g on g.id = doc ->> 'groupId'
       where doc ->> 'type' = 'entry' order by n;
   end $$;
 `;
@@ -216,11 +219,13 @@ const DERIVED = `
 `;
 
 const POST = `
-  -- enable_seqscan off: a pooled connection may have planned these statements while the tables were empty.
+  -- A pooled connection may have planned these statements while the tables were small, or for a firm that the statistics
+  -- do not know: no sequential scans, and plans that hold for an average firm.
   create function post_records(p_texts text[], p_derived jsonb default '{}')
     returns table (record_id uuid, sequence bigint, hash bytea)
     language plpgsql security definer
-    set search_path = pg_catalog, public, pg_temp set timezone = 'UTC' set datestyle = 'ISO' set enable_seqscan = off as $$
+    set search_path = pg_catalog, public, pg_temp set timezone = 'UTC' set datestyle = 'ISO'
+    set enable_seqscan = off set plan_cache_mode = force_generic_plan as $$
   declare
     v_head firm_head := lock_head();
     v_docs jsonb[] := array(select t.content::jsonb from unnest(p_texts) with ordinality t(content, n) order by t.n);

@@ -166,7 +166,7 @@ const JOURNALLED = `
   end $$;
 
   create function demand_register_record() returns trigger language plpgsql security definer
-    set search_path = pg_catalog, public, pg_temp set enable_seqscan = off as $$
+    set search_path = pg_catalog, public, pg_temp set enable_seqscan = off set plan_cache_mode = force_generic_plan as $$
   declare
     v_row jsonb := to_jsonb(new);
     v_subject uuid := (v_row ->> tg_argv[1])::uuid;
