@@ -1,14 +1,14 @@
 import type { ButtonHTMLAttributes, ReactNode, Ref } from 'react';
 import { Link, type LinkProps } from 'react-router-dom';
 
-/** `act`: the one next thing. `plain`: anything else. `quiet`: looks like a link. `danger`: names its consequence. */
-export type ButtonKind = 'act' | 'plain' | 'quiet' | 'danger';
+/** `act`: the one next thing. `plain`: anything else. `quiet`: looks like a link. `grave`: destructive, names its consequence; ink, for red is danger alone. */
+export type ButtonKind = 'act' | 'plain' | 'quiet' | 'grave';
 
 const KINDS: Record<ButtonKind, string> = {
   act: 'bg-rest text-on-rest hover:bg-rest-strong',
   plain: 'border border-edge bg-sheet text-ink hover:border-ink',
   quiet: 'text-rest underline decoration-1 underline-offset-[3px] hover:decoration-2',
-  danger: 'bg-danger text-on-danger hover:brightness-90',
+  grave: 'bg-ink text-ground hover:opacity-90',
 };
 
 const look = (kind: ButtonKind, wide: boolean) =>

@@ -124,7 +124,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
               <tr
                 key={row.id}
                 aria-current={open || undefined}
-                className={`group ${onOpen ? 'cursor-pointer' : ''} ${open ? 'bg-rest-wash [&>td]:border-rest' : 'hover:bg-well'} ${isStruck ? 'text-ink-soft' : ''}`}
+                className={`group ${onOpen ? 'cursor-pointer' : ''} ${open ? 'bg-rest-wash [&>td]:border-rest [&>td]:shadow-[inset_0_1px_0_var(--color-rest)]' : 'hover:bg-well'} ${isStruck ? 'text-ink-soft' : ''}`}
                 onClick={onOpen ? (event) => openUnlessLink(event, () => onOpen(row.original)) : undefined}
               >
                 {row.getAllCells().map((cell, index) => {
