@@ -1,5 +1,6 @@
 import { type ColumnDef, rowSortingFeature, type SortingState, tableFeatures, useTable } from '@tanstack/react-table';
-import { type ReactNode, useEffect, useMemo, useRef } from 'react';
+import { type KeyboardEvent, type ReactNode, type RefObject, useEffect, useMemo, useRef, useState } from 'react';
+import { Link, type To } from 'react-router-dom';
 import { useMessages } from '../lib/messages.ts';
 import { Button } from './button.tsx';
 import { RowsSkeleton } from './notice.tsx';
@@ -20,6 +21,10 @@ export interface LedgerColumn<Row> {
   quiet?: boolean;
   /** Stays as it is in a row that is struck through. */
   keep?: boolean;
+  /** The head is for a screen reader alone: the column of an arrow, say. */
+  headHidden?: boolean;
+  /** The order that the first press asks for. */
+  firstDown?: boolean;
 }
 
 interface Props<Row> {
@@ -33,20 +38,29 @@ interface Props<Row> {
   onSort?: (sort: string) => void;
   /** Opens the row: a click anywhere in it, or its first cell by keyboard. */
   onOpen?: (row: Row) => void;
+  /** Where the row leads, instead of `onOpen`: its first cell is a link, which opens in another tab too. */
+  to?: (row: Row) => To;
   openId?: string | null;
+  /** Rows that belong to the open one: a bar at their left edge. */
+  tied?: (row: Row) => boolean;
   /** Reversed entries and what reverses them. */
   struck?: (row: Row) => boolean;
   /** Keyset paging: more rows can be asked for. */
-  more?: { has: boolean; loading: boolean; load: () => void };
+  more?: { has: boolean; loading: boolean; load: () => void; label?: string; end?: ReactNode };
   /** The first page is on its way: rows of the same height stand in. */
   loading?: boolean;
+  /** `own`: fills its flex parent and scrolls in itself both ways, so that head and first column stay on a phone too. */
+  scroll?: 'page' | 'own';
+  /** The element around the table, for `focusRow`. */
+  region?: RefObject<HTMLDivElement | null>;
 }
 
 const features = tableFeatures({ rowSortingFeature });
 
 /**
  * A ledger: dense rows, a head and a first column that stay in view, figures right-aligned with their unit in the head.
- * Order, filter and pages are the server's; the table only shows and asks.
+ * Order, filter and pages are the server's; the table only shows and asks. One row is in the order of the Tab key: the
+ * arrow keys, Home and End go on from there, Enter opens.
  */
 export function LedgerTable<Row extends object>(props: Props<Row>) {
   const { caption, columns, rows, rowId, sort, onSort, onOpen, openId, struck, more, loading = false } = props;
@@ -77,9 +91,21 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
     state: { sorting },
   });
   const byId = useMemo(() => new Map(columns.map((column) => [column.id, column])), [columns]);
+  const ownRegion = useRef<HTMLDivElement>(null);
+  const region = props.region ?? ownRegion;
+  const keys = useRowKeys(props);
+  const own = props.scroll === 'own';
+  const opens = onOpen !== undefined || props.to !== undefined;
   return (
     // Only a table may scroll sideways; its first column stays.
-    <div className="relative -mx-[1.125rem] overflow-x-auto px-[1.125rem] desk:-mx-6 desk:px-6 lg:mx-0 lg:overflow-x-visible lg:px-0">
+    <div
+      ref={region}
+      className={
+        own
+          ? 'relative min-h-0 flex-1 overflow-auto overscroll-contain'
+          : 'relative -mx-[1.125rem] overflow-x-auto px-[1.125rem] desk:-mx-6 desk:px-6 lg:mx-0 lg:overflow-x-visible lg:px-0'
+      }
+    >
       <table className="w-full border-separate border-spacing-0 text-[0.9375rem]">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -93,20 +119,20 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
                     key={header.id}
                     scope="col"
                     aria-sort={direction === 'asc' ? 'ascending' : direction === 'desc' ? 'descending' : undefined}
-                    className={`type-label border-b border-ink bg-ground pr-4 text-[0.875rem] font-[550] whitespace-nowrap text-ink-soft lg:sticky lg:top-14 lg:z-2 ${column.figure ? 'text-right' : 'text-left'} ${index === 0 ? 'sticky left-0 z-1' : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
+                    className={`type-label border-b border-ink bg-ground pr-4 text-[0.875rem] font-[550] whitespace-nowrap text-ink-soft ${own ? `sticky top-0 ${index === 0 ? 'pl-[1.125rem] desk:pl-6' : ''}` : 'lg:sticky lg:top-14'} ${index === 0 ? 'z-3' : own ? 'z-2' : 'lg:z-2'} ${column.figure ? 'text-right' : 'text-left'} ${index === 0 ? 'sticky left-0' : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
                   >
                     {column.sort && onSort ? (
                       <button
                         type="button"
                         className={`inline-flex min-h-10 items-center gap-1 hover:text-ink ${direction ? 'text-ink' : ''}`}
-                        onClick={() => onSort(direction === 'asc' ? `-${column.sort}` : (column.sort as string))}
+                        onClick={() => onSort(nextSort(column, direction))}
                       >
                         <Head column={column} />
                         <span className="sr-only">{t('ui.table.sortBy', { column: column.head })}</span>
                         <SortMark direction={direction} />
                       </button>
                     ) : (
-                      <span className="inline-flex min-h-10 items-center">
+                      <span className={column.headHidden ? 'sr-only' : 'inline-flex min-h-10 items-center'}>
                         <Head column={column} />
                       </span>
                     )}
@@ -116,32 +142,34 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
             </tr>
           ))}
         </thead>
-        <tbody>
-          {table.getRowModel().rows.map((row) => {
+        <tbody onKeyDown={opens ? keys.onKeyDown : undefined} onFocus={opens ? keys.onFocus : undefined}>
+          {table.getRowModel().rows.map((row, position) => {
             const open = row.id === openId;
+            const tied = props.tied?.(row.original) ?? false;
             const isStruck = struck?.(row.original) ?? false;
             return (
               <tr
                 key={row.id}
                 aria-current={open || undefined}
-                className={`group ${onOpen ? 'cursor-pointer' : ''} ${open ? 'bg-rest-wash [&>td]:border-rest [&>td]:shadow-[inset_0_1px_0_var(--color-rest)]' : 'hover:bg-well'} ${isStruck ? 'text-ink-soft' : ''}`}
-                onClick={onOpen ? (event) => openUnlessLink(event, () => onOpen(row.original)) : undefined}
+                className={`group ${opens ? 'cursor-pointer' : ''} ${open ? 'bg-rest-wash [&>td]:border-rest [&>td]:shadow-[inset_0_1px_0_var(--color-rest)]' : 'hover:bg-well'} ${isStruck ? 'text-ink-soft' : ''}`}
+                onClick={opens ? openRow : undefined}
               >
                 {row.getAllCells().map((cell, index) => {
                   const column = byId.get(cell.column.id) as LedgerColumn<Row>;
                   return (
                     <td
                       key={cell.id}
-                      className={`h-10 border-b border-rule-faint py-1 pr-4 whitespace-nowrap ${column.figure ? 'text-right font-[600]' : ''} ${column.quiet ? 'text-ink-soft' : ''} ${isStruck && !column.keep ? 'line-through decoration-1' : ''} ${index === 0 ? `sticky left-0 z-1 ${open ? 'bg-rest-wash' : 'bg-ground group-hover:bg-well'}` : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
+                      className={`h-10 border-b border-rule-faint py-1 pr-4 whitespace-nowrap ${column.figure ? 'text-right font-[600]' : ''} ${column.quiet ? 'text-ink-soft' : ''} ${isStruck && !column.keep ? 'line-through decoration-1' : ''} ${index === 0 ? `sticky left-0 z-1 ${own ? 'pl-[1.125rem] desk:pl-6' : ''} ${open ? 'bg-rest-wash' : 'bg-ground group-hover:bg-well'} ${tied ? 'shadow-[inset_4px_0_0_var(--color-rest)]!' : ''}` : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
                     >
-                      {index === 0 && onOpen ? (
-                        <button
-                          type="button"
-                          className="min-h-8 min-w-8 text-left [text-decoration:inherit]"
-                          onClick={() => onOpen(row.original)}
+                      {index === 0 && opens ? (
+                        <Opener
+                          id={row.id}
+                          tabbable={keys.tabbable(row.id, position)}
+                          to={props.to?.(row.original)}
+                          onOpen={() => onOpen?.(row.original)}
                         >
                           {column.cell(row.original)}
-                        </button>
+                        </Opener>
                       ) : (
                         <table.FlexRender cell={cell} />
                       )}
@@ -154,7 +182,10 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
         </tbody>
       </table>
       {loading ? <RowsSkeleton rows={10} rowClass="h-10" /> : null}
-      {more?.has ? <More loading={more.loading} load={more.load} /> : null}
+      {more?.has ? <More {...more} root={own ? region : null} /> : null}
+      {more && !more.has && more.end ? (
+        <p className={`type-label sticky left-0 py-4 text-ink-soft ${own ? 'page-gutter' : ''}`}>{more.end}</p>
+      ) : null}
     </div>
   );
 }
@@ -175,32 +206,103 @@ function SortMark({ direction }: { direction: false | 'asc' | 'desc' }) {
   );
 }
 
-/** A link or button inside the row does its own work. */
-function openUnlessLink(event: React.MouseEvent, open: () => void): void {
+function nextSort<Row>({ sort, firstDown }: LedgerColumn<Row>, direction: false | 'asc' | 'desc'): string {
+  const down = direction === 'asc' || (direction === false && firstDown);
+  return down ? `-${sort}` : (sort as string);
+}
+
+function Opener({
+  id,
+  tabbable,
+  to,
+  onOpen,
+  children,
+}: {
+  id: string;
+  tabbable: boolean;
+  to: To | undefined;
+  onOpen: () => void;
+  children: ReactNode;
+}) {
+  const shared = {
+    'data-row': id,
+    tabIndex: tabbable ? 0 : -1,
+    className: 'inline-flex min-h-8 min-w-8 items-center text-left text-inherit no-underline [text-decoration:inherit]',
+  };
+  return to === undefined ? (
+    <button {...shared} type="button" onClick={onOpen}>
+      {children}
+    </button>
+  ) : (
+    <Link {...shared} to={to}>
+      {children}
+    </Link>
+  );
+}
+
+/** A press on a row is a press on its first cell, unless it hit another control or ended a selection of text. */
+function openRow(event: React.MouseEvent<HTMLTableRowElement>): void {
   if ((event.target as Element).closest('a, button, input, select')) return;
   if (window.getSelection()?.isCollapsed === false) return;
-  open();
+  const opener = event.currentTarget.querySelector<HTMLElement>('[data-row]');
+  opener?.focus({ preventScroll: true });
+  opener?.click();
+}
+
+/** Puts the focus back on a row, once what it opened is closed. */
+export function focusRow(region: HTMLElement | null, id: string): void {
+  region?.querySelector<HTMLElement>(`[data-row="${CSS.escape(id)}"]`)?.focus();
+}
+
+function useRowKeys<Row extends object>({ rows, rowId, openId, more }: Props<Row>) {
+  const [active, setActive] = useState<string | null>(null);
+  const has = (id: string | null | undefined) => id != null && rows.some((row) => rowId(row) === id);
+  const tabbed = has(active) ? active : has(openId) ? openId : null;
+  return {
+    tabbable: (id: string, position: number) => (tabbed == null ? position === 0 : tabbed === id),
+    onFocus: (event: React.FocusEvent) => {
+      const id = (event.target as HTMLElement).dataset.row;
+      if (id !== undefined) setActive(id);
+    },
+    onKeyDown: (event: KeyboardEvent<HTMLTableSectionElement>) => {
+      if (event.altKey || event.ctrlKey || event.metaKey) return;
+      const all = [...event.currentTarget.querySelectorAll<HTMLElement>('[data-row]')];
+      const at = all.indexOf(event.target as HTMLElement);
+      const next = { ArrowDown: at + 1, ArrowUp: at - 1, Home: 0, End: all.length - 1 }[event.key];
+      if (at === -1 || next === undefined) return;
+      event.preventDefault();
+      if (next >= all.length && more?.has && !more.loading) more.load();
+      all[Math.max(0, Math.min(next, all.length - 1))]?.focus();
+    },
+  };
 }
 
 /** Loads when it comes into view; a button too, for those who do not scroll. */
-function More({ loading, load }: { loading: boolean; load: () => void }) {
+function More({
+  loading,
+  load,
+  label,
+  root,
+}: NonNullable<Props<object>['more']> & { root: RefObject<HTMLDivElement | null> | null }) {
   const t = useMessages();
   const ref = useRef<HTMLDivElement>(null);
   const latest = useRef(load);
   latest.current = load;
+  // Watched anew after each page, so that a short page that leaves the end in view is followed by the next.
   useEffect(() => {
     const element = ref.current;
-    if (!element || typeof IntersectionObserver === 'undefined') return;
+    if (!element || loading || typeof IntersectionObserver === 'undefined') return;
     const observer = new IntersectionObserver(([entry]) => entry?.isIntersecting && latest.current(), {
+      root: root?.current ?? null,
       rootMargin: '0px 0px 400px 0px',
     });
     observer.observe(element);
     return () => observer.disconnect();
-  }, []);
+  }, [loading, root]);
   return (
-    <div ref={ref} className="sticky left-0 py-4">
+    <div ref={ref} className={`sticky left-0 py-4 ${root ? 'page-gutter' : ''}`}>
       <Button busy={loading} onClick={load}>
-        {t(loading ? 'ui.table.loadingMore' : 'ui.table.more')}
+        {loading ? t('ui.table.loadingMore') : (label ?? t('ui.table.more'))}
       </Button>
     </div>
   );

@@ -156,8 +156,8 @@ function WhyNot({ answer }: { answer: Exclude<ChargeAnswer, { is: 'done' }> }) {
 function focusField(pointer: string): void {
   const field = document.getElementsByName(pointer)[0];
   for (let up = field?.closest('details'); up; up = up.parentElement?.closest('details')) up.open = true;
-  field?.scrollIntoView({ block: 'center', behavior: 'smooth' });
-  field?.focus({ preventScroll: true });
+  // The browser brings what it focuses into view; `scroll-padding` keeps it clear of the bars.
+  field?.focus();
 }
 
 function beamOf(
