@@ -156,11 +156,13 @@ const BOOKS = `
 
   create function add_to_books(p_head firm_head, p_changes balance_change[]) returns void language plpgsql as $$
   begin
-    insert into balance as b (firm_id, place_key, refrigerant, place, place_id, place_as, mass_micrograms)
-      select p_head.firm_id, c.place_key, c.refrigerant, c.place, c.place_id, c.place_as, c.change_micrograms
+    -- The new balance and not the change, which the check on cylinders would refuse before it is added. The head is locked.
+    insert into balance (firm_id, place_key, refrigerant, place, place_id, place_as, mass_micrograms)
+      select p_head.firm_id, c.place_key, c.refrigerant, c.place, c.place_id, c.place_as,
+        c.before_micrograms + c.change_micrograms
       from unnest(p_changes) c
       on conflict (firm_id, place_key, refrigerant)
-        do update set mass_micrograms = b.mass_micrograms + excluded.mass_micrograms;
+        do update set mass_micrograms = excluded.mass_micrograms;
 
     insert into month_sum as m (firm_id, month, refrigerant, from_kind, to_kind, mass_micrograms, entry_count)
       select p_head.firm_id, e.booking_month, e.refrigerant, e.from_place || coalesce(':' || e.from_as, ''),
