@@ -43,12 +43,11 @@ export class SessionStore extends PgStore {
   }
 
   override get(sid: string, done: Done): void {
-    this.#pool
-      .query('SELECT sess FROM session WHERE sid = $1 AND expire >= $2', [keyOf(sid), utcText(this.#now())])
-      .then(
-        ({ rows }) => done(null, (rows[0]?.sess as SessionData | undefined) ?? null),
-        (error: unknown) => done(error),
-      );
+    const text = 'SELECT sess FROM session WHERE sid = $1 AND expire >= $2';
+    this.#pool.query({ name: 'session', text, values: [keyOf(sid), utcText(this.#now())] }).then(
+      ({ rows }) => done(null, (rows[0]?.sess as SessionData | undefined) ?? null),
+      (error: unknown) => done(error),
+    );
   }
 
   override set(sid: string, data: SessionData, done?: (error?: unknown) => void): void {
