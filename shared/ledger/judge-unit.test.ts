@@ -95,6 +95,12 @@ describe('full', () => {
     expect(added(longer, [full, refill('a', 9, 160, 'full')])).toEqual([['a', 'atmosphere:inferred', g(-160)]]);
     expect(added(longer, [full, refill('a', 10, 160, 'full')])).toEqual([]);
   });
+  it('is held against the first full charge also before somebody determined it', () => {
+    const determinedLater = unitRegister('U', null, { fullCharges: [fullCharge(1_290, day(10))] });
+    expect(added(determinedLater, [full, refill('a', 2, 160, 'full')])).toEqual([
+      ['a', 'atmosphere:inferred', g(-160)],
+    ]);
+  });
 });
 
 describe('a loss taken back', () => {
@@ -166,6 +172,15 @@ describe('a unit that was registered after its work', () => {
     const opening = { ...openedAt('U', 300), sequence: 2, occurredAt: day(2) };
     expect(added(U, [taken, opening])).toEqual([['opening-U', 'opening', g(600)]]);
     expect(replayUnit(U, [taken, opening]).state.book).toEqual({ 'R-410A': g(300) });
+  });
+});
+
+describe('what merely stands', () => {
+  it('keeps the group that brought it about, with the figure of now', () => {
+    const over = refill('over', 2, 120, 'moreThanFull');
+    const less = group('less', 3, { masses: [moved('U -> R1', 50)] });
+    const { standing } = replayUnit(U, [full, over, less]).state;
+    expect(standing).toMatchObject([{ code: 'bookAboveFullCharge', groupId: 'over', massMicrograms: g(70) }]);
   });
 });
 

@@ -96,9 +96,11 @@ describe('a closed month', () => {
     ledger.closeMonth('2026-12');
     ledger.post(group('late', 5, { masses: [moved('C1 -> U', 100)] }));
     ledger.post({ ...group('next', 6, { masses: [moved('C1 -> U', 50)] }), occurredAt: Date.UTC(2027, 1, 3) });
-    expect(ledger.entries.slice(-2).map(({ bookingMonth, late }) => [bookingMonth, late])).toEqual([
+    ledger.post({ ...group('open', 7, { masses: [moved('C1 -> U', 50)] }), occurredAt: Date.UTC(2027, 0, 3) });
+    expect(ledger.entries.slice(-3).map(({ bookingMonth, late }) => [bookingMonth, late])).toEqual([
       ['2027-01', true],
       ['2027-02', false],
+      ['2027-01', false],
     ]);
   });
 });

@@ -21,12 +21,20 @@ describe('the uncertainty of a scale', () => {
     const shifted = { ...FIVE_GRAM_SCALE, offsetG: 3 };
     expect(grossVarianceG2(shifted, 0n) - netVarianceG2(shifted, 0n)).toBeCloseTo(3, 12);
   });
-  it('of six weighed masses is 10 g exactly: 10 g are within, a microgram more is beyond', () => {
-    const six = Array.from({ length: 6 }, () => netVarianceG2(FIVE_GRAM_SCALE, g(90))).reduce((a, b) => a + b, 0);
-    expect(isBeyond(g(10), six)).toBe(false);
-    expect(isBeyond(g(-10), six)).toBe(false);
-    expect(isBeyond(g(10) + 1n, six)).toBe(true);
-  });
+  it.each([
+    [5, 6, 10],
+    [1, 6, 2],
+    [5, 54, 30],
+  ])(
+    'with d = %s g of %s weighed masses is %s g exactly: that much is within, a microgram more beyond',
+    (d, n, limitG) => {
+      const variance = netVarianceG2({ ...FIVE_GRAM_SCALE, resolutionG: d }, g(90));
+      const sum = Array.from({ length: n }, () => variance).reduce((a, b) => a + b, 0);
+      expect(isBeyond(g(limitG), sum)).toBe(false);
+      expect(isBeyond(g(-limitG), sum)).toBe(false);
+      expect(isBeyond(g(limitG) + 1n, sum)).toBe(true);
+    },
+  );
   it('leaves nothing within where nothing was weighed', () => {
     expect(isBeyond(0n, 0)).toBe(false);
     expect(isBeyond(1n, 0)).toBe(true);
