@@ -102,7 +102,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
       ref={region}
       className={
         own
-          ? 'relative min-h-0 flex-1 overflow-auto overscroll-contain'
+          ? 'relative min-h-0 flex-1 scroll-pt-12 overflow-auto overscroll-contain'
           : 'relative -mx-[1.125rem] overflow-x-auto px-[1.125rem] desk:-mx-6 desk:px-6 lg:mx-0 lg:overflow-x-visible lg:px-0'
       }
     >

@@ -16,16 +16,18 @@ interface Props {
   next?: ReactNode;
   /** A screen that is used with gloves on: 18 px text. */
   field?: boolean;
+  /** The page is as high as its place and its content scrolls in itself: a list beside a sheet. */
+  fill?: boolean;
   children: ReactNode;
 }
 
 /** A page: a slim head on a phone, a large title on a desk, and the next action where the thumb is. */
-export function Page({ title, tabTitle, lead, status, actions, next, field = false, children }: Props) {
+export function Page({ title, tabTitle, lead, status, actions, next, field = false, fill = false, children }: Props) {
   const t = useMessages();
   const online = useOnline();
   const inTab = tabTitle ?? (typeof title === 'string' ? title : '');
   return (
-    <div className={`flex flex-1 flex-col ${field ? 'field-screen' : ''}`}>
+    <div className={`flex flex-1 flex-col ${field ? 'field-screen' : ''} ${fill ? 'min-h-0 min-w-0' : ''}`}>
       <title>{inTab ? `${inTab} · Tarewright` : 'Tarewright'}</title>
       <div className="sticky top-0 z-10 border-b-2 border-ink bg-ground page-gutter desk:static desk:border-0 desk:bg-transparent">
         <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:items-end desk:pt-6">
@@ -41,7 +43,7 @@ export function Page({ title, tabTitle, lead, status, actions, next, field = fal
       </div>
       {lead ? <p className="page-gutter pt-3 text-ink-soft desk:pt-1">{lead}</p> : null}
       {actions ? <div className="page-gutter flex flex-wrap gap-x-5 pt-2 desk:hidden">{actions}</div> : null}
-      <div className="flex flex-1 flex-col pb-6">{children}</div>
+      <div className={`flex flex-1 flex-col ${fill ? 'min-h-0' : 'pb-6'}`}>{children}</div>
       {next ? (
         <div className="page-gutter sticky bottom-[calc(3.875rem+2px+env(safe-area-inset-bottom))] z-10 bg-linear-to-t from-ground from-75% to-transparent pt-5 pb-3 desk:static desk:bg-none desk:pb-8">
           <div className="desk:max-w-md">{next}</div>

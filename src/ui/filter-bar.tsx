@@ -1,0 +1,131 @@
+import { type ReactNode, useId } from 'react';
+import { useMedia } from '../lib/media.ts';
+import { useMessages } from '../lib/messages.ts';
+import { Chevron, type Choice } from './field.tsx';
+
+/**
+ * What a list is narrowed by: one ruled line of words on a desk, one line that opens on a phone. `summary` says there
+ * what is set; `end` stands at the right edge (search, download).
+ */
+export function FilterBar({ summary, end, children }: { summary: string; end?: ReactNode; children: ReactNode }) {
+  const t = useMessages();
+  const desk = useMedia('(width >= 48rem)');
+  if (desk) {
+    return (
+      <search
+        aria-label={t('ui.filter.title')}
+        className="page-gutter flex flex-wrap items-center gap-x-6 border-y border-rule"
+      >
+        {children}
+        {end ? <span className="ml-auto flex items-center gap-5">{end}</span> : null}
+      </search>
+    );
+  }
+  return (
+    <search aria-label={t('ui.filter.title')} className="border-b border-rule">
+      <details className="group">
+        <summary className="page-gutter relative flex min-h-12 items-center gap-3 pr-10!">
+          <span className="type-label text-ink-soft">{t('ui.filter.title')}</span>
+          <span className="min-w-0 truncate font-[600]">{summary}</span>
+          <Chevron className="right-5 transition-transform group-open:rotate-180" />
+        </summary>
+        <div className="page-gutter grid grid-cols-2 gap-x-4 pb-3">{children}</div>
+      </details>
+      {end ? <div className="page-gutter flex min-h-12 flex-wrap items-center gap-x-5">{end}</div> : null}
+    </search>
+  );
+}
+
+/** A word and what it is set to, in the line of the text; a native select, so the phone shows its own picker. */
+export function FilterSelect({
+  label,
+  value,
+  choices,
+  any,
+  onChange,
+}: {
+  label: string;
+  value: string;
+  choices: readonly Choice[];
+  /** The word for no filter. */
+  any: string;
+  onChange: (value: string) => void;
+}) {
+  const id = useId();
+  const missing = value !== '' && !choices.some((choice) => choice.value === value);
+  return (
+    <span className="flex min-w-0 items-center gap-1.5 max-desk:flex-col max-desk:items-stretch max-desk:gap-0 max-desk:pt-2">
+      <label htmlFor={id} className="type-label text-[0.9375rem] text-ink-soft">
+        {label}
+      </label>
+      <span className="relative flex min-w-0 max-desk:border-b-2 max-desk:border-edge">
+        <select
+          id={id}
+          value={value}
+          onChange={(event) => onChange(event.target.value)}
+          className="min-h-11 max-w-52 min-w-0 appearance-none truncate bg-ground pr-5 font-[620] [field-sizing:content] max-desk:w-full max-desk:max-w-none"
+        >
+          <option value="">{any}</option>
+          {missing ? <option value={value}>{value}</option> : null}
+          {choices.map((choice) => (
+            <option key={choice.value} value={choice.value}>
+              {choice.label}
+            </option>
+          ))}
+        </select>
+        <Chevron className="right-1" />
+      </span>
+    </span>
+  );
+}
+
+/** A filter that came with a link and is not in a choice: it can be taken away. */
+export function FilterTag({ label, remove, onRemove }: { label: string; remove: string; onRemove: () => void }) {
+  return (
+    <span className="inline-flex items-center font-[620]">
+      {label}
+      <button type="button" aria-label={remove} onClick={onRemove} className="grid size-11 place-items-center">
+        <svg aria-hidden="true" viewBox="0 0 10 10" className="size-2.5 stroke-current stroke-[1.6]">
+          <path d="M1 1l8 8M9 1L1 9" />
+        </svg>
+      </button>
+    </span>
+  );
+}
+
+/** Looks while typing pauses; the list under it follows. */
+export function SearchField({
+  label,
+  value,
+  onChange,
+}: {
+  label: string;
+  value: string;
+  onChange: (value: string) => void;
+}) {
+  const id = useId();
+  return (
+    <span className="relative flex min-w-0 items-center max-desk:flex-1">
+      <label htmlFor={id} className="sr-only">
+        {label}
+      </label>
+      <svg
+        aria-hidden="true"
+        viewBox="0 0 16 16"
+        className="pointer-events-none absolute left-0 size-4 fill-none stroke-ink-soft stroke-[1.8]"
+      >
+        <path d="M10.5 10.5L15 15M6.5 11.5a5 5 0 1 0 0-10a5 5 0 0 0 0 10z" />
+      </svg>
+      <input
+        id={id}
+        type="search"
+        value={value}
+        placeholder={label}
+        autoComplete="off"
+        spellCheck={false}
+        onChange={(event) => onChange(event.target.value)}
+        className="min-h-11 w-full min-w-0 border-b-2 border-edge bg-transparent pl-6 placeholder:text-ink-soft focus:border-ink desk:w-60"
+      />
+    </span>
+  );
+}
