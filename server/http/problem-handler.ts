@@ -13,6 +13,10 @@ export function problemHandler(parts: Parts): ErrorRequestHandler {
   return (error: unknown, req, res, next) => {
     const problem = problemOfError(error);
     if (problem.status >= 500) req.log.error({ err: problem.cause ?? problem }, 'request failed');
+    // What the database refuses, a schema or a rule should have refused first: somebody has to see it.
+    else if (problem.cause instanceof Error && problem.errors.length > 0) {
+      req.log.error({ err: problem.cause, code: problem.code }, 'refused by the database alone');
+    }
     if (res.headersSent) {
       next(error); // half an answer is on its way: Express closes the connection, so that it cannot pass for a whole one
       return;

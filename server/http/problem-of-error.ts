@@ -1,4 +1,4 @@
-import { Problem, problemOfRefusals } from './problem.ts';
+import { Problem } from './problem.ts';
 
 /**
  * What any thrown value means to the caller. The one place that knows the errors of the body reader and of PostgreSQL;
@@ -58,12 +58,20 @@ function problemOfDatabaseError(error: unknown): Problem | null {
     case '23505': // unique_violation
       return new Problem('alreadyExists', options);
     case '23503': // foreign_key_violation
-      return problemOfRefusals([{ code: 'notKnownHere', path: '' }]);
+      return new Problem('notKnownHere', { ...options, errors: [{ code: 'notKnownHere', path: '' }] });
     case '23001': // restrict_violation
       return new Problem('inUse', options);
     case '22021': // a character that the encoding cannot hold
     case '22P05':
-      return problemOfRefusals([{ code: 'textNotStorable', path: '' }]);
+      return new Problem('textNotStorable', { ...options, errors: [{ code: 'textNotStorable', path: '' }] });
+    case '22001': // too long, out of range, no number, no date, no such text, against a check: a schema let it through
+    case '22003':
+    case '22007':
+    case '22008':
+    case '22P02':
+    case '23502':
+    case '23514':
+      return new Problem('valueNotStorable', { ...options, errors: [{ code: 'valueNotStorable', path: '' }] });
     case '40001': // serialization_failure
     case '40P01': // deadlock_detected
     case '55P03': // lock_timeout
