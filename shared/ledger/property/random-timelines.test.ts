@@ -5,7 +5,7 @@ import { tareAt } from '../cylinder-state.ts';
 import { replayCylinder } from '../judge-cylinder.ts';
 import { replayUnit } from '../judge-unit.ts';
 import { LedgerBook } from '../ledger-book.ts';
-import { placeKey } from '../place.ts';
+import { type Place, placeKey } from '../place.ts';
 import { fullChargeAt } from '../unit-state.ts';
 import { naiveBooks } from './naive-books.ts';
 import { arriving, cylinderRegisters, type Event, randomTimeline, unitRegisters } from './random-timeline.ts';
@@ -15,6 +15,12 @@ const RUNS = 3_000;
 const FEWER_RUNS = 1_000;
 const TIMEOUT_MS = 120_000;
 const keys = fc.array(fc.integer({ min: 0, max: 1_000 }), { minLength: 30, maxLength: 30 });
+
+/**
+ * The naive books are doubles and split a mixed cylinder without rounding; the next reading multiplies what a microgram
+ * of rounding changed in the ratio. Where no mixed cylinder has a part the two agree to a tenth of a milligram.
+ */
+const toleranceG = ({ place }: Place): number => (place === 'unit' || place === 'atmosphere' ? 0.0001 : 0.05);
 
 /** A log with its registers as they stand after the revisions. */
 interface World {
@@ -184,7 +190,7 @@ describe('random timelines', () => {
             const other = naive[placeKey(place).replace(':', ' ')] ?? {};
             for (const refrigerant of new Set([...Object.keys(book), ...Object.keys(other)])) {
               const difference = (grams(book[refrigerant] ?? 0n) ?? 0) - (other[refrigerant] ?? 0);
-              expect(Math.abs(difference), `${placeKey(place)} ${refrigerant}`).toBeLessThan(0.001);
+              expect(Math.abs(difference), `${placeKey(place)} ${refrigerant}`).toBeLessThan(toleranceG(place));
             }
           }
         }),
