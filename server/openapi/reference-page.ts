@@ -8,6 +8,7 @@ const PAGE = `<!doctype html>
     <meta charset="utf-8" />
     <meta name="viewport" content="width=device-width, initial-scale=1" />
     <title>Tarewright API</title>
+    <link rel="icon" href="data:," />
     <link rel="stylesheet" href="/api/docs/swagger-ui.css" />
   </head>
   <body>

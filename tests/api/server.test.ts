@@ -54,6 +54,15 @@ describe('The server', () => {
     await server.close();
   });
 
+  it('is not ready for a database that lacks what this version reads', async () => {
+    await database.query('superuser', 'ALTER TABLE customer RENAME COLUMN note TO remark');
+    const behind = await fetch(`${server.address}/api/v1/ready`);
+    expect([behind.status, ((await behind.json()) as { code: string }).code]).toEqual([503, 'notReady']);
+    await database.query('superuser', 'ALTER TABLE customer RENAME COLUMN remark TO note');
+    expect((await fetch(`${server.address}/api/v1/ready`)).status).toBe(200);
+    await server.close();
+  });
+
   it('lets what is under way end before it stops, the mail behind an answer too, and then takes nothing more', async () => {
     const signingIn = post('/session', { email: OWNER.email, password: OWNER.password });
     const asked = await post('/session/password-reset', { email: OWNER.email });

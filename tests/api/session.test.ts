@@ -57,6 +57,14 @@ describe('Signing in', () => {
     });
   });
 
+  it('limits a reader to the sites given, and nobody who works for the firm', async () => {
+    const siteIds = [app.parts.newId()];
+    const reader = await app.signIn(await app.addPerson(['reader'], { siteIds }));
+    expect((await reader.get('/session')).body).toMatchObject({ siteIds, permissions: ['records:read'] });
+    const worker = await app.signIn(await app.addPerson(['reader', 'technician'], { siteIds }));
+    expect((await worker.get('/session')).body.siteIds).toBeNull();
+  });
+
   it('sets a cookie that scripts and other sites cannot use, with an id that was not there before', async () => {
     const planted = 'tarewright=s%3Aplanted.signature';
     const client = app.visitor();
