@@ -9,6 +9,7 @@ import { RouteProblem } from './app/route-problem.tsx';
  */
 const pages: RouteObject[] = [
   { path: 'charge', lazy: () => import('./features/charge/charge.route.tsx') },
+  { path: 'units/:unitId/charge', lazy: () => import('./features/charge/unit-charge.route.tsx') },
   { path: 'more', lazy: () => import('./features/session/more.route.tsx') },
   { path: 'preferences', lazy: () => import('./features/session/preferences.route.tsx') },
   { path: 'choose-firm', lazy: () => import('./features/session/choose-firm.route.tsx') },

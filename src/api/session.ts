@@ -1,11 +1,16 @@
 import { queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import { redirect } from 'react-router-dom';
+import type { z } from 'zod';
+import type { invitationPreview } from '../../shared/people/people.schema.ts';
 import type { Preferences, Session } from '../../shared/session/session.schema.ts';
 import type { Today } from '../../shared/today/today.schema.ts';
 import { forgetAllDrafts } from '../lib/draft.ts';
 import { changePreferences } from '../lib/preferences.ts';
 import { http, Problem } from './http.ts';
 import { queryClient } from './query-client.ts';
+import { todayQueries } from './today.ts';
+
+type InvitationPreview = z.output<typeof invitationPreview>;
 
 export const sessionQueries = {
   /** The session, or null for someone who is not signed in. */
@@ -56,13 +61,7 @@ export function placeAfterSignIn(to: string | null): string {
 /** The firm's mass on hand for the band; shares its answer with the Today page. */
 export function useOnHand(): Today['onHand'] | undefined {
   const signedIn = useSession() != null;
-  return useQuery({
-    queryKey: ['today'] as const,
-    queryFn: ({ signal }) => http.get<Today>('/today', { signal }),
-    select: (today) => today.onHand,
-    enabled: signedIn,
-    staleTime: 60_000,
-  }).data;
+  return useQuery({ ...todayQueries.today(), select: (today) => today.onHand, enabled: signedIn }).data;
 }
 
 export function useSignIn() {
@@ -118,9 +117,22 @@ export function useAcceptInvitation() {
   return useMutation({
     mutationFn: (body: { token: string; name: string; password: string }) =>
       http.post<Session | undefined>('/invitations/accept', body, { allowSignedOut: true }),
-    onSuccess: () => client.invalidateQueries({ queryKey: sessionQueries.current().queryKey }),
+    onSuccess: (session) => {
+      client.clear();
+      if (session) client.setQueryData(sessionQueries.current().queryKey, session);
+    },
   });
 }
+
+/** What a mailed invitation invites to; asked once, since the link may be used up at any time. */
+export const invitationQuery = (token: string) =>
+  queryOptions({
+    queryKey: ['invitation', token] as const,
+    queryFn: () => http.post<InvitationPreview>('/invitations/preview', { token }, { allowSignedOut: true }),
+    enabled: token !== '',
+    retry: false,
+    staleTime: Number.POSITIVE_INFINITY,
+  });
 
 export function useUpdateMe() {
   const client = useQueryClient();

@@ -125,6 +125,9 @@ export function formatsFor(preferences: Preferences) {
     tonnes: (co2eT: number) => `${formatNumber(locale, co2eT, 3, 3)}${NBSP}t`,
     /** `30 Nov 2026`; a calendar day as it stands (`2026-11-30`) is shown without a zone. */
     day: (day: string) => formatDate(locale, new Date(`${day}T12:00:00Z`), 'UTC', { dateStyle: 'medium' }),
+    /** A booking month (`2026-11`): `Nov 2026`. */
+    month: (month: string) =>
+      formatDate(locale, new Date(`${month}-15T12:00:00Z`), 'UTC', { month: 'short', year: 'numeric' }),
     /** `30 Nov, 16:12` on the clock of the place. */
     dateTime: (instant: string, timeZone?: string) =>
       formatDate(locale, new Date(instant), timeZone, {

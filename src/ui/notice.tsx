@@ -40,13 +40,13 @@ export function Empty({ title, children, action }: { title: ReactNode; children?
   );
 }
 
-/** A failure never looks like an empty list: it says so and offers another try. */
-export function Failed({ error, onRetry }: { error: unknown; onRetry?: () => void }) {
+/** A failure never looks like an empty list: it says so and offers another try. `title` where something was to be kept, not loaded. */
+export function Failed({ error, title, onRetry }: { error: unknown; title?: ReactNode; onRetry?: () => void }) {
   const t = useMessages();
   const message = error instanceof Error ? error.message : '';
   return (
     <div role="alert" className="flex max-w-prose flex-col items-start gap-3 border-l-4 border-ink py-2 pl-4">
-      <p className="font-[600]">{t('ui.failed')}</p>
+      <p className="font-[600]">{title ?? t('ui.failed')}</p>
       {message ? <p className="text-ink-soft">{message}</p> : null}
       {onRetry ? <Button onClick={onRetry}>{t('ui.tryAgain')}</Button> : null}
     </div>

@@ -17,7 +17,7 @@ export function Component() {
   const choose = useChooseFirm();
   return (
     <SessionPage title={t('session.firm.title')} lead={t('session.firm.lead')}>
-      {choose.isError ? <Failed error={choose.error} /> : null}
+      {choose.isError ? <Failed title={t('session.firm.failed')} error={choose.error} /> : null}
       <ul className="border-t border-rule">
         {session?.firms.map((firm) => (
           <li key={firm.id} className="border-b border-rule">

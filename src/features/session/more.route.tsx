@@ -45,7 +45,7 @@ export function Component() {
           </Link>
         ))}
       </nav>
-      {signOut.isError ? <Failed error={signOut.error} /> : null}
+      {signOut.isError ? <Failed title={t('session.notSignedOut')} error={signOut.error} /> : null}
       {session ? (
         <div className="flex flex-wrap gap-3">
           <Button busy={signOut.isPending} onClick={() => leave(false)}>

@@ -3,6 +3,7 @@ import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { changePreferences, preferencesFor, usePreferences } from '../../lib/preferences.ts';
 import { SelectField } from '../../ui/field.tsx';
 import { Done, Failed } from '../../ui/notice.tsx';
+import { ChangePassword } from './change-password.tsx';
 import { type Preferences, preferenceChoices } from './preference-choices.ts';
 import { SessionPage } from './session-page.tsx';
 
@@ -46,8 +47,9 @@ export function Component() {
           />
         ))}
       </div>
-      {update.isError ? <Failed error={update.error} /> : null}
+      {update.isError ? <Failed title={t('session.preferences.notSaved')} error={update.error} /> : null}
       {update.isSuccess ? <Done>{t('session.preferences.saved')}</Done> : null}
+      {session ? <ChangePassword /> : null}
     </SessionPage>
   );
 }
