@@ -28,7 +28,7 @@ const DOMAINS = `
   create domain month_text as text check (value ~ '^[0-9]{4}-(0[1-9]|1[0-2])$');
   create domain refrigerant_name as text check (value ~ '^R-[0-9A-Za-z()]{1,15}$');
   create domain decimal_text as text check (value ~ '^-?[0-9]{1,12}([.][0-9]{1,12})?$');
-  create domain mass_unit as text check (value in ('g', 'kg', 'oz', 'lb'));
+  create domain mass_unit as text check (value in ('g', 'kg', 't', 'oz', 'lb'));
   create domain sha256_hash as bytea check (octet_length(value) = 32);
   create domain jurisdiction as text check (value in ('US', 'EU'));
   create domain place_kind as text check (value in (

@@ -2,7 +2,7 @@ import { CHECKS, QUESTIONS } from './1764547200004-posting-checks.ts';
 import { ForwardOnlyMigration } from './forward-only-migration.ts';
 
 /**
- * The one way into the log: `post_records(texts, derived)`. See server/database/README.md for what the texts hold.
+ * The one way into the log: `post_records(texts, derived)`. shared/journal/record.schema.ts says what the texts hold.
  *
  * Set-based on purpose. A row trigger that updates head and balances is quadratic inside one transaction, because every
  * row version it makes is walked by the next.
