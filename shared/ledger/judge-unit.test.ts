@@ -97,7 +97,8 @@ describe('full', () => {
   });
   it('is held against the first full charge also before somebody determined it', () => {
     const determinedLater = unitRegister('U', null, { fullCharges: [fullCharge(1_290, day(10))] });
-    expect(added(determinedLater, [full, refill('a', 2, 160, 'full')])).toEqual([
+    const below = openedAt('U', 1_200);
+    expect(added(determinedLater, [below, refill('a', 2, 250, 'full')])).toEqual([
       ['a', 'atmosphere:inferred', g(-160)],
     ]);
   });
