@@ -1,6 +1,6 @@
 import type { CylinderRegister } from './cylinder-state.ts';
 import type { EmptyBy, HowKnown, UnitCondition } from './entry-group.schema.ts';
-import type { EnteredGroup, JudgedGroup, JudgedMass, JudgedReading, JudgedStatement } from './judged-group.ts';
+import type { JudgedGroup, JudgedMass, JudgedReading, JudgedStatement } from './judged-group.ts';
 import { cylinderPlace, type Place, type PlaceFields, toPlace, unitPlace } from './place.ts';
 import type { Scale } from './scale.ts';
 import type { DatedFullCharge, UnitRegister } from './unit-state.ts';
@@ -57,7 +57,6 @@ export function group(id: string, onDay: number, parts: Partial<JudgedGroup> = {
   const plain = { kind: 'refill' as const, jobId: null, chargeSheetId: null, readings: [], masses: [], statements: [] };
   return { id, sequence: onDay, occurredAt: day(onDay), ...plain, ...parts };
 }
-export const entered = (from: JudgedGroup): EnteredGroup => from;
 
 export const cylinderRegister = (cylinderId: string, over: Partial<CylinderRegister> = {}): CylinderRegister => ({
   cylinderId,
