@@ -135,7 +135,7 @@ export function SelectField({
           <select
             {...ids}
             {...select}
-            className={`w-full min-w-0 appearance-none truncate bg-transparent py-1 pr-8 pl-3 ${big ? 'type-narrow text-[1.125rem]' : ''} ${layout === 'row' ? 'text-right [text-align-last:right]' : ''}`}
+            className={`w-full min-w-0 appearance-none truncate bg-transparent py-1 pr-8 pl-3 ${big ? 'type-narrow text-[1.125rem]' : layout === 'row' ? 'type-label' : ''} ${layout === 'row' ? 'text-right [text-align-last:right]' : ''}`}
           >
             {placeholder === undefined ? null : <option value="">{placeholder}</option>}
             <Options choices={choices} groups={groups} />
@@ -209,7 +209,7 @@ export function ChoiceField({
         {choices.map((choice, index) => (
           <label
             key={choice.value}
-            className={`type-narrow relative flex min-h-12 flex-1 items-center justify-center border-edge px-3 py-1 text-center leading-tight has-checked:bg-ink has-checked:font-[600] has-checked:text-ground has-focus-visible:z-1 has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-ink ${index > 0 ? 'border-l' : ''}`}
+            className={`type-narrow relative flex min-h-12 flex-1 items-center justify-center border-edge px-2 py-1 text-center leading-tight has-checked:bg-ink has-checked:font-[600] has-checked:text-ground has-focus-visible:z-1 has-focus-visible:outline-3 has-focus-visible:outline-offset-2 has-focus-visible:outline-ink ${index > 0 ? 'border-l' : ''}`}
           >
             <input
               type="radio"

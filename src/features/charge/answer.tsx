@@ -1,6 +1,5 @@
 import { forwardRef } from 'react';
 import type { RoomLimitResponse } from '../../../shared/room-limit/room-limit.schema.ts';
-import { formatQuantity } from '../../../shared/units/format-quantity.ts';
 import { type Formats, useFormat } from '../../lib/format.ts';
 import { type Translate, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
@@ -12,6 +11,7 @@ import { readQuantity } from '../../ui/quantity-draft.ts';
 import type { ChargeDraft } from './charge-draft.ts';
 import { Co2 } from './co2.tsx';
 import { labelOfField } from './field-labels.ts';
+import { onScale } from './on-scale.ts';
 import { type ChargeAnswer, sayRefusal } from './use-charge.ts';
 
 interface Props {
@@ -69,7 +69,6 @@ function WhatToDo({ draft, result }: { draft: ChargeDraft; result: Extract<Charg
   const format = useFormat();
   const { locale } = usePreferences();
   const gross = readQuantity('mass', draft.cylinderGross, { locale });
-  const onScale = (massG: number) => formatQuantity('mass', massG, draft.cylinderGross.unit, { locale });
   const co2 =
     result.co2eT === null ? null : (
       <p className="type-label text-ink-soft">
@@ -102,12 +101,12 @@ function WhatToDo({ draft, result }: { draft: ChargeDraft; result: Extract<Charg
         {gross.is === 'read' && enough
           ? t('chargeScreen.weighInTo', {
               mass: format.mass(result.weighInG),
-              stop: onScale(gross.base - result.weighInG),
+              stop: onScale(gross, gross.base - result.weighInG, locale),
             })
           : t('chargeScreen.weighIn', { mass: format.mass(result.weighInG) })}
       </p>
       {gross.is === 'read' && !enough ? (
-        <p className="font-[600]">{t('chargeScreen.notEnough', { mass: onScale(gross.base) })}</p>
+        <p className="font-[600]">{t('chargeScreen.notEnough', { mass: onScale(gross, gross.base, locale) })}</p>
       ) : null}
       {co2}
     </>
@@ -177,16 +176,16 @@ function beamOf(
   const extraG = result.totalG - factoryG;
   const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(massG) }) });
   const maxTotalG = request.basis.limits?.maxTotalChargeG ?? null;
-  const roomStop = room && room.limitG !== null && room.verdict !== 'noCheckNeeded' ? room.limitG : null;
+  const roomStop = room && room.limitG !== null && room.verdict !== 'noCheckNeeded' ? Math.floor(room.limitG) : null;
   const total = said('chargeScreen.beam.total', result.totalG);
   const stops = [
     ...(roomStop === null ? [] : [said('chargeScreen.beam.room', roomStop)]),
     ...(maxTotalG === null ? [] : [said('chargeScreen.beam.maxTotal', maxTotalG)]),
   ];
   const noCheckUpTo =
-    noRoomCheckUpToG === null || roomStop === noRoomCheckUpToG
+    noRoomCheckUpToG === null || roomStop === Math.floor(noRoomCheckUpToG)
       ? null
-      : said('chargeScreen.beam.noCheck', Math.round(noRoomCheckUpToG));
+      : said('chargeScreen.beam.noCheck', Math.floor(noRoomCheckUpToG));
   const factory = said('chargeScreen.beam.factory', factoryG);
   const extra = {
     massG: extraG,

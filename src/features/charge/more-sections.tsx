@@ -10,6 +10,7 @@ import { useChargeForm, useOpen } from './charge-form.ts';
 import { Co2 } from './co2.tsx';
 import { CountField } from './count-field.tsx';
 import { GWP_SET_CHOICES } from './fixed-choices.ts';
+import { onScale } from './on-scale.ts';
 import { usePipeChoices } from './pipe-choices.ts';
 import { PipeList } from './pipe-list.tsx';
 import { QuantityField } from './quantity-field.tsx';
@@ -168,7 +169,6 @@ export function LimitsSection() {
 /** The cylinder as it stands on the scale, so that the screen can say where to close it. */
 export function ScaleSection({ children }: { children?: React.ReactNode }) {
   const t = useMessages();
-  const format = useFormat();
   const { locale } = usePreferences();
   const { draft, set } = useChargeForm();
   const [open, setOpen] = useOpen(false);
@@ -176,7 +176,7 @@ export function ScaleSection({ children }: { children?: React.ReactNode }) {
   return (
     <Disclosure
       title={t('chargeScreen.scale')}
-      summary={gross.is === 'read' ? format.mass(gross.base) : t('chargeScreen.notGiven')}
+      summary={gross.is === 'read' ? onScale(gross, gross.base, locale) : t('chargeScreen.notGiven')}
       open={open}
       onToggle={setOpen}
     >
@@ -210,7 +210,6 @@ export function Co2Section() {
       onToggle={setOpen}
     >
       <SelectField
-        layout="row"
         label={t('chargeScreen.gwpSet')}
         choices={GWP_SET_CHOICES.map((value) => ({ value, label: t(`chargeScreen.gwpSet.${value}`) }))}
         value={draft.gwpSet}

@@ -4,9 +4,9 @@ import { Button } from '../../ui/button.tsx';
 import { FieldError, SelectField, TextField } from '../../ui/field.tsx';
 import { emptyPipe, fieldUnits, nextPipeName, type PipeDraft } from './charge-draft.ts';
 import { useChargeForm } from './charge-form.ts';
+import { ListRow } from './list-row.tsx';
 import { type PipeChoices, usePipeChoices } from './pipe-choices.ts';
 import { QuantityField } from './quantity-field.tsx';
-import { RemoveButton } from './remove-button.tsx';
 
 /** The pipes of a line set, each with the one that it comes off. */
 export function PipeList({
@@ -73,8 +73,16 @@ function PipeRow({
   const t = useMessages();
   const { setRow, removeRow, errorAt } = useChargeForm();
   const named = others.filter((other) => other.name.trim() !== '');
+  const remove = () => {
+    removeRow(list, pipe.key);
+    for (const other of others) if (other.parent === pipe.name.trim()) setRow(list, other.key, { parent: '' });
+  };
   return (
-    <li className={`relative border-b border-rule-faint py-2 ${removable ? 'pr-12' : ''}`}>
+    <ListRow
+      title={t('chargeScreen.pipeNamed', { name: pipe.name })}
+      what={t('chargeScreen.pipeNamed', { name: pipe.name })}
+      onRemove={removable ? remove : undefined}
+    >
       <TextField
         layout="row"
         label={t('chargeScreen.pipeName')}
@@ -114,15 +122,6 @@ function PipeRow({
         draft={pipe.length}
         onChange={(length) => setRow(list, pipe.key, { length })}
       />
-      {removable ? (
-        <RemoveButton
-          what={t('chargeScreen.pipeNamed', { name: pipe.name })}
-          onClick={() => {
-            removeRow(list, pipe.key);
-            for (const other of others) if (other.parent === pipe.name.trim()) setRow(list, other.key, { parent: '' });
-          }}
-        />
-      ) : null}
-    </li>
+    </ListRow>
   );
 }

@@ -6,9 +6,9 @@ import { emptyQuantity } from '../../ui/quantity-draft.ts';
 import { BOUNDS } from './bounds.ts';
 import { fieldUnits, rowKey } from './charge-draft.ts';
 import { useChargeForm } from './charge-form.ts';
-import { usePipeChoices } from './pipe-choices.ts';
+import { ListRow } from './list-row.tsx';
+import { pipeName, usePipeChoices } from './pipe-choices.ts';
 import { QuantityField } from './quantity-field.tsx';
-import { RemoveButton } from './remove-button.tsx';
 
 /** The manual's rate in the form in which this manual gives it. */
 export function RateFields() {
@@ -50,7 +50,12 @@ function RateBySize() {
   return (
     <RowList title={t('chargeScreen.rateBySize')} error={errorAt('/basis/rate/sizes')}>
       {draft.sizes.map((row, index) => (
-        <li key={row.key} className="relative border-b border-rule-faint py-1 pr-12">
+        <ListRow
+          key={row.key}
+          title={row.od === '' ? t('chargeScreen.rateOfSize') : pipeName(Number(row.od), preferences)}
+          what={t('chargeScreen.rateOfSize')}
+          onRemove={() => removeRow('sizes', row.key)}
+        >
           <SelectField
             layout="row"
             label={t('chargeScreen.liquidPipe')}
@@ -69,8 +74,7 @@ function RateBySize() {
             draft={row.rate}
             onChange={(rate) => setRow('sizes', row.key, { rate })}
           />
-          <RemoveButton what={t('chargeScreen.rateOfSize')} onClick={() => removeRow('sizes', row.key)} />
-        </li>
+        </ListRow>
       ))}
       <li>
         <Button
@@ -93,7 +97,12 @@ function Brackets() {
   return (
     <RowList title={t('chargeScreen.brackets')} error={errorAt('/basis/rate/steps')}>
       {draft.brackets.map((row, index) => (
-        <li key={row.key} className="relative border-b border-rule-faint py-1 pr-12">
+        <ListRow
+          key={row.key}
+          title={`${t('chargeScreen.bracket')} ${index + 1}`}
+          what={`${t('chargeScreen.bracket')} ${index + 1}`}
+          onRemove={() => removeRow('brackets', row.key)}
+        >
           <QuantityField
             kind="length"
             big={false}
@@ -111,8 +120,7 @@ function Brackets() {
             draft={row.extra}
             onChange={(extra) => setRow('brackets', row.key, { extra })}
           />
-          <RemoveButton what={t('chargeScreen.bracket')} onClick={() => removeRow('brackets', row.key)} />
-        </li>
+        </ListRow>
       ))}
       <li>
         <Button

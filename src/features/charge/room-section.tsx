@@ -12,8 +12,8 @@ import { emptyQuantity, readQuantity } from '../../ui/quantity-draft.ts';
 import { type ChargeDraft, fieldUnits, rowKey } from './charge-draft.ts';
 import { useChargeForm, useOpen } from './charge-form.ts';
 import { MOUNTING_CHOICES, ROOM_STANDARD_CHOICES } from './fixed-choices.ts';
+import { ListRow } from './list-row.tsx';
 import { QuantityField } from './quantity-field.tsx';
-import { RemoveButton } from './remove-button.tsx';
 
 /** The smallest room served, for flammable refrigerants. The manual's own table comes first. */
 export function RoomSection() {
@@ -49,7 +49,6 @@ export function RoomSection() {
         onChange={(event) => set('mounting', event.target.value as ChargeDraft['mounting'])}
       />
       <SelectField
-        layout="row"
         label={t('chargeScreen.room.standard')}
         choices={ROOM_STANDARD_CHOICES.map((value) => ({ value, label: value }))}
         value={draft.roomStandard}
@@ -58,7 +57,12 @@ export function RoomSection() {
       <p className="type-label py-1 text-ink-soft">{t('chargeScreen.room.hint')}</p>
       <ul className="border-t border-rule">
         {draft.roomTable.map((row, index) => (
-          <li key={row.key} className="relative border-b border-rule-faint py-1 pr-12">
+          <ListRow
+            key={row.key}
+            title={`${t('chargeScreen.room.tableRow')} ${index + 1}`}
+            what={`${t('chargeScreen.room.tableRow')} ${index + 1}`}
+            onRemove={() => removeRow('roomTable', row.key)}
+          >
             <QuantityField
               kind="mass"
               big={false}
@@ -75,8 +79,7 @@ export function RoomSection() {
               draft={row.area}
               onChange={(value) => setRow('roomTable', row.key, { area: value })}
             />
-            <RemoveButton what={t('chargeScreen.room.tableRow')} onClick={() => removeRow('roomTable', row.key)} />
-          </li>
+          </ListRow>
         ))}
       </ul>
       <Button
@@ -104,10 +107,13 @@ export function RoomVerdict({ room, totalG }: { room: RoomLimitResponse; totalG:
   const area = (areaM2: number) => formatQuantity('area', areaM2, length === 'ft' ? 'ft2' : 'm2', { locale });
   const text = t(`chargeScreen.room.verdict.${room.verdict}`, {
     total: format.mass(totalG),
-    limit: room.limitG === null ? '' : format.mass(room.limitG),
+    // Downwards: a limit that is shown may be charged up to.
+    limit: room.limitG === null ? '' : format.mass(Math.floor(room.limitG)),
     area: room.minimumAreaM2 === null ? '' : area(room.minimumAreaM2),
   });
-  const clause = room.clause.startsWith('manualTable') ? t('chargeScreen.room.byManual') : room.clause;
+  const clause = room.clause.startsWith('manualTable')
+    ? t('chargeScreen.room.byManual')
+    : room.clause.replaceAll(' x ', ' × ');
   const basis = `${clause}${room.status === 'toBeConfirmed' ? `; ${t('chargeScreen.room.toBeConfirmed')}` : ''}`;
   if (room.verdict === 'over') {
     return (

@@ -9,8 +9,8 @@ import { type ChargeDraft, fieldUnits, rowKey } from './charge-draft.ts';
 import { useChargeForm, useOpen } from './charge-form.ts';
 import { CountField } from './count-field.tsx';
 import { RATE_KIND_CHOICES, SCOPE_CHOICES } from './fixed-choices.ts';
+import { ListRow } from './list-row.tsx';
 import { QuantityField } from './quantity-field.tsx';
-import { RemoveButton } from './remove-button.tsx';
 
 /** How this manual gives its rule: kind of rate, what the pre-charge serves, allowances, rounding, and where it says so. */
 export function RuleSection() {
@@ -108,7 +108,12 @@ function Allowances() {
         {draft.allowances.map((row, index) => {
           const at = `/basis/allowances/${index}`;
           return (
-            <li key={row.key} className="relative border-b border-rule-faint py-1 pr-12">
+            <ListRow
+              key={row.key}
+              title={row.label.trim() || `${t('chargeScreen.allowance')} ${index + 1}`}
+              what={row.label.trim() || `${t('chargeScreen.allowance')} ${index + 1}`}
+              onRemove={() => removeRow('allowances', row.key)}
+            >
               <TextField
                 layout="row"
                 label={t('chargeScreen.allowance.label')}
@@ -143,11 +148,7 @@ function Allowances() {
                 whole={false}
                 onChange={(factor) => setRow('allowances', row.key, { factor })}
               />
-              <RemoveButton
-                what={row.label.trim() || t('chargeScreen.allowance')}
-                onClick={() => removeRow('allowances', row.key)}
-              />
-            </li>
+            </ListRow>
           );
         })}
       </ul>
