@@ -18,6 +18,8 @@ export type Query = <Row extends pg.QueryResultRow = pg.QueryResultRow>(
 /** Plain SQL as the application's role, in transactions that carry who asks. */
 export function connect(database: Pick<TestDatabase, 'urls'>, role: 'app' | 'jobs' | 'owner' = 'app') {
   const pool = new pg.Pool({ connectionString: database.urls[role], max: 12 });
+  // The database may be dropped while a connection that was ended is still closing.
+  pool.on('connect', (client) => client.on('error', () => undefined));
   return {
     pool,
     close: () => pool.end(),

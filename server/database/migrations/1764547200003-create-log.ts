@@ -247,6 +247,7 @@ const GROUP_PARTS = `
 
 /** Kept by post_records alone, in the transaction that posts. A fresh aggregate over the entries gives the same. */
 const BOOKS = `
+  -- Pages partly empty: these rows are updated in place.
   -- place_key as shared/ledger/place.ts writes it: cylinder:<id>, atmosphere:hose, missing.
   create table balance (
     firm_id uuid not null,
@@ -259,7 +260,7 @@ const BOOKS = `
     constraint balance_pkey primary key (firm_id, place_key, refrigerant),
     constraint balance_place_key_check check (place_key = place || coalesce(':' || place_id::text, ':' || place_as, '')),
     constraint balance_cylinder_check check (place <> 'cylinder' or mass_micrograms >= 0)
-  );
+  ) with (fillfactor = 70);
   create index balance_place_idx on balance (firm_id, place, place_id);
 
   create table month_sum (
@@ -271,7 +272,7 @@ const BOOKS = `
     mass_micrograms bigint not null,
     entry_count bigint not null,
     constraint month_sum_pkey primary key (firm_id, month, refrigerant, from_kind, to_kind)
-  );
+  ) with (fillfactor = 70);
 
   -- What the judge (shared/ledger) made of a place: a snapshot to start from, and whether a unit's book is known.
   create table place_state (
@@ -284,7 +285,7 @@ const BOOKS = `
     sequence bigint not null,
     constraint place_state_pkey primary key (firm_id, place, place_id),
     constraint place_state_place_check check (place in ('cylinder', 'unit'))
-  );
+  ) with (fillfactor = 70);
 
   create table flag (
     firm_id uuid not null,

@@ -69,7 +69,14 @@ const JOURNAL = `
 /** Every column is taken from the chained text itself, so that the two cannot differ. */
 const GROUPS = `
   create function insert_groups(p_head firm_head, p_docs jsonb[]) returns void language plpgsql as $$
+  declare
+    v_readings boolean;
+    v_statements boolean;
+    v_documents boolean;
   begin
+    select bool_or(doc -> 'readings' <> '[]'), bool_or(doc -> 'statements' <> '[]'), bool_or(doc -> 'documents' <> '[]')
+      into v_readings, v_statements, v_documents from unnest(p_docs) d(doc) where doc ->> 'type' = 'group';
+
     insert into entry_group (firm_id, id, sequence, kind, unit_id, site_id, job_id, charge_sheet_id, supervised_by,
         occurred_at, recorded_at, recorded_by, regulatory_day, zone_data_version, device_sent_at, device_skew_seconds,
         open_weigh_in, closes_group_id, reverses_group_id, replaces_group_id, answers_group_id, request_hash, reason)
@@ -84,30 +91,36 @@ const GROUPS = `
         doc ->> 'reason'
       from unnest(p_docs) with ordinality d(doc, n) where doc ->> 'type' = 'group' order by n;
 
-    insert into reading (firm_id, id, group_id, sequence, cylinder_id, tool_id, read_at, moment, mode, typed_value,
-        typed_unit, mass_micrograms, hose_full, hose_value, hose_unit, hose_micrograms, resolution_g, repeatability_g,
-        span_error_relative, offset_g)
-      select p_head.firm_id, (r ->> 'id')::uuid, (doc ->> 'id')::uuid, p_head.sequence + n, (r ->> 'cylinderId')::uuid,
-        (r ->> 'toolId')::uuid, coalesce(r ->> 'at', doc ->> 'occurredAt')::timestamptz, r ->> 'moment', r ->> 'mode',
-        r ->> 'value', r ->> 'unit', (r ->> 'massMicrograms')::bigint, (r ->> 'hoseFull')::boolean,
-        r #>> '{hose,value}', r #>> '{hose,unit}', (r ->> 'hoseMicrograms')::bigint,
-        (r #>> '{scale,resolutionG}')::double precision, (r #>> '{scale,repeatabilityG}')::double precision,
-        (r #>> '{scale,spanErrorRelative}')::double precision, (r #>> '{scale,offsetG}')::double precision
-      from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'readings') r
-      where doc ->> 'type' = 'group' order by n;
+    if v_readings then
+      insert into reading (firm_id, id, group_id, sequence, cylinder_id, tool_id, read_at, moment, mode, typed_value,
+          typed_unit, mass_micrograms, hose_full, hose_value, hose_unit, hose_micrograms, resolution_g, repeatability_g,
+          span_error_relative, offset_g)
+        select p_head.firm_id, (r ->> 'id')::uuid, (doc ->> 'id')::uuid, p_head.sequence + n, (r ->> 'cylinderId')::uuid,
+          (r ->> 'toolId')::uuid, coalesce(r ->> 'at', doc ->> 'occurredAt')::timestamptz, r ->> 'moment', r ->> 'mode',
+          r ->> 'value', r ->> 'unit', (r ->> 'massMicrograms')::bigint, (r ->> 'hoseFull')::boolean,
+          r #>> '{hose,value}', r #>> '{hose,unit}', (r ->> 'hoseMicrograms')::bigint,
+          (r #>> '{scale,resolutionG}')::double precision, (r #>> '{scale,repeatabilityG}')::double precision,
+          (r #>> '{scale,spanErrorRelative}')::double precision, (r #>> '{scale,offsetG}')::double precision
+        from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'readings') r
+        where doc ->> 'type' = 'group' order by n;
+    end if;
 
-    insert into statement (firm_id, group_id, ordinal, sequence, unit_id, condition, shown_by, occurred_at)
-      select p_head.firm_id, (doc ->> 'id')::uuid, o, p_head.sequence + n, (s ->> 'id')::uuid, s ->> 'is', s ->> 'by',
-        (doc ->> 'occurredAt')::timestamptz
-      from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'statements') with ordinality a(s, o)
-      where doc ->> 'type' = 'group' order by n, o;
+    if v_statements then
+      insert into statement (firm_id, group_id, ordinal, sequence, unit_id, condition, shown_by, occurred_at)
+        select p_head.firm_id, (doc ->> 'id')::uuid, o, p_head.sequence + n, (s ->> 'id')::uuid, s ->> 'is', s ->> 'by',
+          (doc ->> 'occurredAt')::timestamptz
+        from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'statements') with ordinality a(s, o)
+        where doc ->> 'type' = 'group' order by n, o;
+    end if;
 
-    insert into group_document (firm_id, group_id, ordinal, kind, number, dated, refrigerant, mass_micrograms,
-        typed_value, typed_unit)
-      select p_head.firm_id, (doc ->> 'id')::uuid, o, m ->> 'kind', m ->> 'number', (m ->> 'date')::date,
-        m ->> 'refrigerant', (m ->> 'massMicrograms')::bigint, m #>> '{typed,value}', m #>> '{typed,unit}'
-      from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'documents') with ordinality a(m, o)
-      where doc ->> 'type' = 'group' order by n, o;
+    if v_documents then
+      insert into group_document (firm_id, group_id, ordinal, kind, number, dated, refrigerant, mass_micrograms,
+          typed_value, typed_unit)
+        select p_head.firm_id, (doc ->> 'id')::uuid, o, m ->> 'kind', m ->> 'number', (m ->> 'date')::date,
+          m ->> 'refrigerant', (m ->> 'massMicrograms')::bigint, m #>> '{typed,value}', m #>> '{typed,unit}'
+        from unnest(p_docs) with ordinality d(doc, n), jsonb_array_elements(doc -> 'documents') with ordinality a(m, o)
+        where doc ->> 'type' = 'group' order by n, o;
+    end if;
   end $$;
 `;
 
@@ -137,8 +150,9 @@ const ENTRIES = `
 `;
 
 const BOOKS = `
-  create function balance_changes(p_head firm_head) returns balance_change[] language sql stable as $$
-    select coalesce(array_agg(
+  create function balance_changes(p_head firm_head) returns balance_change[] language plpgsql stable as $$
+  begin
+    return (select coalesce(array_agg(
         row(c.place_key, c.refrigerant, c.place, c.id, c.place_as, coalesce(b.mass_micrograms, 0), c.change)::balance_change
         order by c.place_key, c.refrigerant), '{}')
       from (
@@ -151,8 +165,8 @@ const BOOKS = `
           where e.firm_id = p_head.firm_id and e.sequence > p_head.sequence
           group by p.place, p.id, p.place_as, e.refrigerant) c
       left join lateral (select x.mass_micrograms from balance x
-        where x.firm_id = p_head.firm_id and x.place_key = c.place_key and x.refrigerant = c.refrigerant offset 0) b on true
-  $$;
+        where x.firm_id = p_head.firm_id and x.place_key = c.place_key and x.refrigerant = c.refrigerant offset 0) b on true);
+  end $$;
 
   create function add_to_books(p_head firm_head, p_changes balance_change[]) returns void language plpgsql as $$
   begin
@@ -181,42 +195,48 @@ const DERIVED = `
   declare
     v_wrong jsonb;
   begin
-    insert into place_state as s (firm_id, place, place_id, known, state, last_occurred_at, sequence)
-      select p_head.firm_id, d.place, d.id, d.known, coalesce(d.state, '{}'), d."lastOccurredAt",
-        p_head.sequence + p_record_count
-      from jsonb_to_recordset(p_derived -> 'placeStates')
-        d(place text, id uuid, known boolean, state jsonb, "lastOccurredAt" timestamptz)
-      on conflict (firm_id, place, place_id) do update
-        set known = excluded.known, state = excluded.state, last_occurred_at = excluded.last_occurred_at,
-          sequence = excluded.sequence;
+    if p_derived ? 'placeStates' then
+      insert into place_state as s (firm_id, place, place_id, known, state, last_occurred_at, sequence)
+        select p_head.firm_id, d.place, d.id, d.known, coalesce(d.state, '{}'), d."lastOccurredAt",
+          p_head.sequence + p_record_count
+        from jsonb_to_recordset(p_derived -> 'placeStates')
+          d(place text, id uuid, known boolean, state jsonb, "lastOccurredAt" timestamptz)
+        on conflict (firm_id, place, place_id) do update
+          set known = excluded.known, state = excluded.state, last_occurred_at = excluded.last_occurred_at,
+            sequence = excluded.sequence;
+    end if;
 
-    insert into flag (firm_id, id, code, subject_kind, subject_id, group_id, refrigerant, mass_micrograms, figures,
-        standing, opened_at, opened_by_group_id)
-      select p_head.firm_id, f.id, f.code, f."subjectKind", f."subjectId", f."groupId", f.refrigerant,
-        f."massMicrograms", coalesce(f.figures, '{}'), f.standing, f.at, f."openedByGroupId"
-      from jsonb_to_recordset(p_derived -> 'flagsOpened')
-        f(id uuid, code text, "subjectKind" text, "subjectId" uuid, "groupId" uuid, refrigerant text,
-          "massMicrograms" bigint, figures jsonb, standing boolean, at timestamptz, "openedByGroupId" uuid);
-    update flag set mass_micrograms = f."massMicrograms", figures = coalesce(f.figures, '{}')
-      from jsonb_to_recordset(p_derived -> 'flagsChanged') f(id uuid, "massMicrograms" bigint, figures jsonb)
-      where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;
-    update flag set closed_at = f.at, closed_by_group_id = f."closedByGroupId"
-      from jsonb_to_recordset(p_derived -> 'flagsClosed') f(id uuid, at timestamptz, "closedByGroupId" uuid)
-      where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;
+    if p_derived ?| array['flagsOpened', 'flagsChanged', 'flagsClosed'] then
+      insert into flag (firm_id, id, code, subject_kind, subject_id, group_id, refrigerant, mass_micrograms, figures,
+          standing, opened_at, opened_by_group_id)
+        select p_head.firm_id, f.id, f.code, f."subjectKind", f."subjectId", f."groupId", f.refrigerant,
+          f."massMicrograms", coalesce(f.figures, '{}'), f.standing, f.at, f."openedByGroupId"
+        from jsonb_to_recordset(p_derived -> 'flagsOpened')
+          f(id uuid, code text, "subjectKind" text, "subjectId" uuid, "groupId" uuid, refrigerant text,
+            "massMicrograms" bigint, figures jsonb, standing boolean, at timestamptz, "openedByGroupId" uuid);
+      update flag set mass_micrograms = f."massMicrograms", figures = coalesce(f.figures, '{}')
+        from jsonb_to_recordset(p_derived -> 'flagsChanged') f(id uuid, "massMicrograms" bigint, figures jsonb)
+        where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;
+      update flag set closed_at = f.at, closed_by_group_id = f."closedByGroupId"
+        from jsonb_to_recordset(p_derived -> 'flagsClosed') f(id uuid, at timestamptz, "closedByGroupId" uuid)
+        where flag.firm_id = p_head.firm_id and flag.id = f.id and flag.closed_at is null;
+    end if;
 
-    insert into personal_text (firm_id, id, record_id, field, salt, content, hash)
-      select p_head.firm_id, t.id, t."recordId", t.field, decode(t.salt, 'hex'), t.content,
-        sha256(decode(t.salt, 'hex') || convert_to(t.content, 'UTF8'))
-      from jsonb_to_recordset(p_derived -> 'texts')
-        t(id uuid, "recordId" uuid, field text, salt text, content text);
-    select jsonb_build_object('id', t.id, 'recordId', t.record_id) into v_wrong
-      from jsonb_to_recordset(p_derived -> 'texts') d(id uuid)
-      cross join lateral (select x.id, x.record_id, x.hash from personal_text x
-        where x.firm_id = p_head.firm_id and x.id = d.id offset 0) t
-      cross join lateral (select x.sequence, x.content from journal_record x
-        where x.firm_id = p_head.firm_id and x.record_id = t.record_id offset 0) j
-      where j.sequence <= p_head.sequence or position(encode(t.hash, 'hex') in j.content) = 0 limit 1;
-    if found then perform refuse('TW017', 'text_hash_in_record', v_wrong); end if;
+    if p_derived ? 'texts' then
+      insert into personal_text (firm_id, id, record_id, field, salt, content, hash)
+        select p_head.firm_id, t.id, t."recordId", t.field, decode(t.salt, 'hex'), t.content,
+          sha256(decode(t.salt, 'hex') || convert_to(t.content, 'UTF8'))
+        from jsonb_to_recordset(p_derived -> 'texts')
+          t(id uuid, "recordId" uuid, field text, salt text, content text);
+      select jsonb_build_object('id', t.id, 'recordId', t.record_id) into v_wrong
+        from jsonb_to_recordset(p_derived -> 'texts') d(id uuid)
+        cross join lateral (select x.id, x.record_id, x.hash from personal_text x
+          where x.firm_id = p_head.firm_id and x.id = d.id offset 0) t
+        cross join lateral (select x.sequence, x.content from journal_record x
+          where x.firm_id = p_head.firm_id and x.record_id = t.record_id offset 0) j
+        where j.sequence <= p_head.sequence or position(encode(t.hash, 'hex') in j.content) = 0 limit 1;
+      if found then perform refuse('TW017', 'text_hash_in_record', v_wrong); end if;
+    end if;
   end $$;
 `;
 
@@ -235,6 +255,7 @@ const POST = `
     v_changes balance_change[];
     v_has_groups boolean;
   begin
+    p_derived := coalesce(p_derived, '{}');
     if coalesce(cardinality(p_texts), 0) = 0 then perform refuse('TW002', 'record_form', '{}'); end if;
     v_hash := append_to_journal(v_head, p_texts, v_docs);
     select bool_or(d.doc ->> 'type' <> 'register') into v_has_groups from unnest(v_docs) d(doc);
@@ -249,7 +270,7 @@ const POST = `
       perform add_to_books(v_head, v_changes);
       perform check_cylinder_contents(v_head, v_changes);
     end if;
-    perform check_known(v_head, p_derived);
+    if p_derived ? 'placeStates' then perform check_known(v_head, p_derived); end if;
     perform store_derived(v_head, cardinality(p_texts), p_derived);
     perform check_units(v_head, v_changes, p_derived);
     update firm_head h set sequence = v_head.sequence + cardinality(p_texts), hash = v_hash

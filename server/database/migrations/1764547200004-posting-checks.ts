@@ -30,44 +30,50 @@ export const CHECKS: readonly string[] = [
         and 'unit' in (e.from_place, e.to_place) limit 1;
     if found then perform refuse('TW002', 'record_form', v_wrong); end if;
 
-    -- A reversal mirrors what it reverses: every entered mass of the group, the other way round, at the same time.
-    select jsonb_build_object('groupId', e.group_id, 'entryId', e.id, 'reversesEntryId', e.reverses_entry_id) into v_wrong
-      from (select x.* from entry x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) e
-      cross join lateral (select x.reverses_group_id from entry_group x
-        where x.firm_id = e.firm_id and x.id = e.group_id offset 0) g
-      left join lateral (select x.* from entry x
-        where x.firm_id = e.firm_id and x.id = e.reverses_entry_id offset 0) o on true
-      where e.reverses_entry_id is not null
-        and (o.id is null or e.refrigerant <> o.refrigerant or e.mass_micrograms <> o.mass_micrograms
-          or e.occurred_at <> o.occurred_at
-          or (e.from_place, e.to_place) is distinct from (o.to_place, o.from_place)
-          or e.from_id is distinct from o.to_id or e.to_id is distinct from o.from_id
-          or e.from_as is distinct from o.to_as or e.to_as is distinct from o.from_as
-          or (o.group_id is distinct from g.reverses_group_id and not e.added_by_server)) limit 1;
-    if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
-    select jsonb_build_object('groupId', g.id, 'entryId', o.id) into v_wrong
-      from (select x.* from entry_group x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) g
-      cross join lateral (select x.id from entry x
-        where x.firm_id = g.firm_id and x.group_id = g.reverses_group_id and not x.added_by_server offset 0) o
-      where g.reverses_group_id is not null
-        and not exists (select from entry x
-          where x.firm_id = g.firm_id and x.reverses_entry_id = o.id and x.group_id = g.id offset 0) limit 1;
-    if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
+    if exists (select from unnest(p_docs) d(doc)
+        where doc ->> 'reversesGroupId' is not null or doc ->> 'reversesEntryId' is not null) then
+      -- A reversal mirrors what it reverses: every entered mass of the group, the other way round, at the same time.
+      select jsonb_build_object('groupId', e.group_id, 'entryId', e.id, 'reversesEntryId', e.reverses_entry_id) into v_wrong
+        from (select x.* from entry x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) e
+        cross join lateral (select x.reverses_group_id from entry_group x
+          where x.firm_id = e.firm_id and x.id = e.group_id offset 0) g
+        left join lateral (select x.* from entry x
+          where x.firm_id = e.firm_id and x.id = e.reverses_entry_id offset 0) o on true
+        where e.reverses_entry_id is not null
+          and (o.id is null or e.refrigerant <> o.refrigerant or e.mass_micrograms <> o.mass_micrograms
+            or e.occurred_at <> o.occurred_at
+            or (e.from_place, e.to_place) is distinct from (o.to_place, o.from_place)
+            or e.from_id is distinct from o.to_id or e.to_id is distinct from o.from_id
+            or e.from_as is distinct from o.to_as or e.to_as is distinct from o.from_as
+            or (o.group_id is distinct from g.reverses_group_id and not e.added_by_server)) limit 1;
+      if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
+      select jsonb_build_object('groupId', g.id, 'entryId', o.id) into v_wrong
+        from (select x.* from entry_group x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) g
+        cross join lateral (select x.id from entry x
+          where x.firm_id = g.firm_id and x.group_id = g.reverses_group_id and not x.added_by_server offset 0) o
+        where g.reverses_group_id is not null
+          and not exists (select from entry x
+            where x.firm_id = g.firm_id and x.reverses_entry_id = o.id and x.group_id = g.id offset 0) limit 1;
+      if found then perform refuse('TW012', 'reversal_mirrors', v_wrong); end if;
 
-    -- A weigh-in is closed once; if what closed it was reversed, it may be closed again.
-    select jsonb_build_object('groupId', g.id, 'closesGroupId', g.closes_group_id) into v_wrong
-      from (select x.* from entry_group x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) g
-      cross join lateral (select x.id, x.open_weigh_in from entry_group x
-        where x.firm_id = g.firm_id and x.id = g.closes_group_id offset 0) w
-      where g.closes_group_id is not null
-        and (not w.open_weigh_in
-          or exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = w.id offset 0)
-          or exists (select from entry_group c
-            where c.firm_id = g.firm_id and c.closes_group_id = w.id and c.id <> g.id
-              and not exists (select from entry_group r
-                where r.firm_id = c.firm_id and r.reverses_group_id = c.id offset 0) offset 0))
-      limit 1;
-    if found then perform refuse('TW013', 'weigh_in_open', v_wrong); end if;
+    end if;
+
+    if exists (select from unnest(p_docs) d(doc) where doc ->> 'closesGroupId' is not null) then
+      -- A weigh-in is closed once; if what closed it was reversed, it may be closed again.
+      select jsonb_build_object('groupId', g.id, 'closesGroupId', g.closes_group_id) into v_wrong
+        from (select x.* from entry_group x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) g
+        cross join lateral (select x.id, x.open_weigh_in from entry_group x
+          where x.firm_id = g.firm_id and x.id = g.closes_group_id offset 0) w
+        where g.closes_group_id is not null
+          and (not w.open_weigh_in
+            or exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = w.id offset 0)
+            or exists (select from entry_group c
+              where c.firm_id = g.firm_id and c.closes_group_id = w.id and c.id <> g.id
+                and not exists (select from entry_group r
+                  where r.firm_id = c.firm_id and r.reverses_group_id = c.id offset 0) offset 0))
+        limit 1;
+      if found then perform refuse('TW013', 'weigh_in_open', v_wrong); end if;
+    end if;
   end $$`,
 
   // The month in which it occurred (firm's zone) or, where that is closed, the first open one, marked late.
@@ -131,6 +137,8 @@ export const CHECKS: readonly string[] = [
   declare
     v_wrong jsonb;
   begin
+    if not exists (select from unnest(p_changes) c where c.place = 'cylinder' and c.change_micrograms > 0) then return; end if;
+
     select jsonb_build_object('place', 'cylinder', 'id', m.place_id, 'refrigerant', m.refrigerant, 'groupId', m.group_id)
       into v_wrong
       from (
@@ -196,6 +204,8 @@ export const CHECKS: readonly string[] = [
   declare
     v_wrong jsonb;
   begin
+    if not exists (select from unnest(p_changes) c where c.place = 'unit') and not p_derived ? 'placeStates' then return; end if;
+
     -- What came from the factory or as opening makes a book known: else a unit could be kept out of the floor below.
     select jsonb_build_object('place', 'unit', 'id', e.to_id) into v_wrong
       from (select x.* from entry x where x.firm_id = p_head.firm_id and x.sequence > p_head.sequence offset 0) e
@@ -217,12 +227,13 @@ export const CHECKS: readonly string[] = [
   end $$`,
 ];
 
-/** What the checks ask for again and again; made before them. */
+/** What the checks ask for again and again. In plpgsql where it is asked often: it keeps plans, sql functions do not. */
 export const QUESTIONS = `
-  create function unit_is_known(p_firm uuid, p_unit uuid) returns boolean language sql stable as $$
-    select exists (select from place_state s
-      where s.firm_id = p_firm and s.place = 'unit' and s.place_id = p_unit and s.known)
-  $$;
+  create function unit_is_known(p_firm uuid, p_unit uuid) returns boolean language plpgsql stable as $$
+  begin
+    return exists (select from place_state s
+      where s.firm_id = p_firm and s.place = 'unit' and s.place_id = p_unit and s.known);
+  end $$;
 
   -- Of several refrigerants that came into an empty cylinder in one call, the first needs no reason.
   create function came_first(p_head firm_head, p_changes balance_change[], p_change balance_change, p_other text)
