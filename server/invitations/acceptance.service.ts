@@ -5,6 +5,7 @@ import type { Parts } from '../http/parts.ts';
 import { problemOfRefusals } from '../http/problem.ts';
 import { insertAccount } from '../people/account.ts';
 import { addMembership, changeMembership, lockMembership } from '../people/membership.repository.ts';
+import { lockFirmHead } from '../people/register-record.ts';
 import { hashPassword } from '../session/password.ts';
 import { hashOfSecretToken } from '../session/secret-token.ts';
 import { findPersonId, requireFirm } from '../session/session.repository.ts';
@@ -55,6 +56,7 @@ export async function acceptInvitation(
 
   await inFirm(parts.dataSource, { firmId, personId, siteIds: null }, async (manager) => {
     const now = parts.now();
+    await lockFirmHead(manager);
     const open = await lockInvitation(manager, firmId, invitation.id);
     if (!open || open.acceptedAt || open.expiresAt <= now) throw linkNotValid();
     if (passwordHash !== null) {

@@ -7,6 +7,7 @@ import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { changeMembership, lockMembership } from './membership.repository.ts';
 import { findPerson, findUnknownSites, hasOtherOwner, listPeople, type PeopleQuery } from './people.repository.ts';
+import { lockFirmHead } from './register-record.ts';
 
 export function readPeople(parts: Parts, actor: Actor, query: PeopleQuery) {
   return inFirm(parts.dataSource, actor, (manager) => listPeople(manager, query));
@@ -35,8 +36,7 @@ export function updatePerson(
   change: z.output<typeof updatePersonRequest>,
 ): Promise<Person> {
   return inFirm(parts.dataSource, actor, async (manager) => {
-    // The firm's head is locked first, as by every change of the log: of two owners who take each other's role, one fails.
-    await manager.query('SELECT lock_head()');
+    await lockFirmHead(manager); // of two owners who take each other's role, one is too late
     const held = await lockMembership(manager, actor.firmId, personId);
     if (!held) throw new Problem('notFound');
     if (held.version !== version) throw new Problem('stale', { params: { version } });
