@@ -25,7 +25,9 @@ export function RouteProblem({ bare = false }: { bare?: boolean }) {
         <p>{error instanceof Problem && kind === 'refused' ? error.message : t(`frame.problem.${kind}.text`)}</p>
         {requestId ? <p className="type-label text-ink-soft">{t('frame.problem.requestId', { requestId })}</p> : null}
         {kind === 'notFound' ? (
-          <Link to="/charge">{t('frame.problem.toCharge')}</Link>
+          <Link to="/charge" className="inline-flex min-h-12 items-center">
+            {t('frame.problem.toCharge')}
+          </Link>
         ) : (
           <Button onClick={() => (kind === 'bug' ? window.location.reload() : void revalidator.revalidate())}>
             {t('frame.problem.again')}

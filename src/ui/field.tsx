@@ -78,7 +78,7 @@ export function FieldError({ id, children }: { id?: string; children: ReactNode 
 /** The look that every blank shares: a sheet with a ruled foot, heavier when it is wrong. */
 export const blank = (invalid: boolean, big: boolean) =>
   `w-full min-w-0 bg-sheet border-0 border-b-2 ${invalid ? 'border-ink shadow-[inset_0_-2px_0_var(--color-ink)]' : 'border-edge focus-within:border-ink'} ${
-    big ? 'min-h-14 text-[1.25rem] font-[560]' : 'min-h-12 text-[1.0625rem]'
+    big ? 'min-h-14 text-[1.25rem] font-[560]' : 'min-h-[3.125rem] text-[1.0625rem]'
   }`;
 
 interface TextFieldProps extends Omit<FieldProps, 'children'> {

@@ -124,7 +124,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
                     {column.sort && onSort ? (
                       <button
                         type="button"
-                        className={`inline-flex min-h-10 items-center gap-1 hover:text-ink ${direction ? 'text-ink' : ''}`}
+                        className={`inline-flex min-h-12 min-w-12 items-center gap-1 hover:text-ink desk:min-h-10 ${column.figure ? 'justify-end' : ''} ${direction ? 'text-ink' : ''}`}
                         onClick={() => onSort(nextSort(column, direction))}
                       >
                         <Head column={column} />
@@ -159,7 +159,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
                   return (
                     <td
                       key={cell.id}
-                      className={`h-10 border-b border-rule-faint py-1 pr-4 whitespace-nowrap ${column.figure ? 'text-right font-[600]' : ''} ${column.quiet ? 'text-ink-soft' : ''} ${isStruck && !column.keep ? 'line-through decoration-1' : ''} ${index === 0 ? `sticky left-0 z-1 ${own ? 'pl-[1.125rem] desk:pl-6' : ''} ${open ? 'bg-rest-wash' : 'bg-ground group-hover:bg-well'} ${tied ? 'shadow-[inset_4px_0_0_var(--color-rest)]!' : ''}` : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
+                      className={`h-12 border-b border-rule-faint desk:h-10 py-1 pr-4 whitespace-nowrap ${column.figure ? 'text-right font-[600]' : ''} ${column.quiet ? 'text-ink-soft' : ''} ${isStruck && !column.keep ? 'line-through decoration-1' : ''} ${index === 0 ? `sticky left-0 z-1 ${own ? 'pl-[1.125rem] desk:pl-6' : ''} ${open ? 'bg-rest-wash' : 'bg-ground group-hover:bg-well'} ${tied ? 'shadow-[inset_4px_0_0_var(--color-rest)]!' : ''}` : ''} ${column.wideOnly ? 'hidden lg:table-cell' : ''}`}
                     >
                       {index === 0 && opens ? (
                         <Opener
@@ -181,7 +181,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
           })}
         </tbody>
       </table>
-      {loading ? <RowsSkeleton rows={10} rowClass="h-10" /> : null}
+      {loading ? <RowsSkeleton rows={10} rowClass="h-12 desk:h-10" /> : null}
       {more?.has ? <More {...more} root={own ? region : null} /> : null}
       {more && !more.has && more.end ? (
         <p className={`type-label sticky left-0 py-4 text-ink-soft ${own ? 'page-gutter' : ''}`}>{more.end}</p>
@@ -227,7 +227,8 @@ function Opener({
   const shared = {
     'data-row': id,
     tabIndex: tabbable ? 0 : -1,
-    className: 'inline-flex min-h-8 min-w-8 items-center text-left text-inherit no-underline [text-decoration:inherit]',
+    className:
+      'inline-flex min-h-12 min-w-12 items-center text-left desk:min-h-8 text-inherit no-underline [text-decoration:inherit]',
   };
   return to === undefined ? (
     <button {...shared} type="button" onClick={onOpen}>

@@ -133,22 +133,17 @@ function WhyNot({ answer }: { answer: Exclude<ChargeAnswer, { is: 'done' }> }) {
     );
   }
   const pointers = [...answer.missing, ...answer.unreadable];
+  const [first] = pointers;
+  const names = [...new Set(pointers.map((pointer) => labelOfField(pointer, t)))].join(', ');
   return (
-    <p className="type-label leading-snug text-ink-soft">
+    <button
+      type="button"
+      className="type-label min-h-12 text-left leading-snug text-ink-soft"
+      onClick={() => first && focusField(first)}
+    >
       {t(answer.missing.length > 0 ? 'chargeScreen.stillNeeded' : 'chargeScreen.unreadable')}{' '}
-      {pointers.map((pointer, index) => (
-        <span key={pointer}>
-          <button
-            type="button"
-            className="text-ink underline decoration-edge decoration-1 underline-offset-[3px]"
-            onClick={() => focusField(pointer)}
-          >
-            {labelOfField(pointer, t)}
-          </button>
-          {index < pointers.length - 1 ? ', ' : '.'}
-        </span>
-      ))}
-    </p>
+      <span className="text-ink underline decoration-edge decoration-1 underline-offset-[3px]">{names}</span>
+    </button>
   );
 }
 
