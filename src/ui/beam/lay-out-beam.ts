@@ -1,4 +1,4 @@
-import { scaleLinear } from 'd3-scale';
+import { ticks as roundValues } from 'd3-array';
 import type { BeamMark, BeamSegment, BeamSpec } from './beam-spec.ts';
 import { type LabelWish, type PlacedLabel, placeLabels } from './place-labels.ts';
 import { textWidth } from './text-width.ts';
@@ -67,7 +67,8 @@ export interface BeamLayout {
 export function layOutBeam(spec: BeamSpec, width: number, format: (value: number) => string): BeamLayout {
   const left = SIDE;
   const right = Math.max(width - SIDE, left + 1);
-  const scale = scaleLinear().domain(spec.domain).range([left, right]);
+  const [from, to] = spec.domain;
+  const scale: Scale = (value) => left + ((value - from) / (to - from || 1)) * (right - left);
   const [least, most] = [Math.min(...spec.domain), Math.max(...spec.domain)];
   const x = (value: number) => scale(Math.min(Math.max(value, least), most));
   const lay = (segments: readonly BeamSegment[]): LaidSegment[] =>
@@ -148,9 +149,12 @@ function placeNames(segments: readonly LaidSegment[], width: number): PlacedName
   });
 }
 
-function ticksOf(spec: BeamSpec, scale: ReturnType<typeof scaleLinear<number, number>>, length: number) {
+/** A figure's place in px. Linear only; d3-scale would bring 7 kB of colours and dates along for it. */
+type Scale = (value: number) => number;
+
+function ticksOf(spec: BeamSpec, scale: Scale, length: number) {
   const count = Math.max(2, Math.min(10, Math.round(length / 105)));
-  const values = scale.ticks(count);
+  const values = roundValues(spec.domain[0], spec.domain[1], count);
   const majors = values.map((value) => ({ value, x: scale(value) }));
   const ticks: Tick[] = majors.map(({ x }) => ({ x, size: 'major' }));
   const step = values.length > 1 ? Math.abs((values[1] as number) - (values[0] as number)) : 0;
