@@ -1,5 +1,32 @@
+import { chargeSheetRoutes } from './charge-sheets/charge-sheet.router.ts';
+import { customerRoutes } from './customers/customer.router.ts';
+import { cylinderRoutes } from './cylinders/cylinder.router.ts';
+import { entryRoutes } from './entries/entry.router.ts';
+import { entryGroupRoutes } from './entries/entry-group.router.ts';
+import { flagRoutes } from './flags/flag.router.ts';
 import type { ApiRoutes } from './http/api-routes.ts';
 import type { Parts } from './http/parts.ts';
+import { jobRoutes } from './jobs/job.router.ts';
+import { partyRoutes } from './parties/party.router.ts';
+import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
+import { siteRoutes } from './sites/site.router.ts';
+import { todayRoutes } from './today/today.router.ts';
+import { toolRoutes } from './tools/tool.router.ts';
+import { unitRoutes } from './units/unit.router.ts';
 
 /** Every resource below `/api/v1`. A new one adds its factory here and nothing else: mounting and documenting follow. */
-export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [];
+export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
+  customerRoutes,
+  siteRoutes,
+  partyRoutes,
+  toolRoutes,
+  jobRoutes,
+  unitRoutes,
+  cylinderRoutes,
+  chargeSheetRoutes,
+  entryGroupRoutes,
+  entryRoutes,
+  flagRoutes,
+  todayRoutes,
+  referenceListRoutes,
+];

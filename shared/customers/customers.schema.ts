@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { id, shortText } from '../lists/list.schema.ts';
+import { id, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 
 export const createCustomerRequest = z.strictObject({
   id,
@@ -19,3 +19,12 @@ export const customer = z.strictObject({
   version: z.int(),
 });
 export type Customer = z.output<typeof customer>;
+
+export const CUSTOMER_SORTS = ['name', '-name'] as const;
+export const customerListQuery = pageQuery.extend({
+  sort: z.enum(CUSTOMER_SORTS).default('name'),
+  /** Over the name. */
+  search: searchText.optional(),
+});
+export type CustomerListQuery = z.output<typeof customerListQuery>;
+export const customerPage = pageOf(customer);

@@ -1,6 +1,7 @@
 import { z } from 'zod';
-import { day, id, instant, shortText } from '../lists/list.schema.ts';
+import { day, id, instant, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 import { typedMass } from '../units/mass.ts';
+import { storedMass } from '../units/stored-mass.ts';
 
 export const CYLINDER_KINDS = ['refillable', 'nonRefillable', 'recovery'] as const;
 export const cylinderKind = z.enum(CYLINDER_KINDS);
@@ -22,10 +23,10 @@ export const createCylinderRequest = z.strictObject({
   refrigerant: shortText(20),
   contentState: contentState.default('virgin'),
   owner: cylinderOwner.default({ kind: 'ours' }),
-  tare: z.strictObject({ id, mass: typedMass, validFrom: instant }),
-  waterCapacity: typedMass.nullish(),
+  tare: z.strictObject({ id, mass: storedMass, validFrom: instant }),
+  waterCapacity: storedMass.nullish(),
   /** Stamped limit of the contents where there is one; else the published rule applies to refillable and recovery cylinders. */
-  stampedLimit: typedMass.nullish(),
+  stampedLimit: storedMass.nullish(),
   servicePressureKPaGauge: z.number().positive().max(30_000).nullish(),
   retestDue: day.nullish(),
   heldBy: id.nullish(),
@@ -38,11 +39,11 @@ export const updateCylinderRequest = z.strictObject({
   retestDue: day.nullable().optional(),
   heldBy: id.nullable().optional(),
   batch: shortText(60).nullable().optional(),
-  waterCapacity: typedMass.nullable().optional(),
-  stampedLimit: typedMass.nullable().optional(),
+  waterCapacity: storedMass.nullable().optional(),
+  stampedLimit: storedMass.nullable().optional(),
   servicePressureKPaGauge: z.number().positive().max(30_000).nullable().optional(),
 });
-export const addTareRequest = z.strictObject({ id, tare: typedMass, validFrom: instant, reason: shortText(500) });
+export const addTareRequest = z.strictObject({ id, tare: storedMass, validFrom: instant, reason: shortText(500) });
 
 export const cylinder = z.strictObject({
   id,
@@ -72,3 +73,15 @@ export const cylinder = z.strictObject({
   version: z.int(),
 });
 export type Cylinder = z.output<typeof cylinder>;
+
+export const CYLINDER_SORTS = ['tag', '-tag'] as const;
+export const cylinderListQuery = pageQuery.extend({
+  sort: z.enum(CYLINDER_SORTS).default('tag'),
+  heldBy: id.optional(),
+  kind: cylinderKind.optional(),
+  refrigerant: shortText(20).optional(),
+  /** Over tag and batch. */
+  search: searchText.optional(),
+});
+export type CylinderListQuery = z.output<typeof cylinderListQuery>;
+export const cylinderPage = pageOf(cylinder);

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { id, instant, shortText } from '../lists/list.schema.ts';
+import { flagText, id, instant, pageOf, pageQuery, shortText } from '../lists/list.schema.ts';
 
 export const JOB_KINDS = ['install', 'serviceWithLeak', 'recovery', 'decommission', 'relocation', 'retrofit'] as const;
 export const jobKind = z.enum(JOB_KINDS);
@@ -26,3 +26,13 @@ export const job = z.strictObject({
   version: z.int(),
 });
 export type Job = z.output<typeof job>;
+
+export const JOB_SORTS = ['-openedAt', 'openedAt'] as const;
+export const jobListQuery = pageQuery.extend({
+  sort: z.enum(JOB_SORTS).default('-openedAt'),
+  unitId: id.optional(),
+  /** Jobs that are not closed; `false`: closed ones. */
+  open: flagText.optional(),
+});
+export type JobListQuery = z.output<typeof jobListQuery>;
+export const jobPage = pageOf(job);

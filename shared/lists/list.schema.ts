@@ -21,5 +21,12 @@ export const pageQuery = z.strictObject({
   limit: z.coerce.number().int().min(1).max(200).default(50),
 });
 
+export type PageQuery = z.output<typeof pageQuery>;
+
 export const pageOf = <T extends z.ZodType>(item: T) =>
   z.strictObject({ items: z.array(item), nextCursor: z.string().nullable() });
+
+/** Words that all have to stand somewhere in what is searched: `mill 0412`. */
+export const searchText = z.string().trim().min(1).max(100);
+/** `true` or `false` in a query string. */
+export const flagText = z.enum(['true', 'false']).transform((text) => text === 'true');

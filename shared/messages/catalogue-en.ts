@@ -1,9 +1,10 @@
 import calculations from './calculations.en.json';
 import charge from './charge.en.json';
+import registers from './registers.en.json';
 import server from './server.en.json';
 
 /**
  * Every English sentence that the server says: problems, results, mails. A new file of them is added here and in
  * `catalogue-es.ts`; files that only a screen uses are loaded by the screen.
  */
-export const catalogueEn: Readonly<Record<string, string>> = { ...calculations, ...charge, ...server };
+export const catalogueEn: Readonly<Record<string, string>> = { ...calculations, ...charge, ...registers, ...server };

@@ -1,6 +1,7 @@
 import calculations from './calculations.es.json';
 import charge from './charge.es.json';
+import registers from './registers.es.json';
 import server from './server.es.json';
 
 /** Every Spanish sentence that the server says; the same keys as in English. */
-export const catalogueEs: Readonly<Record<string, string>> = { ...calculations, ...charge, ...server };
+export const catalogueEs: Readonly<Record<string, string>> = { ...calculations, ...charge, ...registers, ...server };

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { id, shortText } from '../lists/list.schema.ts';
+import { id, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 
 /** Who refrigerant comes from or goes to, besides customers. */
 export const PARTY_KINDS = ['supplier', 'reclaimer', 'otherContractor'] as const;
@@ -19,3 +19,13 @@ export const party = z.strictObject({
   version: z.int(),
 });
 export type Party = z.output<typeof party>;
+
+export const PARTY_SORTS = ['name', '-name'] as const;
+export const partyListQuery = pageQuery.extend({
+  sort: z.enum(PARTY_SORTS).default('name'),
+  kind: partyKind.optional(),
+  /** Over the name. */
+  search: searchText.optional(),
+});
+export type PartyListQuery = z.output<typeof partyListQuery>;
+export const partyPage = pageOf(party);

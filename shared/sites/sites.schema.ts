@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { id, shortText } from '../lists/list.schema.ts';
+import { id, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 import { jurisdiction } from '../session/session.schema.ts';
 
 /** An IANA time zone that this runtime knows. */
@@ -39,3 +39,13 @@ export const site = z.strictObject({
   version: z.int(),
 });
 export type Site = z.output<typeof site>;
+
+export const SITE_SORTS = ['name', '-name'] as const;
+export const siteListQuery = pageQuery.extend({
+  sort: z.enum(SITE_SORTS).default('name'),
+  customerId: id.optional(),
+  /** Over name, address and the customer's name. */
+  search: searchText.optional(),
+});
+export type SiteListQuery = z.output<typeof siteListQuery>;
+export const sitePage = pageOf(site);

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { day, id, shortText } from '../lists/list.schema.ts';
+import { day, id, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 
 export const TOOL_KINDS = ['scale', 'gauge', 'vacuumGauge', 'torqueWrench', 'detector', 'recoveryMachine'] as const;
 export const toolKind = z.enum(TOOL_KINDS);
@@ -37,3 +37,14 @@ export const tool = z.strictObject({
   version: z.int(),
 });
 export type Tool = z.output<typeof tool>;
+
+export const TOOL_SORTS = ['name', '-name'] as const;
+export const toolListQuery = pageQuery.extend({
+  sort: z.enum(TOOL_SORTS).default('name'),
+  kind: toolKind.optional(),
+  heldBy: id.optional(),
+  /** Over name and serial. */
+  search: searchText.optional(),
+});
+export type ToolListQuery = z.output<typeof toolListQuery>;
+export const toolPage = pageOf(tool);

@@ -1,6 +1,7 @@
 import { z } from 'zod';
-import { day, decimalText, id, instant, shortText } from '../lists/list.schema.ts';
+import { day, decimalText, id, instant, pageOf, pageQuery, searchText, shortText } from '../lists/list.schema.ts';
 import { typedMass } from '../units/mass.ts';
+import { storedMass } from '../units/stored-mass.ts';
 
 /** A unit is one independent refrigerant circuit and its equipment (the law counts circuits). */
 export const APPLIANCE_KINDS = [
@@ -30,8 +31,8 @@ export const serialNumber = z.strictObject({
 
 /** What is in the circuit when it is registered. `notKnown` is an honest state: masses are summed and nothing is inferred. */
 export const initialCharge = z.discriminatedUnion('state', [
-  z.strictObject({ state: z.literal('factory'), mass: typedMass, at: instant, entryId: id, groupId: id }),
-  z.strictObject({ state: z.literal('opening'), mass: typedMass, at: instant, entryId: id, groupId: id }),
+  z.strictObject({ state: z.literal('factory'), mass: storedMass, at: instant, entryId: id, groupId: id }),
+  z.strictObject({ state: z.literal('opening'), mass: storedMass, at: instant, entryId: id, groupId: id }),
   z.strictObject({ state: z.literal('notKnown') }),
 ]);
 
@@ -51,7 +52,7 @@ export const createUnitRequest = z.strictObject({
   designPressureLowKPaGauge: z.number().positive().max(20_000).nullish(),
   installedOn: day.nullish(),
   /** Full charge with its method; null: not determined. */
-  fullCharge: z.strictObject({ id, mass: typedMass, method: fullChargeMethod, validFrom: instant }).nullish(),
+  fullCharge: z.strictObject({ id, mass: storedMass, method: fullChargeMethod, validFrom: instant }).nullish(),
   initialCharge,
 });
 export type CreateUnitRequest = z.output<typeof createUnitRequest>;
@@ -68,7 +69,7 @@ export const updateUnitRequest = z.strictObject({
 
 export const addFullChargeRequest = z.strictObject({
   id,
-  mass: typedMass,
+  mass: storedMass,
   method: fullChargeMethod,
   validFrom: instant,
   jobId: id.nullish(),
@@ -152,3 +153,17 @@ export const lineSet = z.strictObject({
   note: z.string().nullable(),
 });
 export type LineSet = z.output<typeof lineSet>;
+
+export const UNIT_SORTS = ['tag', '-tag', 'name', '-name'] as const;
+export const unitListQuery = pageQuery.extend({
+  sort: z.enum(UNIT_SORTS).default('tag'),
+  siteId: id.optional(),
+  customerId: id.optional(),
+  refrigerant: shortText(20).optional(),
+  /** Over tag, name, serials, site, address and customer. */
+  search: searchText.optional(),
+});
+export type UnitListQuery = z.output<typeof unitListQuery>;
+export const unitPage = pageOf(unit);
+export const lineSetPage = pageOf(lineSet);
+export const fullChargePage = pageOf(fullCharge);

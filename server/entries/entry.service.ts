@@ -1,0 +1,112 @@
+import type { Response } from 'express';
+import type { z } from 'zod';
+import type {
+  EntryExportQuery,
+  EntryListQuery,
+  emissionsQuery,
+  GroupView,
+  OnHand,
+  ReadingListQuery,
+} from '../../shared/entries/entry.schema.ts';
+import { countedAdditions, fullChargeRises } from '../../shared/ledger/counted-additions.ts';
+import type { AtmosphereKind } from '../../shared/ledger/place.ts';
+import { dayInZone } from '../../shared/units/calendar.ts';
+import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { inFirm } from '../database/firm-scope.ts';
+import { type Actor, mayActor } from '../http/actor.ts';
+import type { Parts } from '../http/parts.ts';
+import { Problem } from '../http/problem.ts';
+import { sendEntriesCsv } from './entry-csv.ts';
+import { entryListRepository } from './entry-list.repository.ts';
+import { findGroupView } from './group-view.repository.ts';
+import { namedIds } from './named-ids.ts';
+import { readOnHand } from './on-hand.repository.ts';
+import { loadPostingFacts } from './posting-facts.repository.ts';
+import { listReadings as readReadings } from './reading.repository.ts';
+import { loadTimelines } from './timeline.repository.ts';
+
+export function listEntries(parts: Parts, actor: Actor, query: EntryListQuery) {
+  return inFirm(parts.dataSource, actor, (manager) => entryListRepository(manager, actor.locale).list(query));
+}
+
+export function getGroup(parts: Parts, actor: Actor, id: string): Promise<GroupView> {
+  return inFirm(parts.dataSource, actor, async (manager) => {
+    const group = await findGroupView(manager, id, actor.locale);
+    if (!group) throw new Problem('notFound');
+    return group;
+  });
+}
+
+export function listReadings(parts: Parts, actor: Actor, query: ReadingListQuery) {
+  return inFirm(parts.dataSource, actor, (manager) => readReadings(manager, query));
+}
+
+/**
+ * The log as a file. Who makes exports takes out everything; a reader what a reader sees; a technician their own.
+ * @throws Problem 403
+ */
+export function exportEntries(parts: Parts, actor: Actor, query: EntryExportQuery, res: Response): Promise<void> {
+  const isReader = actor.roles.includes('reader');
+  if (!mayActor(actor, 'exports:make') && !isReader && query.personId !== actor.personId) {
+    throw new Problem('notPermitted', {
+      errors: [{ code: 'ownEntriesOnly', path: '/personId', given: query.personId ?? null, allowed: actor.personId }],
+    });
+  }
+  const fileName = `log-${parts.now().toISOString().slice(0, 10)}.csv`;
+  return inFirm(parts.dataSource, actor, (manager) => sendEntriesCsv(manager, query, res, fileName), 'REPEATABLE READ');
+}
+
+/** What counts for the leak rate of a unit, by the judge's own rule over its whole timeline. */
+export function getCountedAdditions(parts: Parts, actor: Actor, unitId: string) {
+  return inFirm(parts.dataSource, actor, async (manager) => {
+    const facts = await loadPostingFacts(manager, namedIds([], [], { unitIds: [unitId] }));
+    const unit = facts.units.get(unitId);
+    if (!unit) throw new Problem('notFound');
+    const { groups } = await loadTimelines(manager, [unitId]);
+    const zoneAt = (at: number) =>
+      (unit.sites.findLast(({ validFrom }) => validFrom <= at) ?? unit.sites[0])?.timeZone ?? facts.firm.timeZone;
+    const additions = countedAdditions(unitId, groups, fullChargeRises(unit.register, groups));
+    return {
+      unitId,
+      items: additions.map((addition) => ({
+        groupId: addition.groupId,
+        jobId: addition.jobId,
+        occurredAt: new Date(addition.occurredAt).toISOString(),
+        regulatoryDay: dayInZone(addition.occurredAt, zoneAt(addition.occurredAt)),
+        refrigerant: addition.refrigerant,
+        putInG: gramsOfMicrograms(addition.putInMicrograms),
+        countedG: gramsOfMicrograms(addition.countedMicrograms),
+      })),
+    };
+  });
+}
+
+export function getEmissions(parts: Parts, actor: Actor, { from, to }: z.output<typeof emissionsQuery>) {
+  return inFirm(parts.dataSource, actor, async (manager) => {
+    const rows = await manager.query<
+      { bookingMonth: string; refrigerant: string; as: AtmosphereKind; mass: string; atLeast: string }[]
+    >(
+      `select a.booking_month as "bookingMonth", a.refrigerant, a.as_kind as "as", sum(a.mass)::text as mass,
+          coalesce(sum(a.mass) filter (where a.at_least), 0)::text as "atLeast"
+        from (select booking_month, refrigerant, at_least, to_as as as_kind, mass_micrograms as mass
+            from entry where to_place = 'atmosphere'
+          union all select booking_month, refrigerant, at_least, from_as, -mass_micrograms
+            from entry where from_place = 'atmosphere') a
+        where ($1::text is null or a.booking_month >= $1) and ($2::text is null or a.booking_month <= $2)
+        group by 1, 2, 3 having sum(a.mass) <> 0 or coalesce(sum(a.mass) filter (where a.at_least), 0) <> 0
+        order by 1, 2, 3`,
+      [from ?? null, to ?? null],
+    );
+    return {
+      items: rows.map(({ mass, atLeast, ...row }) => ({
+        ...row,
+        massG: gramsOfMicrograms(BigInt(mass)),
+        atLeastG: gramsOfMicrograms(BigInt(atLeast)),
+      })),
+    };
+  });
+}
+
+export function getOnHand(parts: Parts, actor: Actor): Promise<OnHand> {
+  return inFirm(parts.dataSource, actor, (manager) => readOnHand(manager));
+}

@@ -1,0 +1,98 @@
+import type { EntityManager } from 'typeorm';
+import type { EntryGroupRequest } from '../../shared/ledger/entry-group.schema.ts';
+import { enteredGroup, type JudgedGroup } from '../../shared/ledger/judged-group.ts';
+import { ASSUMED_SCALE } from '../../shared/ledger/scale.ts';
+import type { Refusal } from '../../shared/problems/outcome.ts';
+import type { Actor } from '../http/actor.ts';
+import type { Parts } from '../http/parts.ts';
+import { Problem, problemOfRefusals, valueOrProblem } from '../http/problem.ts';
+import { type JudgedPosting, judgePosting, type Posting, placesOf, placesToReplay } from './judge-posting.ts';
+import { findEarlierPosting, readOutcome } from './posting-answer.repository.ts';
+import type { PostingOutcome } from './posting-answer.ts';
+import type { PostingFacts, StoredGroup } from './posting-facts.ts';
+import type { Author } from './posting-records.ts';
+import { requestRefusals } from './posting-refusals.ts';
+import { loadTimelines } from './timeline.repository.ts';
+
+export type PostingParts = Pick<Parts, 'dataSource' | 'now' | 'newId' | 'reference'>;
+
+/** Which release of the zone data says what day it is somewhere. */
+const ZONE_DATA_VERSION = process.versions.tz ?? 'unknown';
+
+export function authorOf(parts: PostingParts, actor: Pick<Actor, 'personId'>): Author {
+  const { newId } = parts;
+  return { personId: actor.personId, now: parts.now(), newId, zoneDataVersion: ZONE_DATA_VERSION };
+}
+
+/** The body as the judge reads it. @throws Problem 422 for what can be refused before judging */
+export function enter(
+  parts: PostingParts,
+  facts: PostingFacts,
+  body: EntryGroupRequest,
+  { at, opening, place }: { at: string; opening: StoredGroup | null; place: number },
+) {
+  const { reference } = parts;
+  refuse(requestRefusals({ body, at, opening, now: parts.now(), facts, reference }));
+  return enteredGroup(body, {
+    sequence: facts.firm.sequence + place,
+    scaleOf: (toolId) => (toolId ? facts.scales.get(toolId) : undefined) ?? ASSUMED_SCALE,
+  });
+}
+
+export interface Judgement {
+  judged: JudgedPosting;
+  /** Groups of which a correction may speak. */
+  stored: Map<string, StoredGroup>;
+}
+
+/** Judges with what the database holds of the places concerned. @throws Problem 422 */
+export async function judge(manager: EntityManager, posting: Posting, facts: PostingFacts): Promise<Judgement> {
+  const replayed = placesToReplay(posting, facts);
+  const timelines =
+    replayed.length === 0 && !posting.reversed
+      ? { groups: [], posted: [], flags: [] }
+      : await loadTimelines(manager, replayed, posting.reversed?.id ?? null);
+  const judged = valueOrProblem(judgePosting(posting, facts, timelines));
+  const stored = new Map(timelines.groups.map((group) => [group.id, group]));
+  if (posting.reversed) stored.set(posting.reversed.id, posting.reversed);
+  return { judged, stored };
+}
+
+export function refuse(refusals: readonly Refusal[]): void {
+  if (refusals.length > 0) throw problemOfRefusals(refusals);
+}
+
+/** A reason is asked for: one code for the whole, one for each cause. */
+export function refuseWithoutReason(refusals: readonly Refusal[]): void {
+  if (refusals.length > 0) throw new Problem('reasonRequired', { errors: refusals });
+}
+
+/**
+ * The outcome of an earlier posting of this id, for a resend; null when there is none.
+ * @throws Problem 409 when it was posted with other content, or about another group
+ */
+export async function findRepeated(
+  manager: EntityManager,
+  groupId: string,
+  requestHash: string,
+  aboutGroupId: string | null = null,
+): Promise<PostingOutcome | null> {
+  const earlier = await findEarlierPosting(manager, groupId);
+  if (!earlier) return null;
+  if (earlier.requestHash !== requestHash || earlier.aboutGroupId !== aboutGroupId) throw new Problem('idReused');
+  return readOutcome(manager, earlier.groupIds, earlier.subjectIds, earlier.lastSequence);
+}
+
+/** What a posting of one group that only adds made: its places need no looking up. */
+export function outcomeOfAdded(
+  manager: EntityManager,
+  posting: Posting,
+  added: JudgedGroup,
+  lastSequence: number,
+): Promise<PostingOutcome> {
+  const { cylinderIds, unitIds } = placesOf(posting);
+  const reclaimerIds = added.masses
+    .flatMap(({ from, to }) => [from, to])
+    .flatMap((place) => (place.place === 'reclaimer' ? [place.id] : []));
+  return readOutcome(manager, [added.id], [...cylinderIds, ...unitIds, ...reclaimerIds], lastSequence);
+}
