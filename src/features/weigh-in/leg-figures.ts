@@ -81,6 +81,14 @@ export function stopOf(weighIn: WeighIn, scale: Scale): Stop | null {
   };
 }
 
+/** As `stopOf`, for a weigh-in that was left open: one cylinder, gross. */
+export function stopOfOpen(part: WeighedPart, target: TypedMass | null, hoseEnd: HoseEnd, scale: Scale): Stop | null {
+  const start = startMicrograms(part);
+  if (target === null || start === null) return null;
+  const drop = dropFor(part, microgramsOfTyped(target), hoseEnd);
+  return { dropG: grams(drop), scaleG: grams(start - drop), toleranceG: toleranceG(scale, grams(drop)) };
+}
+
 export const toleranceG = (scale: Scale, netG: number): number => 2 * netMassUncertaintyG(scale, netG);
 
 export interface Progress {

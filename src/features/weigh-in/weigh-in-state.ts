@@ -1,4 +1,5 @@
 import type { TypedMass } from '../../../shared/ledger/entry-group.schema.ts';
+import type { EntryGroupResponse } from '../../../shared/ledger/entry-group-response.schema.ts';
 import { emptyReading, type KeyedReading, type ReadingUnit } from './scale-reading.ts';
 
 /** What is being done; each becomes the kind of the group that is posted. */
@@ -79,6 +80,8 @@ export interface WeighIn {
   sheetId: string | null;
   /** What the sheet, or the person, says has to go in; null: to a subcooling or superheat, or not said. */
   target: TypedMass | null;
+  /** Nobody else says how much: the person is asked. */
+  asksTarget: boolean;
   vacuum: Vacuum | null;
   vacuumAt: string | null;
   legs: Leg[];
@@ -92,6 +95,8 @@ export interface WeighIn {
   occurredAt: string | null;
   reason: string;
   note: string;
+  /** What the server answered, once it is posted: shown until the page is left. */
+  posted: EntryGroupResponse[];
 }
 
 /** What a technician chose the last time, on this device: the next weigh-in starts with it. */
@@ -121,7 +126,7 @@ export type Action =
   | { type: 'answer'; answer: FullAnswer }
   | { type: 'say'; part: Partial<Pick<WeighIn, 'reason' | 'note' | 'occurredAt' | 'setFullCharge'>> }
   | { type: 'back' }
-  | { type: 'posted'; open: boolean };
+  | { type: 'posted'; open: boolean; answers: EntryGroupResponse[] };
 
 export interface WeighInStart {
   ids: GroupIds;
@@ -135,6 +140,7 @@ export function startWeighIn({ ids, sheet }: WeighInStart): WeighIn {
     purpose: sheet?.purpose ?? null,
     sheetId: sheet?.id ?? null,
     target: sheet?.target ?? null,
+    asksTarget: false,
     vacuum: null,
     vacuumAt: null,
     legs: [],
@@ -145,13 +151,14 @@ export function startWeighIn({ ids, sheet }: WeighInStart): WeighIn {
     occurredAt: null,
     reason: '',
     note: '',
+    posted: [],
   };
   return sheet ? { ...begun, step: afterPurpose(begun) } : begun;
 }
 
-const afterPurpose = ({ purpose, sheetId }: Pick<WeighIn, 'purpose' | 'sheetId'>): Step => {
+const afterPurpose = ({ purpose, asksTarget }: Pick<WeighIn, 'purpose' | 'asksTarget'>): Step => {
   if (purpose === 'fullRecharge') return 'vacuum';
-  return purpose === 'refill' && sheetId === null ? 'target' : 'cylinder';
+  return asksTarget ? 'target' : 'cylinder';
 };
 
 /** Whether there is a hose to ask about. */
@@ -167,7 +174,7 @@ export function stepsOf(weighIn: WeighIn, begunWithSheet: boolean): Step[] {
       case 'vacuum':
         return weighIn.purpose === 'fullRecharge';
       case 'target':
-        return afterPurpose(weighIn) === 'target';
+        return weighIn.asksTarget;
       case 'hosePlan':
         return weighIn.target !== null && (leg === undefined || hasHose(leg));
       case 'hoseEnd':
@@ -183,7 +190,8 @@ export function weighInReducer(weighIn: WeighIn, action: Action): WeighIn {
   switch (action.type) {
     case 'purpose': {
       const { purpose, target, sheetId } = action;
-      const changed = { ...weighIn, purpose, target, sheetId, answer: null };
+      const asksTarget = target === null && purpose !== 'adjust';
+      const changed = { ...weighIn, purpose, target, asksTarget, sheetId, answer: null };
       return { ...changed, step: afterPurpose(changed) };
     }
     case 'vacuum':
@@ -191,7 +199,7 @@ export function weighInReducer(weighIn: WeighIn, action: Action): WeighIn {
         ...weighIn,
         vacuum: action.vacuum,
         vacuumAt: weighIn.vacuum === action.vacuum ? weighIn.vacuumAt : action.at,
-        step: 'cylinder',
+        step: weighIn.asksTarget ? 'target' : 'cylinder',
       };
     case 'target':
       return { ...weighIn, target: action.target, step: 'cylinder' };
@@ -232,7 +240,7 @@ export function weighInReducer(weighIn: WeighIn, action: Action): WeighIn {
     case 'back':
       return stepBack(weighIn);
     case 'posted':
-      return { ...weighIn, step: action.open ? 'leftOpen' : 'done' };
+      return { ...weighIn, step: action.open ? 'leftOpen' : 'done', posted: action.answers };
   }
 }
 
@@ -318,15 +326,14 @@ function stepBack(weighIn: WeighIn): WeighIn {
       return { ...weighIn, step: 'weighing' };
     case 'weighing':
       return { ...weighIn, step: 'cylinder' };
-    case 'vacuum':
     case 'target':
+      return { ...weighIn, step: weighIn.purpose === 'fullRecharge' ? 'vacuum' : 'purpose' };
+    case 'vacuum':
       return { ...weighIn, step: 'purpose' };
     default:
       return weighIn;
   }
 }
 
-const beforeCylinder = (weighIn: WeighIn): Step => {
-  const before = afterPurpose(weighIn);
-  return before === 'cylinder' ? 'purpose' : before;
-};
+const beforeCylinder = ({ purpose, asksTarget }: WeighIn): Step =>
+  asksTarget ? 'target' : purpose === 'fullRecharge' ? 'vacuum' : 'purpose';

@@ -1,0 +1,67 @@
+import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+
+/** Why this cylinder cannot be planned with. What has happened is another matter: the log takes it, with its reason. */
+export type Stopper = 'otherRefrigerant' | 'pressureRating' | 'mixed' | 'customersOwn' | 'empty' | 'openWeighIn';
+/** What speaks against it and does not stop the work. */
+export type Doubt = 'tooLittle' | 'retestDue' | 'ratingNotKnown' | 'notVirgin' | 'neverWeighed';
+
+export interface JudgedCylinder {
+  cylinder: Cylinder;
+  onVan: boolean;
+  stopper: Stopper | null;
+  doubts: Doubt[];
+}
+
+/** People can come to harm: these carry the signal word. */
+export const DANGEROUS: ReadonlySet<Stopper> = new Set(['otherRefrigerant', 'pressureRating', 'mixed']);
+
+/**
+ * The cylinders of the firm as a choice for this unit: those on one's own van first, within each those that fit before
+ * those that do not, then the fuller ones.
+ */
+export function judgeCylinders(
+  cylinders: readonly Cylinder[],
+  {
+    refrigerant,
+    wantedG,
+    myId,
+    today,
+  }: { refrigerant: string; wantedG: number | null; myId: string | null; today: string },
+): JudgedCylinder[] {
+  return cylinders
+    .map((cylinder) => ({
+      cylinder,
+      onVan: myId !== null && cylinder.heldBy === myId,
+      stopper: stopperOf(cylinder, refrigerant),
+      doubts: doubtsOf(cylinder, wantedG, today),
+    }))
+    .sort(
+      (a, b) =>
+        Number(a.stopper !== null) - Number(b.stopper !== null) ||
+        Number(b.onVan) - Number(a.onVan) ||
+        a.doubts.length - b.doubts.length ||
+        b.cylinder.contentG - a.cylinder.contentG,
+    );
+}
+
+function stopperOf(cylinder: Cylinder, refrigerant: string): Stopper | null {
+  if (cylinder.mixed) return 'mixed';
+  if (cylinder.refrigerant !== refrigerant) return 'otherRefrigerant';
+  if (cylinder.byRefrigerant.some((part) => part.refrigerant !== refrigerant && part.massG > 0))
+    return 'otherRefrigerant';
+  if (cylinder.pressureRatingHolds === false) return 'pressureRating';
+  if (cylinder.owner.kind === 'customer') return 'customersOwn';
+  if (cylinder.openWeighInGroupId !== null) return 'openWeighIn';
+  // A cylinder that nobody has weighed yet may hold anything: its first reading says.
+  return cylinder.contentG <= 0 && cylinder.lastWeighedAt !== null ? 'empty' : null;
+}
+
+function doubtsOf(cylinder: Cylinder, wantedG: number | null, today: string): Doubt[] {
+  const doubts: Doubt[] = [];
+  if (cylinder.lastWeighedAt === null && cylinder.contentG <= 0) doubts.push('neverWeighed');
+  else if (wantedG !== null && cylinder.contentG < wantedG) doubts.push('tooLittle');
+  if (cylinder.retestDue !== null && cylinder.retestDue < today) doubts.push('retestDue');
+  if (cylinder.pressureRatingHolds === null) doubts.push('ratingNotKnown');
+  if (cylinder.contentState === 'recovered') doubts.push('notVirgin');
+  return doubts;
+}

@@ -1,0 +1,72 @@
+import { type ReactNode, useEffect, useRef } from 'react';
+import { useMessages } from '../../lib/messages.ts';
+import { Page } from '../../ui/page.tsx';
+import { Steps } from '../../ui/steps.tsx';
+import type { StepProps } from './use-weigh-in.ts';
+import { useWeighInData } from './weigh-in-data.ts';
+import { stepsOf } from './weigh-in-state.ts';
+
+interface Props extends StepProps {
+  /** The one question of this screen; absent where the screen is about a figure. */
+  title?: string;
+  lead?: ReactNode;
+  next?: ReactNode;
+  children: ReactNode;
+}
+
+/** One question a screen, with how far it has come, the way back, and the next action within reach of the thumb. */
+export function StepPage({ weighIn, dispatch, title, lead, next, children }: Props) {
+  const t = useMessages();
+  const { unit, sheet, cylinderOf } = useWeighInData();
+  const cylinder = weighIn.adding ? null : cylinderOf(weighIn.legs.at(-1)?.cylinderId ?? null);
+  const steps = stepsOf(weighIn, sheet !== null);
+  const step = steps.indexOf(weighIn.step as (typeof steps)[number]) + 1;
+  const heading = useFocusOnStep(weighIn.step, weighIn.legs.length);
+  const canGoBack = step > 1 || weighIn.legs.length > 1 || step === 0;
+  return (
+    <Page
+      field
+      title={t('weighIn.title', { unit: unit.tag })}
+      status={cylinder ? t('weighIn.cylinder', { tag: cylinder.tag }) : unit.refrigerant}
+      next={next}
+    >
+      {step > 0 ? <Steps step={step} count={steps.length} label={t('weighIn.progress')} /> : null}
+      <div className="page-gutter flex w-full max-w-2xl flex-col gap-4 pt-3">
+        {canGoBack ? (
+          <button
+            type="button"
+            onClick={() => dispatch({ type: 'back' })}
+            className="type-label -mb-3 inline-flex min-h-12 items-center gap-2 self-start text-rest"
+          >
+            <svg aria-hidden="true" viewBox="0 0 6 10" className="h-2.5 w-1.5 fill-none stroke-current stroke-[1.8]">
+              <path d="M5 1L1 5l4 4" />
+            </svg>
+            {t('weighIn.back')}
+          </button>
+        ) : null}
+        <div ref={heading} tabIndex={-1} className="outline-none">
+          {title ? <h2 className="type-title text-[1.5rem] desk:text-[1.75rem]">{title}</h2> : null}
+          {lead ? <div className="pt-1.5 text-ink-soft">{lead}</div> : null}
+        </div>
+        {children}
+      </div>
+    </Page>
+  );
+}
+
+/** A new question is read out and begins at its top; the first one leaves the focus where it is. */
+function useFocusOnStep(step: string, legs: number) {
+  const ref = useRef<HTMLDivElement>(null);
+  const key = `${step} ${legs}`;
+  useEffect(() => {
+    if (lastShown !== null && lastShown !== key) {
+      ref.current?.focus({ preventScroll: true });
+      window.scrollTo({ top: 0 });
+    }
+    lastShown = key;
+  }, [key]);
+  return ref;
+}
+
+/** Each step draws its own page, so what was shown before it is remembered here. */
+let lastShown: string | null = null;

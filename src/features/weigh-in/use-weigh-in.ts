@@ -1,0 +1,32 @@
+import { useCallback, useMemo } from 'react';
+import { forgetDraft, useDraft } from '../../lib/draft.ts';
+import { newId } from '../../lib/new-id.ts';
+import {
+  type Action,
+  type LegIds,
+  startWeighIn,
+  type WeighIn,
+  type WeighInStart,
+  weighInReducer,
+} from './weigh-in-state.ts';
+
+export const newLegIds = (): LegIds => ({ before: newId(), after: newId(), mass: newId(), hose: newId() });
+
+const newGroupIds = () => ({ vacuum: newId(), fullCharge: newId(), part: newId(), open: newId(), main: newId() });
+
+export const draftKey = (unitId: string, sheetId: string | null) => `weigh-in.${unitId}.${sheetId ?? 'free'}`;
+
+/** A weigh-in that survives a reload: its state lies in this tab under its unit and sheet, ids included. */
+export function useWeighIn(unitId: string, sheet: WeighInStart['sheet'], sheetId: string | null) {
+  const key = draftKey(unitId, sheetId);
+  const initial = useCallback(() => startWeighIn({ ids: newGroupIds(), sheet }), [sheet]);
+  const [weighIn, change, startOver] = useDraft<WeighIn>(key, initial);
+  const dispatch = useCallback((action: Action) => change((now) => weighInReducer(now, action)), [change]);
+  const forget = useCallback(() => forgetDraft(key), [key]);
+  return useMemo(() => ({ weighIn, dispatch, startOver, forget }), [weighIn, dispatch, startOver, forget]);
+}
+
+export interface StepProps {
+  weighIn: WeighIn;
+  dispatch: (action: Action) => void;
+}
