@@ -22,6 +22,7 @@ export function reasonWords(
   if (!row.addedByServer || row.reversesGroupId !== null) return t(`log.kind.${row.kind}`);
   const telling = TELLING.find((place) => row.from.place === place || row.to.place === place);
   if (telling === 'atmosphere') {
+    if (row.kind === 'recovery' && row.to.place === 'atmosphere') return t('log.found.notRecovered');
     const as = row.to.place === 'atmosphere' ? row.to.as : row.from.as;
     // From the atmosphere into a unit: an inferred loss that turned out not to have been one.
     return t(row.from.place === 'atmosphere' ? 'log.found.lossTakenBack' : `log.found.loss.${as ?? 'inferred'}`);

@@ -111,8 +111,11 @@ export function formatsFor(preferences: Preferences) {
     number: (value: number, most = 3, least = 0) => formatNumber(locale, value, most, least),
     massParts: (massG: number) => massQuantity(preferences, massG),
     mass: (massG: number) => joined(massQuantity(preferences, massG)),
-    /** Only the figure, for a table whose head names the unit. */
-    massFigure: (massG: number) => massQuantity(preferences, massG).value,
+    /** Only the figure, for a table whose head names the unit; pounds and ounces keep theirs, or 0.5 could be either. */
+    massFigure: (massG: number) => {
+      const quantity = massQuantity(preferences, massG);
+      return preferences.mass === 'lbOz' ? joined(quantity) : quantity.value;
+    },
     massUnit: preferences.mass === 'lbOz' ? 'lb oz' : preferences.mass,
     kilograms: (massG: number) => `${formatNumber(locale, massG / gramsPer('kg'), 1, 1)}${NBSP}kg`,
     pounds: (massG: number) => `${formatNumber(locale, massG / GRAMS_PER_POUND, 2)}${NBSP}lb`,

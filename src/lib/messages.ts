@@ -1,5 +1,5 @@
 import i18next from 'i18next';
-import { useMemo, useSyncExternalStore } from 'react';
+import { useSyncExternalStore } from 'react';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { readPreferences, subscribeToPreferences } from './preferences.ts';
 
@@ -60,8 +60,25 @@ export async function startMessages(): Promise<void> {
 /** `t(key, params)` in the language shown; the component draws again when the language changes. */
 export function useMessages(): Translate {
   const language = useSyncExternalStore(subscribe, () => i18next.language);
-  // A new function for a new language, so that whatever was drawn with the old one is drawn again.
-  return useMemo<Translate>(() => (key, params) => i18next.t(key, { lng: language, ...params }), [language]);
+  return translateIn(language);
+}
+
+const translators = new Map<string, Translate>();
+
+/** One function for each locale. A sentence without values is looked up once: a form asks for hundreds at a keystroke. */
+function translateIn(language: string): Translate {
+  const known = translators.get(language);
+  if (known) return known;
+  const sentences = new Map<string, string>();
+  const translator: Translate = (key, params) => {
+    if (params) return i18next.t(key, { lng: language, ...params });
+    const sentence = sentences.get(key) ?? i18next.t(key, { lng: language });
+    // A part that is not loaded yet answers with the key; that is not to be remembered.
+    if (sentence !== key) sentences.set(key, sentence);
+    return sentence;
+  };
+  translators.set(language, translator);
+  return translator;
 }
 
 function subscribe(listener: () => void): () => void {

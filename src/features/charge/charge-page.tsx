@@ -1,4 +1,4 @@
-import { type ReactNode, useEffect, useMemo, useRef, useState } from 'react';
+import { type ReactNode, useDeferredValue, useEffect, useMemo, useRef, useState } from 'react';
 import { useFormat } from '../../lib/format.ts';
 import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -49,6 +49,8 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
   const draftActions = useDraftActions(change);
   const form = useMemo<ChargeForm>(() => ({ draft, errorAt, ...draftActions }), [draft, errorAt, draftActions]);
   const { ref, outOfSight } = useOutOfSight();
+  // The total and the beam follow each keystroke; the lines of the working may come a moment later.
+  const shown = useDeferredValue(useMemo(() => ({ draft, answer, room }), [draft, answer, room]));
   const wide = useMedia('(width >= 64rem)');
   const state: ChargeState = { answer, overRoom: room?.verdict === 'over' };
   return (
@@ -73,8 +75,13 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
               <Answer ref={ref} draft={draft} answer={answer} room={room} onExample={onExample} />
             </div>
             <div className="order-3">
-              {answer.is === 'done' ? (
-                <Working draft={draft} request={answer.request} result={answer.result} room={room} />
+              {shown.answer.is === 'done' ? (
+                <Working
+                  draft={shown.draft}
+                  request={shown.answer.request}
+                  result={shown.answer.result}
+                  room={shown.room}
+                />
               ) : null}
             </div>
           </div>
@@ -112,8 +119,11 @@ function MoreFigures({ flat, answer }: { flat: boolean; answer: ChargeAnswer }) 
       ? answer.refusals.some(({ path }) => BEHIND.test(path))
       : answer.is === 'incomplete' && [...answer.missing, ...answer.unreadable].some((pointer) => BEHIND.test(pointer));
   const [open, setOpen] = useOpen(wrong);
+  // Forty fields that nobody has asked for need not be drawn at every keystroke.
+  const asked = useRef(false);
+  asked.current ||= open;
   const flammable = allRefrigerants.find((row) => row.designation === draft.refrigerant)?.lflKgM3 != null;
-  const sections = (
+  const sections = () => (
     <>
       <JobSection />
       <RuleSection />
@@ -123,7 +133,7 @@ function MoreFigures({ flat, answer }: { flat: boolean; answer: ChargeAnswer }) 
       <Co2Section />
     </>
   );
-  if (flat) return sections;
+  if (flat) return sections();
   return (
     <Disclosure
       title={t('chargeScreen.more')}
@@ -131,7 +141,7 @@ function MoreFigures({ flat, answer }: { flat: boolean; answer: ChargeAnswer }) 
       open={open}
       onToggle={setOpen}
     >
-      <div className="border-t border-rule pl-3">{sections}</div>
+      {asked.current ? <div className="border-t border-rule pl-3">{sections()}</div> : null}
     </Disclosure>
   );
 }

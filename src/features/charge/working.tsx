@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import type { ChargeRequest, ChargeResponse } from '../../../shared/charge/charge.schema.ts';
 import type { RoomLimitResponse } from '../../../shared/room-limit/room-limit.schema.ts';
 import { formatNumber, NBSP, useFormat } from '../../lib/format.ts';
@@ -20,7 +21,7 @@ interface Props {
 }
 
 /** The arithmetic as lines that can be checked with a pencil, what is odd about them, and what is dangerous. */
-export function Working({ draft, request, result, room }: Props) {
+export const Working = memo(function Working({ draft, request, result, room }: Props) {
   const t = useMessages();
   return (
     <div className="flex flex-col gap-5 pt-4">
@@ -40,7 +41,7 @@ export function Working({ draft, request, result, room }: Props) {
       <Cautions result={result} roomKnown={room !== null} />
     </div>
   );
-}
+});
 
 function Arithmetic({ draft, request, result }: Omit<Props, 'room'>) {
   const t = useMessages();
