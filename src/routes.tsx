@@ -10,6 +10,13 @@ import { RouteProblem } from './app/route-problem.tsx';
 const pages: RouteObject[] = [
   { path: 'charge', lazy: () => import('./features/charge/charge.route.tsx') },
   { path: 'units/:unitId/charge', lazy: () => import('./features/charge/unit-charge.route.tsx') },
+  {
+    path: 'log',
+    lazy: () => import('./features/entries/log.route.tsx'),
+    children: [{ path: ':groupId', lazy: () => import('./features/entries/entry.route.tsx') }],
+  },
+  { path: 'units/:unitId/weigh-in', lazy: () => import('./features/weigh-in/weigh-in.route.tsx') },
+  { path: 'weigh-back/:groupId', lazy: () => import('./features/weigh-in/weigh-back.route.tsx') },
   { path: 'more', lazy: () => import('./features/session/more.route.tsx') },
   { path: 'preferences', lazy: () => import('./features/session/preferences.route.tsx') },
   { path: 'choose-firm', lazy: () => import('./features/session/choose-firm.route.tsx') },

@@ -14,6 +14,7 @@ import type {
   cylinderKind,
   updateCylinderRequest,
 } from '../../shared/cylinders/cylinder.schema.ts';
+import type { ReadingRow } from '../../shared/entries/entry.schema.ts';
 import type { EntryGroupResponse } from '../../shared/ledger/entry-group-response.schema.ts';
 import { http, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
@@ -46,6 +47,14 @@ export const cylinderQueries = {
     queryOptions({
       queryKey: [...cylinderQueries.all(), id] as const,
       queryFn: ({ signal }) => http.get<Cylinder>(`/cylinders/${id}`, { signal }),
+    }),
+  /** Its scale readings, newest first. */
+  readings: (id: string, limit = 200) =>
+    queryOptions({
+      queryKey: [...cylinderQueries.all(), id, 'readings', limit] as const,
+      queryFn: ({ signal }) =>
+        http.get<PageOf<ReadingRow>>(`/readings${queryString({ cylinderId: id, limit })}`, { signal }),
+      select: (page) => page.items,
     }),
 };
 

@@ -22,7 +22,7 @@ export function Dialog({ open, onClose, title, children, actions }: Props) {
       {open ? (
         <div className="flex max-h-[90dvh] flex-col">
           <SheetHead titleId={titleId} title={title} onClose={onClose} />
-          <div className="overflow-y-auto px-5 py-4">{children}</div>
+          <div className="relative overflow-y-auto px-5 py-4">{children}</div>
           {actions ? <div className="flex flex-wrap gap-3 border-t border-rule px-5 py-4">{actions}</div> : null}
         </div>
       ) : null}
@@ -44,7 +44,7 @@ export function Sheet({ open, onClose, title, children, actions, desk }: Props &
         className="sticky top-14 flex h-[calc(100dvh-3.5rem)] w-[25rem] shrink-0 flex-col border-l border-rule bg-sheet"
       >
         <SheetHead titleId={titleId} title={title} onClose={onClose} />
-        <div className="flex-1 overflow-y-auto px-5 py-4">{children}</div>
+        <div className="relative flex-1 overflow-y-auto px-5 py-4">{children}</div>
         {actions ? <div className="flex flex-wrap gap-3 border-t border-rule px-5 py-3">{actions}</div> : null}
       </aside>
     );
@@ -67,7 +67,7 @@ function ModalSheet({ open, onClose, title, children, actions }: Props) {
       {open ? (
         <div className="flex h-full flex-col">
           <SheetHead titleId={titleId} title={title} onClose={onClose} />
-          <div className="page-gutter flex-1 overflow-y-auto py-4">{children}</div>
+          <div className="page-gutter relative flex-1 overflow-y-auto py-4">{children}</div>
           {actions ? (
             <div className="page-gutter pb-safe flex flex-wrap gap-3 border-t border-rule py-3">{actions}</div>
           ) : null}

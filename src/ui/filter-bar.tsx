@@ -5,9 +5,19 @@ import { Chevron, type Choice } from './field.tsx';
 
 /**
  * What a list is narrowed by: one ruled line of words on a desk, one line that opens on a phone. `summary` says there
- * what is set; `end` stands at the right edge (search, download).
+ * what is set. `search` stays in view; `end` (a download, say) is at the right edge, on a phone at the foot of the rest.
  */
-export function FilterBar({ summary, end, children }: { summary: string; end?: ReactNode; children: ReactNode }) {
+export function FilterBar({
+  summary,
+  search,
+  end,
+  children,
+}: {
+  summary: string;
+  search?: ReactNode;
+  end?: ReactNode;
+  children: ReactNode;
+}) {
   const t = useMessages();
   const desk = useMedia('(width >= 48rem)');
   if (desk) {
@@ -17,12 +27,20 @@ export function FilterBar({ summary, end, children }: { summary: string; end?: R
         className="page-gutter flex flex-wrap items-center gap-x-6 border-y border-rule"
       >
         {children}
-        {end ? <span className="ml-auto flex items-center gap-5">{end}</span> : null}
+        {search || end ? (
+          <span className="ml-auto flex items-center gap-5">
+            {end}
+            {search}
+          </span>
+        ) : null}
       </search>
     );
   }
   return (
     <search aria-label={t('ui.filter.title')} className="border-b border-rule">
+      {search ? (
+        <div className="page-gutter flex min-h-13 items-center border-b border-rule-faint">{search}</div>
+      ) : null}
       <details className="group">
         <summary className="page-gutter relative flex min-h-12 items-center gap-3 pr-10!">
           <span className="type-label text-ink-soft">{t('ui.filter.title')}</span>
@@ -30,8 +48,8 @@ export function FilterBar({ summary, end, children }: { summary: string; end?: R
           <Chevron className="right-5 transition-transform group-open:rotate-180" />
         </summary>
         <div className="page-gutter grid grid-cols-2 gap-x-4 pb-3">{children}</div>
+        {end ? <div className="page-gutter flex min-h-12 flex-wrap items-center gap-x-5 pb-1">{end}</div> : null}
       </details>
-      {end ? <div className="page-gutter flex min-h-12 flex-wrap items-center gap-x-5">{end}</div> : null}
     </search>
   );
 }
@@ -47,8 +65,8 @@ export function FilterSelect({
   label: string;
   value: string;
   choices: readonly Choice[];
-  /** The word for no filter. */
-  any: string;
+  /** The word for no filter; none where one of the choices always holds. */
+  any?: string;
   onChange: (value: string) => void;
 }) {
   const id = useId();
@@ -65,7 +83,7 @@ export function FilterSelect({
           onChange={(event) => onChange(event.target.value)}
           className="min-h-11 max-w-52 min-w-0 appearance-none truncate bg-ground pr-5 font-[620] [field-sizing:content] max-desk:w-full max-desk:max-w-none"
         >
-          <option value="">{any}</option>
+          {any === undefined ? null : <option value="">{any}</option>}
           {missing ? <option value={value}>{value}</option> : null}
           {choices.map((choice) => (
             <option key={choice.value} value={choice.value}>
