@@ -8,6 +8,8 @@ interface Props {
   tabTitle?: string;
   /** One sentence under the title; on a phone under the page's head. */
   lead?: ReactNode;
+  /** Left of the title: one step back inside this page. */
+  back?: { label: string; onPress: () => void } | null;
   /** Small words at the right of a phone's head: which cylinder, which step. */
   status?: ReactNode;
   /** Links and buttons at the right of the title on a desk, under the head on a phone. */
@@ -22,7 +24,18 @@ interface Props {
 }
 
 /** A page: a slim head on a phone, a large title on a desk, and the next action where the thumb is. */
-export function Page({ title, tabTitle, lead, status, actions, next, field = false, fill = false, children }: Props) {
+export function Page({
+  title,
+  tabTitle,
+  lead,
+  back,
+  status,
+  actions,
+  next,
+  field = false,
+  fill = false,
+  children,
+}: Props) {
   const t = useMessages();
   const online = useOnline();
   const inTab = tabTitle ?? (typeof title === 'string' ? title : '');
@@ -31,7 +44,20 @@ export function Page({ title, tabTitle, lead, status, actions, next, field = fal
       <title>{inTab ? `${inTab} · Tarewright` : 'Tarewright'}</title>
       <div className="sticky top-0 z-10 border-b-2 border-ink bg-ground page-gutter desk:static desk:border-0 desk:bg-transparent">
         <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:items-end desk:pt-6">
-          <h1 className="type-narrow min-w-0 truncate text-[1.0625rem] font-[640] desk:whitespace-normal desk:text-[1.875rem] desk:type-title">
+          {back ? (
+            <button
+              type="button"
+              aria-label={back.label}
+              title={back.label}
+              onClick={back.onPress}
+              className="-mr-2 -ml-3 grid size-12 shrink-0 place-items-center text-rest desk:-mb-1.5"
+            >
+              <svg aria-hidden="true" viewBox="0 0 8 14" className="h-3.5 w-2 fill-none stroke-current stroke-2">
+                <path d="M7 1L1 7l6 6" />
+              </svg>
+            </button>
+          ) : null}
+          <h1 className="type-narrow min-w-0 flex-1 truncate text-[1.0625rem] font-[640] desk:whitespace-normal desk:text-[1.875rem] desk:type-title">
             {title}
           </h1>
           <div className="type-label flex shrink-0 items-center gap-4 text-ink-soft">

@@ -29,6 +29,7 @@ export function judgeCylinders(
   }: { refrigerant: string; wantedG: number | null; myId: string | null; today: string },
 ): JudgedCylinder[] {
   return cylinders
+    .filter((cylinder) => !isEmptyRecovery(cylinder))
     .map((cylinder) => ({
       cylinder,
       onVan: myId !== null && cylinder.heldBy === myId,
@@ -43,6 +44,9 @@ export function judgeCylinders(
         b.cylinder.contentG - a.cylinder.contentG,
     );
 }
+
+/** Nobody looks for a charge in a recovery cylinder that nothing has gone into. */
+const isEmptyRecovery = ({ kind, contentG }: Cylinder) => kind === 'recovery' && contentG <= 0;
 
 function stopperOf(cylinder: Cylinder, refrigerant: string): Stopper | null {
   if (cylinder.mixed) return 'mixed';

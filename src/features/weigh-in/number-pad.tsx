@@ -55,14 +55,27 @@ export function ReadingWindow({ label, reading, onChange, below = false, invalid
 /** `lb oz` shows its pounds inside the window already. */
 export const unitName = (unit: ReadingUnit): string => (unit === 'lbOz' ? 'oz' : unit);
 
-const ROWS: readonly (readonly Key[])[] = [
+/** Pounds and ounces need a key between them; it stands where the others clear. */
+const rowsFor = (unit: ReadingUnit): readonly (readonly Key[])[] => [
   ['7', '8', '9', 'back'],
-  ['4', '5', '6', 'clear'],
+  ['4', '5', '6', unit === 'lbOz' ? 'pounds' : 'clear'],
   ['1', '2', '3', 'point'],
 ];
 
+/** What else may be done while reading: left and right of the nought, where the thumb is. */
+export type PadActions = readonly [PadAction, PadAction];
+export interface PadAction {
+  label: string;
+  onPress: () => void;
+  disabled?: boolean;
+}
+
 /** Keys as large as a gloved thumb; the unit of the scale's own display sits among them. */
-export function NumberPad({ reading, onChange }: Pick<Props, 'reading' | 'onChange'>) {
+export function NumberPad({
+  reading,
+  onChange,
+  beside,
+}: Pick<Props, 'reading' | 'onChange'> & { beside?: PadActions }) {
   const t = useMessages();
   const { locale } = usePreferences();
   const decimal = decimalSeparatorOf(locale);
@@ -80,17 +93,31 @@ export function NumberPad({ reading, onChange }: Pick<Props, 'reading' | 'onChan
   return (
     <fieldset className="grid grid-cols-4 border-t border-l border-rule bg-sheet">
       <legend className="sr-only">{t('weighIn.pad')}</legend>
-      {ROWS.flatMap((row) => row.map((name) => key(name)))}
-      {reading.unit === 'lbOz' ? (
+      {rowsFor(reading.unit).flatMap((row) => row.map((name) => key(name)))}
+      {beside ? (
         <>
-          {key('0', 'col-span-2')}
-          {key('pounds')}
+          <ActionKey action={beside[0]} />
+          {key('0')}
+          <ActionKey action={beside[1]} />
         </>
       ) : (
         key('0', 'col-span-3')
       )}
       <UnitKey reading={reading} onChange={onChange} />
     </fieldset>
+  );
+}
+
+function ActionKey({ action }: { action: PadAction }) {
+  return (
+    <button
+      type="button"
+      onClick={action.onPress}
+      disabled={action.disabled}
+      className="type-label min-h-14 border-r border-b border-rule px-1 text-[0.9375rem] leading-tight font-[600] hover:bg-well active:bg-rest-wash disabled:font-[400] disabled:text-ink-soft"
+    >
+      {action.label}
+    </button>
   );
 }
 

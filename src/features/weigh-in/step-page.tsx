@@ -27,24 +27,13 @@ export function StepPage({ weighIn, dispatch, title, lead, next, children }: Pro
     <Page
       field
       title={t('weighIn.title', { unit: unit.tag })}
+      back={canGoBack ? { label: t('weighIn.back'), onPress: () => dispatch({ type: 'back' }) } : null}
       status={cylinder ? t('weighIn.cylinder', { tag: cylinder.tag }) : unit.refrigerant}
       next={next}
     >
       {step > 0 ? <Steps step={step} count={steps.length} label={t('weighIn.progress')} /> : null}
-      <div className="page-gutter flex w-full max-w-2xl flex-col gap-4 pt-3">
-        {canGoBack ? (
-          <button
-            type="button"
-            onClick={() => dispatch({ type: 'back' })}
-            className="type-label -mb-3 inline-flex min-h-12 items-center gap-2 self-start text-rest"
-          >
-            <svg aria-hidden="true" viewBox="0 0 6 10" className="h-2.5 w-1.5 fill-none stroke-current stroke-[1.8]">
-              <path d="M5 1L1 5l4 4" />
-            </svg>
-            {t('weighIn.back')}
-          </button>
-        ) : null}
-        <div ref={heading} tabIndex={-1} className="outline-none">
+      <div className="page-gutter flex w-full max-w-2xl flex-col gap-3.5 pt-2.5">
+        <div ref={heading} tabIndex={-1} className={title || lead ? 'outline-none' : 'sr-only'}>
           {title ? <h2 className="type-title text-[1.5rem] desk:text-[1.75rem]">{title}</h2> : null}
           {lead ? <div className="pt-1.5 text-ink-soft">{lead}</div> : null}
         </div>

@@ -63,7 +63,7 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
           invalid={asked && fault !== null}
           describedBy={id}
         />
-        <div id={id} aria-live="polite" className="min-h-[3.25rem] pt-2">
+        <div id={id} aria-live="polite" className="min-h-9 pt-1.5">
           {asked && fault !== null ? (
             <FieldError>{faultText(fault, leg, tareG, show, t)}</FieldError>
           ) : (
@@ -72,24 +72,29 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
         </div>
       </div>
       <Beam spec={spec} summary={summary} />
+      {progress?.state === 'past' ? (
+        <WhatToDo progress={progress} />
+      ) : (
+        <Cautions refrigerant={unit.refrigerant} at="charging" />
+      )}
       <NumberPad
         reading={leg.now}
         onChange={(reading) => {
           setAsked(false);
           dispatch({ type: 'keyNow', reading });
         }}
+        beside={[
+          { label: t('weighIn.charging.change'), onPress: () => end(true) },
+          {
+            label: t('weighIn.charging.leaveOpen'),
+            onPress: () => dispatch({ type: 'leaveOpen' }),
+            disabled: leg.mode === 'zeroed',
+          },
+        ]}
       />
-      <div className="grid grid-cols-2 gap-3">
-        <Button onClick={() => end(true)}>{t('weighIn.charging.change')}</Button>
-        <Button onClick={() => dispatch({ type: 'leaveOpen' })} disabled={leg.mode === 'zeroed'}>
-          {t('weighIn.charging.leaveOpen')}
-        </Button>
-      </div>
       {leg.mode === 'zeroed' ? (
-        <p className="-mt-2 text-[0.9375rem] text-ink-soft">{t('weighIn.charging.zeroedNotOpen')}</p>
+        <p className="text-[0.9375rem] text-ink-soft">{t('weighIn.charging.zeroedNotOpen')}</p>
       ) : null}
-      {progress?.state === 'past' ? <WhatToDo progress={progress} /> : null}
-      <Cautions refrigerant={unit.refrigerant} at="charging" />
       {weighIn.purpose === 'adjust' ? <AdjustHelp /> : null}
     </StepPage>
   );

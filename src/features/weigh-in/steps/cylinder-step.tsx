@@ -98,7 +98,8 @@ function CylinderRow({ one, chosen, onChoose }: { one: JudgedCylinder; chosen: b
   const beamUnit = useBeamUnit();
   const { cylinder, doubts, onVan } = one;
   const { contentG, tareG, limitG } = cylinder;
-  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(massG) }) });
+  // A limit is worked out from a density: its decimals mean nothing on a scale.
+  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(Math.round(massG)) }) });
   const tare = said('weighIn.beam.tare', tareG);
   const contents = said('weighIn.beam.contents', contentG);
   const limit = limitG === null ? null : said('weighIn.beam.limit', tareG + limitG);

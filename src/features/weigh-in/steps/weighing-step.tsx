@@ -112,7 +112,7 @@ function scaleDetail(scale: Tool, t: Translate, number: (value: number) => strin
     scale.lastCheckedOn
       ? t('weighIn.scale.checked', { date: day(scale.lastCheckedOn) })
       : t('weighIn.scale.neverChecked'),
-    ...(scale.heldByName ? [t('weighIn.cylinder.with', { name: scale.heldByName })] : []),
+    ...(scale.heldByName ? [t('weighIn.scale.with', { name: scale.heldByName })] : []),
   ];
   return parts.join(', ');
 }
