@@ -9,15 +9,8 @@ import { lockHead, postRecords } from '../journal/post-records.ts';
 import type { Made } from '../registers/register-rows.ts';
 import type { Posting } from './judge-posting.ts';
 import { namedIds } from './named-ids.ts';
-import {
-  authorOf,
-  enter,
-  findRepeated,
-  judge,
-  outcomeOfAdded,
-  type PostingParts,
-  refuseWithoutReason,
-} from './post-group.ts';
+import { outcomeOfAdded } from './outcome-of-added.ts';
+import { authorOf, enter, findRepeated, judge, type PostingParts, refuseWithoutReason } from './post-group.ts';
 import { type PostingOutcome, presentOutcome } from './posting-answer.ts';
 import { loadPostingFacts } from './posting-facts.repository.ts';
 import { recordsOfPosting } from './posting-records.ts';
@@ -62,12 +55,7 @@ export async function postWithin(
   const request = { body, requestHash: hash, replacesGroupId: null };
   const written = recordsOfPosting(authorOf(parts, actor), facts, posting, judged, request, null, stored);
   const posted = await postRecords(manager, written.records, written.derived);
-  const lastSequence = posted.at(-1)?.sequence ?? 0;
-  return { isNew: true, value: await outcomeOfAdded(manager, posting, judged.added?.group ?? raise(), lastSequence) };
-}
-
-function raise(): never {
-  throw new Error('a group that was posted was judged');
+  return { isNew: true, value: outcomeOfAdded(written, posted, judged, facts) };
 }
 
 /** Closing the books and writing down what a reclaimer certified is the office's. */

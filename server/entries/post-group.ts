@@ -1,12 +1,12 @@
 import type { EntityManager } from 'typeorm';
 import type { EntryGroupRequest } from '../../shared/ledger/entry-group.schema.ts';
-import { enteredGroup, type JudgedGroup } from '../../shared/ledger/judged-group.ts';
+import { enteredGroup } from '../../shared/ledger/judged-group.ts';
 import { ASSUMED_SCALE } from '../../shared/ledger/scale.ts';
 import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals, valueOrProblem } from '../http/problem.ts';
-import { type JudgedPosting, judgePosting, type Posting, placesOf, placesToReplay } from './judge-posting.ts';
+import { type JudgedPosting, judgePosting, type Posting, placesToReplay } from './judge-posting.ts';
 import { findEarlierPosting, readOutcome } from './posting-answer.repository.ts';
 import type { PostingOutcome } from './posting-answer.ts';
 import type { PostingFacts, StoredGroup } from './posting-facts.ts';
@@ -81,18 +81,4 @@ export async function findRepeated(
   if (!earlier) return null;
   if (earlier.requestHash !== requestHash || earlier.aboutGroupId !== aboutGroupId) throw new Problem('idReused');
   return readOutcome(manager, earlier.groupIds, earlier.subjectIds, earlier.lastSequence);
-}
-
-/** What a posting of one group that only adds made: its places need no looking up. */
-export function outcomeOfAdded(
-  manager: EntityManager,
-  posting: Posting,
-  added: JudgedGroup,
-  lastSequence: number,
-): Promise<PostingOutcome> {
-  const { cylinderIds, unitIds } = placesOf(posting);
-  const reclaimerIds = added.masses
-    .flatMap(({ from, to }) => [from, to])
-    .flatMap((place) => (place.place === 'reclaimer' ? [place.id] : []));
-  return readOutcome(manager, [added.id], [...cylinderIds, ...unitIds, ...reclaimerIds], lastSequence);
 }

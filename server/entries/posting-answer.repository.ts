@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
-import type { OutcomeEntry, OutcomeFlag, PostingOutcome } from './posting-answer.ts';
+import { plannedQuery } from '../journal/planned-query.ts';
+import type { PostingOutcome } from './posting-answer.ts';
 
 const ENTRIES = `select coalesce(json_agg(json_build_object('id', e.id, 'groupId', e.group_id, 'sequence', e.sequence,
     'refrigerant', e.refrigerant, 'mass', e.mass_micrograms::text,
@@ -13,7 +14,7 @@ const ENTRIES = `select coalesce(json_agg(json_build_object('id', e.id, 'groupId
 /** As they stood after the posting: what came later is taken off again. What it emptied shows with zero. */
 const BALANCES = `select coalesce(json_agg(json_build_object('place', b.place, 'id', b.place_id,
     'refrigerant', b.refrigerant, 'mass', (b.mass_micrograms - later.mass)::text)
-    order by b.place, b.place_id, b.refrigerant), '[]')
+    order by b.place::text collate "C", b.place_id, b.refrigerant::text collate "C"), '[]')
   from balance b
   cross join lateral (select coalesce(sum(case when e.to_id = b.place_id then e.mass_micrograms
         else -e.mass_micrograms end), 0) as mass
@@ -27,7 +28,7 @@ const BALANCES = `select coalesce(json_agg(json_build_object('place', b.place, '
 const FLAGS = `select coalesce(json_agg(json_build_object('code', f.code, 'place', f.subject_kind,
     'subjectId', f.subject_id, 'groupId', f.group_id, 'refrigerant', f.refrigerant, 'mass', f.mass_micrograms::text,
     'figures', f.figures, 'openedBy', f.opened_by_group_id, 'closedBy', f.closed_by)
-    order by f.opened_sequence, f.code, f.subject_id, f.group_id, f.refrigerant), '[]')
+    order by f.opened_sequence, f.code collate "C", f.subject_id, f.group_id, f.refrigerant::text collate "C"), '[]')
   from (select f.*, o.sequence as opened_sequence,
       case when c.sequence <= $3 then f.closed_by_group_id end as closed_by
     from flag f
@@ -62,9 +63,8 @@ export async function readOutcome(
   subjectIds: readonly string[],
   lastSequence: number,
 ): Promise<PostingOutcome> {
-  const [row] = await manager.query<
-    { outcome: Omit<PostingOutcome, 'entries' | 'flags'> & { entries: OutcomeEntry[]; flags: OutcomeFlag[] } }[]
-  >(OUTCOME, [groupIds, subjectIds, lastSequence]);
+  const values = [groupIds, subjectIds, lastSequence];
+  const [row] = await plannedQuery<{ outcome: PostingOutcome }>(manager, 'posting_outcome', OUTCOME, values);
   if (!row) throw new Error('an outcome is one row');
   return row.outcome;
 }

@@ -6,6 +6,7 @@ import type { Place } from '../../shared/ledger/place.ts';
 import type { Scale } from '../../shared/ledger/scale.ts';
 import { cylinderFromSnapshot, type Snapshot, unitFromSnapshot } from '../../shared/ledger/snapshot.ts';
 import { emptyUnitState } from '../../shared/ledger/unit-state.ts';
+import { plannedQuery } from '../journal/planned-query.ts';
 import type { CylinderFacts, PostingFacts, StoredFlag, UnitFacts } from './posting-facts.ts';
 
 /** The ids that a posting names. What does not exist is missing in the answer. */
@@ -44,7 +45,7 @@ interface FactRows {
     state: Snapshot | null;
   }[];
   tools: (Scale & { id: string })[];
-  parties: string[];
+  parties: { kind: string; id: string; name: string }[];
   jobs: { id: string; unitId: string }[];
   chargeSheets: { id: string; unitId: string }[];
   people: string[];
@@ -62,6 +63,8 @@ export interface FlagRow {
   figures: Record<string, string>;
   standing: boolean;
   openedAt: string;
+  openedBy: string;
+  openedSequence: number;
 }
 
 const BOOK = (kind: string, id: string) =>
@@ -72,7 +75,9 @@ const STATE = (kind: string, id: string) =>
 
 export const FLAG_FIELDS = `json_build_object('id', f.id, 'code', f.code, 'subjectKind', f.subject_kind,
   'subjectId', f.subject_id, 'groupId', f.group_id, 'refrigerant', f.refrigerant, 'mass', f.mass_micrograms::text,
-  'figures', f.figures, 'standing', f.standing, 'openedAt', f.opened_at)`;
+  'figures', f.figures, 'standing', f.standing, 'openedAt', f.opened_at, 'openedBy', f.opened_by_group_id,
+  'openedSequence', (select o.sequence from entry_group o
+    where o.firm_id = f.firm_id and o.id = f.opened_by_group_id))`;
 
 /** One statement, because a posting waits for it with the head locked. Masses come as text: JSON numbers are doubles. */
 const FACTS = `select json_build_object(
@@ -100,9 +105,9 @@ const FACTS = `select json_build_object(
   'tools', (select coalesce(json_agg(json_build_object('id', t.id, 'resolutionG', t.resolution_g,
       'repeatabilityG', t.repeatability_g, 'spanErrorRelative', t.span_error_relative, 'offsetG', t.offset_g)), '[]')
     from tool t where t.id = any ($3::uuid[]) and t.kind = 'scale'),
-  'parties', (select coalesce(json_agg(p.key), '[]') from (
-      select kind || ':' || id as key from party where id = any ($4::uuid[])
-      union all select 'customer:' || id from customer where id = any ($4::uuid[])) p),
+  'parties', (select coalesce(json_agg(json_build_object('kind', p.kind, 'id', p.id, 'name', p.name)), '[]') from (
+      select kind, id, name from party where id = any ($4::uuid[])
+      union all select 'customer', id, name from customer where id = any ($4::uuid[])) p),
   'jobs', (select coalesce(json_agg(json_build_object('id', j.id, 'unitId', j.unit_id)), '[]')
     from job j where j.id = any ($5::uuid[])),
   'chargeSheets', (select coalesce(json_agg(json_build_object('id', s.id, 'unitId', s.unit_id)), '[]')
@@ -113,7 +118,7 @@ const FACTS = `select json_build_object(
 ) as facts`;
 
 export async function loadPostingFacts(manager: EntityManager, named: NamedIds): Promise<PostingFacts> {
-  const [row] = await manager.query<{ facts: FactRows }[]>(FACTS, [
+  const [row] = await plannedQuery<{ facts: FactRows }>(manager, 'posting_facts', FACTS, [
     named.cylinderIds,
     named.unitIds,
     named.toolIds,
@@ -132,7 +137,7 @@ export async function loadPostingFacts(manager: EntityManager, named: NamedIds):
     units: new Map(units.map((unit) => [unit.id, unitFacts(unit)])),
     scales: new Map(tools.map(({ id, ...scale }) => [id, scale])),
     standingFlags: flags.map(storedFlag),
-    parties: new Set(parties),
+    parties: new Map(parties.map((party) => [`${party.kind}:${party.id}`, party])),
     jobs: new Map(jobs.map((job) => [job.id, job])),
     chargeSheets: new Map(chargeSheets.map((sheet) => [sheet.id, sheet])),
     people: new Set(people),
@@ -189,5 +194,7 @@ export function storedFlag(row: FlagRow): StoredFlag {
     standing: row.standing,
     figures: Object.fromEntries(Object.entries(row.figures).map(([name, mass]) => [name, BigInt(mass)])),
     openedAt: row.openedAt,
+    openedBy: row.openedBy,
+    openedSequence: row.openedSequence,
   };
 }

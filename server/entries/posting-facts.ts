@@ -10,6 +10,8 @@ import type { UnitRegister, UnitState } from '../../shared/ledger/unit-state.ts'
 export interface StoredFlag extends LedgerFlag {
   readonly id: string;
   readonly openedAt: string;
+  readonly openedBy: string;
+  readonly openedSequence: number;
 }
 
 export interface CylinderFacts {
@@ -39,8 +41,8 @@ export interface PostingFacts {
   readonly scales: ReadonlyMap<string, Scale>;
   /** Open flags that say how the places stand; those of replayed places come with their timeline. */
   readonly standingFlags: readonly StoredFlag[];
-  /** `customer:<id>`, `supplier:<id>`, ... of the parties that exist. */
-  readonly parties: ReadonlySet<string>;
+  /** By `customer:<id>`, `supplier:<id>`, ... */
+  readonly parties: ReadonlyMap<string, { id: string; name: string }>;
   readonly jobs: ReadonlyMap<string, { unitId: string }>;
   readonly chargeSheets: ReadonlyMap<string, { unitId: string }>;
   readonly people: ReadonlySet<string>;

@@ -3,6 +3,7 @@ import type { DerivedRows, JournalRecord } from '../../shared/journal/record.sch
 import { gramsText } from '../../shared/ledger/grams-text.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { canonicalText } from './canonical-text.ts';
+import { plannedQuery } from './planned-query.ts';
 
 export interface Head {
   sequence: number;
@@ -10,13 +11,19 @@ export interface Head {
   firstOpenMonth: string | null;
 }
 
+/** Statements of a posting are planned once a connection, maybe while a new firm's tables were empty: by their indexes. */
+const LOCK_HEAD = `select sequence, first_open_month, set_config('enable_seqscan', 'off', true) from lock_head()`;
+
 /**
  * Locks the firm's head until the transaction ends, so that records follow each other without a gap. Everything that
  * writes a record locks it before it reads what it decides by, and before it locks any other row.
  */
 export async function lockHead(manager: EntityManager): Promise<Head> {
-  const [head] = await manager.query<{ sequence: string; first_open_month: string | null }[]>(
-    'select sequence, first_open_month from lock_head()',
+  const [head] = await plannedQuery<{ sequence: string; first_open_month: string | null }>(
+    manager,
+    'lock_head',
+    LOCK_HEAD,
+    [],
   );
   return { sequence: Number(head?.sequence), firstOpenMonth: head?.first_open_month ?? null };
 }
@@ -36,7 +43,9 @@ export async function postRecords(
   derived: DerivedRows = {},
 ): Promise<PostedRecord[]> {
   try {
-    const rows = await manager.query<{ record_id: string; sequence: string }[]>(
+    const rows = await plannedQuery<{ record_id: string; sequence: string }>(
+      manager,
+      'post_records',
       'select record_id, sequence from post_records($1::text[], $2::jsonb)',
       [records.map(canonicalText), JSON.stringify(derived)],
     );
@@ -65,7 +74,7 @@ const OF_IDS: ReadonlySet<string> = new Set([
  * or came in between. Rules that only a fault of the server can break stay errors.
  */
 function problemOfRule(error: unknown) {
-  const { code, detail, constraint } = (error as { driverError?: DatabaseRefusal }).driverError ?? {};
+  const { code, detail, constraint } = error as DatabaseRefusal;
   if (code === '23505' && OF_IDS.has(String(constraint))) return new Problem('idReused', { cause: error });
   if (!code?.startsWith('TW')) return null;
   const figures = JSON.parse(detail ?? '{}') as Record<string, string>;
