@@ -1,4 +1,5 @@
 import { useFormat } from '../../lib/format.ts';
+import { instantOfLocal, toLocalInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Disclosure } from '../../ui/disclosure.tsx';
 import { blank, Field, TextField } from '../../ui/field.tsx';
@@ -31,10 +32,10 @@ export function SayMore({
             type="datetime-local"
             label={t('weighIn.more.when')}
             hint={t('weighIn.more.clock')}
-            value={localText(occurredAt)}
+            value={toLocalInput(new Date(occurredAt))}
             onChange={(event) => {
-              const at = new Date(event.target.value);
-              if (!Number.isNaN(at.getTime())) onChange({ occurredAt: at.toISOString() });
+              const at = instantOfLocal(event.target.value);
+              if (at !== null) onChange({ occurredAt: at });
             }}
           />
         ) : null}
@@ -53,12 +54,6 @@ export function SayMore({
       </div>
     </Disclosure>
   );
-}
-
-/** What a datetime-local field takes: the device's clock, to the minute. */
-function localText(instant: string): string {
-  const at = new Date(instant);
-  return new Date(at.getTime() - at.getTimezoneOffset() * 60_000).toISOString().slice(0, 16);
 }
 
 /** Asked, not refused for good: what goes past a limit is posted with its reason. */

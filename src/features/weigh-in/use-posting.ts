@@ -4,8 +4,8 @@ import type { EntryGroupResponse } from '../../../shared/ledger/entry-group-resp
 import { usePostGroup } from '../../api/entries.ts';
 import { NetworkError, Problem } from '../../api/http.ts';
 import { useAddFullCharge } from '../../api/units.ts';
+import { deviceNow } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
-import { nowText } from '../../lib/now.ts';
 import type { FullChargeToSet } from './weigh-in-data.ts';
 
 /** What stands in the way of posting, in words, and whether a reason would let it through. */
@@ -37,7 +37,8 @@ export function usePosting(unitId: string) {
         await setFullCharge.mutateAsync({ ...rest, mass: { value: String(massG), unit: 'g' }, method: 'manufacturer' });
       }
       const answers: EntryGroupResponse[] = [];
-      for (const group of groups) answers.push(await post.mutateAsync({ ...group, deviceSentAt: nowText() }));
+      for (const group of groups)
+        answers.push(await post.mutateAsync({ ...group, deviceSentAt: deviceNow().toISOString() }));
       return answers;
     } catch (error) {
       setFault(faultOf(error));

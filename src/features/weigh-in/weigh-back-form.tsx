@@ -3,9 +3,9 @@ import type { GroupView } from '../../../shared/entries/entry.schema.ts';
 import type { EntryGroupResponse } from '../../../shared/ledger/entry-group-response.schema.ts';
 import { forgetDraft, useDraft } from '../../lib/draft.ts';
 import { useFormat } from '../../lib/format.ts';
+import { deviceNow } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { newId } from '../../lib/new-id.ts';
-import { nowText } from '../../lib/now.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Beam } from '../../ui/beam/beam.tsx';
 import { Button } from '../../ui/button.tsx';
@@ -208,7 +208,7 @@ function Form({ group, open }: { group: GroupView; open: OpenStart }) {
 
   function key(end: Draft['end']) {
     setAsked(false);
-    say({ end, endAt: nowText() });
+    say({ end, endAt: deviceNow().toISOString() });
   }
 
   function asksFull(closing: NonNullable<typeof body>): boolean {

@@ -1,7 +1,7 @@
 import { useId, useRef, useState } from 'react';
 import { type Formats, useFormat } from '../../../lib/format.ts';
+import { deviceNow } from '../../../lib/local-time.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
-import { nowText } from '../../../lib/now.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
 import { Beam } from '../../../ui/beam/beam.tsx';
 import { Button } from '../../../ui/button.tsx';
@@ -38,7 +38,7 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
   const fault = faultOfEnd(leg, leg.now, leg.hose.full ? 'lost' : 'emptied', tareG);
   const end = (change: boolean) => {
     setAsked(true);
-    if (fault === null) dispatch({ type: 'end', at: nowText(), change });
+    if (fault === null) dispatch({ type: 'end', at: deviceNow().toISOString(), change });
   };
   const { spec, summary } = beamOf(leg, stop, progress, { show, format, t });
   return (

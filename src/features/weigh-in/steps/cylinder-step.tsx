@@ -2,8 +2,8 @@ import { useMemo } from 'react';
 import { Link } from 'react-router-dom';
 import { microgramsOfTyped } from '../../../../shared/units/mass.ts';
 import { type Formats, useFormat } from '../../../lib/format.ts';
+import { deviceNow } from '../../../lib/local-time.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
-import { now } from '../../../lib/now.ts';
 import { Beam } from '../../../ui/beam/beam.tsx';
 import { cylinderBeam } from '../../../ui/beam/presets.ts';
 import { useBeamUnit } from '../../../ui/beam/use-beam-unit.ts';
@@ -34,7 +34,7 @@ export function CylinderStep({ weighIn, dispatch }: StepProps) {
     () =>
       judgeCylinders(
         (cylinders ?? []).filter((cylinder) => !used.has(cylinder.id)),
-        { refrigerant: unit.refrigerant, wantedG, myId, today: now().toISOString().slice(0, 10) },
+        { refrigerant: unit.refrigerant, wantedG, myId, today: deviceNow().toISOString().slice(0, 10) },
       ),
     [cylinders, used, unit.refrigerant, wantedG, myId],
   );

@@ -1,7 +1,7 @@
 import { useId, useState } from 'react';
 import { useFormat } from '../../../lib/format.ts';
+import { deviceNow } from '../../../lib/local-time.ts';
 import { useMessages } from '../../../lib/messages.ts';
-import { nowText } from '../../../lib/now.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
 import { Button } from '../../../ui/button.tsx';
 import { FieldError } from '../../../ui/field.tsx';
@@ -36,7 +36,7 @@ function ZeroedStart({ weighIn, dispatch }: StepProps) {
       title={t('weighIn.start.zeroed')}
       lead={t('weighIn.start.zeroed.lead')}
       next={
-        <Button kind="act" wide onClick={() => dispatch({ type: 'start', at: nowText() })}>
+        <Button kind="act" wide onClick={() => dispatch({ type: 'start', at: deviceNow().toISOString() })}>
           {t('weighIn.start.zeroed.act')}
         </Button>
       }
@@ -73,7 +73,7 @@ function GrossStart({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
   const known = cylinder !== null && (cylinder.contentG > 0 || cylinder.lastWeighedAt !== null);
   const goOn = () => {
     setAsked(true);
-    if (error === null) dispatch({ type: 'start', at: nowText() });
+    if (error === null) dispatch({ type: 'start', at: deviceNow().toISOString() });
   };
   return (
     <StepPage

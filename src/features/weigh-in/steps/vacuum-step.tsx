@@ -1,5 +1,5 @@
+import { deviceNow } from '../../../lib/local-time.ts';
 import { useMessages } from '../../../lib/messages.ts';
-import { nowText } from '../../../lib/now.ts';
 import { Caution } from '../../../ui/caution.tsx';
 import { ChoiceList, ChoiceRow } from '../choice-list.tsx';
 import { StepPage } from '../step-page.tsx';
@@ -16,7 +16,7 @@ export function VacuumStep({ weighIn, dispatch }: StepProps) {
             title={t(`weighIn.vacuum.${vacuum}`)}
             detail={t(`weighIn.vacuum.${vacuum}.detail`)}
             chosen={weighIn.vacuum === vacuum}
-            onChoose={() => dispatch({ type: 'vacuum', vacuum, at: nowText() })}
+            onChoose={() => dispatch({ type: 'vacuum', vacuum, at: deviceNow().toISOString() })}
           />
         ))}
       </ChoiceList>
