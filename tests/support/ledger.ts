@@ -140,7 +140,7 @@ export const massOf = (value: string, from: Place, to: Place, fields: Record<str
   ...fields,
 });
 
-export function groupOf(kind: string, occurredAt: string, parts: Record<string, unknown>) {
+export function groupOf<Parts extends object>(kind: string, occurredAt: string, parts: Parts) {
   return { groupId: uuid(), schema: 1, kind, occurredAt, ...parts };
 }
 
