@@ -8,6 +8,7 @@ import { RouteProblem } from './app/route-problem.tsx';
  * data or messages a `loader`. An error stays inside its page: the frame and what was typed remain.
  */
 const pages: RouteObject[] = [
+  { index: true, lazy: () => import('./features/today/today.route.tsx') },
   { path: 'charge', lazy: () => import('./features/charge/charge.route.tsx') },
   { path: 'units/:unitId/charge', lazy: () => import('./features/charge/unit-charge.route.tsx') },
   {
@@ -35,7 +36,7 @@ export const routes: RouteObject[] = [
     children: [
       {
         element: <Outlet />,
-        children: [...pages.map((page): RouteObject => ({ ...page, errorElement: <RouteProblem /> })), notFound()],
+        children: [...pages.map((page) => ({ ...page, errorElement: <RouteProblem /> }) as RouteObject), notFound()],
       },
     ],
   },
