@@ -1,6 +1,7 @@
 import { BalanceEntity } from '../books/balance.entity.ts';
 import { MonthSumEntity } from '../books/month-sum.entity.ts';
 import { PlaceStateEntity } from '../books/place-state.entity.ts';
+import { PurchasePriceEntity } from '../books/purchase-price.entity.ts';
 import { ChargeSheetEntity } from '../charge-sheets/charge-sheet.entity.ts';
 import { CustomerEntity } from '../customers/customer.entity.ts';
 import { CylinderEntity } from '../cylinders/cylinder.entity.ts';
@@ -21,11 +22,16 @@ import { PartyEntity } from '../parties/party.entity.ts';
 import { LastSignInEntity } from '../people/last-sign-in.entity.ts';
 import { MembershipEntity } from '../people/membership.entity.ts';
 import { PersonEntity } from '../people/person.entity.ts';
+import { CarriedItemEntity } from '../periods/carried-item.entity.ts';
+import { PeriodEntity } from '../periods/period.entity.ts';
+import { SettlementEntity } from '../periods/settlement.entity.ts';
+import { SettlementUndoEntity } from '../periods/settlement-undo.entity.ts';
 import { PasswordResetEntity } from '../session/password-reset.entity.ts';
 import { PersonSecretEntity } from '../session/person-secret.entity.ts';
 import { SessionEntity } from '../session/session.entity.ts';
 import { SignInFailureEntity } from '../session/sign-in-failure.entity.ts';
 import { SiteEntity } from '../sites/site.entity.ts';
+import { CylinderHolderEntity } from '../statements/cylinder-holder.entity.ts';
 import { PersonalTokenEntity } from '../tokens/personal-token.entity.ts';
 import { ToolEntity } from '../tools/tool.entity.ts';
 import { ChargeBasisEntity } from '../units/charge-basis.entity.ts';
@@ -73,4 +79,10 @@ export const ENTITIES = [
   MonthSumEntity,
   PlaceStateEntity,
   FlagEntity,
+  PeriodEntity,
+  SettlementEntity,
+  SettlementUndoEntity,
+  CarriedItemEntity,
+  CylinderHolderEntity,
+  PurchasePriceEntity,
 ];

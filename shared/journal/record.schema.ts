@@ -156,6 +156,10 @@ export const REGISTER_NOUNS = [
   'lineSet',
   'chargeSheet',
   'cylinderTare',
+  'period',
+  'settlement',
+  'carriedItem',
+  'purchasePrice',
 ] as const;
 export type RegisterNoun = (typeof REGISTER_NOUNS)[number];
 

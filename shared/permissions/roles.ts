@@ -21,6 +21,9 @@ export const PERMISSIONS = {
   'people:read': ['technician', 'complianceManager', 'owner'],
   'people:manage': ['owner'],
   'exports:make': ['complianceManager', 'owner'],
+  'books:read': ['complianceManager', 'owner'],
+  'books:settle': ['complianceManager', 'owner'],
+  'periods:close': ['owner'],
   'tokens:own': ['technician', 'complianceManager', 'owner'],
 } as const satisfies Record<string, readonly Role[]>;
 export type Permission = keyof typeof PERMISSIONS;
