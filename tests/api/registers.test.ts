@@ -1,0 +1,481 @@
+import { v7 as uuid } from 'uuid';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { startTestApp, type TestApp } from '../support/app.ts';
+import { type Ledger, SINCE, siteOf, startLedger } from '../support/ledger.ts';
+
+let app: TestApp;
+let ledger: Ledger;
+beforeAll(async () => {
+  app = await startTestApp();
+  ledger = await startLedger(app);
+});
+afterAll(() => app.close());
+
+interface RegisterRecord {
+  content: {
+    version: number;
+    before: Record<string, unknown> | null;
+    after: Record<string, unknown>;
+    recordedBy: string;
+  };
+}
+const recordsOf = async (noun: string, subjectId: string) => {
+  const rows = await app.database.query<{ content: string }>(
+    'superuser',
+    'SELECT content FROM journal_record WHERE noun = $1 AND subject_id = $2 ORDER BY version',
+    [noun, subjectId],
+  );
+  return rows.map(({ content }) => JSON.parse(content) as RegisterRecord['content']);
+};
+const wordsOf = (recordField: string) =>
+  app.database.query<{ content: string }>(
+    'superuser',
+    `SELECT content FROM personal_text WHERE field = $1 AND firm_id = $2`,
+    [recordField, ledger.firm.id],
+  );
+
+/** Each register with a body that makes a row, a change, and a field that is not allowed. */
+const registers = () => {
+  const customerId = uuid();
+  return [
+    {
+      path: '/customers',
+      noun: 'customer',
+      body: { id: customerId, name: 'Ada Firth', email: 'ada@example.test', phone: null },
+      change: { name: 'Ada Firth-Lowe' },
+    },
+    { path: '/sites', noun: 'site', body: siteOf(ledger.customer.id), change: { altitudeM: 1600.5 } },
+    {
+      path: '/parties',
+      noun: 'party',
+      body: { id: uuid(), kind: 'reclaimer', name: 'Clear Gas' },
+      change: { note: 'weekdays only' },
+    },
+    {
+      path: '/tools',
+      noun: 'tool',
+      body: { id: uuid(), kind: 'scale', name: 'Scale 2', scale: { resolutionG: 2.5, spanErrorRelative: 0.001 } },
+      change: { lastCheckedOn: '2026-11-01' },
+    },
+  ];
+};
+
+describe('A register', () => {
+  it('makes a row once: the same request again answers the same, other content under its id is refused', async () => {
+    for (const { path, body, change } of registers()) {
+      const first = await ledger.client.post(path, body);
+      expect(first.status, path).toBe(201);
+      const sequence = await ledger.sequence();
+
+      const again = await ledger.client.post(path, body);
+      expect({ status: again.status, body: again.body }, path).toEqual({ status: 200, body: first.body });
+      const other = await ledger.client.post(path, { ...body, ...change });
+      expect([other.status, other.body.code], path).toEqual([409, 'idReused']);
+      expect(await ledger.sequence(), path).toBe(sequence);
+    }
+  });
+
+  it('still knows the first request after the row was changed', async () => {
+    for (const { path, body, change } of registers()) {
+      await ledger.client.post(path, body);
+      const changed = await ledger.client.patch(`${path}/${body.id}`, 1, change);
+      expect(changed.body, path).toMatchObject({ ...change, version: 2 });
+      const again = await ledger.client.post(path, body);
+      expect({ status: again.status, body: again.body }, path).toEqual({ status: 200, body: changed.body });
+    }
+  });
+
+  it('chains what stood before and after each change, numbers as decimals, in the transaction of the change', async () => {
+    for (const { path, noun, body, change } of registers()) {
+      await ledger.client.post(path, body);
+      await ledger.client.patch(`${path}/${body.id}`, 1, change);
+      const [made, changed] = await recordsOf(noun, body.id);
+      expect(made, path).toMatchObject({ version: 1, before: null, recordedBy: ledger.owner.id });
+      expect(changed, path).toMatchObject({ version: 2, before: made?.after });
+      expect(changed?.after, path).not.toEqual(made?.after);
+    }
+    const [site] = registers().filter(({ noun }) => noun === 'site');
+    await ledger.client.post('/sites', site?.body);
+    await ledger.client.patch(`/sites/${site?.body.id}`, 1, { altitudeM: 1600.5 });
+    expect((await recordsOf('site', String(site?.body.id)))[1]?.after).toMatchObject({ altitudeM: '1600.5' });
+  });
+
+  it('keeps words that name a person beside the chain, which holds only their salted hash', async () => {
+    const id = uuid();
+    await ledger.client.post('/customers', { id, name: 'Quill Marrable', email: 'quill@example.test' });
+    await ledger.client.patch(`/customers/${id}`, 1, { email: null });
+
+    const [made, changed] = await recordsOf('customer', id);
+    expect(JSON.stringify([made, changed])).not.toMatch(/quill/i);
+    expect(made?.after).toEqual({
+      nameHash: expect.stringMatching(/^[0-9a-f]{64}$/),
+      emailHash: expect.stringMatching(/^[0-9a-f]{64}$/),
+      phoneHash: null,
+      noteHash: null,
+    });
+    // What did not change keeps its hash, so that erasing the words once erases them everywhere.
+    expect(changed?.after).toEqual({ ...made?.after, emailHash: null });
+    expect((await wordsOf('name')).filter(({ content }) => content === 'Quill Marrable')).toHaveLength(1);
+  });
+
+  it('changes only what the caller has seen: 428 without If-Match, 412 with an old version', async () => {
+    const id = uuid();
+    await ledger.client.post('/customers', { id, name: 'Wexcombe Dairy' });
+    expect((await ledger.client.patch(`/customers/${id}`, null, { name: 'x' })).status).toBe(428);
+    expect((await ledger.client.patch(`/customers/${id}`, 1, { name: 'Dairy' })).headers.get('etag')).toBe('"2"');
+    expect((await ledger.client.patch(`/customers/${id}`, 1, { name: 'y' })).status).toBe(412);
+    expect((await ledger.client.get(`/customers/${id}`)).body.name).toBe('Dairy');
+  });
+
+  it('makes no new version of a change that changes nothing', async () => {
+    const id = uuid();
+    await ledger.client.post('/customers', { id, name: 'Wexcombe Baths' });
+    expect((await ledger.client.patch(`/customers/${id}`, 1, { name: 'Wexcombe Baths' })).body.version).toBe(1);
+    expect(await recordsOf('customer', id)).toHaveLength(1);
+  });
+
+  it('says where a reference leads nowhere, and keeps nothing', async () => {
+    const site = siteOf(uuid());
+    expect((await ledger.client.post('/sites', site)).body).toMatchObject({
+      status: 422,
+      errors: [{ path: '/customerId', code: 'notKnownHere' }],
+    });
+    expect((await ledger.client.get(`/sites/${site.id}`)).status).toBe(404);
+    const tool = { id: uuid(), kind: 'gauge', name: 'Gauge', heldBy: uuid() };
+    expect((await ledger.client.post('/tools', tool)).body.errors).toMatchObject([{ path: '/heldBy' }]);
+  });
+
+  it('wants the accuracy of a scale, and of nothing else', async () => {
+    const tool = (fields: object) => ledger.client.post('/tools', { id: uuid(), name: 'Tool', ...fields });
+    expect((await tool({ kind: 'scale' })).body.errors).toMatchObject([{ path: '/scale', code: 'required' }]);
+    expect((await tool({ kind: 'gauge', scale: { resolutionG: 5 } })).body.errors).toMatchObject([
+      { path: '/scale', code: 'notForThisKind' },
+    ]);
+  });
+
+  it('shows nothing of another firm, and no reader writes', async () => {
+    const other = await startLedger(app);
+    expect((await other.client.get(`/customers/${ledger.customer.id}`)).status).toBe(404);
+    expect((await other.client.patch(`/sites/${ledger.site.id}`, 1, { altitudeM: 1 })).status).toBe(404);
+    expect((await other.client.get('/customers')).body.items.map(({ id }: { id: string }) => id)).toEqual([
+      other.customer.id,
+    ]);
+    const reader = await app.signIn(await app.addPerson(['reader'], { firmId: ledger.firm.id }));
+    for (const { path, body } of registers()) expect((await reader.post(path, body)).status, path).toBe(403);
+  });
+});
+
+describe('A list', () => {
+  it('comes in keyset pages that miss and repeat nothing, in the order asked for', async () => {
+    const own = await startLedger(app);
+    const names = Array.from({ length: 23 }, (_, index) => `Customer ${String(index % 7)}`);
+    for (const name of names) await own.made('/customers', { id: uuid(), name });
+    const seen: { id: string; name: string }[] = [];
+    let cursor: string | null = '';
+    while (cursor !== null) {
+      const query: string = cursor === '' ? '' : `&cursor=${encodeURIComponent(cursor)}`;
+      const { body } = await own.client.get(`/customers?limit=5&sort=-name${query}`);
+      seen.push(...body.items);
+      cursor = body.nextCursor;
+    }
+    expect(seen.map(({ name }) => name)).toEqual([...names, 'Wexcombe Mill'].sort().reverse());
+    expect(new Set(seen.map(({ id }) => id)).size).toBe(24);
+  });
+
+  it('refuses a cursor of another sort, one that was tampered with, and filters that it does not have', async () => {
+    const own = await startLedger(app);
+    for (const name of ['a', 'b', 'c']) await own.made('/customers', { id: uuid(), name });
+    const { body } = await own.client.get('/customers?limit=1');
+    const codeOf = async (query: string) => (await own.client.get(`/customers?${query}`)).body.errors[0].code;
+
+    expect(await codeOf(`limit=1&sort=-name&cursor=${body.nextCursor}`)).toBe('cursorNotValid');
+    const [of, , id] = JSON.parse(Buffer.from(body.nextCursor, 'base64url').toString());
+    const forged = Buffer.from(JSON.stringify([of, id, 'not a uuid'])).toString('base64url');
+    expect(await codeOf(`limit=1&cursor=${forged}`)).toBe('cursorNotValid');
+    expect(await codeOf('colour=red')).toBe('unknownKey');
+    expect(await codeOf('limit=0')).toBe('tooSmall');
+    expect(await codeOf('sort=id')).toBe('notAllowedValue');
+  });
+
+  it('finds units by tag, name, serial, address, site and customer, all words wanted, no wildcards', async () => {
+    const own = await startLedger(app);
+    const unit = await own.unit('1290', '1290', {
+      tag: '0412',
+      name: 'back bedroom 100%',
+      serials: [{ part: 'outdoor', serial: 'QX-7741' }],
+    });
+    const other = await own.unit('1290', '1290', { tag: '0413', name: 'hall' });
+    const found = async (search: string) =>
+      (await own.client.get(`/units?search=${encodeURIComponent(search)}`)).body.items.map(
+        ({ id }: { id: string }) => id,
+      );
+
+    for (const words of ['0412', 'BEDROOM', 'qx-77', 'back wexcombe', '100%'])
+      expect(await found(words)).toEqual([unit.id]);
+    expect(await found('mill lane')).toEqual([unit.id, other.id]);
+    expect(await found('0412 hall')).toEqual([]);
+    expect(await found('0_12')).toEqual([]);
+    const byTag = await own.client.get('/cylinders?search=nothing');
+    expect(byTag.body).toEqual({ items: [], nextCursor: null });
+  });
+});
+
+describe('A unit', () => {
+  const unitBody = (fields: Record<string, unknown> = {}) => ({
+    id: uuid(),
+    siteId: ledger.site.id,
+    tag: '0500',
+    name: 'server room',
+    applianceKind: 'comfortCooling',
+    refrigerant: 'R-32',
+    refrigerantFrom: '2026-01-01',
+    fullCharge: { id: uuid(), mass: { value: '1340', unit: 'g' }, method: 'manufacturer', validFrom: SINCE },
+    initialCharge: {
+      state: 'factory',
+      mass: { value: '1250', unit: 'g' },
+      at: SINCE,
+      entryId: uuid(),
+      groupId: uuid(),
+    },
+    ...fields,
+  });
+
+  it('begins its book with the factory entry, in the same transaction', async () => {
+    const body = unitBody();
+    const answer = await ledger.client.post('/units', body);
+
+    expect(answer.body).toMatchObject({
+      book: { known: true, massG: 1250, byRefrigerant: [{ refrigerant: 'R-32', massG: 1250 }] },
+      fullCharge: { massG: 1340, method: 'manufacturer', typed: { value: '1340', unit: 'g' } },
+      // US exchange values, 42 U.S.C. 7675(c): R-32 is 675.
+      co2eT: 0.9045,
+      version: 1,
+    });
+    const { body: group } = await ledger.client.get(`/entry-groups/${body.initialCharge.groupId}`);
+    expect(group).toMatchObject({ kind: 'factoryCharge', unitId: body.id });
+    expect(group.entries).toMatchObject([{ id: body.initialCharge.entryId, howKnown: 'factory', massG: 1250 }]);
+  });
+
+  it('whose charge nobody knows is honest about it', async () => {
+    const answer = await ledger.client.post(
+      '/units',
+      unitBody({ fullCharge: null, initialCharge: { state: 'notKnown' } }),
+    );
+    expect(answer.body).toMatchObject({ book: { known: false, massG: 0 }, fullCharge: null, co2eT: null });
+  });
+
+  it('is made once with everything beside it: another initial or full charge under its id is refused', async () => {
+    const body = unitBody();
+    const first = await ledger.client.post('/units', body);
+    const again = await ledger.client.post('/units', body);
+    expect({ status: again.status, body: again.body }).toEqual({ status: 200, body: first.body });
+
+    for (const change of [
+      { initialCharge: { state: 'notKnown' } },
+      { initialCharge: { ...body.initialCharge, mass: { value: '1251', unit: 'g' } } },
+      { initialCharge: { ...body.initialCharge, groupId: uuid() } },
+      { fullCharge: null },
+      { fullCharge: { ...body.fullCharge, method: 'measured' } },
+      { refrigerantFrom: '2026-01-02' },
+    ]) {
+      const other = await ledger.client.post('/units', { ...body, ...change });
+      expect([other.status, other.body.code], JSON.stringify(change)).toEqual([409, 'idReused']);
+    }
+  });
+
+  it('is not made when its initial posting is refused', async () => {
+    const body = unitBody();
+    const future = { ...body, initialCharge: { ...body.initialCharge, at: '2027-01-01T00:00:00Z' } };
+    const answer = await ledger.client.post('/units', future);
+    expect(answer.body).toMatchObject({ status: 422, errors: [{ path: '/initialCharge/at', code: 'inFuture' }] });
+    expect((await ledger.client.get(`/units/${body.id}`)).status).toBe(404);
+
+    expect((await ledger.client.post('/units', unitBody({ refrigerant: 'R-999' }))).body.errors).toMatchObject([
+      { path: '/refrigerant', code: 'unknownRefrigerant' },
+    ]);
+    expect((await ledger.client.post('/units', unitBody({ siteId: uuid() }))).body.errors).toMatchObject([
+      { path: '/siteId', code: 'notKnownHere' },
+    ]);
+  });
+
+  it('keeps every line set, charge basis and full charge with its day, newest first', async () => {
+    const body = unitBody();
+    await ledger.client.post('/units', body);
+    const lineSet = (lengthM: number, validFrom: string) => ({
+      id: uuid(),
+      validFrom,
+      branches: [{ name: 'A', liquidOdMm: 6.35, gasOdMm: 9.52, lengthM, typedLength: { value: '39.4', unit: 'ft' } }],
+    });
+    const [first, second] = [lineSet(12, '2026-02-01T00:00:00Z'), lineSet(14, '2026-03-01T00:00:00Z')];
+    for (const each of [first, second, first]) await ledger.client.post(`/units/${body.id}/line-sets`, each);
+    const { body: lineSets } = await ledger.client.get(`/units/${body.id}/line-sets`);
+    expect(lineSets.items.map(({ branches }: { branches: { lengthM: number }[] }) => branches[0]?.lengthM)).toEqual([
+      14, 12,
+    ]);
+
+    const basis = {
+      id: uuid(),
+      validFrom: SINCE,
+      basis: { refrigerant: 'R-32', factoryChargeG: 1250, rate: { kind: 'flat', gPerM: 20 } },
+      manual: { document: 'Installation manual', page: '31' },
+    };
+    expect((await ledger.client.post(`/units/${body.id}/charge-bases`, basis)).status).toBe(201);
+    expect((await ledger.client.get(`/units/${body.id}/charge-bases`)).body.items).toMatchObject([
+      { manual: { document: 'Installation manual', page: '31' } },
+    ]);
+    expect((await ledger.client.post(`/units/${uuid()}/line-sets`, lineSet(1, SINCE))).status).toBe(404);
+    expect((await ledger.client.get(`/units/${uuid()}/full-charges`)).status).toBe(404);
+  });
+
+  it('is judged again by a full charge determined later, which answers with what that added', async () => {
+    const unit = await ledger.unit('0', null, {}, 'notKnown');
+    const cylinder = await ledger.cylinder('9500');
+    const groupId = uuid();
+    await ledger.post({
+      groupId,
+      schema: 1,
+      kind: 'refill',
+      unitId: unit.id,
+      occurredAt: '2026-03-02T10:00:00Z',
+      entries: [
+        {
+          id: uuid(),
+          refrigerant: 'R-410A',
+          mass: { value: '300', unit: 'g' },
+          from: { place: 'cylinder', id: cylinder.id },
+          to: { place: 'unit', id: unit.id },
+          howKnown: 'weighed',
+        },
+      ],
+      statements: [{ about: 'unit', id: unit.id, is: 'full' }],
+    });
+    const request = {
+      id: uuid(),
+      mass: { value: '1290', unit: 'g' },
+      method: 'manufacturer',
+      validFrom: '2026-03-01T00:00:00Z',
+      reason: 'nameplate found',
+    };
+    const answer = await ledger.client.post(`/units/${unit.id}/full-charges`, request);
+
+    // Scenario S8 case 1, step a, with the full charge known only afterwards.
+    expect(answer.body.entries).toMatchObject([
+      { from: { place: 'opening' }, massG: 990, correctsGroupId: groupId },
+      { from: { place: 'opening' }, to: { place: 'atmosphere', as: 'beforeOurCare' }, massG: 300 },
+    ]);
+    const again = await ledger.client.post(`/units/${unit.id}/full-charges`, request);
+    expect({ status: again.status, body: again.body }).toEqual({ status: 200, body: answer.body });
+    expect((await ledger.client.get(`/units/${unit.id}`)).body.book).toMatchObject({ known: true, massG: 1290 });
+  });
+});
+
+describe('A cylinder', () => {
+  const body = (fields: Record<string, unknown> = {}) => ({
+    id: uuid(),
+    tag: '7741',
+    kind: 'recovery',
+    refrigerant: 'R-410A',
+    contentState: 'recovered',
+    tare: { id: uuid(), mass: { value: '27.5', unit: 'lb' }, validFrom: SINCE },
+    ...fields,
+  });
+  const made = async (fields: Record<string, unknown>) => (await ledger.client.post('/cylinders', body(fields))).body;
+
+  it('has the stamped limit, else 0.8 x water capacity x liquid density at 25 °C', async () => {
+    // Worked value: R-410A, WC 47.7 lb: 0.8 x 47.7 x 1.0589 = 40.41 lb (guideline for recovery containers, trade press).
+    const computed = await made({ waterCapacity: { value: '47.7', unit: 'lb' } });
+    expect(computed.limitG / 453.59237).toBeCloseTo(40.41, 2);
+    expect(
+      (await made({ waterCapacity: { value: '47.7', unit: 'lb' }, stampedLimit: { value: '18', unit: 'kg' } })).limitG,
+    ).toBe(18_000);
+    expect((await made({})).limitG).toBeNull();
+    expect((await made({ kind: 'nonRefillable', waterCapacity: { value: '10', unit: 'kg' } })).limitG).toBeNull();
+
+    const changed = await ledger.client.patch(`/cylinders/${computed.id}`, 1, {
+      stampedLimit: { value: '17', unit: 'kg' },
+    });
+    expect(changed.body).toMatchObject({ limitG: 17_000, version: 2 });
+  });
+
+  it('says whether its service pressure bears the refrigerant at 55 °C', async () => {
+    // R-410A at 55 °C: bubble pressure 3,436 kPa abs by CoolProp 8.0.1dev, so about 3,335 kPa over the atmosphere.
+    expect((await made({ servicePressureKPaGauge: 2758 })).pressureRatingHolds).toBe(false);
+    expect((await made({ servicePressureKPaGauge: 4137 })).pressureRatingHolds).toBe(true);
+    expect((await made({})).pressureRatingHolds).toBeNull();
+  });
+
+  it('belongs to us, to a party or to a customer, and is held by a person of the firm', async () => {
+    const rented = await made({ owner: { kind: 'party', id: ledger.supplier.id }, heldBy: ledger.owner.id });
+    expect(rented).toMatchObject({ owner: { kind: 'party', id: ledger.supplier.id }, heldByName: ledger.owner.name });
+    const answer = await ledger.client.post(
+      '/cylinders',
+      body({ owner: { kind: 'customer', id: ledger.supplier.id } }),
+    );
+    expect(answer.body.errors).toMatchObject([{ path: '/owner/id', code: 'notKnownHere' }]);
+    expect((await ledger.client.post('/cylinders', body({ heldBy: uuid() }))).body.errors).toMatchObject([
+      { path: '/heldBy' },
+    ]);
+  });
+
+  it('is made once with its tare', async () => {
+    const one = body();
+    const first = await ledger.client.post('/cylinders', one);
+    expect(first.body).toMatchObject({ tareG: 12473.790175, tareTyped: { value: '27.5', unit: 'lb' } });
+    expect((await ledger.client.post('/cylinders', one)).status).toBe(200);
+    const heavier = { ...one, tare: { ...one.tare, mass: { value: '28', unit: 'lb' } } };
+    expect((await ledger.client.post('/cylinders', heavier)).body).toMatchObject({ status: 409, code: 'idReused' });
+    expect(
+      (await ledger.client.post('/cylinders', body({ waterCapacity: { value: '0.01', unit: 't' } }))).body.errors,
+    ).toMatchObject([{ path: '/waterCapacity/unit', code: 'notAllowedValue' }]);
+  });
+
+  it('that was never weighed takes a revised tare without touching the log', async () => {
+    const one = body();
+    await ledger.client.post('/cylinders', one);
+    const tare = { id: uuid(), tare: { value: '27', unit: 'lb' }, validFrom: SINCE, reason: 'weighed empty' };
+    const answer = await ledger.client.post(`/cylinders/${one.id}/tares`, tare);
+    expect({ status: answer.status, body: answer.body }).toEqual({
+      status: 201,
+      body: { entries: [], balances: [], flags: [], warnings: [] },
+    });
+    expect((await ledger.client.get(`/cylinders/${one.id}`)).body.tareTyped).toEqual({ value: '27', unit: 'lb' });
+  });
+});
+
+describe('A job', () => {
+  it('is opened for a unit and closed, not before it was opened', async () => {
+    const unit = await ledger.unit('1290', '1290');
+    const body = {
+      id: uuid(),
+      unitId: unit.id,
+      kind: 'install',
+      openedAt: '2026-03-02T08:00:00Z',
+      title: 'Hang the head',
+    };
+    expect((await ledger.client.post('/jobs', body)).body).toMatchObject({ siteName: 'Mill Lane', closedAt: null });
+    const close = (version: number, closedAt: string) => ledger.client.patch(`/jobs/${body.id}`, version, { closedAt });
+
+    expect((await close(1, '2026-03-02T07:00:00Z')).body).toMatchObject({ status: 422, code: 'closedBeforeOpened' });
+    expect((await close(1, '2026-03-02T17:00:00Z')).body).toMatchObject({
+      version: 2,
+      closedAt: '2026-03-02T17:00:00.000Z',
+    });
+    const listed = async (query: string) =>
+      (await ledger.client.get(`/jobs?unitId=${unit.id}&${query}`)).body.items.map(({ id }: { id: string }) => id);
+    expect(await listed('open=true')).toEqual([]);
+    expect(await listed('open=false')).toEqual([body.id]);
+  });
+});
+
+describe('Short lists to choose from', () => {
+  it('are there without sign-in, with their version', async () => {
+    const visitor = app.visitor();
+    const { body } = await visitor.get('/reference/refrigerants');
+    expect(body.items).toEqual(
+      expect.arrayContaining([expect.objectContaining({ designation: 'R-32', safetyClass: 'A2L' })]),
+    );
+    expect(body.version).toMatch(/^\d{4}-\d\d-\d\d$/);
+    expect((await visitor.get('/reference/tubes')).body.items.length).toBeGreaterThan(20);
+    expect((await visitor.get('/reference/joints')).body.items.length).toBeGreaterThan(3);
+  });
+});
