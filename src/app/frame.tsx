@@ -1,8 +1,9 @@
-import { NavLink, Outlet, ScrollRestoration, useLocation, useNavigation } from 'react-router-dom';
+import type { ReactNode } from 'react';
+import { Link, NavLink, Outlet, ScrollRestoration, useLocation, useNavigation } from 'react-router-dom';
 import { signInPath, useOnHand, useSession } from '../api/session.ts';
 import { useFormat } from '../lib/format.ts';
 import { useMessages } from '../lib/messages.ts';
-import { AREAS } from './areas.ts';
+import { AREAS, type Area, MORE } from './areas.ts';
 import { LanguageSwitch } from './language-switch.tsx';
 
 /** The band on top of a desk, the bar at the bottom of a phone, and the page between them. */
@@ -34,8 +35,9 @@ export function Frame() {
   );
 }
 
-function Band({ areas }: { areas: typeof AREAS }) {
+function Band({ areas }: { areas: readonly Area[] }) {
   const t = useMessages();
+  const { pathname } = useLocation();
   return (
     <header className="sticky top-0 z-20 hidden h-14 items-stretch gap-7 border-b-2 border-ink bg-sheet px-6 desk:flex">
       <NavLink to={areas.length > 1 ? '/' : '/charge'} className="flex items-center text-ink no-underline">
@@ -43,16 +45,15 @@ function Band({ areas }: { areas: typeof AREAS }) {
       </NavLink>
       <nav aria-label={t('frame.areas')} className="flex gap-1">
         {areas.map((area) => (
-          <NavLink
+          <AreaLink
             key={area.to}
             to={area.to}
-            end={area.to === '/'}
-            className={({ isActive }) =>
-              `type-narrow flex items-center px-2.5 no-underline lg:px-3.5 ${isActive ? 'font-[650] text-ink shadow-[inset_0_-4px_0_var(--color-rest)]' : 'text-ink-soft hover:text-ink'}`
-            }
+            isHere={area.holds.test(pathname)}
+            className="type-narrow flex items-center px-2.5 lg:px-3.5"
+            here="shadow-[inset_0_-4px_0_var(--color-rest)]"
           >
             {t(area.name)}
-          </NavLink>
+          </AreaLink>
         ))}
       </nav>
       <BandEnd />
@@ -106,14 +107,14 @@ function BandEnd() {
   );
 }
 
-function BottomBar({ areas }: { areas: typeof AREAS }) {
+function BottomBar({ areas }: { areas: readonly Area[] }) {
   const t = useMessages();
   const location = useLocation();
   const signedIn = useSession() != null;
-  const items = [
-    ...areas.filter((area) => area.onPhone).map((area) => ({ to: area.to, name: area.name })),
-    { to: '/more', name: 'frame.more' },
-    ...(signedIn ? [] : [{ to: signInPath(location), name: 'frame.signIn' }]),
+  const items: Pick<Area, 'to' | 'name' | 'holds'>[] = [
+    ...areas.filter((area) => area.onPhone),
+    { to: '/more', name: 'frame.more', holds: MORE },
+    ...(signedIn ? [] : [{ to: signInPath(location), name: 'frame.signIn', holds: /^\/sign-in/ }]),
   ];
   return (
     <nav
@@ -121,17 +122,41 @@ function BottomBar({ areas }: { areas: typeof AREAS }) {
       className="pb-safe fixed inset-x-0 bottom-0 z-20 flex border-t-2 border-ink bg-sheet desk:hidden"
     >
       {items.map((item) => (
-        <NavLink
+        <AreaLink
           key={item.name}
           to={item.to}
-          end={item.to === '/'}
-          className={({ isActive }) =>
-            `type-label flex h-[3.875rem] min-w-0 flex-1 items-center justify-center px-0.5 text-[1.0625rem] no-underline ${isActive ? 'font-[680] text-ink shadow-[inset_0_4px_0_var(--color-rest)]' : 'text-ink-soft'}`
-          }
+          isHere={item.holds.test(location.pathname)}
+          className="type-label flex h-[3.875rem] min-w-0 flex-1 items-center justify-center px-0.5 text-[1.0625rem]"
+          here="shadow-[inset_0_4px_0_var(--color-rest)]"
         >
           <span className="truncate">{t(item.name)}</span>
-        </NavLink>
+        </AreaLink>
       ))}
     </nav>
+  );
+}
+
+/** Where one is, is marked by weight and a bar in verdigris, and said to a screen reader. */
+function AreaLink({
+  to,
+  isHere,
+  className,
+  here,
+  children,
+}: {
+  to: string;
+  isHere: boolean;
+  className: string;
+  here: string;
+  children: ReactNode;
+}) {
+  return (
+    <Link
+      to={to}
+      aria-current={isHere ? 'page' : undefined}
+      className={`no-underline ${className} ${isHere ? `font-[680] text-ink ${here}` : 'text-ink-soft hover:text-ink'}`}
+    >
+      {children}
+    </Link>
   );
 }

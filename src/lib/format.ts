@@ -81,6 +81,18 @@ export function massQuantity(preferences: Pick<Preferences, 'locale' | 'mass'>, 
   }
 }
 
+/** As `massQuantity`, with pounds and ounces apart: a large figure sets every unit small. */
+export function massPieces(preferences: Pick<Preferences, 'locale' | 'mass'>, massG: number): Quantity[] {
+  const { value, unit } = massQuantity(preferences, massG);
+  const [pounds, ounces] = value.split(`${NBSP}lb `);
+  return pounds !== undefined && ounces !== undefined
+    ? [
+        { value: pounds, unit: 'lb' },
+        { value: ounces, unit },
+      ]
+    : [{ value, unit }];
+}
+
 /** Metres in the unit that the person reads lengths in: `12.0 m`, `39 ft 4 in` (to the nearest half inch). */
 export function lengthQuantity(preferences: Pick<Preferences, 'locale' | 'length'>, lengthM: number): Quantity {
   const { locale } = preferences;
@@ -110,6 +122,7 @@ export function formatsFor(preferences: Preferences) {
     locale,
     number: (value: number, most = 3, least = 0) => formatNumber(locale, value, most, least),
     massParts: (massG: number) => massQuantity(preferences, massG),
+    massPieces: (massG: number) => massPieces(preferences, massG),
     mass: (massG: number) => joined(massQuantity(preferences, massG)),
     /** Only the figure, for a table whose head names the unit; pounds and ounces keep theirs, or 0.5 could be either. */
     massFigure: (massG: number) => {

@@ -68,6 +68,13 @@ export function quantityOfTyped<Kind extends QuantityKind>(
   typed: { value: string; unit: UnitOf<Kind> },
   locale: string,
 ): QuantityDraft<Kind> {
+  // `12ft 6in` is kept as 150 in: shown as a tape is read, and held as it is.
+  const inches = Number(typed.value);
+  if (kind === 'length' && typed.unit === 'in' && inches >= 24) {
+    const feet = Math.floor(inches / 12);
+    const rest = formatForInput('length', toBase('length', 'in', inches - feet * 12), 'in', { locale, decimals: 4 });
+    return { text: rest === '0' ? String(feet) : `${feet}ft ${rest}in`, unit: 'ft' as UnitOf<Kind>, held: typed };
+  }
   return showTyped(kind, typed, typed.unit, locale);
 }
 

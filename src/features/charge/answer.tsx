@@ -7,6 +7,7 @@ import { Beam } from '../../ui/beam/beam.tsx';
 import type { BeamSpec } from '../../ui/beam/beam-spec.ts';
 import { type BeamUnit, chargeBeam } from '../../ui/beam/presets.ts';
 import { useBeamUnit } from '../../ui/beam/use-beam-unit.ts';
+import { Figure } from '../../ui/figure.tsx';
 import { readQuantity } from '../../ui/quantity-draft.ts';
 import type { ChargeDraft } from './charge-draft.ts';
 import { Co2 } from './co2.tsx';
@@ -27,7 +28,7 @@ export const Answer = forwardRef<HTMLDivElement, Props>(function Answer({ draft,
   const format = useFormat();
   const unit = useBeamUnit();
   const spec = beamOf(answer, room, { t, format, unit });
-  const total = answer.is === 'done' ? format.massParts(answer.result.totalG) : null;
+  const total = answer.is === 'done' ? format.massPieces(answer.result.totalG) : null;
   return (
     <div ref={ref} className="pt-3 pb-1 desk:pt-2">
       <p className="type-label text-ink-soft">
@@ -37,10 +38,7 @@ export const Answer = forwardRef<HTMLDivElement, Props>(function Answer({ draft,
       </p>
       <output className="type-figure block min-h-[1em] text-[clamp(2.75rem,16vw,4.25rem)] wide:text-[5.25rem]">
         {total ? (
-          <>
-            {total.value}{' '}
-            <span className="text-[0.4em] font-[500] tracking-normal [font-stretch:100%]">{total.unit}</span>
-          </>
+          <Figure pieces={total} />
         ) : (
           <span aria-hidden="true" className="text-edge">
             –
@@ -67,8 +65,8 @@ export const Answer = forwardRef<HTMLDivElement, Props>(function Answer({ draft,
 function WhatToDo({ draft, result }: { draft: ChargeDraft; result: Extract<ChargeAnswer, { is: 'done' }>['result'] }) {
   const t = useMessages();
   const format = useFormat();
-  const { locale } = usePreferences();
-  const gross = readQuantity('mass', draft.cylinderGross, { locale });
+  const preferences = usePreferences();
+  const gross = readQuantity('mass', draft.cylinderGross, preferences);
   const co2 =
     result.co2eT === null ? null : (
       <p className="type-label text-ink-soft">
@@ -101,12 +99,14 @@ function WhatToDo({ draft, result }: { draft: ChargeDraft; result: Extract<Charg
         {gross.is === 'read' && enough
           ? t('chargeScreen.weighInTo', {
               mass: format.mass(result.weighInG),
-              stop: onScale(gross, gross.base - result.weighInG, locale),
+              stop: onScale(draft.cylinderGross, gross, gross.base - result.weighInG, preferences),
             })
           : t('chargeScreen.weighIn', { mass: format.mass(result.weighInG) })}
       </p>
       {gross.is === 'read' && !enough ? (
-        <p className="font-[600]">{t('chargeScreen.notEnough', { mass: onScale(gross, gross.base, locale) })}</p>
+        <p className="font-[600]">
+          {t('chargeScreen.notEnough', { mass: onScale(draft.cylinderGross, gross, gross.base, preferences) })}
+        </p>
       ) : null}
       {co2}
     </>

@@ -66,13 +66,14 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
           status
         )
       }
-      next={next?.(state)}
+      next={wide ? undefined : next?.(state)}
     >
       <ChargeFormContext value={form}>
         <div className="page-gutter grid w-full max-w-[90rem] gap-x-12 desk:pt-3 lg:grid-cols-[minmax(0,30rem)_minmax(0,1fr)]">
           <div className="contents lg:col-start-2 lg:row-start-1 lg:block">
             <div className="order-1 lg:sticky lg:top-14 lg:z-1 lg:bg-ground">
               <Answer ref={ref} draft={draft} answer={answer} room={room} onExample={onExample} />
+              {wide && next ? <div className="max-w-md py-3">{next(state)}</div> : null}
             </div>
             <div className="order-3">
               {shown.answer.is === 'done' ? (

@@ -169,14 +169,16 @@ export function LimitsSection() {
 /** The cylinder as it stands on the scale, so that the screen can say where to close it. */
 export function ScaleSection({ children }: { children?: React.ReactNode }) {
   const t = useMessages();
-  const { locale } = usePreferences();
+  const preferences = usePreferences();
   const { draft, set } = useChargeForm();
   const [open, setOpen] = useOpen(false);
-  const gross = readQuantity('mass', draft.cylinderGross, { locale });
+  const gross = readQuantity('mass', draft.cylinderGross, preferences);
   return (
     <Disclosure
       title={t('chargeScreen.scale')}
-      summary={gross.is === 'read' ? onScale(gross, gross.base, locale) : t('chargeScreen.notGiven')}
+      summary={
+        gross.is === 'read' ? onScale(draft.cylinderGross, gross, gross.base, preferences) : t('chargeScreen.notGiven')
+      }
       open={open}
       onToggle={setOpen}
     >
