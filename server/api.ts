@@ -9,6 +9,7 @@ import type { Parts } from './http/parts.ts';
 import { jobRoutes } from './jobs/job.router.ts';
 import { partyRoutes } from './parties/party.router.ts';
 import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
+import { sealRoutes } from './seals/seal.router.ts';
 import { siteRoutes } from './sites/site.router.ts';
 import { todayRoutes } from './today/today.router.ts';
 import { toolRoutes } from './tools/tool.router.ts';
@@ -29,4 +30,5 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   flagRoutes,
   todayRoutes,
   referenceListRoutes,
+  sealRoutes,
 ];

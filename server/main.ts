@@ -13,12 +13,14 @@ import { REDACTED_PATHS } from './http/request-log.ts';
 import { startMailCatcher } from './mail/mail-catcher.ts';
 import { smtpMailer } from './mail/smtp-mailer.ts';
 import { loadReferenceData } from './reference/load-reference-data.ts';
+import { sealWhatIsDue } from './seals/seal.service.ts';
+import { readSealSecrets } from './seals/seal-secrets.ts';
 import { removeExpiredSignIns } from './session/remove-expired.ts';
 import type { Settings } from './settings.ts';
 
 export interface StartOptions {
   settings: Settings & { sessionSecret: string };
-  databaseUrls: { app: string };
+  databaseUrls: { app: string; jobs: string };
   /** Folder of the built client; null when something else serves it, as in development. */
   clientFolder?: string | null;
 }
@@ -32,6 +34,8 @@ export interface RunningServer {
 
 const LONGEST_WAIT_FOR_REQUESTS_MS = 10_000;
 const CLEAN_UP_EVERY_MS = 3600 * 1000;
+/** How soon after midnight in a firm's zone its log is sealed at the latest. */
+const SEAL_EVERY_MS = 10 * 60 * 1000;
 
 /** Puts the parts together from the outside world (clock, random ids, network, files) and listens. */
 export async function startServer({ settings, databaseUrls, clientFolder }: StartOptions): Promise<RunningServer> {
@@ -41,8 +45,11 @@ export async function startServer({ settings, databaseUrls, clientFolder }: Star
   const newId = () => uuidV7();
 
   const reference = loadReferenceData();
+  readSealSecrets(settings.sealKeyFile);
   const dataSource = createDataSource({ url: databaseUrls.app });
   await dataSource.initialize();
+  const jobs = createDataSource({ url: databaseUrls.jobs, poolSize: 2, applicationName: 'tarewright jobs' });
+  await jobs.initialize();
   const catcher = settings.smtpUrl
     ? null
     : await startMailCatcher({ folder: path.join(settings.home, 'mail'), log, now, newId });
@@ -72,15 +79,21 @@ export async function startServer({ settings, databaseUrls, clientFolder }: Star
     parts.background.run('remove what has expired', () => removeExpiredSignIns(parts));
   }, CLEAN_UP_EVERY_MS);
   cleaning.unref();
+  const seal = () => parts.background.run('seal what is due', () => sealWhatIsDue(parts, jobs));
+  seal();
+  const sealing = setInterval(seal, SEAL_EVERY_MS);
+  sealing.unref();
 
   return {
     address: addressOf(server, settings.host),
     async close() {
       clearInterval(cleaning);
+      clearInterval(sealing);
       await closeGently(server);
       await parts.background.settled();
       await mailer.close();
       await catcher?.close();
+      await jobs.destroy();
       await dataSource.destroy();
       log.flush();
     },

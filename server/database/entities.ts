@@ -26,6 +26,7 @@ import { CarriedItemEntity } from '../periods/carried-item.entity.ts';
 import { PeriodEntity } from '../periods/period.entity.ts';
 import { SettlementEntity } from '../periods/settlement.entity.ts';
 import { SettlementUndoEntity } from '../periods/settlement-undo.entity.ts';
+import { SealMailEntity } from '../seals/seal-mail.entity.ts';
 import { PasswordResetEntity } from '../session/password-reset.entity.ts';
 import { PersonSecretEntity } from '../session/person-secret.entity.ts';
 import { SessionEntity } from '../session/session.entity.ts';
@@ -79,6 +80,7 @@ export const ENTITIES = [
   MonthSumEntity,
   PlaceStateEntity,
   FlagEntity,
+  SealMailEntity,
   PeriodEntity,
   SettlementEntity,
   SettlementUndoEntity,

@@ -3,6 +3,7 @@ import { CreateRegisters1764547200002 } from './migrations/1764547200002-create-
 import { CreateLog1764547200003 } from './migrations/1764547200003-create-log.ts';
 import { CreatePosting1764547200004 } from './migrations/1764547200004-create-posting.ts';
 import { ProtectRows1764547200005 } from './migrations/1764547200005-protect-rows.ts';
+import { Seals1764633600001 } from './migrations/1764633600001-seals.ts';
 import { KeepPeriods1764720000010 } from './migrations/1764720000010-keep-periods.ts';
 
 /** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
@@ -12,5 +13,6 @@ export const MIGRATIONS = [
   CreateLog1764547200003,
   CreatePosting1764547200004,
   ProtectRows1764547200005,
+  Seals1764633600001,
   KeepPeriods1764720000010,
 ] as const;

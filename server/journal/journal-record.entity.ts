@@ -9,6 +9,7 @@ import { safeInteger } from '../database/columns.ts';
   unique: true,
   where: 'noun IS NOT NULL',
 })
+@Index('journal_record_seal_idx', { synchronize: false })
 @ForeignKey('firm', ['firmId'], ['id'], { name: 'journal_record_firm_fkey' })
 export class JournalRecordEntity {
   @PrimaryColumn({ type: 'uuid', primaryKeyConstraintName: 'journal_record_pkey' })

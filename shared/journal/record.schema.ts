@@ -10,6 +10,7 @@ import {
 } from '../ledger/entry-group.schema.ts';
 import { ATMOSPHERE_KINDS, PLACE_KINDS } from '../ledger/place.ts';
 import { decimalText, id, month } from '../lists/list.schema.ts';
+import { exportRecord, sealKeyRecord, sealRecord } from '../proof/seal-record.schema.ts';
 import { massUnit } from '../units/mass.ts';
 
 /**
@@ -179,7 +180,14 @@ export const registerRecord = z.strictObject({
 });
 export type RegisterRecord = z.output<typeof registerRecord>;
 
-export const journalRecord = z.discriminatedUnion('type', [groupRecord, entryRecord, registerRecord]);
+export const journalRecord = z.discriminatedUnion('type', [
+  groupRecord,
+  entryRecord,
+  registerRecord,
+  sealRecord,
+  sealKeyRecord,
+  exportRecord,
+]);
 export type JournalRecord = z.output<typeof journalRecord>;
 
 /** Second argument of `post_records`: what the judge derived. It is kept beside the chain and can be computed again. */

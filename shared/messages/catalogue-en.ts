@@ -1,5 +1,6 @@
 import calculations from './calculations.en.json';
 import charge from './charge.en.json';
+import proof from './proof.en.json';
 import registers from './registers.en.json';
 import server from './server.en.json';
 
@@ -7,4 +8,10 @@ import server from './server.en.json';
  * Every English sentence that the server says: problems, results, mails. A new file of them is added here and in
  * `catalogue-es.ts`; files that only a screen uses are loaded by the screen.
  */
-export const catalogueEn: Readonly<Record<string, string>> = { ...calculations, ...charge, ...registers, ...server };
+export const catalogueEn: Readonly<Record<string, string>> = {
+  ...calculations,
+  ...charge,
+  ...proof,
+  ...registers,
+  ...server,
+};

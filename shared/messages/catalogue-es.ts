@@ -1,7 +1,14 @@
 import calculations from './calculations.es.json';
 import charge from './charge.es.json';
+import proof from './proof.es.json';
 import registers from './registers.es.json';
 import server from './server.es.json';
 
 /** Every Spanish sentence that the server says; the same keys as in English. */
-export const catalogueEs: Readonly<Record<string, string>> = { ...calculations, ...charge, ...registers, ...server };
+export const catalogueEs: Readonly<Record<string, string>> = {
+  ...calculations,
+  ...charge,
+  ...proof,
+  ...registers,
+  ...server,
+};

@@ -21,6 +21,7 @@ export const PERMISSIONS = {
   'people:read': ['technician', 'complianceManager', 'owner'],
   'people:manage': ['owner'],
   'exports:make': ['complianceManager', 'owner'],
+  'seals:make': ['owner'],
   'books:read': ['complianceManager', 'owner'],
   'books:settle': ['complianceManager', 'owner'],
   'periods:close': ['owner'],

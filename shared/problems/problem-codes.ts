@@ -17,6 +17,7 @@ export const PROBLEM_STATUS = {
   idReused: 409,
   alreadyExists: 409,
   inUse: 409,
+  sealKeyLost: 409,
   stale: 412,
   bodyTooLarge: 413,
   unsupportedMediaType: 415,
