@@ -6,6 +6,7 @@ import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals, valueOrProblem } from '../http/problem.ts';
+import { undoSettlements } from '../periods/undo-settlements.ts';
 import { type JudgedPosting, judgePosting, type Posting, placesToReplay } from './judge-posting.ts';
 import { findEarlierPosting, readOutcome } from './posting-answer.repository.ts';
 import type { PostingOutcome } from './posting-answer.ts';
@@ -45,7 +46,11 @@ export interface Judgement {
   stored: Map<string, StoredGroup>;
 }
 
-/** Judges with what the database holds of the places concerned. @throws Problem 422 */
+/**
+ * Judges with what the database holds of the places concerned, and reverses what month close made of a difference that
+ * is explained now. For a posting of the same transaction.
+ * @throws Problem 422
+ */
 export async function judge(manager: EntityManager, posting: Posting, facts: PostingFacts): Promise<Judgement> {
   const replayed = placesToReplay(posting, facts);
   const timelines =
@@ -53,9 +58,16 @@ export async function judge(manager: EntityManager, posting: Posting, facts: Pos
       ? { groups: [], posted: [], flags: [] }
       : await loadTimelines(manager, replayed, posting.reversed?.id ?? null);
   const judged = valueOrProblem(judgePosting(posting, facts, timelines));
+  const undone = await undoSettlements(manager, {
+    recordId: posting.recordId,
+    replayedIds: replayed,
+    posted: timelines.posted,
+    changes: judged.changes,
+    reversedGroupId: posting.reversed?.id ?? null,
+  });
   const stored = new Map(timelines.groups.map((group) => [group.id, group]));
   if (posting.reversed) stored.set(posting.reversed.id, posting.reversed);
-  return { judged, stored };
+  return { judged: { ...judged, changes: [...judged.changes, ...undone] }, stored };
 }
 
 export function refuse(refusals: readonly Refusal[]): void {

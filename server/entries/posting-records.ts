@@ -135,12 +135,18 @@ class RecordWriter {
     const { added } = this.posting;
     const occurredAt = corrected?.occurredAt ?? (added?.id === change.groupId ? added.occurredAt : null);
     if (occurredAt === null) throw new Error(`group ${change.groupId} was not read`);
-    return this.entry(groupId, change, occurredAt, judgedIn ?? corrected?.unitId ?? unitId, {
-      addedByServer: true,
-      atLeast: change.atLeast,
-      takenBack: change.takenBack,
-      correctsGroupId: change.correctsGroupId,
-    });
+    return this.entry(
+      groupId,
+      change,
+      occurredAt,
+      ofNoUnit(change) ? null : (judgedIn ?? corrected?.unitId ?? unitId),
+      {
+        addedByServer: true,
+        atLeast: change.atLeast,
+        takenBack: change.takenBack,
+        correctsGroupId: change.correctsGroupId,
+      },
+    );
   }
 
   enteredGroup(
@@ -292,6 +298,10 @@ const placeRecord = (place: Place): EntryRecord['from'] => ({
   id: 'id' in place ? place.id : null,
   as: 'as' in place ? place.as : null,
 });
+
+/** What month close made of a cylinder's difference concerns no unit, whatever group the difference was found in. */
+const ofNoUnit = ({ judgedPlace, from, to }: AddedChange): boolean =>
+  judgedPlace.place !== 'unit' && from.place !== judgedPlace.place && to.place !== judgedPlace.place;
 
 function unitAtEnds(from: Place, to: Place): string | null {
   if (to.place === 'unit') return to.id;

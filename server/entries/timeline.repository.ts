@@ -93,7 +93,8 @@ const ADDED = `select e.group_id as "groupId", e.corrects_group_id as "correctsG
     e.unit_id as "unitId"
   from entry e
   where e.added_by_server and (e.from_id = any ($1::uuid[]) or e.to_id = any ($1::uuid[])
-    or (e.unit_id = any ($1::uuid[]) and e.from_id is null and e.to_id is null))`;
+    or (e.unit_id = any ($1::uuid[]) and e.from_id is null and e.to_id is null
+      and 'opening' in (e.from_place, e.to_place)))`;
 
 /**
  * @param placeIds of cylinders and units
