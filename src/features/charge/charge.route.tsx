@@ -1,4 +1,4 @@
-import { useCallback, useMemo } from 'react';
+import { useCallback, useEffect, useMemo } from 'react';
 import { Link } from 'react-router-dom';
 import { useSession } from '../../api/session.ts';
 import { useDraft } from '../../lib/draft.ts';
@@ -24,6 +24,10 @@ export function Component() {
   const units = useMemo(() => fieldUnits(preferences), [preferences]);
   const initial = useCallback(() => emptyDraft(units, gwpSet), [units, gwpSet]);
   const [draft, setDraft, clear] = useDraft<ChargeDraft>('charge', initial);
+  // A session that arrives after the empty form brings its firm's GWP values; what was begun keeps its own.
+  useEffect(() => {
+    setDraft((now) => (now.refrigerant === '' && now.gwpSet !== gwpSet ? { ...now, gwpSet } : now));
+  }, [gwpSet, setDraft]);
   return (
     <ChargePage
       title={t('chargeScreen.title')}

@@ -92,8 +92,8 @@ describe('A form filled from what is on record', () => {
       const { request, missing, unreadable } = readDraft(draft, 'en-US');
 
       expect([missing, unreadable]).toEqual([[], []]);
-    // 472 in, as it is kept, is shown as the tape was read.
-    expect(draft.pipes[0]?.length.text).toBe('39ft 4in');
+      // 472 in, as it is kept, is shown as the tape was read.
+      expect(draft.pipes[0]?.length.text).toBe('39ft 4in');
       expect(chargeRequest.parse(request).basis).toEqual(basis);
       expect(request?.lineSet.branches).toEqual([
         {
