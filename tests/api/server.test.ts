@@ -34,7 +34,7 @@ beforeEach(async () => {
   const settings = readSettings({ TAREWRIGHT_HOME: home, LOG_LEVEL: 'silent' }, '/nowhere');
   server = await startServer({
     settings: { ...settings, port: 0, sessionSecret: 'a secret that only the tests know, of some length' },
-    databaseUrls: { app: database.urls.app },
+    databaseUrls: database.urls,
   });
 });
 afterEach(() => rmSync(home, { recursive: true, force: true }));
