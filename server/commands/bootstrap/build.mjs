@@ -5,7 +5,7 @@ import path from 'node:path';
 import process from 'node:process';
 import { StartRefusal } from './start-refusal.mjs';
 
-const settled = ['package-lock.json', 'tsconfig.json', 'vite.config.ts'];
+const settled = ['package-lock.json', 'tsconfig.json', 'vite.config.ts', 'server/commands/bootstrap/build.mjs'];
 const inputs = {
   client: ['index.html', 'src', 'shared', 'data', 'fonts', ...settled],
   server: ['server', 'shared', 'data', ...settled],
@@ -50,7 +50,9 @@ export function ensureBuilt({ root, side }) {
   const vite = path.join(root, 'node_modules/vite/bin/vite.js');
   try {
     const args = [vite, 'build', ...mode, '--outDir', beside, '--emptyOutDir', '--logLevel', 'warn'];
-    const built = spawnSync(process.execPath, args, { cwd: root, stdio: ['ignore', 2, 2] });
+    // Under a test runner NODE_ENV is `test`, with which React's development code would be built in.
+    const env = { ...process.env, NODE_ENV: 'production' };
+    const built = spawnSync(process.execPath, args, { cwd: root, env, stdio: ['ignore', 2, 2] });
     if (built.status !== 0)
       throw new StartRefusal(`The ${side} could not be built; the message of the build stands above.`);
     writeFileSync(path.join(beside, stampName), inputHash);
