@@ -81,6 +81,7 @@ describe('The application, with plain SQL', () => {
     );
 
     expect(functions.map(({ name }) => name)).toEqual([
+      'close_month',
       'create_firm',
       'current_firm_id',
       'current_person_id',

@@ -369,7 +369,7 @@ describe('Every record', () => {
     const call = (text: string) => refusalOf(app.as(firm.scope, (query) => query(POST, [[text], null])));
 
     expect((await call('not JSON')).code).toBe('22P02');
-    expect((await call(textOf({ type: 'seal', id: uuid(), recordedAt: NOW, recordedBy: firm.personId }))).rule).toBe(
+    expect((await call(textOf({ type: 'gossip', id: uuid(), recordedAt: NOW, recordedBy: firm.personId }))).rule).toBe(
       'journal_record_type_check',
     );
     expect((await refusalOf(app.as(firm.scope, (query) => query(POST, [[], null])))).code).toBe('TW002');

@@ -19,6 +19,7 @@ export type Query = <Row extends pg.QueryResultRow = pg.QueryResultRow>(
 export function connect(database: Pick<TestDatabase, 'urls'>, role: 'app' | 'jobs' | 'owner' = 'app') {
   const pool = new pg.Pool({ connectionString: database.urls[role], max: 12 });
   // The database may be dropped while a connection that was ended is still closing.
+  pool.on('error', () => undefined);
   pool.on('connect', (client) => client.on('error', () => undefined));
   return {
     pool,
