@@ -11,6 +11,9 @@ const pages: RouteObject[] = [
   { index: true, lazy: () => import('./features/today/today.route.tsx') },
   { path: 'charge', lazy: () => import('./features/charge/charge.route.tsx') },
   { path: 'units/:unitId/charge', lazy: () => import('./features/charge/unit-charge.route.tsx') },
+  { path: 'cylinders', lazy: () => import('./features/cylinders/cylinders.route.tsx') },
+  { path: 'cylinders/new', lazy: () => import('./features/cylinders/new-cylinder.route.tsx') },
+  { path: 'cylinders/:cylinderId', lazy: () => import('./features/cylinders/cylinder.route.tsx') },
   {
     path: 'log',
     lazy: () => import('./features/entries/log.route.tsx'),

@@ -27,6 +27,12 @@ export const partyQueries = {
       select: (page) => page.items,
       staleTime: 60_000,
     }),
+  one: (id: string) =>
+    queryOptions({
+      queryKey: [...partyQueries.all(), id] as const,
+      queryFn: ({ signal }) => http.get<Party>(`/parties/${id}`, { signal }),
+      staleTime: 60_000,
+    }),
 };
 
 export function useCreateParty() {

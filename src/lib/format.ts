@@ -130,6 +130,13 @@ export function formatsFor(preferences: Preferences) {
       return preferences.mass === 'lbOz' ? joined(quantity) : quantity.value;
     },
     massUnit: preferences.mass === 'lbOz' ? 'lb oz' : preferences.mass,
+    /** What a person typed, `2,310 g`, where it reads otherwise than the mass is shown; else null. */
+    massAsTyped: (typed: { value: string; unit: string }, massG: number): string | null => {
+      const sameUnits = preferences.mass === 'lbOz' ? ['lb', 'oz'] : [preferences.mass];
+      if (sameUnits.includes(typed.unit)) return null;
+      const text = `${formatNumber(locale, Number(typed.value), 9)}${NBSP}${typed.unit}`;
+      return text === joined(massQuantity(preferences, massG)) ? null : text;
+    },
     kilograms: (massG: number) => `${formatNumber(locale, massG / gramsPer('kg'), 1, 1)}${NBSP}kg`,
     pounds: (massG: number) => `${formatNumber(locale, massG / GRAMS_PER_POUND, 2)}${NBSP}lb`,
     lengthParts: (lengthM: number) => lengthQuantity(preferences, lengthM),

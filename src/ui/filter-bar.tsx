@@ -72,16 +72,16 @@ export function FilterSelect({
   const id = useId();
   const missing = value !== '' && !choices.some((choice) => choice.value === value);
   return (
-    <span className="flex min-w-0 items-center gap-1.5 max-desk:flex-col max-desk:items-stretch max-desk:gap-0 max-desk:pt-2">
+    <span className="flex min-w-0 items-center gap-1.5 not-desk:flex-col not-desk:items-stretch not-desk:gap-0 not-desk:pt-2">
       <label htmlFor={id} className="type-label text-[0.9375rem] text-ink-soft">
         {label}
       </label>
-      <span className="relative flex min-w-0 max-desk:border-b-2 max-desk:border-edge">
+      <span className="relative flex min-w-0 not-desk:border-b-2 not-desk:border-edge">
         <select
           id={id}
           value={value}
           onChange={(event) => onChange(event.target.value)}
-          className="min-h-11 max-w-52 min-w-0 appearance-none truncate bg-ground pr-5 font-[620] [field-sizing:content] max-desk:w-full max-desk:max-w-none"
+          className="min-h-11 max-w-52 min-w-0 appearance-none truncate bg-ground pr-5 font-[620] [field-sizing:content] not-desk:w-full not-desk:max-w-none"
         >
           {any === undefined ? null : <option value="">{any}</option>}
           {missing ? <option value={value}>{value}</option> : null}
@@ -123,7 +123,7 @@ export function SearchField({
 }) {
   const id = useId();
   return (
-    <span className="relative flex min-w-0 items-center max-desk:flex-1">
+    <span className="relative flex min-w-0 items-center not-desk:flex-1">
       <label htmlFor={id} className="sr-only">
         {label}
       </label>

@@ -72,15 +72,13 @@ export function GroupDetails({ group, main }: { group: GroupView; main: EntryRow
 function BigMass({ entry, struck }: { entry: EntryRow; struck: boolean }) {
   const format = useFormat();
   const { value, unit } = format.massParts(entry.massG);
-  const typed = entry.typed;
   const t = useMessages();
-  const asTyped = typed ? `${format.number(Number(typed.value), 9)}\u00a0${typed.unit}` : null;
-  const shown = `${value}\u00a0${unit}`;
+  const asTyped = entry.typed ? format.massAsTyped(entry.typed, entry.massG) : null;
   return (
     <p className={`type-figure mt-1 text-[2.625rem] ${struck ? 'text-ink-soft' : 'text-move'}`}>
       <span className={struck ? 'line-through decoration-2' : ''}>{value}</span>
       <span className="pl-2 text-[1.125rem] font-[600] tracking-normal">{unit}</span>
-      {asTyped && asTyped !== shown ? (
+      {asTyped ? (
         <span className="type-label block pt-1.5 text-[0.9375rem] leading-tight font-[400] tracking-normal text-ink-soft">
           {t('log.group.typed', { typed: asTyped })}
         </span>

@@ -1,0 +1,152 @@
+import { useQuery } from '@tanstack/react-query';
+import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+import { formatQuantity } from '../../../shared/units/format-quantity.ts';
+import { customerQueries } from '../../api/customers.ts';
+import { partyQueries } from '../../api/parties.ts';
+import { useSession } from '../../api/session.ts';
+import { useFormat } from '../../lib/format.ts';
+import { deviceNow, toDayInput } from '../../lib/local-time.ts';
+import { useMessages } from '../../lib/messages.ts';
+import { usePreferences } from '../../lib/preferences.ts';
+import { Fact, Facts } from '../../ui/facts.tsx';
+import { type CylinderFigures, RATING_TEMP_C } from './use-cylinder-figures.ts';
+
+/** What stands on the collar and what follows from it, each with its why. */
+export function CylinderFacts({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFigures }) {
+  const t = useMessages();
+  const format = useFormat();
+  const zone = useSession()?.firm.timeZone;
+  return (
+    <Facts>
+      <Fact name={t('cylinders.refrigerant')}>
+        {cylinder.refrigerant}, {t(`cylinders.state.${cylinder.contentState}`)}
+        {cylinder.mixed ? (
+          <ul className="pt-1 text-[0.9375rem]">
+            {cylinder.byRefrigerant.map(({ refrigerant, massG }) => (
+              <li key={refrigerant}>
+                {refrigerant} {format.mass(massG)}
+              </li>
+            ))}
+          </ul>
+        ) : null}
+      </Fact>
+      <Fact name={t('cylinders.tare')}>
+        {format.mass(cylinder.tareG)}
+        <AsStamped typed={cylinder.tareTyped} massG={cylinder.tareG} />
+      </Fact>
+      <Fact name={t('cylinders.limit')}>
+        <Limit cylinder={cylinder} figures={figures} />
+      </Fact>
+      <Fact name={t('cylinders.pressure')}>
+        <Pressure cylinder={cylinder} figures={figures} />
+      </Fact>
+      <Fact name={t('cylinders.retest')}>
+        {cylinder.retestDue === null ? t('cylinders.notGiven') : format.day(cylinder.retestDue)}
+        {cylinder.retestDue !== null && cylinder.retestDue < toDayInput(deviceNow()) ? (
+          <strong className="font-[650]">, {t('cylinders.mark.retestOverdue')}</strong>
+        ) : null}
+      </Fact>
+      <Fact name={t('cylinders.holder')}>{cylinder.heldByName ?? t('cylinders.nobody')}</Fact>
+      <Fact name={t('cylinders.owner')}>
+        <Owner owner={cylinder.owner} />
+      </Fact>
+      {cylinder.batch ? <Fact name={t('cylinders.batch')}>{cylinder.batch}</Fact> : null}
+      <Fact name={t('cylinders.lastWeighed')}>
+        {cylinder.lastWeighedAt === null || cylinder.lastReadingGrossG === null
+          ? t('cylinders.neverWeighed')
+          : t('cylinders.lastWeighedAt', {
+              when: format.longDateTime(cylinder.lastWeighedAt, zone),
+              gross: format.mass(cylinder.lastReadingGrossG),
+            })}
+      </Fact>
+    </Facts>
+  );
+}
+
+/** As stamped, where the person reads another unit. */
+function AsStamped({ typed, massG }: { typed: { value: string; unit: string }; massG: number }) {
+  const t = useMessages();
+  const text = useFormat().massAsTyped(typed, massG);
+  return text === null ? null : <Why>{t('cylinders.typedAs', { typed: text })}</Why>;
+}
+
+const Why = ({ children }: { children: React.ReactNode }) => (
+  <span className="type-label block text-[0.9375rem] text-ink-soft">{children}</span>
+);
+
+function Limit({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFigures }) {
+  const t = useMessages();
+  const format = useFormat();
+  const { limitG, waterCapacityG, kind } = cylinder;
+  if (limitG === null) {
+    return (
+      <>
+        {t('cylinders.limit.none')}
+        <Why>{t(kind === 'nonRefillable' ? 'cylinders.limit.nonRefillable' : 'cylinders.limit.notKnown')}</Why>
+      </>
+    );
+  }
+  const { ruleLimitG, liquidDensityKgM3 } = figures;
+  const byRule = ruleLimitG !== null && Math.abs(ruleLimitG - limitG) < 0.01;
+  return (
+    <>
+      {t('cylinders.limit.net', { mass: format.mass(limitG), gross: format.mass(limitG + cylinder.tareG) })}
+      <Why>
+        {byRule && waterCapacityG !== null && liquidDensityKgM3 !== null
+          ? t('cylinders.limit.byRule', {
+              capacity: format.mass(waterCapacityG),
+              density: format.number(liquidDensityKgM3, 0),
+            })
+          : ruleLimitG === null || byRule
+            ? t('cylinders.limit.stamped')
+            : t('cylinders.limit.stampedAgainstRule', { rule: format.mass(ruleLimitG) })}
+      </Why>
+      {figures.cautions.map(({ code, message }) => (
+        <Why key={code}>{message}</Why>
+      ))}
+    </>
+  );
+}
+
+function Pressure({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFigures }) {
+  const t = useMessages();
+  const shown = usePressure();
+  const { servicePressureKPaGauge, pressureRatingHolds, refrigerant } = cylinder;
+  const needed = figures.pressureAt55KPaGauge;
+  return (
+    <>
+      {servicePressureKPaGauge === null ? t('cylinders.notGiven') : shown(servicePressureKPaGauge)}
+      {pressureRatingHolds === null ? null : (
+        <strong className="font-[650]">
+          {', '}
+          {t(pressureRatingHolds ? 'cylinders.pressure.holds' : 'cylinders.pressure.tooLow')}
+        </strong>
+      )}
+      {needed === null ? null : (
+        <Why>{t('cylinders.pressure.needs', { refrigerant, pressure: shown(needed), temperature: RATING_TEMP_C })}</Why>
+      )}
+    </>
+  );
+}
+
+/** A gauge pressure in the person's unit. */
+export function usePressure(): (kPaGauge: number) => string {
+  const { pressure, locale } = usePreferences();
+  const unit = pressure === 'psig' ? 'psi' : pressure;
+  return (kPaGauge) => formatQuantity('pressureGauge', kPaGauge, unit, { locale, decimals: unit === 'bar' ? 1 : 0 });
+}
+
+function Owner({ owner }: { owner: Cylinder['owner'] }) {
+  const t = useMessages();
+  const party = useQuery({
+    ...partyQueries.one(owner.kind === 'party' ? owner.id : ''),
+    enabled: owner.kind === 'party',
+  });
+  const customer = useQuery({
+    ...customerQueries.one(owner.kind === 'customer' ? owner.id : ''),
+    enabled: owner.kind === 'customer',
+  });
+  if (owner.kind === 'ours') return t('cylinders.owner.ours');
+  if (owner.kind === 'party') return t('cylinders.owner.party', { name: party.data?.name ?? '' });
+  return t('cylinders.owner.customer', { name: customer.data?.name ?? '' });
+}
