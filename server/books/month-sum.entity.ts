@@ -24,4 +24,8 @@ export class MonthSumEntity {
 
   @Column({ type: 'bigint', transformer: safeInteger })
   entryCount!: number;
+
+  /** The part of the mass that reversals move: what they take back goes off the other way. */
+  @Column({ type: 'bigint', transformer: wholeNumber, default: 0 })
+  reversalMicrograms!: bigint;
 }

@@ -5,6 +5,7 @@ import { CreatePosting1764547200004 } from './migrations/1764547200004-create-po
 import { ProtectRows1764547200005 } from './migrations/1764547200005-protect-rows.ts';
 import { Seals1764633600001 } from './migrations/1764633600001-seals.ts';
 import { KeepPeriods1764720000010 } from './migrations/1764720000010-keep-periods.ts';
+import { TellReversalsApart1764720000011 } from './migrations/1764720000011-tell-reversals-apart.ts';
 
 /** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
 export const MIGRATIONS = [
@@ -15,4 +16,5 @@ export const MIGRATIONS = [
   ProtectRows1764547200005,
   Seals1764633600001,
   KeepPeriods1764720000010,
+  TellReversalsApart1764720000011,
 ] as const;
