@@ -1,5 +1,6 @@
 import i18next from 'i18next';
 import { useSyncExternalStore } from 'react';
+import { cutSentence, numberFormatOf, type Sentence, sayPieces } from '../../shared/messages/sentence-pieces.ts';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { readPreferences, subscribeToPreferences } from './preferences.ts';
 
@@ -52,6 +53,8 @@ export async function startMessages(): Promise<void> {
     interpolation: { escapeValue: false }, // React escapes
     partialBundledLanguages: true,
   });
+  // Its own takes a value of the sentence that is called `unit` for an option of Intl.NumberFormat, and gives up.
+  i18next.services.formatter?.add('number', (value, lng) => numberFormatOf(lng ?? 'en').format(value));
   document.documentElement.lang = readPreferences().locale;
   await loadMessages('frame');
   subscribeToPreferences(() => void followLocale());
@@ -65,17 +68,25 @@ export function useMessages(): Translate {
 
 const translators = new Map<string, Translate>();
 
-/** One function for each locale. A sentence without values is looked up once: a form asks for hundreds at a keystroke. */
+/** One function for each locale. A sentence is looked up and cut once: a form asks for hundreds at a keystroke. */
 function translateIn(language: string): Translate {
   const known = translators.get(language);
   if (known) return known;
-  const sentences = new Map<string, string>();
-  const translator: Translate = (key, params) => {
-    if (params) return i18next.t(key, { lng: language, ...params });
-    const sentence = sentences.get(key) ?? i18next.t(key, { lng: language });
-    // A part that is not loaded yet answers with the key; that is not to be remembered.
-    if (sentence !== key) sentences.set(key, sentence);
+  const sentences = new Map<string, Sentence | null>();
+  const sentenceOf = (key: string): Sentence | null => {
+    const remembered = sentences.get(key);
+    if (remembered !== undefined) return remembered;
+    // A part that is not loaded yet has no such key; that is not to be remembered.
+    if (!i18next.exists(key, { lng: language })) return null;
+    const sentence = cutSentence(i18next.t(key, { lng: language, skipInterpolation: true }));
+    sentences.set(key, sentence);
     return sentence;
+  };
+  const translator: Translate = (key, params = {}) => {
+    // A count chooses the plural form.
+    const sentence = 'count' in params ? null : sentenceOf(key);
+    const said = sentence && sayPieces(sentence, language, params);
+    return said ?? i18next.t(key, { lng: language, ...params });
   };
   translators.set(language, translator);
   return translator;
