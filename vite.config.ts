@@ -44,7 +44,7 @@ export default defineConfig(({ mode }) =>
               },
             },
             { test: { name: 'unit', environment: 'node', include: ['{shared,server}/**/*.test.ts'] } },
-            { test: { ...underPostgres, name: 'database', include: ['tests/{api,database}/**/*.test.ts'] } },
+            { test: { ...underPostgres, name: 'database', include: ['tests/{api,database,proof}/**/*.test.ts'] } },
             // The last two start whole programs: one at a time, and after the others, so that nothing starves on two cores.
             {
               test: {

@@ -8,9 +8,11 @@ import type { ApiRoutes } from './http/api-routes.ts';
 import type { Parts } from './http/parts.ts';
 import { jobRoutes } from './jobs/job.router.ts';
 import { partyRoutes } from './parties/party.router.ts';
+import { journalRoutes } from './proof/journal.router.ts';
 import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
 import { sealRoutes } from './seals/seal.router.ts';
 import { siteRoutes } from './sites/site.router.ts';
+import { statementRoutes } from './statements/statement.router.ts';
 import { todayRoutes } from './today/today.router.ts';
 import { toolRoutes } from './tools/tool.router.ts';
 import { unitRoutes } from './units/unit.router.ts';
@@ -28,7 +30,9 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   entryGroupRoutes,
   entryRoutes,
   flagRoutes,
+  statementRoutes,
   todayRoutes,
   referenceListRoutes,
   sealRoutes,
+  journalRoutes,
 ];

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { day, id, pageOf, pageQuery } from '../lists/list.schema.ts';
+import { readHash, readHead } from './verify.mjs';
 
 const hash = z.string().regex(/^[0-9a-f]{64}$/);
 const instant = z.iso.datetime();
@@ -81,6 +82,25 @@ export const journalState = z.strictObject({
 });
 export type JournalState = z.output<typeof journalState>;
 
+/** What somebody holds from before; groups, blanks and capitals as on the print are let through. */
+export const keyFingerprint = z
+  .string()
+  .max(200)
+  .transform((typed, context) => readHash(typed) ?? refuse(context));
+export const knownHead = z
+  .string()
+  .max(200)
+  .transform((typed, context) => readHead(typed) ?? refuse(context));
+function refuse(context: z.RefinementCtx): never {
+  context.addIssue({ code: 'custom', params: { code: 'wrongFormat' } });
+  return z.NEVER;
+}
+export const verificationQuery = z.strictObject({
+  keyFingerprint: keyFingerprint.optional(),
+  knownHead: knownHead.optional(),
+});
+export type VerificationQuery = z.output<typeof verificationQuery>;
+
 /** One line of `/journal/verification` (application/x-ndjson): how far it is, or, as the last line, what it found. */
 export const verificationProgress = z.strictObject({ checked: z.int(), of: z.int() });
 export const verificationResult = z.strictObject({
@@ -99,7 +119,7 @@ export const verificationResult = z.strictObject({
       message: z.string(),
     })
     .nullable(),
-  /** Hashed with SHA-256, in seconds and bytes, for those who measure. */
+  /** Bytes of text that were hashed. */
   bytes: z.int(),
 });
 export type VerificationProgress = z.output<typeof verificationProgress>;
