@@ -15,6 +15,7 @@ import { presentOutcome } from './posting-answer.ts';
 import { loadPostingFacts } from './posting-facts.repository.ts';
 import type { StoredGroup } from './posting-facts.ts';
 import { recordsOfPosting } from './posting-records.ts';
+import { deviceTimeRefusals } from './posting-refusals.ts';
 import { answered, findGroup } from './timeline.repository.ts';
 
 /**
@@ -28,6 +29,7 @@ export function answerGroup(
   body: AnswerRequest,
 ): Promise<Made<EntryGroupResponse>> {
   const { statement } = body;
+  refuse(deviceTimeRefusals(body));
   return inFirm(parts.dataSource, actor, async (manager) => {
     await lockHead(manager);
     const hash = requestHash(body);

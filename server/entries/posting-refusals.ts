@@ -3,6 +3,7 @@ import { gramsText } from '../../shared/ledger/grams-text.ts';
 import type { JudgedGroup } from '../../shared/ledger/judged-group.ts';
 import { type MassByRefrigerant, massOf, refrigerantsOf, totalOf } from '../../shared/ledger/mass-by-refrigerant.ts';
 import { cylinderPlace, type PlaceFields, type PlaceKind, samePlace } from '../../shared/ledger/place.ts';
+import { CALENDAR, isInCalendar } from '../../shared/lists/list.schema.ts';
 import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
 import { LARGEST_MICROGRAMS, microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
@@ -28,6 +29,8 @@ export interface Asked {
 
 /** What can be refused before anything is judged: times, references, refrigerants, masses, places, the weigh-in. */
 export function requestRefusals(asked: Asked): Refusal[] {
+  const outside = calendarRefusals(asked);
+  if (outside.length > 0) return outside;
   return [
     ...timeRefusals(asked),
     ...referenceRefusals(asked),
@@ -35,6 +38,28 @@ export function requestRefusals(asked: Asked): Refusal[] {
     ...placeRefusals(asked),
     ...closingRefusals(asked),
   ];
+}
+
+/** Times and days that no calendar of ours has. */
+function calendarRefusals({ body, at }: Asked): Refusal[] {
+  const said = [
+    { path: '/occurredAt', given: body.occurredAt },
+    { path: '/deviceSentAt', given: body.deviceSentAt ?? null },
+    ...(body.readings ?? []).map((reading, index) => ({ path: `/readings/${index}/at`, given: reading.at ?? null })),
+    ...(body.documents ?? []).map(({ date }, index) => ({ path: `/documents/${index}/date`, given: date })),
+  ];
+  return outsideCalendar(said, at);
+}
+
+/** What a device says of its clock, of a request that posts no group of its own. */
+export const deviceTimeRefusals = (body: { deviceSentAt?: string | null | undefined }): Refusal[] =>
+  outsideCalendar([{ path: '/deviceSentAt', given: body.deviceSentAt ?? null }], '');
+
+function outsideCalendar(said: readonly { path: string; given: string | null }[], at: string): Refusal[] {
+  const allowed = [CALENDAR.first, CALENDAR.last];
+  return said
+    .filter(({ given }) => given !== null && !isInCalendar(given))
+    .map(({ path, given }) => ({ code: 'outOfCalendar', path: `${at}${path}`, given, allowed, params: CALENDAR }));
 }
 
 function timeRefusals({ body, at, now }: Asked): Refusal[] {

@@ -15,7 +15,7 @@ import { presentOutcome } from './posting-answer.ts';
 import { loadPostingFacts } from './posting-facts.repository.ts';
 import type { StoredGroup } from './posting-facts.ts';
 import { recordsOfPosting } from './posting-records.ts';
-import { reasonRefusals } from './posting-refusals.ts';
+import { deviceTimeRefusals, reasonRefusals } from './posting-refusals.ts';
 import { findGroup } from './timeline.repository.ts';
 
 /** How long technicians put right what they posted themselves. */
@@ -35,6 +35,7 @@ export function reverseGroup(
 ): Promise<Made<EntryGroupResponse>> {
   const replacement = body.replacement ?? null;
   if (replacement) requireKind(actor, replacement);
+  refuse(deviceTimeRefusals(body));
   return inFirm(parts.dataSource, actor, async (manager) => {
     await lockHead(manager);
     const hash = requestHash({ ...body, ...(replacement ? { replacement: withoutDeviceTime(replacement) } : {}) });

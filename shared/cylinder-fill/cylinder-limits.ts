@@ -25,7 +25,8 @@ export function cylinderLimit(
   if (kind === 'nonRefillable' || waterCapacityMicrograms === null) return null;
   const waterCapacityG = gramsOfMicrograms(waterCapacityMicrograms);
   const fill = cylinderFill({ refrigerant, waterCapacityG, tareG: 0 }, reference);
-  return fill.ok ? microgramsOfGrams(fill.value.maxNetG) : null;
+  const limit = fill.ok ? microgramsOfGrams(fill.value.maxNetG) : null;
+  return limit !== null && limit > 0n ? limit : null;
 }
 
 /**

@@ -1,12 +1,20 @@
 import { z } from 'zod';
 
 /** UUID version 7 (RFC 9562): made by the client, ordered by time. Ids made by the server are of the same kind. */
-export const id = z.uuid();
+export const id = z.uuid().toLowerCase();
+
+/** Years that machines and records of this trade can be of; PostgreSQL and calendars agree on them. */
+export const CALENDAR = { first: '1900-01-01', last: '2199-12-31' } as const;
+export const isInCalendar = (dayOrInstant: string): boolean => {
+  const day = dayOrInstant.slice(0, 10);
+  return day >= CALENDAR.first && day <= CALENDAR.last;
+};
+const OUT_OF_CALENDAR = { code: 'outOfCalendar', allowed: [CALENDAR.first, CALENDAR.last], params: CALENDAR };
 
 /** An instant with its offset (RFC 3339). */
-export const instant = z.iso.datetime({ offset: true });
+export const instant = z.iso.datetime({ offset: true }).refine(isInCalendar, { params: OUT_OF_CALENDAR });
 /** A calendar day at the place it speaks of. */
-export const day = z.iso.date();
+export const day = z.iso.date().refine(isInCalendar, { params: OUT_OF_CALENDAR });
 /** A booking month, `2026-11`. */
 export const month = z.string().regex(/^\d{4}-(0[1-9]|1[0-2])$/);
 

@@ -1,7 +1,7 @@
 import { v7 as uuid } from 'uuid';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { startTestApp, type TestApp } from '../support/app.ts';
-import { type Ledger, SINCE, siteOf, startLedger } from '../support/ledger.ts';
+import { type Ledger, SINCE, siteOf, startLedger, weighIn } from '../support/ledger.ts';
 
 let app: TestApp;
 let ledger: Ledger;
@@ -366,6 +366,26 @@ describe('A unit', () => {
     const again = await ledger.client.post(`/units/${unit.id}/full-charges`, request);
     expect({ status: again.status, body: again.body }).toEqual({ status: 200, body: answer.body });
     expect((await ledger.client.get(`/units/${unit.id}`)).body.book).toMatchObject({ known: true, massG: 1290 });
+  });
+});
+
+describe('A register change that would make a known book unknown', () => {
+  it('is refused, and neither the row nor a record of it is kept', async () => {
+    const unit = await ledger.unit('0', '1290', {}, 'notKnown');
+    const cylinder = await ledger.cylinder('9500');
+    // Full at the first visit settles the book, by the full charge of the refrigerant that the unit is for (S8 case 1).
+    const said = { about: 'unit', id: unit.id, is: 'full' };
+    await ledger.post({
+      ...weighIn(ledger, { cylinderId: cylinder.id, unitId: unit.id, beforeG: 9500, afterG: 9200 }, { kind: 'refill' }),
+      statements: [said],
+    });
+    const sequence = await ledger.sequence();
+    const change = { id: uuid(), refrigerant: 'R-32', validFrom: '2026-02-01T00:00:00Z' };
+    const answer = await ledger.client.post(`/units/${unit.id}/refrigerants`, change);
+
+    expect(answer.body).toMatchObject({ status: 422, code: 'bookStaysKnown' });
+    expect((await ledger.client.get(`/units/${unit.id}`)).body).toMatchObject({ refrigerant: 'R-410A', version: 1 });
+    expect(await ledger.sequence()).toBe(sequence);
   });
 });
 

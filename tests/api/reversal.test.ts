@@ -231,3 +231,14 @@ describe('An answer that is given later', () => {
     expect((await answerTo(uuid(), said)).status).toBe(404);
   });
 });
+
+describe('A device’s time', () => {
+  it('that no calendar has is refused in a reversal and an answer, too', async () => {
+    const { unit, groupId } = await charged();
+    const deviceSentAt = '0000-01-01T00:00:00Z';
+    const expected = { status: 422, errors: [{ path: '/deviceSentAt', code: 'outOfCalendar' }] };
+    expect((await reverse(groupId, reversalOf({ deviceSentAt }))).body).toMatchObject(expected);
+    const answer = { groupId: uuid(), schema: 1, deviceSentAt, statement: { about: 'unit', id: unit.id, is: 'full' } };
+    expect((await ledger.client.post(`/entry-groups/${groupId}/answer`, answer)).body).toMatchObject(expected);
+  });
+});
