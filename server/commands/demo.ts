@@ -11,14 +11,15 @@ export interface DemoSignIn {
 /**
  * The hook of the start and dev commands: loads the two demo firms into a database without any firm, and says who can
  * sign in. Called at each start unless TAREWRIGHT_DEMO=0, after the migrations and before the server listens.
- * No firms are written yet, so nobody is returned and the commands print no sign-ins.
+ * Both firms are there whole or not at all, whatever interrupts it; a later start then finds nothing and loads again.
  * @param password every demo person's, generated for this installation and kept in its secrets.json
  * @returns the demo people, also when they were loaded earlier; empty in a database that others fill
  */
-export async function loadDemoIfEmpty(_options: {
-  databaseUrls: DatabaseUrls;
+export async function loadDemoIfEmpty(options: {
+  databaseUrls: Pick<DatabaseUrls, 'app' | 'jobs'>;
   password: string;
   now: Date;
 }): Promise<DemoSignIn[]> {
-  return [];
+  const { loadDemoFirms } = await import('../demo/load-demo-firms.ts');
+  return loadDemoFirms(options);
 }
