@@ -16,7 +16,7 @@ import type {
 } from '../../shared/cylinders/cylinder.schema.ts';
 import type { ReadingRow } from '../../shared/entries/entry.schema.ts';
 import type { EntryGroupResponse } from '../../shared/ledger/entry-group-response.schema.ts';
-import { http, Problem, queryString } from './http.ts';
+import { http, isStale, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 
 export interface CylinderFilters {
@@ -83,7 +83,7 @@ export function useUpdateCylinder({ id, version }: { id: string; version: number
       return refreshCylinders(client);
     },
     // Somebody was quicker: the next try starts from what stands now, and what was typed stays in its form.
-    onError: (error) => (error instanceof Problem && error.status === 412 ? refreshCylinders(client) : undefined),
+    onError: (error) => (isStale(error) ? refreshCylinders(client) : undefined),
   });
 }
 

@@ -22,7 +22,9 @@ export function schemaErrors(schema: z.ZodType, request: unknown): FormError[] {
 }
 
 /** A refusal in words: what was given, what is allowed. */
-function said({ code, path, given, allowed, params }: Refusal): FormError {
+function said({ code: found, path, given, allowed, params }: Refusal): FormError {
+  // An empty field is missing, not too short.
+  const code = found === 'tooShort' && (given === '' || given === undefined) ? 'required' : found;
   const list = Array.isArray(allowed)
     ? new Intl.ListFormat(readPreferences().locale, { type: 'disjunction' }).format(allowed.map(String))
     : allowed;

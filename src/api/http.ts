@@ -34,6 +34,9 @@ export class NetworkError extends Error {
   override readonly name = 'NetworkError';
 }
 
+/** Somebody else has changed the row meanwhile: it is read again, and the next try starts from what stands now. */
+export const isStale = (error: unknown): boolean => error instanceof Problem && error.status === 412;
+
 interface Options {
   signal?: AbortSignal;
   /** Sent as `If-Match`: the version that the change was made on. */

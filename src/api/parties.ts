@@ -1,7 +1,7 @@
 import { infiniteQueryOptions, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type { z } from 'zod';
 import type { createPartyRequest, Party, partyKind, updatePartyRequest } from '../../shared/parties/parties.schema.ts';
-import { http, queryString } from './http.ts';
+import { http, isStale, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 
 export interface PartyFilters {
@@ -48,5 +48,6 @@ export function useUpdateParty({ id, version }: { id: string; version: number })
   return useMutation({
     mutationFn: (body: z.input<typeof updatePartyRequest>) => http.patch<Party>(`/parties/${id}`, body, { version }),
     onSuccess: () => client.invalidateQueries({ queryKey: partyQueries.all() }),
+    onError: (error) => (isStale(error) ? client.invalidateQueries({ queryKey: partyQueries.all() }) : undefined),
   });
 }

@@ -10,7 +10,7 @@ import type {
   SentInvitation,
   updatePersonRequest,
 } from '../../shared/people/people.schema.ts';
-import { http } from './http.ts';
+import { http, isStale } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 
 export const peopleQueries = {
@@ -58,6 +58,7 @@ export function useUpdatePerson() {
         client.invalidateQueries({ queryKey: peopleQueries.all() }),
         client.invalidateQueries({ queryKey: ['session'] }), // it may have been oneself
       ]),
+    onError: (error) => (isStale(error) ? client.invalidateQueries({ queryKey: peopleQueries.all() }) : undefined),
   });
 }
 

@@ -1,7 +1,7 @@
 import { infiniteQueryOptions, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type { z } from 'zod';
 import type { createToolRequest, Tool, toolKind, updateToolRequest } from '../../shared/tools/tools.schema.ts';
-import { http, queryString } from './http.ts';
+import { http, isStale, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 
 export interface ToolFilters {
@@ -43,5 +43,6 @@ export function useUpdateTool({ id, version }: { id: string; version: number }) 
   return useMutation({
     mutationFn: (body: z.input<typeof updateToolRequest>) => http.patch<Tool>(`/tools/${id}`, body, { version }),
     onSuccess: () => client.invalidateQueries({ queryKey: toolQueries.all() }),
+    onError: (error) => (isStale(error) ? client.invalidateQueries({ queryKey: toolQueries.all() }) : undefined),
   });
 }

@@ -1,0 +1,28 @@
+import type { LoaderFunctionArgs } from 'react-router-dom';
+import { requireSession, usePermission } from '../../api/session.ts';
+import { loadMessages, useMessages } from '../../lib/messages.ts';
+import { Page } from '../../ui/page.tsx';
+import { Invitations } from './invitations.tsx';
+import { OwnAccess } from './own-access.tsx';
+import { PeopleList } from './people-list.tsx';
+
+export async function loader({ request }: LoaderFunctionArgs) {
+  await Promise.all([requireSession(request), loadMessages('people-screen', 'server')]);
+  return null;
+}
+
+/** Who works for the firm and what each may do; who has been invited; and one's own ways in. Each only as permitted. */
+export function Component() {
+  const t = useMessages();
+  const seesPeople = usePermission('people:read');
+  const manages = usePermission('people:manage');
+  return (
+    <Page title={t('people.title')}>
+      <div className="page-gutter flex max-w-[90rem] flex-col gap-10 pt-4">
+        {seesPeople ? <PeopleList /> : null}
+        {manages ? <Invitations /> : null}
+        <OwnAccess />
+      </div>
+    </Page>
+  );
+}
