@@ -43,8 +43,7 @@ function sentenceOf(key: string, locale: Locale): Sentence | null {
 export function findMessage(key: string, locale: Locale, values: MessageValues = {}): string | null {
   // A count chooses the plural form.
   const sentence = 'count' in values ? null : sentenceOf(key, locale);
-  const said = sentence && sayPieces(sentence, locale, values);
-  if (said !== null) return said;
+  if (sentence) return sayPieces(sentence, locale, plain(values, locale));
   if (!translator.exists(key, { lng: locale, ...plain(values, locale) })) return null;
   return translator.t(key, { lng: locale, ...plain(values, locale) });
 }
@@ -54,10 +53,15 @@ export function messageFor(key: string, locale: Locale, values: MessageValues = 
   return findMessage(key, locale, values) ?? key;
 }
 
-function plain(values: MessageValues, locale: Locale): Record<string, unknown> {
-  return Object.fromEntries(
-    Object.entries(values).map(([name, value]) => [name, Array.isArray(value) ? listed(value, locale) : value]),
-  );
+type PlainValues = Record<string, string | number | boolean | null | undefined>;
+
+function plain(values: MessageValues, locale: Locale): PlainValues {
+  const all: PlainValues = {};
+  for (const name in values) {
+    const value = values[name];
+    all[name] = typeof value === 'object' && value !== null ? listed(value, locale) : value;
+  }
+  return all;
 }
 
 function listed(values: readonly (string | number)[], locale: Locale): string {

@@ -2,9 +2,10 @@ import i18next from 'i18next';
 import { describe, expect, it } from 'vitest';
 import { catalogueEn } from './catalogue-en.ts';
 import { catalogueEs } from './catalogue-es.ts';
-import { cutSentence, sayPieces } from './sentence-pieces.ts';
+import { cutSentence, type Sentence, sayPieces } from './sentence-pieces.ts';
 
 const SAMPLES = [1234.5, '1234', '$t(x) {{y}}', ''];
+const cut = (text: string): Sentence => cutSentence(text) ?? [];
 
 describe('A sentence cut at its placeholders', () => {
   it.each([
@@ -12,7 +13,7 @@ describe('A sentence cut at its placeholders', () => {
     ['en-GB', catalogueEn],
     ['es-ES', catalogueEs],
     ['es-US', catalogueEs],
-  ])('says in %s what the translator would say, for every sentence of the server', async (locale, catalogue) => {
+  ])('says in %s what a full translator says, for every sentence of the server', async (locale, catalogue) => {
     const translator = i18next.createInstance();
     await translator.init({
       lng: locale,
@@ -21,27 +22,28 @@ describe('A sentence cut at its placeholders', () => {
       nsSeparator: false,
       interpolation: { escapeValue: false },
     });
-    translator.services.formatter?.add('number', (value) => new Intl.NumberFormat(locale).format(value));
-    let said = 0;
+    // Its own gives up where a value is called `unit`, which it takes for an option of the format.
+    translator.services.formatter?.add('number', (value) =>
+      Number.isNaN(Number.parseFloat(value)) ? value : new Intl.NumberFormat(locale).format(value),
+    );
     for (const [key, text] of Object.entries(catalogue)) {
       const names = [...text.matchAll(/\{\{\s*(\w+)/g)].map((match) => String(match[1]));
+      if (names.includes('count')) continue; // chooses between sentences
       for (const sample of SAMPLES) {
         const values = Object.fromEntries(names.map((name) => [name, sample]));
-        const pieces = cutSentence(text);
-        const own = pieces && sayPieces(pieces, locale, values);
-        if (own === null || 'count' in values) continue;
-        said += 1;
-        expect(own, key).toBe(translator.t(key, { lng: locale, ...values }));
+        expect(sayPieces(cut(text), locale, values), key).toBe(translator.t(key, values));
       }
     }
-    expect(said).toBeGreaterThan(Object.keys(catalogue).length);
   });
 
-  it('is left to the translator where it holds anything else', () => {
+  it('leaves the place of a missing value empty, and what was typed in place of a figure as it was typed', () => {
+    expect(sayPieces(cut('{{a}} m'), 'en-US', { a: undefined })).toBe(' m');
+    expect(sayPieces(cut('{{a, number}} m'), 'es-ES', { a: '12345.5' })).toBe('12.345,5 m');
+    expect(sayPieces(cut('{{a, number}} m'), 'es-ES', { a: '12,5x' })).toBe('12,5x m');
+  });
+
+  it('holds nothing else in braces and no other sentence', () => {
     expect(cutSentence('{{when, datetime}}')).toBeNull();
     expect(cutSentence('see $t(other)')).toBeNull();
-    expect(sayPieces(cutSentence('{{a}} m') ?? [], 'en-US', { a: undefined })).toBeNull();
-    expect(sayPieces(cutSentence('{{a, number}} m') ?? [], 'en-US', { a: '12' })).toBeNull();
-    expect(sayPieces(cutSentence('{{a}} m') ?? [], 'en-US', { a: ['x', 'y'] })).toBeNull();
   });
 });

@@ -5,7 +5,7 @@ export type Sentence = readonly Piece[];
 /** The only two forms that the catalogue uses, `{{name}}` and `{{name, number}}`. */
 const PLACEHOLDER = /\{\{\s*(\w+)\s*(,\s*number\s*)?\}\}/g;
 
-/** @returns null for a sentence with something else in braces, or one that refers to another */
+/** @returns null for a sentence with something else in braces, or one that refers to another: the catalogue has none */
 export function cutSentence(text: string): Sentence | null {
   const pieces: Piece[] = [];
   let end = 0;
@@ -31,12 +31,12 @@ export function numberFormatOf(locale: string): Intl.NumberFormat {
   return format;
 }
 
-/** @returns null where a value is missing or neither text nor number */
+/** Nothing in a value is read as a placeholder. A value that is missing leaves its place empty. */
 export function sayPieces(
   sentence: Sentence,
   locale: string,
-  values: Readonly<Record<string, unknown>>,
-): string | null {
+  values: Readonly<Record<string, string | number | boolean | null | undefined>>,
+): string {
   let said = '';
   for (const piece of sentence) {
     if (typeof piece === 'string') {
@@ -44,9 +44,14 @@ export function sayPieces(
       continue;
     }
     const value = values[piece.value];
-    if (typeof value === 'number') said += piece.asNumber ? numberFormatOf(locale).format(value) : String(value);
-    else if (typeof value === 'string' && !piece.asNumber) said += value;
-    else return null;
+    if (value === undefined || value === null) continue;
+    said += piece.asNumber ? figure(value, locale) : String(value);
   }
   return said;
+}
+
+/** A figure in the region's form; what a person typed in place of one stays as it is. */
+function figure(value: string | number | boolean, locale: string): string {
+  const isNumber = typeof value === 'number' || (typeof value === 'string' && /^-?\d+(\.\d+)?$/.test(value));
+  return isNumber ? numberFormatOf(locale).format(Number(value)) : String(value);
 }

@@ -1,6 +1,9 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
-import { describe, expect, it } from 'vitest';
+import { beforeAll, describe, expect, it } from 'vitest';
+import { cutSentence } from '../../shared/messages/sentence-pieces.ts';
+import { hasMessage, loadMessages, startMessages, translate } from './messages.ts';
+import { changePreferences, preferencesFor } from './preferences.ts';
 
 const FOLDER = 'shared/messages';
 const files = readdirSync(FOLDER).filter((name) => name.endsWith('.json'));
@@ -42,5 +45,38 @@ describe('Every message that a screen asks for by its key', () => {
     const asked = [...text.matchAll(/\b(?:t|translate)\(\s*`([^`$]+)\$\{/g)].map(([, start]) => start as string);
     const missing = asked.filter((start) => ![...known].some((key) => key.startsWith(start)));
     expect(missing).toEqual([]);
+  });
+});
+
+describe('Every sentence of the catalogue', () => {
+  it.each(parts)('can be said with its values and a plural form alone: %s', (part) => {
+    const texts = ['en', 'es'].flatMap((language) => Object.values(read(part, language)));
+    expect(texts.filter((text) => cutSentence(text) === null)).toEqual([]);
+  });
+});
+
+describe('A message', () => {
+  beforeAll(async () => {
+    changePreferences(preferencesFor('en-GB'));
+    await startMessages();
+  });
+
+  it('has the plural form of its count', () => {
+    expect(translate('frame.onHand', { count: 1 })).toBe('on hand in 1 cylinder');
+    expect(translate('frame.onHand', { count: 38 })).toBe('on hand in 38 cylinders');
+  });
+
+  it('of a part that nobody has loaded is its key, until it is', async () => {
+    expect([translate('log.title'), hasMessage('log.title')]).toEqual(['log.title', false]);
+    await loadMessages('log-screen');
+    expect([translate('log.title'), hasMessage('log.title')]).toEqual(['Log', true]);
+  });
+
+  it('is said in the other language for every loaded part, once the preference changes', async () => {
+    changePreferences(preferencesFor('es-ES'));
+    await loadMessages('log-screen');
+    await expect.poll(() => document.documentElement.lang).toBe('es-ES');
+    expect(translate('frame.onHand', { count: 1 })).toBe('existencias en 1 cilindro');
+    expect(translate('log.title')).toBe(read('log-screen', 'es')['log.title']);
   });
 });
