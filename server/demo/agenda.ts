@@ -1,8 +1,10 @@
 import type { Moment } from './diary.ts';
+import type { Draws } from './draws.ts';
 import type { WorkingDays } from './working-days.ts';
 
 /** When a visit may begin: before and after a break, twice. */
 const SLOT_HOURS = [8.1, 10.35, 13, 15.25] as const;
+const LATEST_HOURS = 0.45;
 
 interface Appointment {
   at: Date;
@@ -18,10 +20,12 @@ export class Agenda {
   private readonly taken = new Set<string>();
   private readonly appointments: Appointment[] = [];
   private readonly days: WorkingDays;
+  private readonly draws: Draws;
   private readonly holderOf: (personId: string) => string;
 
-  constructor(days: WorkingDays, holderOf: (personId: string) => string) {
+  constructor(days: WorkingDays, draws: Draws, holderOf: (personId: string) => string) {
     this.days = days;
+    this.draws = draws;
     this.holderOf = holderOf;
   }
 
@@ -30,16 +34,16 @@ export class Agenda {
     this.appointments.push({ at: this.days.at(daysAgo, hour), by, run });
   }
 
-  /** In the first free slots of the day. @returns whether there were any */
+  /** In free slots of the day, and not to the minute. @returns whether there were any */
   visit(daysAgo: number, by: string, slots: 1 | 2 | 3, run: Appointment['run']): boolean {
     const wanted = Array.from({ length: slots }, (_, index) => index);
-    const first = SLOT_HOURS.findIndex((_, slot) =>
+    const free = SLOT_HOURS.map((_, slot) => slot).filter((slot) =>
       wanted.every((index) => slot + index < SLOT_HOURS.length && !this.isTaken(daysAgo, by, slot + index)),
     );
-    const hour = SLOT_HOURS[first];
-    if (hour === undefined) return false;
+    if (free.length === 0) return false;
+    const first = this.draws.pick(free);
     for (const index of wanted) this.taken.add(this.key(daysAgo, by, first + index));
-    this.at(daysAgo, hour, by, run);
+    this.at(daysAgo, (SLOT_HOURS[first] ?? 0) + this.draws.between(0, LATEST_HOURS), by, run);
     return true;
   }
 

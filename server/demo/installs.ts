@@ -11,12 +11,12 @@ export function planInstalls({ agenda, register, field, shop, days }: Workshop):
   for (const unit of register.units) {
     const { beginning } = unit;
     if (beginning.kind !== 'installed') continue;
+    unit.visits.push(beginning.daysAgo);
     agenda.promise(beginning.daysAgo, beginning.by, 3, (moment) => {
       const title = `Install ${unit.model?.name ?? ''}`;
       const day = days.day(beginning.daysAgo);
       const jobId = field.job(laterBy(moment, 1), { unit, kind: 'install', title, hours: 6 });
       const { extraG, chargeSheetId } = register.install(moment, unit, { day, jobId, pipe: beginning.pipe });
-      unit.lastVisit = beginning.daysAgo;
       if (extraG < TOO_LITTLE_G) return;
       const weighing = laterBy(moment, 190);
       const from = shop.supplyFor(weighing, unit.refrigerant, extraG);

@@ -11,12 +11,29 @@ const LARGE_G = 3_500;
 /** Less than this is not topped up. */
 const TOO_LITTLE_G = 20;
 
+export const ENGLISH_TITLES = [
+  'Flare at the wall',
+  'Valve core',
+  'Coil, rubbed through',
+  'Service valve',
+  'Braze at the tee',
+];
+export const SPANISH_TITLES = [
+  'Abocardado en la pared',
+  'Óbus de la válvula',
+  'Serpentín, rozado',
+  'Válvula de servicio',
+  'Soldadura en la te',
+];
+
 interface VisitFacts {
   draws: Draws;
   shop: Shop;
   field: FieldWork;
   /** The one who answers for an apprentice's work. */
   supervisorOf(personId: string): string | null;
+  /** What this person calls leaks. */
+  titlesOf(personId: string): readonly string[];
 }
 
 /** Ordinary service: something leaked, and leaves as it ought to be. */
@@ -72,13 +89,7 @@ export class ServiceVisits {
     const into = isFlat ? null : shop.recoveryCylinderFor(moment, unit.refrigerant, held);
     if (!isFlat && !into) return false;
     const supervisedBy = this.facts.supervisorOf(moment.by);
-    const title = draws.pick([
-      'Flare at the wall',
-      'Valve core',
-      'Coil, rubbed through',
-      'Service valve',
-      'Braze at the tee',
-    ]);
+    const title = draws.pick(this.facts.titlesOf(moment.by));
     const jobId = field.job(moment, { unit, kind: 'serviceWithLeak', title, hours: 4 });
     const work = { unit, jobId, supervisedBy };
     if (into)

@@ -39,6 +39,6 @@ export interface FieldUnit extends UnitPlan {
   fullG: number;
   contentG: number;
   isThere: boolean;
-  /** Working days ago. */
-  lastVisit: number;
+  /** Working days ago on which somebody is there, planned or done. */
+  visits: number[];
 }

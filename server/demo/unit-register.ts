@@ -28,7 +28,7 @@ export class UnitRegister {
       fullG: 0,
       contentG: 0,
       isThere: false,
-      lastVisit: Number.POSITIVE_INFINITY,
+      visits: [],
     }));
   }
 
@@ -36,6 +36,13 @@ export class UnitRegister {
     const found = this.units.find((unit) => unit.tag === tag);
     if (!found) throw new Error(`no unit ${tag}`);
     return found;
+  }
+
+  /** The unit of a story that is told of that day: ordinary visits leave it alone for some weeks around it. */
+  expect(tag: string, daysAgo: number): FieldUnit {
+    const unit = this.require(tag);
+    unit.visits.push(daysAgo);
+    return unit;
   }
 
   /** A machine that was there before: in order, or holding nobody knows how much. */

@@ -49,7 +49,7 @@ export function openWorkshop(plan: FirmPlan, now: Date, reference: ReferenceData
   const siteIdOf = (key: string): string => ids.site(key);
   const register = new UnitRegister({ diary, draws, reference, gwpSet: firm.gwpSet, siteIdOf }, plan.units, first);
   const field = new FieldWork(diary, scaleOf);
-  const agenda = new Agenda(days, plan.holderOf);
+  const agenda = new Agenda(days, draws, plan.holderOf);
   return { plan, now, diary, draws, days, ids, scales, shop, register, field, agenda };
 }
 export type Workshop = ReturnType<typeof openWorkshop>;

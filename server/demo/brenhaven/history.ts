@@ -2,7 +2,7 @@ import type { ReferenceData } from '../../../shared/reference/reference-data.ts'
 import { laterBy, type Moment, minutesAfter } from '../diary.ts';
 import { planInstalls } from '../installs.ts';
 import type { DemoHistory } from '../load-demo.ts';
-import { ServiceVisits } from '../service-visits.ts';
+import { ENGLISH_TITLES, ServiceVisits, SPANISH_TITLES } from '../service-visits.ts';
 import { enterRegisters, openWorkshop, type Workshop } from '../workshop.ts';
 import { BK } from './firm.ts';
 import { BRENHAVEN } from './plan.ts';
@@ -30,7 +30,8 @@ const TOP_UPS: readonly [number, string, string][] = [
 ];
 
 function planVisits({ agenda, draws, register, shop, field, now, days }: Workshop): void {
-  const service = new ServiceVisits({ draws, shop, field, supervisorOf: () => null });
+  const titlesOf = (personId: string) => (personId === BK.inaki.id ? SPANISH_TITLES : ENGLISH_TITLES);
+  const service = new ServiceVisits({ draws, shop, field, supervisorOf: () => null, titlesOf });
   for (const [daysAgo, tag, by] of TOP_UPS) {
     agenda.promise(daysAgo, by, 1, (moment) => service.topUp(moment, register.require(tag)));
   }

@@ -19,9 +19,8 @@ export function planLately(workshop: Workshop): void {
 
 /** A start five weeks ago without an end; the cylinder stands in the shop since. */
 function neverWeighedBack({ agenda, register, shop, field }: Workshop): void {
+  const unit = register.expect('B201', 36);
   agenda.promise(36, HT.bram.id, 1, (moment) => {
-    const unit = register.require('B201');
-    unit.lastVisit = 36;
     const cylinder = shop.cylinderFor(moment, unit.refrigerant, 400);
     field.openWeighIn(moment, { unit, kind: 'adjust', cylinder });
     shop.handTo(laterBy(moment, 8 * 60), cylinder, null);
@@ -49,11 +48,10 @@ function doesNotBalance({ agenda, shop }: Workshop): void {
 
 /** The variable flow system of the town hall waits for its compressor, and its charge in two cylinders. */
 function nearItsLimit({ agenda, register, shop, field }: Workshop): void {
+  const unit = register.expect('TH-VRF', 6);
   const [first, second] = [shop.require('RC-05'), shop.require('RC-06')];
   for (const cylinder of [first, second]) cylinder.isSetAside = true;
   agenda.promise(6, HT.dov.id, 3, (moment) => {
-    const unit = register.require('TH-VRF');
-    unit.lastVisit = 6;
     const jobId = field.job(moment, { unit, kind: 'serviceWithLeak', title: 'Compressor 2, windings', hours: null });
     for (const cylinder of [first, second]) shop.handTo(laterBy(moment, -20), cylinder, moment.by);
     const room = NEAR_LIMIT_SHARE * (first.limitG ?? 0) - first.contentG;
@@ -79,26 +77,24 @@ function stockForWinter({ agenda, shop }: Workshop): void {
 /** The last hours before now, whatever day it is. */
 function today({ agenda, now, register, shop, field }: Workshop): void {
   const ago = (minutes: number, by: string): Moment => ({ at: minutesAfter(now, -minutes), by });
+  const [unit, cooler, open] = [register.expect('TH-2', 0), register.expect('BK-1', 0), register.expect('B202', 0)];
   const pickedUp = shop.require('3231');
   pickedUp.isSetAside = true;
   agenda.at(0, 0, HT.dov.id, () => {
     shop.buy(ago(205, HT.pia.id), pickedUp.refrigerant, HT.pia.id, { cylinder: pickedUp });
     pickedUp.isSetAside = false;
     const visited = ago(170, HT.dov.id);
-    const unit = register.require('TH-2');
     const missing = ounces(3.8);
     unit.contentG = unit.fullG - missing;
     const from = [{ cylinder: shop.cylinderFor(visited, unit.refrigerant, missing), massG: missing }];
     field.weighIn(visited, { unit, kind: 'adjust', from, hose: 'emptied', answer: 'full' });
 
     const asked = ago(125, HT.junia.id);
-    const cooler = register.require('BK-1');
     const added = ounces(11.6);
     const supply = [{ cylinder: shop.cylinderFor(asked, cooler.refrigerant, added), massG: added }];
     field.weighIn(asked, { unit: cooler, kind: 'refill', from: supply });
 
     const started = ago(38, HT.pia.id);
-    const open = register.require('B202');
     const cylinder = shop.cylinderFor(started, open.refrigerant, 400);
     field.openWeighIn(started, { unit: open, kind: 'adjust', cylinder });
   });

@@ -25,7 +25,7 @@ export function planStories(workshop: Workshop): void {
 
 /** Another contractor's night call: nobody knows whether the rooftop was full, until somebody measured. */
 function strangersInvoice({ agenda, diary, register, ids }: Workshop): void {
-  const unit = register.require('LB-1');
+  const unit = register.expect('LB-1', 650);
   let groupId = '';
   agenda.at(650, 9.5, HT.ilse.id, (moment) => {
     const at = minutesAfter(moment.at, -3 * 24 * 60);
@@ -43,7 +43,6 @@ function strangersInvoice({ agenda, diary, register, ids }: Workshop): void {
       documents,
     };
     groupId = diary.post(moment, body);
-    unit.lastVisit = 650;
   });
   agenda.at(640, 14, HT.ilse.id, (moment) => {
     const statement = { about: 'unit' as const, id: unit.id, is: 'full' as const };
@@ -68,8 +67,8 @@ function wrongTare({ agenda, diary, shop }: Workshop): void {
 
 /** The fire house gives up R-22. */
 function retrofit({ agenda, diary, register, shop, field }: Workshop): void {
+  const unit = register.expect('FH-1', 420);
   agenda.promise(420, HT.dov.id, 3, (moment) => {
-    const unit = register.require('FH-1');
     const jobId = field.job(moment, { unit, kind: 'retrofit', title: 'R-22 to R-407C', hours: 7 });
     const massG = gramsOf(lb('7.18'));
     const cylinder = shop.recoveryCylinderFor(moment, 'R-22', massG);
@@ -86,7 +85,6 @@ function retrofit({ agenda, diary, register, shop, field }: Workshop): void {
     unit.refrigerant = 'R-407C';
     unit.fullG = gramsOf(lb('7'));
     unit.trouble = 0.7;
-    unit.lastVisit = 420;
     const from = shop.supplyFor(laterBy(moment, 165), 'R-407C', unit.fullG);
     field.weighIn(laterBy(moment, 165), { unit, jobId, kind: 'fullRecharge', from, hose: 'emptied' });
   });
@@ -94,8 +92,8 @@ function retrofit({ agenda, diary, register, shop, field }: Workshop): void {
 
 /** A new outdoor unit comes with its own charge. */
 function underWarranty({ agenda, diary, register, shop, field }: Workshop): void {
+  const unit = register.expect('B102', 380);
   agenda.promise(380, HT.pia.id, 3, (moment) => {
-    const unit = register.require('B102');
     const factory = unit.model?.factoryCharge ?? lb('2');
     const jobId = field.job(moment, { unit, kind: 'serviceWithLeak', title: 'Compressor, under warranty', hours: 7 });
     const massG = unit.contentG * 0.96;
@@ -112,7 +110,6 @@ function underWarranty({ agenda, diary, register, shop, field }: Workshop): void
     const entries = [entry(diary, arrived.at, { ...mass, howKnown: 'factory' })];
     diary.post(arrived, { kind: 'warrantyReplacement', unitId: unit.id, jobId, entries });
     unit.contentG = gramsOf(factory);
-    unit.lastVisit = 380;
     const on = laterBy(moment, 190);
     const from = shop.supplyFor(on, unit.refrigerant, unit.fullG - unit.contentG);
     field.weighIn(on, { unit, jobId, kind: 'extraCharge', from, hose: 'emptied' });
@@ -121,8 +118,8 @@ function underWarranty({ agenda, diary, register, shop, field }: Workshop): void
 
 /** The grocer had a cylinder of its own in the machine room. */
 function customersCylinder({ agenda, diary, register, ids }: Workshop): void {
+  const unit = register.expect('CU-1', 331);
   agenda.promise(331, HT.bram.id, 1, (moment) => {
-    const unit = register.require('CU-1');
     const from = { place: 'customer' as const, id: ids.customer('grocer') };
     const mass = { refrigerant: 'R-404A', mass: lb('2.4'), from, to: inUnit(unit) };
     diary.post(moment, {
@@ -133,14 +130,13 @@ function customersCylinder({ agenda, diary, register, ids }: Workshop): void {
       note: 'Out of the customer’s own cylinder, on our scale.',
     });
     unit.contentG = unit.fullG;
-    unit.lastVisit = 331;
   });
 }
 
 /** Too much goes in, is seen at once and taken out again. */
 function overshoot({ agenda, register, shop, field }: Workshop): void {
+  const unit = register.expect('TH-3', 295);
   agenda.promise(295, HT.dov.id, 1, (moment) => {
-    const unit = register.require('TH-3');
     const jobId = field.job(moment, { unit, kind: 'serviceWithLeak', title: 'Low on charge', hours: 2 });
     unit.contentG = unit.fullG;
     const from = [{ cylinder: shop.cylinderFor(moment, unit.refrigerant, 200), massG: ounces(5.5) }];
@@ -151,7 +147,6 @@ function overshoot({ agenda, register, shop, field }: Workshop): void {
     if (!cylinder) throw new Error('no room for an overcharge');
     field.recover(out, { unit, jobId, kind: 'overchargeRemoved', into: [{ cylinder, massG }], isCompleted: false });
     unit.contentG = unit.fullG;
-    unit.lastVisit = 295;
   });
 }
 
@@ -163,23 +158,21 @@ function shortFilled({ agenda, shop }: Workshop): void {
 
 /** A wall unit whose plate nobody can read: what it ought to hold is not known, and nothing is made up. */
 function notLegible({ agenda, days, register, shop, field }: Workshop): void {
+  const unit = register.expect('T-1', 131);
   agenda.promise(131, HT.junia.id, 2, (moment) => {
-    const unit = register.require('T-1');
     register.takeOver(moment, unit, days.day(131));
     const from = [{ cylinder: shop.cylinderFor(moment, unit.refrigerant, 220), massG: ounces(6.2) }];
     const note = 'No make, no model, plate painted over. Charged by superheat until it ran well.';
     field.weighIn(laterBy(moment, 60), { unit, kind: 'adjust', from, answer: 'notKnown', note });
-    unit.lastVisit = 131;
   });
 }
 
 /** Called away in the middle; the end reading comes in the evening and belongs to the morning. */
 function weighedBackInTheEvening({ agenda, register, shop, field }: Workshop): void {
+  const unit = register.expect('A101', 63);
   agenda.promise(63, HT.junia.id, 3, (moment) => {
-    const unit = register.require('A101');
     const massG = ounces(4.4);
     unit.contentG = unit.fullG - massG;
-    unit.lastVisit = 63;
     const from = [{ cylinder: shop.cylinderFor(moment, unit.refrigerant, massG), massG }];
     const [{ cylinder } = { cylinder: shop.require('7712') }] = from;
     const groupId = field.openWeighIn(moment, { unit, kind: 'adjust', cylinder });
@@ -190,12 +183,11 @@ function weighedBackInTheEvening({ agenda, register, shop, field }: Workshop): v
 
 /** Nobody said whether it was full; the office asked the next day. */
 function answeredLater({ agenda, diary, register, shop, field }: Workshop): void {
+  const unit = register.expect('RT-1', 46);
   let groupId = '';
-  const unit = register.require('RT-1');
   agenda.promise(46, HT.pia.id, 1, (moment) => {
     const massG = ounces(21);
     unit.contentG = unit.fullG - massG;
-    unit.lastVisit = 46;
     groupId = field.weighIn(moment, { unit, kind: 'adjust', from: shop.supplyFor(moment, unit.refrigerant, massG) });
   });
   agenda.at(45, 9, HT.ilse.id, (moment) => {
@@ -210,12 +202,11 @@ function answeredLater({ agenda, diary, register, shop, field }: Workshop): void
  * lack what had gone into the unit.
  */
 function sentLate({ agenda, register, shop, field }: Workshop): void {
+  const unit = register.expect('A203', 22);
   let cylinder = shop.require('7712');
   agenda.promise(22, HT.junia.id, 1, (moment) => {
-    const unit = register.require('A203');
     const massG = ounces(9.3);
     unit.contentG = unit.fullG - massG;
-    unit.lastVisit = 22;
     cylinder = shop.cylinderFor(moment, unit.refrigerant, massG);
     const work = { unit, kind: 'adjust' as const, from: [{ cylinder, massG }], answer: 'full' as const };
     const note = 'No signal in the basement, then forgot the phone in the van.';
@@ -226,12 +217,11 @@ function sentLate({ agenda, register, shop, field }: Workshop): void {
 
 /** Entered for the apartment next door; the office withdraws it and enters the right one in its place. */
 function wrongUnit({ agenda, diary, register, shop, field }: Workshop): void {
-  const [wrong, right] = [register.require('A103'), register.require('A104')];
+  const [wrong, right] = [register.expect('A103', 13), register.expect('A104', 13)];
   let groupId = '';
   agenda.promise(13, HT.dov.id, 1, (moment) => {
     const massG = ounces(5.1);
     right.contentG = right.fullG;
-    for (const unit of [wrong, right]) unit.lastVisit = 13;
     const from = [{ cylinder: shop.cylinderFor(moment, wrong.refrigerant, massG), massG }];
     groupId = field.weighIn(moment, { unit: wrong, kind: 'adjust', from, answer: 'full' });
     wrong.contentG = wrong.fullG;

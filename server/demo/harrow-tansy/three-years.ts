@@ -2,7 +2,7 @@ import { transfer } from '../cylinder-moves.ts';
 import type { StockCylinder } from '../cylinder-plan.ts';
 import { gramsOf } from '../demo-scale.ts';
 import { laterBy, type Moment } from '../diary.ts';
-import { ServiceVisits, type VisitKind } from '../service-visits.ts';
+import { ENGLISH_TITLES, ServiceVisits, SPANISH_TITLES, type VisitKind } from '../service-visits.ts';
 import { CAREFUL_SHARE } from '../shop.ts';
 import type { FieldUnit } from '../unit-plan.ts';
 import type { Workshop } from '../workshop.ts';
@@ -20,7 +20,7 @@ const HEEL_G = 320;
 const RENTED_HEEL_SHARE = 0.08;
 /** The last ordinary visit; what came in since is told by `stories.ts`. */
 const LAST_VISIT = 2;
-const CALLS_A_DAY = 0.55;
+const CALLS_A_DAY = 0.48;
 const REST_BETWEEN_VISITS = 23;
 
 /** Racks leak as racks do: the first one above the law's threshold, and every few weeks. */
@@ -43,7 +43,6 @@ export function planRacks({ agenda, register, field, shop, draws }: Workshop): v
         const jobId = field.job(moment, { unit, kind: 'serviceWithLeak', title: 'Rack low on level', hours: 4 });
         const massG = gramsOf({ value: String(draws.whole(lb[0] * 10, lb[1] * 10) / 10), unit: 'lb' });
         unit.contentG = unit.fullG - massG;
-        unit.lastVisit = daysAgo;
         const on = laterBy(moment, 75);
         const from = shop.supplyFor(on, unit.refrigerant, massG);
         field.weighIn(on, { unit, jobId, kind: 'refill', from, answer: 'full' });
@@ -55,7 +54,8 @@ export function planRacks({ agenda, register, field, shop, draws }: Workshop): v
 /** What comes up from day to day: about one call in two working days. */
 export function planService({ agenda, draws, register, shop, field }: Workshop): void {
   const supervisorOf = (personId: string) => (personId === HT.teo.id ? HT.dov.id : null);
-  const service = new ServiceVisits({ draws, shop, field, supervisorOf });
+  const titlesOf = (personId: string) => (personId === HT.pia.id ? SPANISH_TITLES : ENGLISH_TITLES);
+  const service = new ServiceVisits({ draws, shop, field, supervisorOf, titlesOf });
   const crew = [HT.dov.id, HT.pia.id, HT.bram.id, HT.junia.id, HT.pia.id, HT.bram.id, HT.teo.id];
   const kinds: readonly [VisitKind, number][] = [
     ['top up', 12],
@@ -68,10 +68,11 @@ export function planService({ agenda, draws, register, shop, field }: Workshop):
     const [kind] = draws.pickWeighted(kinds, ([, weight]) => weight);
     agenda.visit(daysAgo, draws.pick(crew), kind === 'top up' ? 1 : 2, (moment) => {
       const rested = register.units.filter(
-        (unit) => unit.isThere && unit.trouble > 0 && unit.lastVisit - daysAgo >= REST_BETWEEN_VISITS,
+        ({ isThere, trouble, visits }) =>
+          isThere && trouble > 0 && visits.every((other) => Math.abs(other - daysAgo) >= REST_BETWEEN_VISITS),
       );
       const unit: FieldUnit = draws.pickWeighted(rested, ({ trouble }) => trouble);
-      unit.lastVisit = daysAgo;
+      unit.visits.push(daysAgo);
       service.visit(moment, unit, kind);
     });
   }

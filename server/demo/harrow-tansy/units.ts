@@ -59,8 +59,8 @@ const { nv09, nv12, tm18, tm24, br27, br36 } = MODELS;
 const flat = (number: number) => `Apartment ${number}`;
 
 const LANTERN_ROW: UnitPlan[] = [
-  ...[101, 102, 103, 104].map((number) => ductless('lanternA', `A${number}`, flat(number), nv09, takenOver, 1.6)),
-  ...[201, 202, 203, 204].map((number) => ductless('lanternA', `A${number}`, flat(number), tm18, takenOver, 1.3)),
+  ...[101, 102, 103, 104].map((number) => ductless('lanternA', `A${number}`, flat(number), nv09, takenOver, 1.2)),
+  ...[201, 202, 203, 204].map((number) => ductless('lanternA', `A${number}`, flat(number), tm18, takenOver, 1.1)),
   ductless('lanternB', 'B101', flat(101), nv09, installed(701, 'dov', [31]), 0.8),
   ductless('lanternB', 'B102', flat(102), nv09, installed(696, 'pia', [38]), 1.2),
   ductless('lanternB', 'B103', flat(103), nv09, installed(690, 'dov', [22]), 0.6),
