@@ -4,10 +4,11 @@ import pg from 'pg';
 import copyStreams from 'pg-copy-streams';
 import type { EntityManager } from 'typeorm';
 import type { EntryExportQuery } from '../../shared/entries/entry.schema.ts';
+import type { Conditions } from '../lists/list-query.ts';
 import { ENTRY_SORT, entriesFrom, entryConditions } from './entry-list.repository.ts';
 
 /** A cell that a spreadsheet would run as a formula is made plain text by an apostrophe before it. */
-const plain = (sql: string): string => `case when ${sql} ~ '^[=+@\\t\\r-]' then '''' || ${sql} else ${sql} end`;
+export const plain = (sql: string): string => `case when ${sql} ~ '^[=+@\\t\\r-]' then '''' || ${sql} else ${sql} end`;
 
 const place = (end: 'from' | 'to'): string =>
   `coalesce(${plain(`${end}_label.label`)}, e.${end}_place || coalesce(' (' || e.${end}_as || ')', ''))`;
@@ -20,7 +21,7 @@ const label = (end: 'from' | 'to'): string => `left join lateral (
     limit 1) ${end}_label on true`;
 
 /** Column names are words of the log, the same in every language: files are read by programs too. */
-const COLUMNS: readonly (readonly [name: string, sql: string])[] = [
+export const ENTRY_COLUMNS: readonly (readonly [name: string, sql: string])[] = [
   ['sequence', 'e.sequence'],
   ['occurredAt', `to_char(e.occurred_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`],
   ['recordedAt', `to_char(e.recorded_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`],
@@ -50,17 +51,19 @@ const COLUMNS: readonly (readonly [name: string, sql: string])[] = [
 ];
 
 /** COPY takes no values, so they are written into the statement, each quoted by the driver. */
+export const withValues = ({ sql, values }: Pick<Conditions, 'sql' | 'values'>): string =>
+  sql.replaceAll(/\$(\d+)/g, (_, index) => pg.escapeLiteral(String(values[Number(index) - 1])));
+
+/** The entries as `e`, with everything that the columns speak of. */
+export const ENTRIES_WITH_LABELS = `${entriesFrom('entry e')} ${label('from')} ${label('to')}
+    left join unit un on un.firm_id = e.firm_id and un.id = e.unit_id`;
+
 function statement(query: EntryExportQuery): string {
-  const conditions = entryConditions(query);
-  const where = conditions.sql.replaceAll(/\$(\d+)/g, (_, index) =>
-    pg.escapeLiteral(String(conditions.values[Number(index) - 1])),
-  );
+  const where = withValues(entryConditions(query));
   const { columns, direction } = ENTRY_SORT[query.sort];
   const order = columns.map(({ sql }) => `${sql} ${direction}`).join(', ');
-  const select = COLUMNS.map(([name, sql]) => `${sql} as "${name}"`).join(', ');
-  const from = `${entriesFrom('entry e')} ${label('from')} ${label('to')}
-    left join unit un on un.firm_id = e.firm_id and un.id = e.unit_id`;
-  return `copy (select ${select} from ${from} where ${where} order by ${order}) to stdout with (format csv, header)`;
+  const select = ENTRY_COLUMNS.map(([name, sql]) => `${sql} as "${name}"`).join(', ');
+  return `copy (select ${select} from ${ENTRIES_WITH_LABELS} where ${where} order by ${order}) to stdout with (format csv, header)`;
 }
 
 /** Streams the log as CSV straight from PostgreSQL, in constant memory, inside the caller's transaction. */

@@ -4,11 +4,11 @@ import type { AnswerRequest, EntryGroupRequest, GroupKind } from '../../shared/l
 import type { JudgedGroup, JudgedMass } from '../../shared/ledger/judged-group.ts';
 import type { Place } from '../../shared/ledger/place.ts';
 import { dayInZone, monthInZone } from '../../shared/units/calendar.ts';
-import { microgramsOfTyped } from '../../shared/units/mass.ts';
 import { saltText } from '../journal/canonical-text.ts';
-import { decimalOf } from '../journal/register-journal.ts';
+import { derivedRows } from './derived-rows.ts';
 import type { JudgedPosting, Posting } from './judge-posting.ts';
 import type { PostingFacts, RegulatoryPlace, StoredGroup } from './posting-facts.ts';
+import { documentRecord, placeRecord, readingRecord, statementRecord } from './record-parts.ts';
 
 export interface Author {
   personId: string;
@@ -175,7 +175,7 @@ class RecordWriter {
       replacesGroupId: request.replacesGroupId,
       answersGroupId: null,
       requestHash: request.requestHash,
-      readings: (body.readings ?? []).map((reading) => this.readingRecord(reading)),
+      readings: (body.readings ?? []).map((reading) => readingRecord(reading, this.facts.scales)),
       statements: (body.statements ?? []).map(statementRecord),
       documents: (body.documents ?? []).map(documentRecord),
       reason: body.reason ?? null,
@@ -264,40 +264,7 @@ class RecordWriter {
       zoneDataVersion: this.author.zoneDataVersion,
     };
   }
-
-  private readingRecord(reading: NonNullable<EntryGroupRequest['readings']>[number]): GroupRecord['readings'][number] {
-    const scale = reading.toolId ? this.facts.scales.get(reading.toolId) : undefined;
-    const { value, unit, hose } = reading;
-    return {
-      id: reading.id,
-      cylinderId: reading.cylinderId,
-      toolId: reading.toolId ?? null,
-      at: reading.at ? new Date(reading.at).toISOString() : null,
-      moment: reading.moment,
-      mode: reading.mode,
-      value,
-      unit,
-      massMicrograms: String(microgramsOfTyped({ value, unit })),
-      hoseFull: reading.hoseFull ?? null,
-      hose: hose ? { value: hose.value, unit: hose.unit } : null,
-      hoseMicrograms: hose ? String(microgramsOfTyped(hose)) : null,
-      scale: scale
-        ? {
-            resolutionG: decimalOf(scale.resolutionG),
-            repeatabilityG: decimalOf(scale.repeatabilityG),
-            spanErrorRelative: decimalOf(scale.spanErrorRelative),
-            offsetG: decimalOf(scale.offsetG),
-          }
-        : null,
-    };
-  }
 }
-
-const placeRecord = (place: Place): EntryRecord['from'] => ({
-  place: place.place,
-  id: 'id' in place ? place.id : null,
-  as: 'as' in place ? place.as : null,
-});
 
 /** What month close made of a cylinder's difference concerns no unit, whatever group the difference was found in. */
 const ofNoUnit = ({ judgedPlace, from, to }: AddedChange): boolean =>
@@ -313,52 +280,4 @@ function onlyUnit(entries: readonly EntryRecord[]): string | null {
   const ids = new Set(entries.flatMap(({ unitId }) => (unitId === null ? [] : [unitId])));
   const [only, ...others] = ids;
   return only !== undefined && others.length === 0 ? only : null;
-}
-
-const statementRecord = ({ about, id, is, by }: AnswerRequest['statement']): GroupRecord['statements'][number] => ({
-  about,
-  id,
-  is,
-  by: by ?? null,
-});
-
-function documentRecord(
-  document: NonNullable<EntryGroupRequest['documents']>[number],
-): GroupRecord['documents'][number] {
-  const { kind, number, date, refrigerant, mass } = document;
-  return {
-    kind,
-    number,
-    date,
-    refrigerant: refrigerant ?? null,
-    massMicrograms: mass ? String(microgramsOfTyped(mass)) : null,
-    typed: mass ? { value: mass.value, unit: mass.unit } : null,
-  };
-}
-
-function derivedRows(author: Author, recordId: string, judged: JudgedPosting): DerivedRows {
-  const at = author.now.toISOString();
-  return {
-    placeStates: judged.places.map(({ place, known, snapshot, lastOccurredAt }) => ({
-      place: place.place as 'cylinder' | 'unit',
-      id: (place as { id: string }).id,
-      known,
-      state: { ...snapshot },
-      lastOccurredAt: lastOccurredAt === null ? null : new Date(lastOccurredAt).toISOString(),
-    })),
-    flagsOpened: judged.flags.opened.map((flag) => ({
-      id: author.newId(),
-      code: flag.code,
-      subjectKind: flag.place.place as 'unit' | 'cylinder' | 'reclaimer',
-      subjectId: (flag.place as { id: string }).id,
-      groupId: flag.groupId,
-      openedByGroupId: recordId,
-      refrigerant: flag.refrigerant,
-      massMicrograms: flag.massMicrograms === null ? null : String(flag.massMicrograms),
-      figures: Object.fromEntries(Object.entries(flag.figures).map(([name, mass]) => [name, String(mass)])),
-      standing: flag.standing,
-      at: flag.openedAt ? new Date(flag.openedAt).toISOString() : at,
-    })),
-    flagsClosed: judged.flags.closed.map(({ id }) => ({ id, closedByGroupId: recordId, at })),
-  };
 }

@@ -8,7 +8,8 @@ import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
 import { LARGEST_MICROGRAMS, microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
 import { isStoredMassUnit, STORED_MASS_UNITS } from '../../shared/units/stored-mass.ts';
-import { bookAfter, bookBefore, type JudgedPosting, movedMasses, type Posting } from './judge-posting.ts';
+import { bookAfter, bookBefore, movedMasses } from './books-after.ts';
+import type { JudgedPosting, Posting } from './judge-posting.ts';
 import type { PostingFacts, StoredGroup } from './posting-facts.ts';
 
 /** A clock that is this far ahead is an ordinary clock. */

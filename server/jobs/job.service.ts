@@ -58,7 +58,11 @@ export function updateJob(
       find: (manager) => jobsRepository(manager).find(id),
       factsOf,
       changed: (row) => {
-        const closedAt = request.closedAt ? new Date(request.closedAt) : request.closedAt === null ? null : row.closedAt;
+        const closedAt = request.closedAt
+          ? new Date(request.closedAt)
+          : request.closedAt === null
+            ? null
+            : row.closedAt;
         if (closedAt !== null && closedAt < row.openedAt) {
           const figures = { given: closedAt.toISOString(), allowed: row.openedAt.toISOString() };
           throw problemOfRefusals([{ code: 'closedBeforeOpened', path: '/closedAt', ...figures }]);
