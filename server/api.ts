@@ -9,6 +9,7 @@ import type { Parts } from './http/parts.ts';
 import { jobRoutes } from './jobs/job.router.ts';
 import { partyRoutes } from './parties/party.router.ts';
 import { journalRoutes } from './proof/journal.router.ts';
+import { proofPackageRoutes } from './proof/package.router.ts';
 import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
 import { sealRoutes } from './seals/seal.router.ts';
 import { siteRoutes } from './sites/site.router.ts';
@@ -35,4 +36,5 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   referenceListRoutes,
   sealRoutes,
   journalRoutes,
+  proofPackageRoutes,
 ];

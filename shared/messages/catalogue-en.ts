@@ -1,5 +1,6 @@
 import calculations from './calculations.en.json';
 import charge from './charge.en.json';
+import periods from './periods.en.json';
 import proof from './proof.en.json';
 import registers from './registers.en.json';
 import server from './server.en.json';
@@ -12,6 +13,7 @@ export const catalogueEn: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
   ...proof,
+  ...periods,
   ...registers,
   ...server,
 };

@@ -1,5 +1,6 @@
 import calculations from './calculations.es.json';
 import charge from './charge.es.json';
+import periods from './periods.es.json';
 import proof from './proof.es.json';
 import registers from './registers.es.json';
 import server from './server.es.json';
@@ -9,6 +10,7 @@ export const catalogueEs: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
   ...proof,
+  ...periods,
   ...registers,
   ...server,
 };

@@ -34,6 +34,7 @@ const step = (at: number, fields: Partial<CylinderStep>): CylinderStep => {
     readings: [],
     masses: [],
     postedMicrograms: 0n,
+    opens: false,
     ...fields,
   };
 };
@@ -137,6 +138,13 @@ describe('The readings of a cylinder against its book', () => {
       previousAt: null,
       uncertainty: { standardG: expect.closeTo(2.0412, 3), notWeighed: 1 },
     });
+  });
+
+  it('open a book that nothing explained: that is no difference', () => {
+    const opening = step(0, { readings: [reading('only', 9_500, 0)], postedMicrograms: g(9_500), opens: true });
+    const { checks, bookMicrograms } = walkCylinder([opening], 0n);
+    expect(checks[0]).toMatchObject({ verdict: null, differenceMicrograms: g(9_500), postedMicrograms: g(9_500) });
+    expect(bookMicrograms).toBe(g(9_500));
   });
 
   it('never read less than nothing in a cylinder', () => {

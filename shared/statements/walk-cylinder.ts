@@ -43,6 +43,8 @@ export interface CylinderStep {
   readonly masses: readonly StepMass[];
   /** What the judge has posted for this group, corrections included; above zero: into the cylinder. */
   readonly postedMicrograms: bigint;
+  /** It was the first statement of what nothing explained: what was posted opens the book and is no difference. */
+  readonly opens: boolean;
 }
 
 /** What one gross reading says against the book of its moment. */
@@ -57,7 +59,8 @@ export interface ReadingCheck {
   /** How much of it the judge has posted, so that the book follows the reading. */
   readonly postedMicrograms: bigint;
   readonly uncertainty: DifferenceUncertainty;
-  readonly verdict: Verdict;
+  /** Null: the reading opens the book. */
+  readonly verdict: Verdict | null;
   /** The gross reading before it; null: none is known. The difference came about in between. */
   readonly previousAt: number | null;
   /** The reading that the book rested on; null: a paper. */
@@ -109,7 +112,7 @@ export function walkCylinder(
         differenceMicrograms: difference,
         postedMicrograms,
         uncertainty,
-        verdict: verdictOf(sizeG(difference), uncertainty.standardG),
+        verdict: step.opens ? null : verdictOf(sizeG(difference), uncertainty.standardG),
         previousAt,
         restsOnAt: start?.at ?? null,
       });
@@ -144,18 +147,22 @@ function postedAt(toPost: bigint, gap: bigint, reading: StepReading, isLast: boo
   return isBeyond(gap, grossVarianceG2(scale, reading.grossMicrograms)) ? gap : 0n;
 }
 
-/** As the judge orders them: what stands before the masses first. */
-function inOrder(step: CylinderStep): { reading: StepReading; isEarlier: boolean }[] {
+/** Whether a reading stands before the masses of its group, as the judge orders them. */
+export function standsBeforeMasses(
+  step: Pick<CylinderStep, 'masses'>,
+  { moment }: Pick<StepReading, 'moment'>,
+): boolean {
   const takes = step.masses.some(({ massMicrograms }) => massMicrograms < 0n);
   const brings = step.masses.some(({ massMicrograms }) => massMicrograms > 0n);
+  return moment === 'before' || (moment === 'only' && takes && !brings);
+}
+
+function inOrder(step: CylinderStep): { reading: StepReading; isEarlier: boolean }[] {
   const order = ['before', 'only', 'after'];
   return step.readings
     .filter(({ mode }) => mode === 'gross')
     .toSorted((a, b) => order.indexOf(a.moment) - order.indexOf(b.moment))
-    .map((reading) => ({
-      reading,
-      isEarlier: reading.moment === 'before' || (reading.moment === 'only' && takes && !brings),
-    }));
+    .map((reading) => ({ reading, isEarlier: standsBeforeMasses(step, reading) }));
 }
 
 /** Gross less tare; the hose counts where it was full before the masses. Never below nothing. */

@@ -1,0 +1,128 @@
+import type { EntityManager } from 'typeorm';
+import type { Scale } from '../../shared/ledger/scale.ts';
+import type { CylinderStep, StepReading } from '../../shared/statements/walk-cylinder.ts';
+
+/** How many groups before the period are looked through for what its book rests on. */
+const LOOK_BACK = 40;
+
+interface StepRow {
+  cylinderId: string;
+  groupId: string;
+  closesGroupId: string | null;
+  occurredAt: Date;
+  tare: string;
+  readings: {
+    id: string;
+    at: string;
+    toolId: string | null;
+    scale: Scale | null;
+    moment: StepReading['moment'];
+    mode: StepReading['mode'];
+    gross: string;
+    hose: string | null;
+  }[];
+  masses: { mass: string; weighed: boolean; scale: Scale | null }[];
+  posted: string;
+  opened: string;
+}
+
+const SCALE = (alias: string) => `case when ${alias}.resolution_g is not null then json_build_object(
+  'resolutionG', ${alias}.resolution_g, 'repeatabilityG', ${alias}.repeatability_g,
+  'spanErrorRelative', ${alias}.span_error_relative, 'offsetG', ${alias}.offset_g) end`;
+
+const SIGNED = (cylinder: string) =>
+  `case when e.to_id = ${cylinder} then e.mass_micrograms else -e.mass_micrograms end`;
+
+const ENTERED = (end: 'from' | 'to', when: string, rest = '') => `(select e.group_id from entry e
+  where e.firm_id = a.firm_id and e.${end}_id = a.id and not e.added_by_server and e.reverses_entry_id is null
+    and ${when} ${rest})`;
+
+const NEWEST_FIRST = `order by e.occurred_at desc, e.sequence desc limit ${LOOK_BACK}`;
+
+/** Groups of a period that touch some cylinders, and those shortly before it; nothing that was reversed. */
+const STEPS = `with asked as (select c.id, c.firm_id, x.since, x.until
+    from unnest($1::uuid[], $2::timestamptz[], $3::timestamptz[]) x(id, since, until) join cylinder c on c.id = x.id),
+  touching as (
+    select a.id as cylinder_id, a.until, t.group_id from asked a cross join lateral (
+      (select r.group_id from reading r where r.firm_id = a.firm_id and r.cylinder_id = a.id
+        and r.read_at >= a.since and r.read_at < a.until)
+      union ${ENTERED('to', 'e.occurred_at >= a.since and e.occurred_at < a.until')}
+      union ${ENTERED('from', 'e.occurred_at >= a.since and e.occurred_at < a.until')}
+      union (select r.group_id from reading r where r.firm_id = a.firm_id and r.cylinder_id = a.id and r.read_at < a.since
+        order by r.read_at desc, r.sequence desc limit ${LOOK_BACK})
+      union ${ENTERED('to', 'e.occurred_at < a.since', NEWEST_FIRST)}
+      union ${ENTERED('from', 'e.occurred_at < a.since', NEWEST_FIRST)}) t)
+  select t.cylinder_id as "cylinderId", g.id as "groupId", g.closes_group_id as "closesGroupId",
+    g.occurred_at as "occurredAt", w.tare::text, coalesce(n.readings, '[]') as readings,
+    coalesce(m.masses, '[]') as masses, p.posted::text, p.opened::text
+  from touching t
+  join entry_group g on g.id = t.group_id
+  cross join lateral (select x.mass_micrograms as tare from cylinder_tare x
+    where x.firm_id = g.firm_id and x.cylinder_id = t.cylinder_id
+    order by x.valid_from <= g.occurred_at desc,
+      case when x.valid_from <= g.occurred_at then g.occurred_at - x.valid_from else x.valid_from - g.occurred_at end
+    limit 1) w
+  cross join lateral (select json_agg(json_build_object('id', r.id, 'at', r.read_at, 'toolId', r.tool_id,
+      'scale', ${SCALE('r')}, 'moment', r.moment, 'mode', r.mode, 'gross', r.mass_micrograms::text,
+      'hose', case when r.hose_full then r.hose_micrograms::text end) order by r.read_at, r.id) as readings
+    from reading r where r.firm_id = g.firm_id and r.group_id = g.id and r.cylinder_id = t.cylinder_id) n
+  cross join lateral (select json_agg(json_build_object('mass', (${SIGNED('t.cylinder_id')})::text,
+      'weighed', e.how_known = 'weighed', 'scale', (select ${SCALE('o')} from reading o
+        where o.firm_id = e.firm_id and o.group_id = e.group_id
+          and o.cylinder_id = case when e.to_id = t.cylinder_id then e.from_id else e.to_id end limit 1))
+      order by e.sequence) as masses
+    from entry e where e.firm_id = g.firm_id and e.group_id = g.id and t.cylinder_id in (e.from_id, e.to_id)
+      and not e.added_by_server and e.reverses_entry_id is null) m
+  cross join lateral (select coalesce(sum(${SIGNED('t.cylinder_id')}), 0) as posted,
+      coalesce(sum(${SIGNED('t.cylinder_id')}) filter (where 'opening' in (e.from_place, e.to_place)), 0) as opened
+    from (
+      select x.* from entry x where x.firm_id = g.firm_id and x.group_id = g.id and x.corrects_group_id is null
+      union all select x.* from entry x where x.firm_id = g.firm_id and x.corrects_group_id = g.id) e
+    where e.added_by_server and t.cylinder_id in (e.from_id, e.to_id)) p
+  where g.reverses_group_id is null and g.occurred_at < t.until
+    and not exists (select from entry_group r where r.firm_id = g.firm_id and r.reverses_group_id = g.id)
+  order by t.cylinder_id, g.occurred_at, g.sequence`;
+
+export interface CylinderSpan {
+  cylinderId: string;
+  from: Date;
+  to: Date;
+}
+
+/** The timeline of some cylinders, each around its span: from shortly before `from` to before `to`. */
+export async function readCylinderSteps(
+  manager: EntityManager,
+  spans: readonly CylinderSpan[],
+): Promise<Map<string, CylinderStep[]>> {
+  const steps = new Map<string, CylinderStep[]>(spans.map(({ cylinderId }) => [cylinderId, []]));
+  if (spans.length === 0) return steps;
+  const rows = await manager.query<StepRow[]>(STEPS, [
+    spans.map(({ cylinderId }) => cylinderId),
+    spans.map(({ from }) => from),
+    spans.map(({ to }) => to),
+  ]);
+  for (const row of rows) steps.get(row.cylinderId)?.push(stepOf(row));
+  return steps;
+}
+
+function stepOf(row: StepRow): CylinderStep {
+  return {
+    groupId: row.groupId,
+    closesGroupId: row.closesGroupId,
+    occurredAt: row.occurredAt.getTime(),
+    tareMicrograms: BigInt(row.tare),
+    readings: row.readings.map(({ at, gross, hose, ...reading }) => ({
+      ...reading,
+      at: Date.parse(at),
+      grossMicrograms: BigInt(gross),
+      hoseMicrograms: BigInt(hose ?? 0),
+    })),
+    masses: row.masses.map(({ mass, weighed, scale }) => ({
+      massMicrograms: BigInt(mass),
+      weighed,
+      otherScale: scale,
+    })),
+    postedMicrograms: BigInt(row.posted),
+    opens: row.opened !== '0',
+  };
+}

@@ -1,0 +1,39 @@
+import { cylinderStatement, statementQuery } from '../../shared/statements/cylinder-statement.schema.ts';
+import { CSV_ANSWER, sendCsv } from '../books/csv-table.ts';
+import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
+import type { Parts } from '../http/parts.ts';
+import { getStatement, statementCsv } from './cylinder-statement.service.ts';
+
+export function statementRoutes(parts: Parts): ApiRoutes {
+  const routes = apiRoutes(parts, 'Cylinders');
+  routes.add(
+    {
+      method: 'get',
+      path: '/cylinders/{id}/statement',
+      summary: 'What a cylinder held, took in and gave out, against its scale readings',
+      description:
+        'By the time it happened, both days included. Each difference has its uncertainty by the very scales that were ' +
+        'read, readings that two weighings share left out, and names who held the cylinder between the two readings.',
+      access: 'records:read',
+      query: statementQuery,
+      responses: { 200: cylinderStatement },
+    },
+    async ({ actor, params, query }) => ok(await getStatement(parts, actor, params.id, query)),
+  );
+  routes.add(
+    {
+      method: 'get',
+      path: '/cylinders/{id}/statement.csv',
+      summary: 'The lines of a statement as CSV',
+      access: 'records:read',
+      query: statementQuery,
+      responses: { 200: CSV_ANSWER },
+    },
+    async ({ actor, params, query, res }) => {
+      const statement = await getStatement(parts, actor, params.id, query);
+      sendCsv(res, `statement-${statement.from}-${statement.to}.csv`, statementCsv(statement));
+      return undefined;
+    },
+  );
+  return routes;
+}
