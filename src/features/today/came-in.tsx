@@ -1,21 +1,33 @@
 import { useMemo } from 'react';
-import { Link, useNavigate } from 'react-router-dom';
+import { Link } from 'react-router-dom';
 import type { EntryRow } from '../../../shared/entries/entry.schema.ts';
 import { placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
+import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Nothing, Section } from './section.tsx';
+
+/** The newest few; the log has all. */
+const SHOWN = 15;
 
 /** What was posted since yesterday, newest first, as the log has it. */
 export function CameIn({ rows }: { rows: readonly EntryRow[] }) {
   const t = useMessages();
   const format = useFormat();
-  const navigate = useNavigate();
+  const phone = !useMedia('(width >= 48rem)');
   const columns = useMemo(
     (): LedgerColumn<EntryRow>[] => [
       { id: 'number', head: t('log.number'), quiet: true, cell: (row) => format.number(row.sequence) },
-      { id: 'when', head: t('log.when'), cell: (row) => format.dateTime(row.occurredAt, row.timeZone) },
+      ...(phone
+        ? []
+        : [
+            {
+              id: 'when',
+              head: t('log.when'),
+              cell: (row: EntryRow) => format.dateTime(row.occurredAt, row.timeZone),
+            },
+          ]),
       {
         id: 'mass',
         head: t('log.mass'),
@@ -28,14 +40,21 @@ export function CameIn({ rows }: { rows: readonly EntryRow[] }) {
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
+            <span className="block">
+              {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
+            </span>
+            {phone ? (
+              <span className="type-label block text-[0.875rem] text-ink-soft">
+                {format.dateTime(row.occurredAt, row.timeZone)}, {reasonWords(t, row)}
+              </span>
+            ) : null}
           </>
         ),
       },
-      { id: 'why', head: t('log.why'), cell: (row) => reasonWords(t, row) },
+      ...(phone ? [] : [{ id: 'why', head: t('log.why'), cell: (row: EntryRow) => reasonWords(t, row) }]),
       { id: 'who', head: t('log.who'), cell: (row) => row.recordedByName },
     ],
-    [t, format],
+    [t, format, phone],
   );
   return (
     <Section title={t('today.cameIn')} count={rows.length > 0 ? format.number(rows.length) : undefined}>
@@ -45,9 +64,9 @@ export function CameIn({ rows }: { rows: readonly EntryRow[] }) {
         <LedgerTable
           caption={t('today.cameIn')}
           columns={columns}
-          rows={rows}
+          rows={rows.slice(0, SHOWN)}
           rowId={(row) => row.id}
-          onOpen={(row) => void navigate(`/log/${row.groupId}`)}
+          to={(row) => `/log/${row.groupId}`}
           struck={(row) => row.reversedByGroupId !== null || row.reversesGroupId !== null}
         />
       )}

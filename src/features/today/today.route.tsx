@@ -60,8 +60,12 @@ export function Component() {
                   {data.toWeighBack.length > 0 ? <ToWeighBack weighIns={data.toWeighBack} at={at} ofEverybody /> : null}
                   <DueList due={data.due} />
                 </div>
-              ) : (
+              ) : mayPost ? (
                 <ToWeighBack weighIns={data.toWeighBack} at={at} />
+              ) : (
+                <ButtonLink className="self-start" to="/units">
+                  {t('today.readerUnits')}
+                </ButtonLink>
               )}
             </div>
             {isOffice ? <CameIn rows={data.cameIn} /> : null}

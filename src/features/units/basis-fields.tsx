@@ -27,6 +27,7 @@ export function RateFields() {
     <FormPart title={t('units.basis.rule')}>
       <FormQuantity kind="mass" name="factoryCharge" label={t('units.basis.factory')} {...MASS} example="1200 g" />
       <FormSelect
+        layout="stack"
         name="rateKind"
         label={t('units.basis.rateKind')}
         choices={RATE_KINDS.map((value) => ({ value, label: t(`units.basis.rateKind.${value}`) }))}
@@ -67,6 +68,7 @@ function Precharge() {
   return (
     <>
       <FormSelect
+        layout="stack"
         name="scope"
         label={t('units.basis.precharge')}
         choices={SCOPES.map((value) => ({ value, label: t(`units.basis.scopeName.${value}`) }))}
@@ -84,6 +86,7 @@ function Precharge() {
           />
           {scope === 'branch' ? null : (
             <FormSelect
+              layout="stack"
               name="allocation"
               label={t('units.basis.allocation')}
               placeholder={t('units.basis.allocation.none')}
@@ -156,7 +159,7 @@ function StepRows() {
 export function LimitFields() {
   const t = useMessages();
   return (
-    <FormPart title={t('units.basis.limits')}>
+    <FormPart title={t('units.basis.limitsHeading')}>
       <p className="text-[0.9375rem] text-ink-soft">{t('units.basis.limitsHint')}</p>
       {LIMIT_NAMES.map((name) => (
         <FormQuantity

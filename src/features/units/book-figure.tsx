@@ -25,7 +25,9 @@ export function BookFigure({ unit }: { unit: Unit }) {
       {book.known ? (
         <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">{format.mass(book.massG)}</p>
       ) : (
-        <p className="type-title pt-1 text-[1.75rem]">{t('units.figure.sum', { mass: format.mass(book.massG) })}</p>
+        <p className="type-title pt-1 text-[1.75rem]">
+          {book.massG === 0 ? t('units.figure.nothing') : t('units.figure.sum', { mass: format.mass(book.massG) })}
+        </p>
       )}
       {shortG > 0.5 ? (
         <p className="pt-1 font-[600]">{t('units.figure.short', { mass: format.mass(shortG) })}</p>
@@ -38,11 +40,13 @@ export function BookFigure({ unit }: { unit: Unit }) {
           {t('units.figure.other', { mass: format.mass(part.massG), refrigerant: part.refrigerant })}
         </p>
       ))}
-      <Beam
-        spec={unitBeam({ book: bookPart, lost, fullCharge: full }, beamUnit)}
-        summary={`${[bookPart, ...(lost ? [lost] : []), ...(full ? [full] : [])].map((part) => part.label).join(', ')}.`}
-        className="pt-3"
-      />
+      {book.known || fullCharge || book.massG > 0 ? (
+        <Beam
+          spec={unitBeam({ book: bookPart, lost, fullCharge: full }, beamUnit)}
+          summary={`${[bookPart, ...(lost ? [lost] : []), ...(full ? [full] : [])].map((part) => part.label).join(', ')}.`}
+          className="pt-3"
+        />
+      ) : null}
     </div>
   );
 }

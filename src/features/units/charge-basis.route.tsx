@@ -62,7 +62,7 @@ export function Component() {
     >
       <div className="page-gutter max-w-2xl pt-4">
         <RequestForm id="charge-basis" form={form} onSubmit={(event) => void send(event)}>
-          <FormPart title={t('units.basis.manual')}>
+          <FormPart title={t('units.basis.manualHeading')}>
             <FormText name="document" label={t('units.basis.document')} maxLength={160} autoComplete="off" />
             <FormText
               name="page"
@@ -76,7 +76,7 @@ export function Component() {
           <LimitFields />
           <ManualRuleFields />
           <FormPart title={t('units.form.more')}>
-            <FormText type="datetime-local" name="validFrom" label={t('units.since')} />
+            <FormText layout="stack" type="datetime-local" name="validFrom" label={t('units.since')} />
             <FormText name="note" label={t('units.note')} hint={t('units.form.optional')} maxLength={500} />
           </FormPart>
         </RequestForm>

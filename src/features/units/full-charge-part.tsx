@@ -15,7 +15,7 @@ export function FullChargePart({ unit, mayWrite }: { unit: Unit; mayWrite: boole
   const earlier = (history.data ?? []).filter((one) => one.id !== now?.id);
   return (
     <Part
-      title={t('units.fullCharge')}
+      title={t('units.fullCharge.heading')}
       action={
         mayWrite ? (
           <Link to={`/units/${unit.id}/full-charge`} className="inline-flex min-h-12 items-end">

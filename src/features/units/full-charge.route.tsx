@@ -102,7 +102,7 @@ export function Component() {
             label={t('units.form.method')}
             choices={FULL_CHARGE_METHODS.map((value) => ({ value, label: t(`units.method.${value}`) }))}
           />
-          <FormText type="datetime-local" name="validFrom" label={t('units.fullCharge.validFrom')} />
+          <FormText layout="stack" type="datetime-local" name="validFrom" label={t('units.fullCharge.validFrom')} />
           <FormText
             name="reason"
             label={t('units.fullCharge.reason')}

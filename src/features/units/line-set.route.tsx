@@ -72,7 +72,7 @@ export function Component() {
         <RequestForm id="line-set" form={form} onSubmit={(event) => void send(event)}>
           <Branches />
           <FormPart title={t('units.form.more')}>
-            <FormText type="datetime-local" name="validFrom" label={t('units.lineSet.installed')} />
+            <FormText layout="stack" type="datetime-local" name="validFrom" label={t('units.lineSet.installed')} />
             <FormText name="note" label={t('units.note')} hint={t('units.form.optional')} maxLength={500} />
           </FormPart>
         </RequestForm>

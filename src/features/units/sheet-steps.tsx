@@ -42,4 +42,6 @@ const asWritten = (expression: string, separator: string) =>
   expression
     .replace(/(\d)\.(\d)/g, `$1${separator}$2`)
     .replace(/ x /g, ' × ')
-    .replace(/ - /g, ' \u2212 ');
+    .replace(/ - /g, ' \u2212 ')
+    .replace(/\bmm2\b/g, 'mm²')
+    .replace(/\bkg\/m3\b/g, 'kg/m³');

@@ -6,6 +6,7 @@ import { entryQueries } from '../../api/entries.ts';
 import { rowsOf } from '../../api/page.ts';
 import { placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
+import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Failed } from '../../ui/notice.tsx';
@@ -17,12 +18,21 @@ const SHOWN = 20;
 export function UnitLog({ unitId }: { unitId: string }) {
   const t = useMessages();
   const format = useFormat();
+  const phone = !useMedia('(width >= 48rem)');
   const list = useInfiniteQuery(entryQueries.list({ unitId }, SHOWN));
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
   const columns = useMemo(
     (): LedgerColumn<EntryRow>[] => [
       { id: 'number', head: t('log.number'), quiet: true, cell: (row) => format.number(row.sequence) },
-      { id: 'when', head: t('log.when'), cell: (row) => format.dateTime(row.occurredAt, row.timeZone) },
+      ...(phone
+        ? []
+        : [
+            {
+              id: 'when',
+              head: t('log.when'),
+              cell: (row: EntryRow) => format.dateTime(row.occurredAt, row.timeZone),
+            },
+          ]),
       {
         id: 'mass',
         head: t('log.mass'),
@@ -35,13 +45,20 @@ export function UnitLog({ unitId }: { unitId: string }) {
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
+            <span className="block">
+              {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
+            </span>
+            {phone ? (
+              <span className="type-label block text-[0.875rem] text-ink-soft">
+                {format.dateTime(row.occurredAt, row.timeZone)}, {reasonWords(t, row)}
+              </span>
+            ) : null}
           </>
         ),
       },
-      { id: 'why', head: t('log.why'), cell: (row) => reasonWords(t, row) },
+      ...(phone ? [] : [{ id: 'why', head: t('log.why'), cell: (row: EntryRow) => reasonWords(t, row) }]),
     ],
-    [t, format],
+    [t, format, phone],
   );
   return (
     <Part

@@ -134,7 +134,7 @@ function ChargeFields() {
       />
       <FormChoice
         name="fullChargeKnown"
-        label={t('units.fullCharge')}
+        label={t('units.fullCharge.heading')}
         choices={[
           { value: 'yes', label: t('units.form.fullCharge.known') },
           { value: 'no', label: t('units.form.fullCharge.notDetermined') },

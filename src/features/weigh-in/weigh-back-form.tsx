@@ -111,11 +111,9 @@ function Form({ group, open }: { group: GroupView; open: OpenStart }) {
   const startG = group.readings[0]?.massG ?? 0;
   const labels = {
     start: t('weighIn.beam.start', { mass: show(startG) }),
-    now: t('weighIn.beam.now', { mass: format.mass(seen) }),
+    now: t('weighIn.beam.now', { mass: show(seen) }),
     stop:
-      stop?.scaleG == null
-        ? ''
-        : t('weighIn.beam.stop', { mass: show(stop.scaleG), tolerance: format.number(stop.toleranceG, 0) }),
+      stop?.scaleG == null ? '' : t('weighIn.beam.stop', { mass: show(stop.scaleG), tolerance: show(stop.toleranceG) }),
   };
   const needs = needed();
 

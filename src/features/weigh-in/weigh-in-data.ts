@@ -16,6 +16,8 @@ import type { Purpose, WeighIn, WeighInStart } from './weigh-in-state.ts';
 export interface WeighInData {
   unit: Unit;
   sheet: ChargeSheet | null;
+  /** Chosen on the charge screen already. */
+  preferredCylinderId: string | null;
   /** Null while they are on their way. */
   cylinders: readonly Cylinder[] | null;
   scales: readonly Tool[] | null;
@@ -35,7 +37,11 @@ export function useWeighInData(): WeighInData {
 }
 
 /** Cylinders and scales of the firm, with what the arithmetic asks of them. */
-export function useLoadedData(unit: Unit, sheet: ChargeSheet | null): WeighInData {
+export function useLoadedData(
+  unit: Unit,
+  sheet: ChargeSheet | null,
+  preferredCylinderId: string | null = null,
+): WeighInData {
   const session = useSession();
   const cylinders = useQuery(cylinderQueries.choice());
   const scales = useQuery(toolQueries.choice('scale'));
@@ -46,6 +52,7 @@ export function useLoadedData(unit: Unit, sheet: ChargeSheet | null): WeighInDat
     return {
       unit,
       sheet,
+      preferredCylinderId,
       cylinders: all,
       scales: known,
       failed: failing ? { error: failing.error, retry: () => void failing.refetch() } : null,
@@ -53,7 +60,7 @@ export function useLoadedData(unit: Unit, sheet: ChargeSheet | null): WeighInDat
       scaleOf: (toolId) => known?.find((tool) => tool.id === toolId)?.scale ?? ASSUMED_SCALE,
       cylinderOf: (cylinderId) => all?.find((cylinder) => cylinder.id === cylinderId) ?? null,
     };
-  }, [unit, sheet, cylinders.data, scales.data, failing, session]);
+  }, [unit, sheet, preferredCylinderId, cylinders.data, scales.data, failing, session]);
 }
 
 /** What a charge sheet asks for; null where there is nothing to weigh in. */

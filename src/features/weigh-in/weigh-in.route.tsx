@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
-import { Link, type LoaderFunctionArgs, useLoaderData, useParams } from 'react-router-dom';
+import { Link, type LoaderFunctionArgs, useLoaderData, useParams, useSearchParams } from 'react-router-dom';
 import { chargeSheetQueries } from '../../api/charge-sheets.ts';
 import { queryClient } from '../../api/query-client.ts';
 import { requireSession } from '../../api/session.ts';
@@ -42,7 +42,8 @@ export function Component() {
   const loaded = useLoaderData<typeof loader>();
   const { unitId = '' } = useParams();
   const unit = useQuery({ ...unitQueries.one(unitId), initialData: loaded.unit }).data;
-  const data = useLoadedData(unit, loaded.sheet);
+  const [search] = useSearchParams();
+  const data = useLoadedData(unit, loaded.sheet, search.get('cylinder'));
   const asked = useMemo(() => (loaded.sheet ? purposeOfSheet(loaded.sheet) : null), [loaded.sheet]);
   const nothing = loaded.sheet !== null && asked === null;
   return (

@@ -1,5 +1,4 @@
 import { useId, useRef, useState } from 'react';
-import { type Formats, useFormat } from '../../../lib/format.ts';
 import { deviceNow } from '../../../lib/local-time.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
@@ -24,7 +23,6 @@ export function ChargingStep({ weighIn, dispatch }: StepProps) {
 
 function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
   const t = useMessages();
-  const format = useFormat();
   const { locale } = usePreferences();
   const id = useId();
   const { unit, cylinderOf, scaleOf } = useWeighInData();
@@ -40,7 +38,7 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
     setAsked(true);
     if (fault === null) dispatch({ type: 'end', at: deviceNow().toISOString(), change });
   };
-  const { spec, summary } = beamOf(leg, stop, progress, { show, format, t });
+  const { spec, summary } = beamOf(leg, stop, progress, { show, t });
   return (
     <StepPage
       weighIn={weighIn}
@@ -73,7 +71,7 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
       </div>
       <Beam spec={spec} summary={summary} />
       {progress?.state === 'past' ? (
-        <WhatToDo progress={progress} />
+        <WhatToDo mass={show(-(progress.toGoG ?? 0))} />
       ) : (
         <Cautions refrigerant={unit.refrigerant} at="charging" />
       )}
@@ -117,29 +115,26 @@ function HowFar({
   show: (massG: number) => string;
 }) {
   const t = useMessages();
-  const format = useFormat();
   const look = 'text-[1.25rem] leading-tight font-[640] text-move';
   if (!stop || stop.scaleG === null) {
-    return <p className={look}>{t('weighIn.charging.gone', { mass: format.mass(progress?.droppedG ?? 0) })}</p>;
+    return <p className={look}>{t('weighIn.charging.gone', { mass: show(progress?.droppedG ?? 0) })}</p>;
   }
   const at = show(stop.scaleG);
   const toGoG = progress?.toGoG ?? stop.dropG;
   if (progress?.state === 'past') {
     return (
       <p role="alert" className={look}>
-        {t('weighIn.charging.past', { mass: format.mass(-toGoG), stop: at })}
+        {t('weighIn.charging.past', { mass: show(-toGoG), stop: at })}
       </p>
     );
   }
   if (progress?.state === 'reached') return <p className={look}>{t('weighIn.charging.reached', { stop: at })}</p>;
-  return <p className={look}>{t('weighIn.charging.toGo', { mass: format.mass(toGoG), stop: at })}</p>;
+  return <p className={look}>{t('weighIn.charging.toGo', { mass: show(toGoG), stop: at })}</p>;
 }
 
 /** Past the stop: what goes too far is closed, read, posted as it is, and then taken back. */
-function WhatToDo({ progress }: { progress: Progress }) {
+function WhatToDo({ mass }: { mass: string }) {
   const t = useMessages();
-  const format = useFormat();
-  const mass = format.mass(-(progress.toGoG ?? 0));
   return (
     <ol className="list-decimal border-l-4 border-ink py-1 pl-8 text-[1rem] leading-snug">
       <li>{t('weighIn.overshoot.close')}</li>
@@ -179,19 +174,19 @@ function beamOf(
   leg: Leg,
   stop: Stop | null,
   progress: Progress | null,
-  { show, format, t }: { show: (massG: number) => string; format: Formats; t: Translate },
+  { show, t }: { show: (massG: number) => string; t: Translate },
 ) {
   const startG = leg.mode === 'zeroed' ? 0 : Number(microgramsOf(leg.start) ?? 0n) / 1e6;
   const droppedG = progress?.droppedG ?? 0;
   const labels = {
     start: t('weighIn.beam.start', { mass: show(startG) }),
-    now: t('weighIn.beam.now', { mass: format.mass(droppedG) }),
+    now: t('weighIn.beam.now', { mass: show(droppedG) }),
     stop:
       stop?.scaleG == null
         ? ''
         : t('weighIn.beam.stop', {
             mass: show(stop.scaleG),
-            tolerance: format.number(stop.toleranceG, stop.toleranceG < 1 ? 1 : 0),
+            tolerance: show(stop.toleranceG),
           }),
   };
   const spec = chargingBeam({ startG, droppedG, stop, labels, unit: leg.now.unit });

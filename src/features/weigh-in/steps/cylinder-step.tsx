@@ -21,7 +21,7 @@ import { useWeighInData } from '../weigh-in-data.ts';
 export function CylinderStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
   const format = useFormat();
-  const { unit, cylinders, failed, myId } = useWeighInData();
+  const { unit, cylinders, failed, myId, preferredCylinderId } = useWeighInData();
   const used = useMemo(
     () => new Set((weighIn.adding ? weighIn.legs : weighIn.legs.slice(0, -1)).map((leg) => leg.cylinderId)),
     [weighIn],
@@ -39,10 +39,12 @@ export function CylinderStep({ weighIn, dispatch }: StepProps) {
     [cylinders, used, unit.refrigerant, wantedG, myId],
   );
   const fitting = judged.filter((one) => one.stopper === null);
-  const onVan = fitting.filter((one) => one.onVan);
-  const elsewhere = fitting.filter((one) => !one.onVan);
+  // What was chosen on the charge screen stands first, marked; it is still a question.
+  const first = (one: JudgedCylinder) => Number(one.cylinder.id === preferredCylinderId);
+  const onVan = fitting.filter((one) => one.onVan).sort((a, b) => first(b) - first(a));
+  const elsewhere = fitting.filter((one) => !one.onVan).sort((a, b) => first(b) - first(a));
   const stopped = judged.filter((one) => one.stopper !== null && (one.onVan || one.stopper !== 'otherRefrigerant'));
-  const current = weighIn.adding ? null : (weighIn.legs.at(-1)?.cylinderId ?? null);
+  const current = weighIn.adding ? null : (weighIn.legs.at(-1)?.cylinderId ?? preferredCylinderId);
   const choose = (one: JudgedCylinder) =>
     dispatch({ type: 'cylinder', cylinderId: one.cylinder.id, ids: newLegIds(), habits: readHabits() });
   const row = (one: JudgedCylinder) => (

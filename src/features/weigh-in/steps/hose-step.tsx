@@ -42,7 +42,8 @@ export function HoseStep({ weighIn, dispatch }: StepProps) {
   const reading = readQuantity('mass', content, { locale });
   const counts = reading.is === 'read' && reading.base >= LEAST_HOSE_G;
   const goOn = (hose: TypedMass | null) => {
-    keepHabits({ hose: { full, content: hose } });
+    // A second cylinder's hose is a fresh connection: it is no habit.
+    keepHabits({ hose: { full: weighIn.legs.length > 1 ? readHabits().hose.full : full, content: hose } });
     dispatch({ type: 'hose', hose: { full, content: hose } });
   };
   return (
