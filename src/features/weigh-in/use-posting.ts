@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useRef, useState } from 'react';
 import type { EntryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
 import type { EntryGroupResponse } from '../../../shared/ledger/entry-group-response.schema.ts';
 import { usePostGroup } from '../../api/entries.ts';
@@ -22,6 +22,7 @@ export function usePosting(unitId: string) {
   const t = useMessages();
   const post = usePostGroup();
   const setFullCharge = useAddFullCharge(unitId);
+  const sending = useRef(false);
   const [busy, setBusy] = useState(false);
   const [fault, setFault] = useState<PostingFault | null>(null);
 
@@ -29,6 +30,8 @@ export function usePosting(unitId: string) {
     groups: readonly EntryGroupRequest[],
     fullCharge: FullChargeToSet | null,
   ): Promise<EntryGroupResponse[] | null> {
+    if (sending.current) return null;
+    sending.current = true;
     setBusy(true);
     setFault(null);
     try {
@@ -44,6 +47,7 @@ export function usePosting(unitId: string) {
       setFault(faultOf(error));
       return null;
     } finally {
+      sending.current = false;
       setBusy(false);
     }
   }

@@ -26,6 +26,12 @@ export function useWeighIn(unitId: string, sheet: WeighInStart['sheet'], sheetId
   return useMemo(() => ({ weighIn, dispatch, startOver, forget }), [weighIn, dispatch, startOver, forget]);
 }
 
+/** What is typed in a step before it is handed on: it lies beside the weigh-in, and a reload finds it again. */
+export function useStepDraft<T>(weighIn: WeighIn, name: string, initial: () => T) {
+  const [value, change] = useDraft<T>(`weigh-in.${weighIn.ids.main}.${name}.${weighIn.legs.length}`, initial);
+  return [value, change] as const;
+}
+
 export interface StepProps {
   weighIn: WeighIn;
   dispatch: (action: Action) => void;

@@ -19,7 +19,7 @@ import { QuantityInput } from '../../../ui/quantity-input.tsx';
 import { keepHabits, readHabits } from '../habits.ts';
 import { hoseContentG, loadSaturation, type Phase } from '../refrigerant-facts.ts';
 import { StepPage } from '../step-page.tsx';
-import type { StepProps } from '../use-weigh-in.ts';
+import { type StepProps, useStepDraft } from '../use-weigh-in.ts';
 import { useWeighInData } from '../weigh-in-data.ts';
 
 /** Nobody charges against a scale by more than a few metres of hose. */
@@ -32,8 +32,8 @@ export function HoseStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
   const { locale, mass } = usePreferences();
   const leg = weighIn.legs.at(-1);
-  const [full, setFull] = useState(leg?.hose.full ?? true);
-  const [content, setContent] = useState<QuantityDraft<'mass'>>(() =>
+  const [full, setFull] = useStepDraft(weighIn, 'hose-full', () => leg?.hose.full ?? true);
+  const [content, setContent] = useStepDraft<QuantityDraft<'mass'>>(weighIn, 'hose-content', () =>
     leg?.hose.content
       ? quantityOfTyped('mass', leg.hose.content, locale)
       : emptyQuantity(mass === 'oz' || mass === 'lbOz' ? 'oz' : 'g'),

@@ -6,13 +6,13 @@ import { Button } from '../../../ui/button.tsx';
 import { emptyQuantity, type QuantityDraft, quantityOfTyped, readQuantity } from '../../../ui/quantity-draft.ts';
 import { QuantityInput } from '../../../ui/quantity-input.tsx';
 import { StepPage } from '../step-page.tsx';
-import type { StepProps } from '../use-weigh-in.ts';
+import { type StepProps, useStepDraft } from '../use-weigh-in.ts';
 
 /** How much, where no sheet says it. Nothing typed: there is no stop, only what has gone in. */
 export function TargetStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
   const { locale, mass } = usePreferences();
-  const [draft, setDraft] = useState<QuantityDraft<'mass'>>(() =>
+  const [draft, setDraft] = useStepDraft<QuantityDraft<'mass'>>(weighIn, 'target', () =>
     weighIn.target ? quantityOfTyped('mass', weighIn.target, locale) : emptyQuantity(mass === 'lbOz' ? 'oz' : mass),
   );
   const [asked, setAsked] = useState(false);

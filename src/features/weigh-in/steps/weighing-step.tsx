@@ -1,4 +1,3 @@
-import { useState } from 'react';
 import type { Tool } from '../../../../shared/tools/tools.schema.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
@@ -8,7 +7,7 @@ import { Failed, RowsSkeleton } from '../../../ui/notice.tsx';
 import { keepHabits } from '../habits.ts';
 import { READING_UNITS, type ReadingUnit } from '../scale-reading.ts';
 import { StepPage } from '../step-page.tsx';
-import type { StepProps } from '../use-weigh-in.ts';
+import { type StepProps, useStepDraft } from '../use-weigh-in.ts';
 import { useWeighInData } from '../weigh-in-data.ts';
 import type { Mode } from '../weigh-in-state.ts';
 
@@ -17,9 +16,9 @@ export function WeighingStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
   const { scales, failed } = useWeighInData();
   const leg = weighIn.legs.at(-1);
-  const [toolId, setToolId] = useState(leg?.toolId ?? null);
-  const [mode, setMode] = useState<Mode>(leg?.mode ?? 'gross');
-  const [unit, setUnit] = useState<ReadingUnit>(leg?.unit ?? 'g');
+  const [toolId, setToolId] = useStepDraft<string | null>(weighIn, 'tool', () => leg?.toolId ?? null);
+  const [mode, setMode] = useStepDraft<Mode>(weighIn, 'mode', () => leg?.mode ?? 'gross');
+  const [unit, setUnit] = useStepDraft<ReadingUnit>(weighIn, 'unit', () => leg?.unit ?? 'g');
   const goOn = () => {
     const known = scales?.some((scale) => scale.id === toolId) ? toolId : null;
     keepHabits({ toolId: known, mode, unit });
