@@ -6,6 +6,8 @@ import { v7 as uuidV7 } from 'uuid';
 import { version } from '../package.json';
 import { createApp } from './app.ts';
 import { createDataSource } from './database/data-source.ts';
+import { writeDocument } from './documents/write-document.ts';
+import { startExportWorker } from './exports/export-worker.ts';
 import { backgroundWork } from './http/background-work.ts';
 import { isLoopbackName } from './http/loopback.ts';
 import type { Parts } from './http/parts.ts';
@@ -75,6 +77,7 @@ export async function startServer({ settings, databaseUrls, clientFolder }: Star
 
   const server = createServer(createApp(parts));
   await listen(server, settings.port, settings.host);
+  const exports = await startExportWorker({ parts, jobsUrl: databaseUrls.jobs, writeDocument });
   const cleaning = setInterval(() => {
     parts.background.run('remove what has expired', () => removeExpiredSignIns(parts));
   }, CLEAN_UP_EVERY_MS);
@@ -90,6 +93,7 @@ export async function startServer({ settings, databaseUrls, clientFolder }: Star
       clearInterval(cleaning);
       clearInterval(sealing);
       await closeGently(server);
+      await exports.stop();
       await parts.background.settled();
       await mailer.close();
       await catcher?.close();

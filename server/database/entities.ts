@@ -11,6 +11,7 @@ import { EntryGroupEntity } from '../entries/entry-group.entity.ts';
 import { GroupDocumentEntity } from '../entries/group-document.entity.ts';
 import { ReadingEntity } from '../entries/reading.entity.ts';
 import { StatementEntity } from '../entries/statement.entity.ts';
+import { ExportEntity } from '../exports/export.entity.ts';
 import { FirmEntity } from '../firm/firm.entity.ts';
 import { FlagEntity } from '../flags/flag.entity.ts';
 import { InvitationEntity } from '../invitations/invitation.entity.ts';
@@ -87,4 +88,5 @@ export const ENTITIES = [
   CarriedItemEntity,
   CylinderHolderEntity,
   PurchasePriceEntity,
+  ExportEntity,
 ];

@@ -1,5 +1,6 @@
 import 'reflect-metadata';
 import { DataSource } from 'typeorm';
+import { prepareExportQueue } from '../exports/export-queue.ts';
 import { MIGRATIONS } from './migrations.ts';
 
 /**
@@ -23,6 +24,7 @@ export async function migrate({ ownerUrl }: { ownerUrl: string }): Promise<strin
     await lock.query(`select pg_advisory_lock(hashtextextended('tarewright migrate', 0))`);
     try {
       const ran = await dataSource.runMigrations({ transaction: 'each' });
+      await prepareExportQueue({ ownerUrl });
       return ran.map((migration) => migration.name);
     } finally {
       await lock.query(`select pg_advisory_unlock(hashtextextended('tarewright migrate', 0))`);

@@ -1,5 +1,7 @@
 import calculations from './calculations.en.json';
 import charge from './charge.en.json';
+import documents from './documents.en.json';
+import exports from './exports.en.json';
 import periods from './periods.en.json';
 import proof from './proof.en.json';
 import registers from './registers.en.json';
@@ -12,6 +14,8 @@ import server from './server.en.json';
 export const catalogueEn: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
+  ...documents,
+  ...exports,
   ...proof,
   ...periods,
   ...registers,

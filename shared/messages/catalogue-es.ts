@@ -1,5 +1,7 @@
 import calculations from './calculations.es.json';
 import charge from './charge.es.json';
+import documents from './documents.es.json';
+import exports from './exports.es.json';
 import periods from './periods.es.json';
 import proof from './proof.es.json';
 import registers from './registers.es.json';
@@ -9,6 +11,8 @@ import server from './server.es.json';
 export const catalogueEs: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
+  ...documents,
+  ...exports,
   ...proof,
   ...periods,
   ...registers,

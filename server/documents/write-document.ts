@@ -1,0 +1,3 @@
+import type { WriteDocument } from '../exports/run-export.ts';
+
+export const writeDocument: WriteDocument = async () => null;

@@ -1,0 +1,44 @@
+import type { CreateExportRequest, ExportTable } from '../../../shared/exports/export.schema.ts';
+import { plain, withValues } from '../../entries/entry-csv.ts';
+import type { Conditions } from '../../lists/list-query.ts';
+
+/** How a spreadsheet takes a cell; CSV takes the text as it is. */
+export type CellKind = 'text' | 'number' | 'boolean' | 'instant' | 'day';
+/** `sql` of a text that a person may have typed goes through `typed`. */
+export type Column = readonly [name: string, sql: string, kind?: CellKind];
+
+/** The rows of one table as filtered. Column names are the same in every language: files are read by programs too. */
+export interface TableRows {
+  columns: readonly Column[];
+  from: string;
+  /** Where `from` has to be joined only to show something: enough to count by. */
+  countFrom?: string;
+  conditions: Conditions;
+  order: string;
+}
+export type TableOf<W extends ExportTable> = (
+  filters: Extract<CreateExportRequest, { what: W }>['filters'],
+) => TableRows;
+
+/** What a person typed, defused where a spreadsheet would run it as a formula. */
+export const typed = (name: string, sql: string): Column => [name, plain(sql), 'text'];
+export const instant = (name: string, sql: string): Column => [
+  name,
+  `to_char(${sql} at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`,
+  'instant',
+];
+export const grams = (name: string, sql: string): Column => [name, `trim_scale(${sql} / 1e6::numeric)`, 'number'];
+
+/** `-tag` is `tag desc`: `columns` are what the name stands for. */
+export function orderOf(sort: string, columns: readonly string[]): string {
+  return columns.map((column) => `${column} ${sort.startsWith('-') ? 'desc' : 'asc'}`).join(', ');
+}
+
+export function selectOf({ columns, from, conditions, order }: TableRows): string {
+  const select = columns.map(([name, sql]) => `${sql} as "${name}"`).join(', ');
+  return `select ${select} from ${from} where ${withValues(conditions)} order by ${order}`;
+}
+
+export const countOf = ({ from, countFrom, conditions }: TableRows, atMost?: number): string =>
+  `select count(*) as count from (select from ${countFrom ?? from} where ${withValues(conditions)}
+     ${atMost === undefined ? '' : `limit ${atMost}`}) counted`;
