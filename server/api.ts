@@ -3,6 +3,7 @@ import { customerRoutes } from './customers/customer.router.ts';
 import { cylinderRoutes } from './cylinders/cylinder.router.ts';
 import { entryRoutes } from './entries/entry.router.ts';
 import { entryGroupRoutes } from './entries/entry-group.router.ts';
+import { exportRoutes } from './exports/export.router.ts';
 import { flagRoutes } from './flags/flag.router.ts';
 import type { ApiRoutes } from './http/api-routes.ts';
 import type { Parts } from './http/parts.ts';
@@ -31,6 +32,7 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   entryGroupRoutes,
   entryRoutes,
   flagRoutes,
+  exportRoutes,
   statementRoutes,
   todayRoutes,
   referenceListRoutes,
