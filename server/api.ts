@@ -3,6 +3,7 @@ import { customerRoutes } from './customers/customer.router.ts';
 import { cylinderRoutes } from './cylinders/cylinder.router.ts';
 import { entryRoutes } from './entries/entry.router.ts';
 import { entryGroupRoutes } from './entries/entry-group.router.ts';
+import { entryPreviewRoutes } from './entry-previews/entry-preview.router.ts';
 import { exportRoutes } from './exports/export.router.ts';
 import { flagRoutes } from './flags/flag.router.ts';
 import type { ApiRoutes } from './http/api-routes.ts';
@@ -12,6 +13,7 @@ import { partyRoutes } from './parties/party.router.ts';
 import { journalRoutes } from './proof/journal.router.ts';
 import { proofPackageRoutes } from './proof/package.router.ts';
 import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
+import { rentalTermsRoutes } from './rental-terms/rental-terms.router.ts';
 import { sealRoutes } from './seals/seal.router.ts';
 import { siteRoutes } from './sites/site.router.ts';
 import { statementRoutes } from './statements/statement.router.ts';
@@ -28,8 +30,10 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   jobRoutes,
   unitRoutes,
   cylinderRoutes,
+  rentalTermsRoutes,
   chargeSheetRoutes,
   entryGroupRoutes,
+  entryPreviewRoutes,
   entryRoutes,
   flagRoutes,
   exportRoutes,

@@ -106,16 +106,17 @@ async function addKey(
   return key;
 }
 
-/** Chains who took out what; to be called before the first byte of it leaves. */
+/** Chains who took out what, and gives the number of that record; to be called before the first byte of it leaves. */
 export async function journalExport(
   parts: Pick<Parts, 'now' | 'newId'>,
   manager: EntityManager,
   exporter: Sealer,
   what: Pick<ExportRecord, 'document' | 'format' | 'about'>,
-): Promise<void> {
+): Promise<number> {
   await lockHeadToSeal(manager);
   const at = parts.now().toISOString();
-  await postRecords(manager, [{ type: 'export', ...authorship(parts, exporter, at), ...what }]);
+  const [posted] = await postRecords(manager, [{ type: 'export', ...authorship(parts, exporter, at), ...what }]);
+  return Number(posted?.sequence);
 }
 
 const authorship = ({ newId }: Pick<Parts, 'newId'>, { personId }: Sealer, at: string) => ({
