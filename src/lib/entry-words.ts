@@ -15,11 +15,8 @@ const NAMED = new Set(['supplier', 'cylinder', 'unit', 'reclaimer', 'customer', 
 const TELLING = ['supplierShortFill', 'cylinderDifference', 'unitDifference', 'reclaimerDifference', 'atmosphere'];
 
 /** Why an entry stands in the log: what the person did, or what the server found in what they stated. */
-export function reasonWords(
-  t: Translate,
-  row: Pick<EntryRow, 'kind' | 'addedByServer' | 'from' | 'to' | 'reversesGroupId'>,
-): string {
-  if (!row.addedByServer || row.reversesGroupId !== null) return t(`log.kind.${row.kind}`);
+export function reasonWords(t: Translate, row: Pick<EntryRow, 'kind' | 'addedByServer' | 'from' | 'to'>): string {
+  if (!row.addedByServer) return t(`log.kind.${row.kind}`);
   const telling = TELLING.find((place) => row.from.place === place || row.to.place === place);
   if (telling === 'atmosphere') {
     if (row.kind === 'recovery' && row.to.place === 'atmosphere') return t('log.found.notRecovered');

@@ -113,6 +113,9 @@ function rateQuantity({ locale, mass }: Pick<Preferences, 'locale' | 'mass'>, gP
     : { value: formatNumber(locale, gPerM, 2), unit: 'g/m' };
 }
 
+/** Whole grams from ten on, below that tenths. */
+const aboutGrams = (massG: number) => roundTo(massG, Math.abs(massG) >= 10 ? 0 : 1);
+
 const joined = ({ value, unit }: Quantity) => `${value}${NBSP}${unit}`;
 
 /** All formats of one person, as plain functions. */
@@ -129,6 +132,9 @@ export function formatsFor(preferences: Preferences) {
       const quantity = massQuantity(preferences, massG);
       return preferences.mass === 'lbOz' ? joined(quantity) : quantity.value;
     },
+    /** To what a scale of this trade can show: a worked-out mass carries no more figures than that. */
+    massAbout: (massG: number) => joined(massQuantity(preferences, aboutGrams(massG))),
+    massAboutParts: (massG: number) => massQuantity(preferences, aboutGrams(massG)),
     massUnit: preferences.mass === 'lbOz' ? 'lb oz' : preferences.mass,
     /** What a person typed, `2,310 g`, where it reads otherwise than the mass is shown; else null. */
     massAsTyped: (typed: { value: string; unit: string }, massG: number): string | null => {

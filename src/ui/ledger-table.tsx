@@ -100,6 +100,8 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
     // Only a table may scroll sideways; its first column stays.
     <div
       ref={region}
+      // Without a row to open, the keys need the region itself to scroll by (WCAG 2.1.1).
+      {...(opens || rows.length === 0 ? {} : { role: 'region', tabIndex: 0, 'aria-label': caption })}
       className={
         own
           ? 'relative min-h-0 flex-1 scroll-pt-12 overflow-auto overscroll-contain'

@@ -142,7 +142,7 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         hint={
           figures.ruleLimitG === null
             ? undefined
-            : t('cylinders.new.ruleGives', { mass: format.mass(figures.ruleLimitG) })
+            : t('cylinders.new.ruleGives', { mass: format.massAbout(figures.ruleLimitG) })
         }
         units={MASS_UNITS}
         draft={draft.waterCapacity}

@@ -26,7 +26,7 @@ export function fullCylinderBeam(
   { t, format }: Words,
   unit: BeamUnit,
 ): BeamSpec {
-  const label = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(massG) }) });
+  const label = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.massAbout(massG) }) });
   const heel = heelG !== null && contentG > 0 ? Math.min(heelG, contentG) : 0;
   return cylinderBeam(
     {
@@ -36,8 +36,8 @@ export function fullCylinderBeam(
         massG: contentG,
         label:
           heel > 0
-            ? t('cylinders.beam.beyondHeel', { mass: format.mass(contentG - heel) })
-            : t('cylinders.beam.contents', { mass: format.mass(contentG) }),
+            ? t('cylinders.beam.beyondHeel', { mass: format.massAbout(contentG - heel) })
+            : t('cylinders.beam.contents', { mass: format.massAbout(contentG) }),
       },
       fillLimit: limitG === null ? null : label('cylinders.beam.fillLimitGross', tareG + limitG),
       gross: label('cylinders.beam.gross', tareG + contentG),
@@ -59,7 +59,7 @@ export function smallCylinderBeam(
       fillLimit:
         limitG === null
           ? null
-          : { massG: tareG + limitG, label: t('cylinders.beam.fillLimit', { mass: format.mass(limitG) }) },
+          : { massG: tareG + limitG, label: t('cylinders.beam.fillLimit', { mass: format.massAbout(limitG) }) },
       gross: { massG: tareG + contentG, label: '' },
     },
     unit,
@@ -68,8 +68,8 @@ export function smallCylinderBeam(
 
 /** The drawing in one sentence. */
 export function beamSummary({ tag, tareG, contentG, limitG }: Weighed & Pick<Cylinder, 'tag'>, { t, format }: Words) {
-  const figures = { tag, tare: format.mass(tareG), content: format.mass(contentG) };
+  const figures = { tag, tare: format.massAbout(tareG), content: format.massAbout(contentG) };
   return limitG === null
     ? t('cylinders.beam.summaryNoLimit', figures)
-    : t('cylinders.beam.summary', { ...figures, limit: format.mass(limitG) });
+    : t('cylinders.beam.summary', { ...figures, limit: format.massAbout(limitG) });
 }

@@ -24,14 +24,14 @@ export function CylinderFacts({ cylinder, figures }: { cylinder: Cylinder; figur
           <ul className="pt-1 text-[0.9375rem]">
             {cylinder.byRefrigerant.map(({ refrigerant, massG }) => (
               <li key={refrigerant}>
-                {refrigerant} {format.mass(massG)}
+                {refrigerant} {format.massAbout(massG)}
               </li>
             ))}
           </ul>
         ) : null}
       </Fact>
       <Fact name={t('cylinders.tare')}>
-        {format.mass(cylinder.tareG)}
+        {format.massAbout(cylinder.tareG)}
         <AsStamped typed={cylinder.tareTyped} massG={cylinder.tareG} />
       </Fact>
       <Fact name={t('cylinders.limit')}>
@@ -56,7 +56,7 @@ export function CylinderFacts({ cylinder, figures }: { cylinder: Cylinder; figur
           ? t('cylinders.neverWeighed')
           : t('cylinders.lastWeighedAt', {
               when: format.longDateTime(cylinder.lastWeighedAt, zone),
-              gross: format.mass(cylinder.lastReadingGrossG),
+              gross: format.massAbout(cylinder.lastReadingGrossG),
             })}
       </Fact>
     </Facts>
@@ -90,16 +90,16 @@ function Limit({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFig
   const byRule = ruleLimitG !== null && Math.abs(ruleLimitG - limitG) < 0.01;
   return (
     <>
-      {t('cylinders.limit.net', { mass: format.mass(limitG), gross: format.mass(limitG + cylinder.tareG) })}
+      {t('cylinders.limit.net', { mass: format.massAbout(limitG), gross: format.massAbout(limitG + cylinder.tareG) })}
       <Why>
         {byRule && waterCapacityG !== null && liquidDensityKgM3 !== null
           ? t('cylinders.limit.byRule', {
-              capacity: format.mass(waterCapacityG),
+              capacity: format.massAbout(waterCapacityG),
               density: format.number(liquidDensityKgM3, 0),
             })
           : ruleLimitG === null || byRule
             ? t('cylinders.limit.stamped')
-            : t('cylinders.limit.stampedAgainstRule', { rule: format.mass(ruleLimitG) })}
+            : t('cylinders.limit.stampedAgainstRule', { rule: format.massAbout(ruleLimitG) })}
       </Why>
       {figures.cautions.map(({ code, message }) => (
         <Why key={code}>{message}</Why>

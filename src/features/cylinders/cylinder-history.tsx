@@ -96,8 +96,11 @@ function entryColumns(
 
 /** As the log says it; the number of the other entry only where it stands in this list. */
 function whyWords(t: Translate, format: Formats, row: EntryRow, rows: readonly EntryRow[]): string {
-  const numberOf = (groupId: string) => rows.find((other) => other.groupId === groupId)?.sequence;
-  if (row.reversesGroupId !== null) {
+  const numberOf = (groupId: string) => {
+    const group = rows.filter((other) => other.groupId === groupId);
+    return (group.find(({ addedByServer }) => !addedByServer) ?? group[0])?.sequence;
+  };
+  if (row.reversesGroupId !== null && !row.addedByServer) {
     const number = numberOf(row.reversesGroupId);
     return number === undefined ? t('log.reversesEarlier') : t('log.reverses', { number: format.number(number) });
   }

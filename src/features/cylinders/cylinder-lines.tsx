@@ -24,7 +24,7 @@ export function CylinderLines({ cylinders, loading, more }: CylinderListProps) {
               >
                 {cylinder.tag}
               </Link>
-              <strong className="text-[1.25rem] font-[680]">{format.mass(cylinder.contentG)}</strong>
+              <strong className="text-[1.25rem] font-[680]">{format.massAbout(cylinder.contentG)}</strong>
             </div>
             <p className="type-label flex justify-between gap-3 text-ink-soft">
               <span>

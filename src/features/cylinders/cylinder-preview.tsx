@@ -37,7 +37,7 @@ export function CylinderPreview({
     () => fullCylinderBeam(shown, figures.heelG, { t, format }, unit),
     [shown, figures.heelG, t, format, unit],
   );
-  const { value, unit: symbol } = format.massParts(shown.contentG);
+  const { value, unit: symbol } = format.massAboutParts(shown.contentG);
   return (
     <aside aria-label={t('cylinders.new.preview')} className="min-w-0 lg:sticky lg:top-20 lg:self-start">
       <p className="type-label text-ink-soft">

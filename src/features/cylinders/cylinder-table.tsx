@@ -1,6 +1,6 @@
 import { useMemo } from 'react';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
-import { useFormat } from '../../lib/format.ts';
+import { type Formats, NBSP, useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { CylinderMarks } from './cylinder-marks.tsx';
@@ -13,6 +13,12 @@ export interface CylinderListProps {
   onSort: (sort: string) => void;
   onOpen: (cylinder: Cylinder) => void;
   more: { has: boolean; loading: boolean; load: () => void };
+}
+
+/** The unit stands in the head; pounds and ounces keep theirs. */
+function figureOf(format: Formats, massG: number): string {
+  const { value, unit } = format.massAboutParts(massG);
+  return format.massUnit === unit ? value : `${value}${NBSP}${unit}`;
 }
 
 /** On a desk: a ledger whose middle column is the beam. */
@@ -40,20 +46,20 @@ export function CylinderTable({ cylinders, loading, sort, onSort, more }: Cylind
       {
         id: 'beam',
         head: t('cylinders.beam.head'),
-        cell: (cylinder) => <SmallBeam cylinder={cylinder} className="w-[clamp(20rem,44vw,44rem)] pt-1" />,
+        cell: (cylinder) => <SmallBeam cylinder={cylinder} className="w-[clamp(14rem,42vw,44rem)] pt-1" />,
       },
       {
         id: 'content',
         head: t('cylinders.content'),
         unit: format.massUnit,
         figure: true,
-        cell: ({ contentG }) => <span className="text-[1.0625rem]">{format.massFigure(contentG)}</span>,
+        cell: ({ contentG }) => <span className="text-[1.0625rem]">{figureOf(format, contentG)}</span>,
       },
       {
         id: 'holder',
         head: t('cylinders.holder'),
         cell: (cylinder) => (
-          <span className="flex flex-col items-start gap-0.5">
+          <span className="flex min-w-40 flex-col items-start gap-0.5 whitespace-normal">
             {cylinder.heldByName ?? <span className="text-ink-soft">{t('cylinders.nobody')}</span>}
             <CylinderMarks cylinder={cylinder} />
           </span>

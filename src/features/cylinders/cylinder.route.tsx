@@ -119,7 +119,7 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
           const stands = queryClient.getQueryData(cylinderQueries.one(cylinder.id).queryKey)?.tareG ?? tareG;
           const earlier = Math.abs(stands - tareG) > 1e-6;
           finish(
-            earlier ? t('cylinders.tare.doneEarlier', { tare: format.mass(stands) }) : t('cylinders.tare.done'),
+            earlier ? t('cylinders.tare.doneEarlier', { tare: format.massAbout(stands) }) : t('cylinders.tare.done'),
             entries,
           );
         }}
@@ -136,7 +136,7 @@ function Content({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderF
     () => fullCylinderBeam(cylinder, figures.heelG, { t, format }, unit),
     [cylinder, figures.heelG, t, format, unit],
   );
-  const { value, unit: symbol } = format.massParts(cylinder.contentG);
+  const { value, unit: symbol } = format.massAboutParts(cylinder.contentG);
   return (
     <section aria-label={t('cylinders.content')}>
       <p className="type-label text-ink-soft">
@@ -149,8 +149,8 @@ function Content({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderF
       {cylinder.limitG === null ? null : (
         <p className="mt-2 text-[1.0625rem] font-[600]">
           {cylinder.limitG >= cylinder.contentG
-            ? t('cylinders.one.room', { mass: format.mass(cylinder.limitG - cylinder.contentG) })
-            : t('cylinders.one.over', { mass: format.mass(cylinder.contentG - cylinder.limitG) })}
+            ? t('cylinders.one.room', { mass: format.massAbout(cylinder.limitG - cylinder.contentG) })
+            : t('cylinders.one.over', { mass: format.massAbout(cylinder.contentG - cylinder.limitG) })}
         </p>
       )}
       <Beam className="mt-2" spec={spec} summary={beamSummary(cylinder, { t, format })} />

@@ -3,10 +3,12 @@ import type { ReactNode } from 'react';
 import { errorsElsewhere, type FormError } from '../../api/form-errors.ts';
 import { toolQueries } from '../../api/tools.ts';
 import { useFormat } from '../../lib/format.ts';
+import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Button } from '../../ui/button.tsx';
 import { Caution } from '../../ui/caution.tsx';
 import { ChoiceField, FieldError, SelectField, TextField } from '../../ui/field.tsx';
+import { useFocusFirstError } from '../../ui/focus-first-error.ts';
 import type { FillDanger } from './fill-dangers.ts';
 
 export const MASS_UNITS = ['g', 'kg', 'lb', 'oz'] as const;
@@ -30,7 +32,7 @@ export function ScaleField({ value, onChange }: { value: string; onChange: (tool
   );
 }
 
-/** When it happened, on the clock of this device. */
+/** When it happened, on the clock of this device. A day and a time are too long for half a phone's width. */
 export function WhenField({
   label,
   value,
@@ -42,9 +44,10 @@ export function WhenField({
   error?: ReactNode;
   onChange: (value: string) => void;
 }) {
+  const phone = !useMedia('(width >= 48rem)');
   return (
     <TextField
-      layout="row"
+      layout={phone ? 'stack' : 'row'}
       type="datetime-local"
       label={label}
       value={value}
@@ -83,8 +86,8 @@ export function DangerGate({
         <Caution key={danger.is} signal="danger">
           {danger.is === 'overLimit'
             ? t('cylinders.danger.overLimit', {
-                given: format.mass(danger.wouldHoldG),
-                allowed: format.mass(danger.limitG),
+                given: format.massAbout(danger.wouldHoldG),
+                allowed: format.massAbout(danger.limitG),
               })
             : danger.is === 'otherRefrigerant'
               ? t('cylinders.danger.otherRefrigerant', { holds: danger.holds })
@@ -135,6 +138,7 @@ export function FormFoot({
   onCancel?: () => void;
 }) {
   const t = useMessages();
+  useFocusFirstError(errors);
   return (
     <div className="flex flex-col gap-3 pt-2">
       {errorsElsewhere(errors, shown).map((message) => (

@@ -183,7 +183,7 @@ export function Component() {
           ) : (
             <p className="py-2 text-[0.9375rem] text-ink-soft">{t('cylinders.new.emptyHint')}</p>
           )}
-          {wide ? null : <div className="pt-5">{preview}</div>}
+          {wide || (tareG === null && contentG === null) ? null : <div className="pt-5">{preview}</div>}
           <DangerGate
             name="begin-danger"
             dangers={dangers}

@@ -96,7 +96,7 @@ export function WeighForm({
         onDone(
           entries.length === 0
             ? t('cylinders.weigh.doneSame')
-            : t('cylinders.weigh.done', { mass: format.mass(Math.abs(moved)) }),
+            : t('cylinders.weigh.done', { mass: format.massAbout(Math.abs(moved)) }),
         );
       },
       onError: (error) => setErrors(answerErrors(error)),
@@ -116,7 +116,7 @@ export function WeighForm({
         label={t('cylinders.form.gross')}
         units={MASS_UNITS}
         draft={draft.gross}
-        hint={t('cylinders.form.grossHint', { tare: format.mass(cylinder.tareG) })}
+        hint={t('cylinders.form.grossHint', { tare: format.massAbout(cylinder.tareG) })}
         error={errorAt(errors, '/readings/0/value')}
         onChange={(gross) => set({ gross })}
       />
@@ -157,8 +157,8 @@ function Against({ cylinder, grossG, scale }: { cylinder: Cylinder; grossG: numb
   const contentG = grossG - cylinder.tareG;
   if (contentG < 0) {
     return (
-      <Notice title={t('cylinders.weigh.belowTare', { mass: format.mass(-contentG) })}>
-        {t('cylinders.weigh.belowTareHint', { tare: format.mass(cylinder.tareG) })}
+      <Notice title={t('cylinders.weigh.belowTare', { mass: format.massAbout(-contentG) })}>
+        {t('cylinders.weigh.belowTareHint', { tare: format.massAbout(cylinder.tareG) })}
       </Notice>
     );
   }
@@ -169,17 +169,17 @@ function Against({ cylinder, grossG, scale }: { cylinder: Cylinder; grossG: numb
   return (
     <div className="flex flex-col gap-2">
       <p>
-        {t('cylinders.weigh.content', { mass: format.mass(contentG) })}
+        {t('cylinders.weigh.content', { mass: format.massAbout(contentG) })}
         {first ? null : (
           <>
             {' '}
             {t(differenceG < 0 ? 'cylinders.weigh.less' : 'cylinders.weigh.more', {
-              mass: format.mass(Math.abs(differenceG)),
-              book: format.mass(cylinder.contentG),
+              mass: format.massAbout(Math.abs(differenceG)),
+              book: format.massAbout(cylinder.contentG),
             })}{' '}
             <strong className="font-[650]">{t(`cylinders.verdict.${verdict}`)}</strong>
             <span className="type-label pl-1.5 text-[0.9375rem] text-ink-soft">
-              {t('cylinders.weigh.uncertainty', { mass: format.mass(2 * standardG) })}
+              {t('cylinders.weigh.uncertainty', { mass: format.massAbout(2 * standardG) })}
             </span>
           </>
         )}
@@ -187,8 +187,8 @@ function Against({ cylinder, grossG, scale }: { cylinder: Cylinder; grossG: numb
       {cylinder.limitG !== null && contentG > cylinder.limitG ? (
         <Caution signal="danger">
           {t('cylinders.danger.overLimit', {
-            given: format.mass(contentG),
-            allowed: format.mass(cylinder.limitG),
+            given: format.massAbout(contentG),
+            allowed: format.massAbout(cylinder.limitG),
           })}
         </Caution>
       ) : null}

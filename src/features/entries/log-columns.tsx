@@ -15,7 +15,8 @@ interface Shown {
   zone: string;
 }
 
-export function useLogColumns({ rows, ties, zone }: Shown): LedgerColumn<EntryRow>[] {
+/** @param beside a sheet stands beside the table and says the rest, so there is less room */
+export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: boolean }): LedgerColumn<EntryRow>[] {
   const t = useMessages();
   const format = useFormat();
   const phone = !useMedia('(width >= 48rem)');
@@ -34,6 +35,11 @@ export function useLogColumns({ rows, ties, zone }: Shown): LedgerColumn<EntryRo
       unit: format.massUnit,
       figure: true,
       cell: (row) => format.massFigure(row.massG),
+    };
+    const refrigerant: LedgerColumn<EntryRow> = {
+      id: 'refrigerant',
+      head: t('log.refrigerant'),
+      cell: (row) => <span className="type-narrow">{row.refrigerant}</span>,
     };
     const why: LedgerColumn<EntryRow> = {
       id: 'why',
@@ -69,18 +75,14 @@ export function useLogColumns({ rows, ties, zone }: Shown): LedgerColumn<EntryRo
         cell: (row) => <When row={row} zone={zone} />,
       },
       mass,
-      {
-        id: 'refrigerant',
-        head: t('log.refrigerant'),
-        cell: (row) => <span className="type-narrow">{row.refrigerant}</span>,
-      },
+      ...(beside ? [] : [refrigerant]),
       { id: 'from', head: t('log.from'), cell: (row) => <Place t={t} place={row.from} /> },
       { id: 'arrow', head: t('log.arrow'), headHidden: true, cell: () => <Arrow /> },
       { id: 'to', head: t('log.to'), cell: (row) => <Place t={t} place={row.to} /> },
       why,
       who,
     ];
-  }, [t, format, rows, ties, zone, phone]);
+  }, [t, format, rows, ties, zone, phone, beside]);
 }
 
 /** Mass on the move: the one place for copper in a row. */
@@ -150,7 +152,8 @@ function What({ row, rows, ties }: Parameters<typeof Why>[0]) {
   const format = useFormat();
   const words = reasonWords(t, row);
   const number = (groupId: string) => ties.numbers.get(groupId)?.first;
-  if (row.reversesGroupId !== null) {
+  // What judging again added to a reversal's group reverses nothing itself.
+  if (row.reversesGroupId !== null && !row.addedByServer) {
     const original = reversedEntry(row, rows)?.sequence ?? number(row.reversesGroupId);
     return original === undefined ? t('log.reversesEarlier') : t('log.reverses', { number: format.number(original) });
   }

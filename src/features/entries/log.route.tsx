@@ -41,7 +41,7 @@ export function Component() {
   const list = useInfiniteQuery(entryQueries.list(filters, PAGE));
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
   const ties = useTies(rows);
-  const columns = useLogColumns({ rows, ties, zone: useSession()?.firm.timeZone ?? '' });
+  const columns = useLogColumns({ rows, ties, zone: useSession()?.firm.timeZone ?? '', beside: groupId !== undefined });
   const region = useRef<HTMLDivElement>(null);
   const openRow = useOpenRow(rows, groupId, search.get('entry'));
 

@@ -12,6 +12,7 @@ import { newId } from '../../lib/new-id.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
 import { CheckField, FieldError, TextField } from '../../ui/field.tsx';
+import { useFocusFirstError } from '../../ui/focus-first-error.ts';
 import { Notice } from '../../ui/notice.tsx';
 import { simpleGroup } from './replacement.ts';
 import { emptyReplacement, type ReplacementDraft, ReplacementFields, useReplacement } from './replacement-fields.tsx';
@@ -47,6 +48,7 @@ export function ReverseForm({
     replacement: simple ? emptyReplacement(simple, locale) : null,
   }));
   const [errors, setErrors] = useState<FormError[]>([]);
+  useFocusFirstError(errors);
   const right = useReplacement(group, simple, draft.corrects ? draft.replacement : null);
   const own = group.entries.filter(({ addedByServer }) => !addedByServer);
   const massG = own.reduce((sum, entry) => sum + entry.massG, 0);

@@ -4,6 +4,7 @@ import type { EntryRow, GroupView } from '../../../shared/entries/entry.schema.t
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { entryQueries } from '../../api/entries.ts';
 import { rowsOf } from '../../api/page.ts';
+import { unitQueries } from '../../api/units.ts';
 import { placeWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -27,6 +28,7 @@ function PlaceBeam({ place, group }: { place: EntryRow['from']; group: GroupView
   const isCylinder = place.place === 'cylinder';
   const id = place.id ?? '';
   const cylinder = useQuery({ ...cylinderQueries.one(id), enabled: isCylinder }).data;
+  const machine = useQuery({ ...unitQueries.one(id), enabled: !isCylinder }).data;
   const book = useInfiniteQuery(
     entryQueries.list({ ...(isCylinder ? { cylinderId: id } : { unitId: id }), sort: 'occurredAt' }, MOST),
   );
@@ -42,19 +44,20 @@ function PlaceBeam({ place, group }: { place: EntryRow['from']; group: GroupView
   }, [book.data, book.hasNextPage, cylinder, group, id, isCylinder]);
   const spec = useMemo(() => {
     if (!standing || standing.beforeG < 0 || standing.afterG < 0) return null;
-    const limitG = cylinder?.limitG ?? null;
+    const limitG = isCylinder ? (cylinder?.limitG ?? null) : (machine?.fullCharge?.massG ?? null);
+    const limitWords = isCylinder ? 'log.group.beam.limit' : 'log.group.beam.fullCharge';
     return standingBeam(
       standing,
       {
         before: t('log.group.beam.before', { mass: format.mass(standing.beforeG) }),
         after: t('log.group.beam.after', { mass: format.mass(standing.afterG) }),
         lost: t('log.group.beam.lost', { mass: format.mass(standing.lostG ?? 0) }),
-        limit:
-          limitG === null ? null : { massG: limitG, label: t('log.group.beam.limit', { mass: format.mass(limitG) }) },
+        limit: limitG === null ? null : { massG: limitG, label: t(limitWords, { mass: format.mass(limitG) }) },
+        limitKind: isCylinder ? 'stop' : 'target',
       },
       unit,
     );
-  }, [standing, cylinder, t, format, unit]);
+  }, [standing, cylinder, machine, isCylinder, t, format, unit]);
   if (book.isPending) return <div className="h-24" />;
   if (!spec || !standing) return null;
   const words = placeWords(t, place);

@@ -67,7 +67,7 @@ const grams = (sum: number) => Math.round(sum * 1e6) / 1e6;
 /** What stays lies in verdigris, what came or went in copper, what left unseen hatched; the poise where it stands then. */
 export function standingBeam(
   { beforeG, afterG, lostG = 0 }: Standing,
-  labels: { before: string; after: string; lost: string; limit?: Labelled | null },
+  labels: { before: string; after: string; lost: string; limit?: Labelled | null; limitKind: 'stop' | 'target' },
   { gramsPer, unit }: BeamUnit,
 ): BeamSpec {
   const [low, high] = [Math.min(beforeG, afterG), Math.max(beforeG, afterG)];
@@ -86,6 +86,6 @@ export function standingBeam(
       .filter(({ from, to }) => to > from)
       .map(({ from, to, ...part }) => ({ ...part, from: from / gramsPer, to: to / gramsPer })),
     poise: { at: afterG / gramsPer, label: '', kind: 'move' },
-    marks: labels.limit ? [{ at: limitG / gramsPer, label: labels.limit.label, kind: 'stop' }] : [],
+    marks: labels.limit ? [{ at: limitG / gramsPer, label: labels.limit.label, kind: labels.limitKind }] : [],
   };
 }
