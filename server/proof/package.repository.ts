@@ -49,7 +49,8 @@ export function readPacked(
            when 'group' then exists (select from entry_group g
              where g.firm_id = j.firm_id and g.sequence = j.sequence and ${OWN_GROUP})
            when 'register' then coalesce(${OWN_REGISTER}, false)
-           else j.type in ('seal', 'sealKey') or j.sequence = $10 end as "isWhole"
+           when 'export' then j.sequence = $10 or coalesce(j.recorded_at >= $5::timestamptz and j.recorded_at < $6::timestamptz, false)
+           else j.type in ('seal', 'sealKey') end as "isWhole"
        from journal_record j where j.sequence > $7 and j.sequence <= $8 order by j.sequence limit $9`,
     [...valuesOf(subject), range.after, range.upTo, range.limit, range.exportSequence],
   );

@@ -27,17 +27,18 @@ const NOTHING = { unitIds: [], siteIds: [], placeIds: [], subjectIds: [], from: 
 /** @throws Problem 422 `notKnownHere` */
 export function requireSubject(manager: EntityManager, query: ProofPackageQuery): Promise<ProofSubject> {
   const { unitId, customerId, from, to } = query;
-  if (unitId !== undefined) return requireUnit(manager, unitId);
+  if (unitId !== undefined) return requireUnit(manager, unitId, query.words);
   if (customerId !== undefined) return requireCustomer(manager, customerId);
   return readPeriod(manager, String(from), String(to));
 }
 
-async function requireUnit(manager: EntityManager, id: string): Promise<ProofSubject> {
+/** What a machine in somebody's home is called may name a person: only with the other words. */
+async function requireUnit(manager: EntityManager, id: string, words: boolean): Promise<ProofSubject> {
   const [unit] = await manager.query<{ label: string }[]>(
-    `select concat_ws(', ', u.tag, u.name, s.name, c.name) as label from unit u
+    `select concat_ws(', ', u.tag, case when $2 then u.name end, s.name, c.name) as label from unit u
        join site s on s.firm_id = u.firm_id and s.id = u.site_id
        join customer c on c.firm_id = s.firm_id and c.id = s.customer_id where u.id = $1`,
-    [id],
+    [id, words],
   );
   if (!unit) throw problemOfRefusals([{ code: 'notKnownHere', path: '/unitId', given: id }]);
   const about = { kind: 'unit' as const, id, from: null, to: null, label: unit.label };

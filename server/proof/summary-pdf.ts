@@ -102,7 +102,6 @@ function factsOf(summary: Summary, say: (key: string, values?: MessageValues) =>
   ];
 }
 
-/** What is struck through on a screen has to be told by words on paper that was copied. */
 function entryCells(entry: Summary['entries'][number], locale: Locale): Cells {
   const grams = Number(gramsText(BigInt(entry.mass)));
   return {
@@ -157,7 +156,7 @@ class Sheet {
   fact(name: string, value: string, font: Font): void {
     const { doc } = this;
     const indent = 120;
-    const size = font === 'code' ? 8 : 10;
+    const size = font === 'code' ? 7.6 : 10;
     const top = doc.y + 5;
     doc
       .font(font)
