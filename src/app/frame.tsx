@@ -76,10 +76,13 @@ function BandEnd() {
     return (
       <div className="ml-auto flex items-center gap-6">
         <LanguageSwitch />
-        <NavLink to="/preferences" className="type-narrow text-ink-soft no-underline hover:text-ink">
+        <NavLink
+          to="/preferences"
+          className="type-narrow flex min-h-12 items-center text-ink-soft no-underline hover:text-ink"
+        >
           {t('frame.preferences')}
         </NavLink>
-        <NavLink to={signInPath(location)} className="font-[600]">
+        <NavLink to={signInPath(location)} className="flex min-h-12 items-center font-[600]">
           {t('frame.signIn')}
         </NavLink>
       </div>

@@ -28,7 +28,7 @@ export function CylinderEntries({ cylinder }: { cylinder: Cylinder }) {
         <h2 id="cylinder-entries" className="type-title text-[1.25rem]">
           {t('cylinders.entries')}
         </h2>
-        <Link to={`/log?cylinderId=${cylinder.id}`} className="inline-flex min-h-11 items-center">
+        <Link to={`/log?cylinderId=${cylinder.id}`} className="inline-flex min-h-12 items-center">
           {t('cylinders.inTheLog')}
         </Link>
       </div>
