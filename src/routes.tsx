@@ -13,6 +13,10 @@ const pages: RouteObject[] = [
   { path: 'units/:unitId/charge', lazy: () => import('./features/charge/unit-charge.route.tsx') },
   { path: 'cylinders', lazy: () => import('./features/cylinders/cylinders.route.tsx') },
   { path: 'cylinders/new', lazy: () => import('./features/cylinders/new-cylinder.route.tsx') },
+  { path: 'cylinders/stock-take', lazy: () => import('./features/stock-take/stock-take.route.tsx') },
+  { path: 'cylinders/scan', lazy: () => import('./features/stock-take/scan.route.tsx') },
+  { path: 'cylinders/:cylinderId/tag', lazy: () => import('./features/stock-take/tag.route.tsx') },
+  { path: 'cylinders/:cylinderId/rental', lazy: () => import('./features/stock-take/rental.route.tsx') },
   { path: 'cylinders/:cylinderId', lazy: () => import('./features/cylinders/cylinder.route.tsx') },
   {
     path: 'log',

@@ -27,6 +27,7 @@ import { CarriedItemEntity } from '../periods/carried-item.entity.ts';
 import { PeriodEntity } from '../periods/period.entity.ts';
 import { SettlementEntity } from '../periods/settlement.entity.ts';
 import { SettlementUndoEntity } from '../periods/settlement-undo.entity.ts';
+import { RentalTermsEntity } from '../rental-terms/rental-terms.entity.ts';
 import { SealMailEntity } from '../seals/seal-mail.entity.ts';
 import { PasswordResetEntity } from '../session/password-reset.entity.ts';
 import { PersonSecretEntity } from '../session/person-secret.entity.ts';
@@ -88,5 +89,6 @@ export const ENTITIES = [
   CarriedItemEntity,
   CylinderHolderEntity,
   PurchasePriceEntity,
+  RentalTermsEntity,
   ExportEntity,
 ];

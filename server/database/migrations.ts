@@ -7,6 +7,7 @@ import { Seals1764633600001 } from './migrations/1764633600001-seals.ts';
 import { KeepPeriods1764720000010 } from './migrations/1764720000010-keep-periods.ts';
 import { TellReversalsApart1764720000011 } from './migrations/1764720000011-tell-reversals-apart.ts';
 import { KeepExports1764806400020 } from './migrations/1764806400020-keep-exports.ts';
+import { RentCylinders1764806400030 } from './migrations/1764806400030-rent-cylinders.ts';
 
 /** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
 export const MIGRATIONS = [
@@ -19,4 +20,5 @@ export const MIGRATIONS = [
   KeepPeriods1764720000010,
   TellReversalsApart1764720000011,
   KeepExports1764806400020,
+  RentCylinders1764806400030,
 ] as const;

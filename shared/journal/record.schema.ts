@@ -161,6 +161,7 @@ export const REGISTER_NOUNS = [
   'settlement',
   'carriedItem',
   'purchasePrice',
+  'rentalTerms',
 ] as const;
 export type RegisterNoun = (typeof REGISTER_NOUNS)[number];
 

@@ -6,6 +6,7 @@ import periods from './periods.en.json';
 import proof from './proof.en.json';
 import registers from './registers.en.json';
 import server from './server.en.json';
+import stockTake from './stock-take.en.json';
 
 /**
  * Every English sentence that the server says: problems, results, mails. A new file of them is added here and in
@@ -20,4 +21,5 @@ export const catalogueEn: Readonly<Record<string, string>> = {
   ...periods,
   ...registers,
   ...server,
+  ...stockTake,
 };

@@ -6,6 +6,7 @@ import periods from './periods.es.json';
 import proof from './proof.es.json';
 import registers from './registers.es.json';
 import server from './server.es.json';
+import stockTake from './stock-take.es.json';
 
 /** Every Spanish sentence that the server says; the same keys as in English. */
 export const catalogueEs: Readonly<Record<string, string>> = {
@@ -17,4 +18,5 @@ export const catalogueEs: Readonly<Record<string, string>> = {
   ...periods,
   ...registers,
   ...server,
+  ...stockTake,
 };

@@ -9,6 +9,7 @@ import { deviceNow, toDayInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Fact, Facts } from '../../ui/facts.tsx';
+import { RentalFact } from './rental-facts.tsx';
 import { type CylinderFigures, RATING_TEMP_C } from './use-cylinder-figures.ts';
 
 /** What stands on the collar and what follows from it, each with its why. */
@@ -50,6 +51,7 @@ export function CylinderFacts({ cylinder, figures }: { cylinder: Cylinder; figur
       <Fact name={t('cylinders.owner')}>
         <Owner owner={cylinder.owner} />
       </Fact>
+      <RentalFact cylinder={cylinder} />
       {cylinder.batch ? <Fact name={t('cylinders.batch')}>{cylinder.batch}</Fact> : null}
       <Fact name={t('cylinders.lastWeighed')}>
         {cylinder.lastWeighedAt === null || cylinder.lastReadingGrossG === null

@@ -23,7 +23,7 @@ import { JudgedAgain } from './judged-again.tsx';
 import { type CylinderFigures, useCylinderFigures } from './use-cylinder-figures.ts';
 
 export async function loader({ request, params }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('cylinders-screen', 'log-screen', 'server')]);
+  await Promise.all([requireSession(request), loadMessages('cylinders-screen', 'log-screen', 'server', 'stock-take')]);
   // A cylinder that is not there is the page's own "nothing here", with the frame around it.
   await queryClient.ensureQueryData(cylinderQueries.one(params.cylinderId ?? ''));
   return null;
@@ -67,9 +67,14 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
       title={t('cylinders.one.title', { tag: cylinder.tag })}
       status={<span className="desk:hidden">{cylinder.refrigerant}</span>}
       actions={
-        <Link to="/cylinders" className="inline-flex min-h-12 items-center">
-          {t('cylinders.all')}
-        </Link>
+        <>
+          <Link to={`/cylinders/${cylinder.id}/tag`} className="inline-flex min-h-12 items-center">
+            {t('rental.tagLink')}
+          </Link>
+          <Link to="/cylinders" className="inline-flex min-h-12 items-center">
+            {t('cylinders.all')}
+          </Link>
+        </>
       }
       next={
         mayPost ? (

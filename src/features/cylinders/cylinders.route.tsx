@@ -19,7 +19,7 @@ import { CylinderLines } from './cylinder-lines.tsx';
 import { CylinderTable } from './cylinder-table.tsx';
 
 export async function loader({ request }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('cylinders-screen')]);
+  await Promise.all([requireSession(request), loadMessages('cylinders-screen', 'stock-take')]);
   void queryClient.prefetchInfiniteQuery(cylinderQueries.list(readFilters(new URL(request.url).searchParams)));
   return null;
 }
@@ -61,6 +61,12 @@ export function Component() {
       title={t('cylinders.title')}
       actions={
         <>
+          <Link to="/cylinders/stock-take" className="inline-flex min-h-12 items-center">
+            {t('stockTake.links')}
+          </Link>
+          <Link to="/cylinders/scan" className="inline-flex min-h-12 items-center">
+            {t('stockTake.scanLink')}
+          </Link>
           <Link to="/tools" className="inline-flex min-h-12 items-center">
             {t('cylinders.toTools')}
           </Link>
