@@ -25,12 +25,15 @@ export interface RequestError {
   message: string;
 }
 
+/** A field that holds no value, with the sentence that says so where the field does not say it by itself. */
+export type Unreadable<V extends FieldValues> = Path<V> | { field: Path<V>; message: string };
+
 export interface RequestFormSpec<V extends FieldValues> {
   /** What was typed lies under it in this tab, ids included, so that a second try is the same request. */
   draftKey: string;
   initial: () => V;
   /** The request, and the fields that hold something which is no value: those say so themselves. */
-  toRequest: (values: V) => { request: unknown; unreadable: readonly Path<V>[] };
+  toRequest: (values: V) => { request: unknown; unreadable: readonly Unreadable<V>[] };
   /** The shared schema's complaints, in words. */
   check: (request: unknown) => readonly RequestError[];
   /** Which field shows what is said of a place; a place stands for everything under it, the first that fits holds. */
@@ -54,7 +57,10 @@ export function useRequestForm<V extends FieldValues>(spec: RequestFormSpec<V>) 
     const { toRequest, check, places } = latest.current;
     const { request, unreadable } = toRequest(values);
     const errors: FieldErrors<V> = {};
-    for (const field of unreadable) set(errors, field, { type: UNREADABLE, message: '' });
+    for (const one of unreadable) {
+      const { field, message } = typeof one === 'object' ? one : { field: one, message: '' };
+      set(errors, field, { type: UNREADABLE, message });
+    }
     for (const error of check(request)) {
       const field = fieldOf(places(values), error.pointer);
       if (!get(errors, field)) set(errors, field, { type: error.code, message: error.message });
@@ -96,7 +102,7 @@ function fieldOf<V extends FieldValues>(places: ReturnType<RequestFormSpec<V>['p
 function focusFirstError(): void {
   requestAnimationFrame(() => {
     const field = document.querySelector<HTMLElement>('form [aria-invalid="true"], form [role="alert"]');
-    field?.scrollIntoView({ block: 'center' });
+    field?.scrollIntoView?.({ block: 'center' });
     field?.focus({ preventScroll: true });
   });
 }
@@ -127,13 +133,13 @@ function AtTheFoot() {
   return message ? <FieldError>{message}</FieldError> : null;
 }
 
-/** The sentence at this field. A value that cannot be read is explained by the field itself. */
+/** The sentence at this field; a quantity that cannot be read is explained by its field itself. */
 export function useFieldError(name: string): string | undefined {
   const {
     formState: { errors },
   } = useFormContext();
   const error = get(errors, name) as { type?: string; message?: string } | undefined;
-  return error && error.type !== UNREADABLE ? error.message || undefined : undefined;
+  return error?.message || undefined;
 }
 
 type Without<P> = Omit<P, 'name' | 'value' | 'onChange' | 'error' | 'draft' | 'checked' | 'ref'>;

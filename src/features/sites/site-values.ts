@@ -62,12 +62,23 @@ export function siteValues(site: Site, { locale, length }: Reads): SiteValues {
   };
 }
 
+/** An empty field is missing: the schema then says that, and not which form it should have. */
+const given = (text: string): string => (text.trim() === '' ? (undefined as unknown as string) : text);
+
+function addressLines(address: string): string[] {
+  const lines = address
+    .split('\n')
+    .map((line) => line.trim())
+    .filter(Boolean);
+  return lines.length > 0 ? lines : (undefined as unknown as string[]);
+}
+
 /** The customer that has to be made first, or null. */
 export function customerRequest(values: SiteValues): z.input<typeof createCustomerRequest> | null {
   if (values.customerId !== NEW_CUSTOMER) return null;
   return {
     id: values.newCustomerId,
-    name: values.customerName,
+    name: given(values.customerName),
     email: values.customerEmail.trim() || null,
     phone: values.customerPhone.trim() || null,
   };
@@ -81,12 +92,9 @@ export function siteRequest(
   return {
     request: {
       id: values.id,
-      customerId: values.customerId === NEW_CUSTOMER ? values.newCustomerId : values.customerId,
-      name: values.name,
-      addressLines: values.address
-        .split('\n')
-        .map((line) => line.trim())
-        .filter(Boolean),
+      customerId: values.customerId === NEW_CUSTOMER ? values.newCustomerId : given(values.customerId),
+      name: given(values.name),
+      addressLines: addressLines(values.address),
       timeZone: values.timeZone,
       altitudeM: altitude.is === 'read' ? Number(altitude.base.toPrecision(10)) : (undefined as unknown as number),
       jurisdiction: values.jurisdiction as Session['firm']['jurisdiction'],

@@ -5,7 +5,7 @@ import type { Preferences } from '../../../shared/session/session.schema.ts';
 import type { QuantityKind, UnitOf } from '../../../shared/units/quantities.ts';
 import { readNumber } from '../../../shared/units/read-number.ts';
 import { emptyQuantity, type QuantityDraft, quantityOf } from '../../ui/quantity-draft.ts';
-import { massUnitOf, reader } from './unit-values.ts';
+import { given, massUnitOf, reader } from './unit-values.ts';
 
 type Mass = QuantityDraft<'mass'>;
 type Length = QuantityDraft<'length'>;
@@ -127,9 +127,17 @@ export function basisRequest(
     locale,
     refrigerant,
     instantOf,
-  }: { locale: string; refrigerant: string; instantOf: (local: string) => string | null },
-): { request: z.input<typeof addChargeBasisRequest>; unreadable: string[] } {
-  const { read, unreadable } = reader<string>(locale);
+    notNumber,
+  }: {
+    locale: string;
+    refrigerant: string;
+    instantOf: (local: string) => string | null;
+    /** The sentence for a count or factor that is no number. */
+    notNumber: (typed: string) => string;
+  },
+): { request: z.input<typeof addChargeBasisRequest>; unreadable: (string | { field: string; message: string })[] } {
+  const { read, unreadable: quantities } = reader<string>(locale);
+  const numbers: { field: string; message: string }[] = [];
   const base = <Kind extends QuantityKind>(kind: Kind, draft: QuantityDraft<Kind>, field: string, signed = false) => {
     const reading = read(kind, draft, field, signed);
     return reading === null ? null : Number(reading.base.toPrecision(12));
@@ -138,7 +146,7 @@ export function basisRequest(
     if (text.trim() === '') return null;
     const reading = readNumber(text);
     if (reading.is === 'number') return Number(reading.value);
-    unreadable.push(field);
+    numbers.push({ field, message: notNumber(text) });
     return null;
   };
   const { scope } = values;
@@ -165,7 +173,7 @@ export function basisRequest(
         rate: rate(),
         metering: values.metering as 'unknown',
         allowances: values.allowances.map((row, index) => ({
-          label: row.label,
+          label: given(row.label),
           gEach: base('mass', row.each, `allowances.${index}.each`, true) ?? MISSING,
           count: number(row.count, `allowances.${index}.count`) ?? MISSING,
           factor: number(row.factor, `allowances.${index}.factor`),
@@ -174,10 +182,10 @@ export function basisRequest(
         rounding: roundG === null ? null : { toG: roundG, direction: values.direction as 'nearest' },
         shortLine: values.shortLine as 'none',
       },
-      manual: { document: values.document, page: values.page.trim() || null },
+      manual: { document: given(values.document), page: values.page.trim() || null },
       note: values.note.trim() || null,
     },
-    unreadable,
+    unreadable: [...quantities, ...numbers],
   };
 
   function rate(): ChargeBasis['rate'] {
@@ -201,7 +209,7 @@ export function basisRequest(
           })),
         };
       case 'formula':
-        return { kind: 'formula', expression: values.expression.trim() };
+        return { kind: 'formula', expression: given(values.expression.trim()) };
       case 'fixedMass':
         return { kind: 'fixedMass', extraG: base('mass', values.fixedMass, 'fixedMass', true) ?? MISSING };
     }

@@ -41,6 +41,7 @@ export function Component() {
         locale: preferences.locale,
         refrigerant: unit.refrigerant,
         instantOf: instantOfLocal,
+        notNumber: (typed) => t('units.form.notNumber', { typed }),
       }) as never,
     check: (request) => schemaErrors(addChargeBasisRequest, request),
     places: (values) => basisPlaces(values) as [string, 'note'][],

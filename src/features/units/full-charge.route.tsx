@@ -14,7 +14,7 @@ import { Notice } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
 import { emptyQuantity, type QuantityDraft } from '../../ui/quantity-draft.ts';
 import { FormQuantity, FormSelect, FormText, RequestForm, useRequestForm } from '../../ui/request-form.tsx';
-import { massUnitOf, reader } from './unit-values.ts';
+import { given, massUnitOf, reader } from './unit-values.ts';
 
 export async function loader({ params, request }: LoaderFunctionArgs) {
   await Promise.all([requireSession(request), loadMessages('units-screen', 'server')]);
@@ -48,10 +48,10 @@ export function Component() {
     }),
     toRequest: (values) => {
       const { read, unreadable } = reader<'mass'>(preferences.locale);
-      const mass = read('mass', values.mass, 'mass')?.typed ?? { value: '', unit: values.mass.unit };
+      const mass = read('mass', values.mass, 'mass')?.typed;
       const validFrom = instantOfLocal(values.validFrom) ?? '';
       return {
-        request: { id: values.id, mass, method: values.method, validFrom, jobId: null, reason: values.reason },
+        request: { id: values.id, mass, method: values.method, validFrom, jobId: null, reason: given(values.reason) },
         unreadable,
       };
     },

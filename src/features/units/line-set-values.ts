@@ -3,7 +3,7 @@ import type { Preferences } from '../../../shared/session/session.schema.ts';
 import type { addLineSetRequest, LineSet } from '../../../shared/unit-register/unit.schema.ts';
 import { readNumber } from '../../../shared/units/read-number.ts';
 import { emptyQuantity, type QuantityDraft, quantityOf, quantityOfTyped } from '../../ui/quantity-draft.ts';
-import { reader } from './unit-values.ts';
+import { given, reader } from './unit-values.ts';
 
 export interface BranchValues {
   name: string;
@@ -74,16 +74,26 @@ export function branchesOf(lineSet: LineSet | null, preferences: Reads): BranchV
 
 export function lineSetRequest(
   values: LineSetValues,
-  { locale, instantOf }: { locale: string; instantOf: (local: string) => string | null },
-): { request: z.input<typeof addLineSetRequest>; unreadable: string[] } {
-  const { read, unreadable } = reader<string>(locale);
+  {
+    locale,
+    instantOf,
+    notWhole,
+  }: {
+    locale: string;
+    instantOf: (local: string) => string | null;
+    /** The sentence for a count that is no whole number. */
+    notWhole: (typed: string) => string;
+  },
+): { request: z.input<typeof addLineSetRequest>; unreadable: (string | { field: string; message: string })[] } {
+  const { read, unreadable: quantities } = reader<string>(locale);
+  const counts: { field: string; message: string }[] = [];
   const branches = values.branches.map((branch, index) => {
     const at = `branches.${index}`;
     const length = read('length', branch.length, `${at}.length`);
     const bends = wholeOf(branch.bends);
-    if (bends === null) unreadable.push(`${at}.bends`);
+    if (bends === null) counts.push({ field: `${at}.bends`, message: notWhole(branch.bends) });
     return {
-      name: branch.name,
+      name: given(branch.name),
       parent: branch.parent || null,
       liquidOdMm: branch.liquidOd === '' ? (undefined as unknown as number) : Number(branch.liquidOd),
       gasOdMm: branch.gasOd === '' ? null : Number(branch.gasOd),
@@ -103,7 +113,7 @@ export function lineSetRequest(
       branches,
       note: values.note.trim() || null,
     },
-    unreadable,
+    unreadable: [...quantities, ...counts],
   };
 }
 

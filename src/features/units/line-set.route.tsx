@@ -49,7 +49,12 @@ export function Component() {
       branches: branchesOf(lineSet, preferences),
       note: '',
     }),
-    toRequest: (values) => lineSetRequest(values, { locale: preferences.locale, instantOf: instantOfLocal }) as never,
+    toRequest: (values) =>
+      lineSetRequest(values, {
+        locale: preferences.locale,
+        instantOf: instantOfLocal,
+        notWhole: (typed) => t('units.form.notWhole', { typed }),
+      }) as never,
     check: (request) => schemaErrors(addLineSetRequest, request),
     places: (values) => lineSetPlaces(values) as [string, 'note'][],
   });

@@ -128,8 +128,8 @@ const kPaOf = (reading: { base: number } | null) => (reading === null ? null : N
 
 function plateRequest(values: PlateValues, read: ReturnType<typeof reader>['read']) {
   return {
-    tag: values.tag,
-    name: values.name,
+    tag: given(values.tag),
+    name: given(values.name),
     subsector: (values.subsector || null) as z.output<typeof subsector> | null,
     serials: values.serials
       .filter(({ serial, model }) => serial.trim() !== '' || model.trim() !== '')
@@ -148,15 +148,16 @@ export function newUnitRequest(
 ): { request: z.input<typeof createUnitRequest>; unreadable: string[] } {
   const { read, unreadable } = reader<string>(locale);
   const at = instantOf(values.since) ?? '';
+  // Nothing typed is missing, not a mass of some other form.
   const mass = (draft: QuantityDraft<'mass'>, field: string) =>
-    (read('mass', draft, field)?.typed ?? { value: '', unit: draft.unit }) as { value: string; unit: 'g' };
+    read('mass', draft, field)?.typed as { value: string; unit: 'g' };
   const knowsFull = values.fullChargeKnown === 'yes';
   return {
     request: {
       id: values.id,
-      siteId: values.siteId,
+      siteId: given(values.siteId),
       applianceKind: values.applianceKind as z.output<typeof applianceKind>,
-      refrigerant: values.refrigerant,
+      refrigerant: given(values.refrigerant),
       refrigerantFrom: values.since,
       ...plateRequest(values, read as never),
       fullCharge: knowsFull
@@ -181,6 +182,9 @@ export function newUnitRequest(
     unreadable,
   };
 }
+
+/** An empty field is missing: the schema then says that, and not which form it should have. */
+export const given = (text: string): string => (text.trim() === '' ? (undefined as unknown as string) : text);
 
 /** Only what was changed, so that a change by somebody else meanwhile to another field stays. */
 export function changedUnitRequest(

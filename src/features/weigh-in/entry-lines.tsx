@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react';
+import type { PreviewedEntry } from '../../../shared/entry-previews/entry-preview.schema.ts';
 import type { EntryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
 import type { PostedEntryResponse } from '../../../shared/ledger/entry-group-response.schema.ts';
 import type { PlaceFields } from '../../../shared/ledger/place.ts';
@@ -33,14 +34,34 @@ export function usePlaceName(): (place: PlaceFields) => string {
   };
 }
 
-/** The entries of these groups as they will be posted. */
-export function EntriesToCome({ groups, gaps }: { groups: readonly EntryGroupRequest[]; gaps: readonly Gap[] }) {
+/**
+ * The entries of these groups as they will be posted. What the books add is the server's answer where it has come, else
+ * the differences that this device can tell.
+ */
+export function EntriesToCome({
+  groups,
+  gaps,
+  added,
+}: {
+  groups: readonly EntryGroupRequest[];
+  gaps: readonly Gap[];
+  added?: readonly PreviewedEntry[] | null;
+}) {
   const t = useMessages();
   const format = useFormat();
   const name = usePlaceName();
   return (
     <ul className="border-t border-rule">
-      {gaps.map(({ cylinderId, gapG }) => {
+      {added?.map((entry) => (
+        <EntryLine
+          key={entry.id}
+          from={name(entry.from as PlaceFields)}
+          to={name(entry.to as PlaceFields)}
+          mass={format.mass(entry.massG)}
+          remark={t('weighIn.entry.added')}
+        />
+      ))}
+      {(added ? [] : gaps).map(({ cylinderId, gapG }) => {
         const cylinder = name({ place: 'cylinder', id: cylinderId });
         const difference = name({ place: 'cylinderDifference' });
         return (

@@ -17,6 +17,10 @@ let posted: { path: string; body: Record<string, unknown> }[] = [];
 /** What a post of a group is answered with; null: the answer is lost. */
 let answerToPost: () => Response | null = () => null;
 
+const NOTHING = { entries: [], balances: [], flags: [], warnings: [] };
+/** What the server says beforehand. */
+let previewed: Record<string, unknown> = {};
+
 const json = (value: unknown, status = 200) =>
   new Response(JSON.stringify(value), {
     status,
@@ -71,9 +75,10 @@ const POSTED = {
 };
 
 function answer(path: string, method: string, body: string | null): Response {
+  if (path === '/entry-groups/preview') return json({ ...NOTHING, questions: [], reasons: [], ...previewed });
   if (method === 'POST') {
     posted.push({ path, body: JSON.parse(body ?? '{}') });
-    if (path.endsWith('/full-charges')) return json({ entries: [], balances: [], flags: [], warnings: [] }, 201);
+    if (path.endsWith('/full-charges')) return json(NOTHING, 201);
     const given = answerToPost();
     if (given) return given;
     throw new TypeError('Failed to fetch');
@@ -159,6 +164,7 @@ describe('A weigh-in to a charge sheet, on screen', () => {
   });
   beforeEach(() => {
     posted = [];
+    previewed = {};
     answerToPost = () => json(POSTED, 201);
     localStorage.clear();
     vi.stubGlobal('fetch', async (url: string, init: RequestInit) =>
@@ -187,6 +193,27 @@ describe('A weigh-in to a charge sheet, on screen', () => {
     expect(posted.map(({ path }) => path)).toEqual([`/units/${UNIT}/full-charges`, '/entry-groups']);
     expect(posted[0]?.body).toMatchObject({ mass: { value: '1290', unit: 'g' }, validFrom: '2026-11-30T14:00:00Z' });
     expect(moves(asSent(groups()[0]))).toEqual(['C1 -> U 90', 'C1 -> atmosphere, hose 28']);
+  });
+
+  it('shows before posting what the books will add and which reason is wanted, as the server judges it', async () => {
+    const user = userEvent.setup();
+    previewed = {
+      entries: [
+        {
+          id: idOf(201),
+          massG: 12,
+          from: { place: 'cylinder', id: C1, as: null, label: '7741' },
+          to: { place: 'cylinderDifference', id: null, as: null, label: '' },
+          addedByServer: true,
+        },
+      ],
+      reasons: [{ code: 'reasonForPastLimit', path: '/reason', message: 'R-09 is past its limit: say why.' }],
+    };
+    open();
+    await toTheReview(user);
+    expect(await screen.findByText('added by the books')).toBeVisible();
+    expect(screen.getByText(/12\sg/)).toBeVisible();
+    expect(screen.getByLabelText('Reason')).toHaveAccessibleDescription('R-09 is past its limit: say why.');
   });
 
   it('sends the same again after a lost answer, and says that nothing is lost', async () => {

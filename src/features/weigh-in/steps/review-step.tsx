@@ -1,6 +1,8 @@
+import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import type { EntryGroupRequest } from '../../../../shared/ledger/entry-group.schema.ts';
 import { microgramsOfTyped } from '../../../../shared/units/mass.ts';
+import { entryGroupQueries } from '../../../api/entry-groups.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { Beam } from '../../../ui/beam/beam.tsx';
@@ -44,6 +46,15 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
     { t, format, unit: beamUnit },
   );
   const unanswered = question !== null && weighIn.answer === null;
+  const preview = useQuery(entryGroupQueries.preview(main ?? null)).data;
+  // A vacuum or a full charge that is not posted yet is not in the server's answer: of the unit it then knows less than we.
+  const knowsUnit = !emptied && !sets;
+  const added = preview?.entries.filter(
+    (entry) => entry.addedByServer && (knowsUnit || (entry.from.place !== 'unit' && entry.to.place !== 'unit')),
+  );
+  const reasons = posting.fault?.needsReason
+    ? posting.fault.messages
+    : (preview?.reasons ?? []).map((one) => one.message);
 
   async function press() {
     setAsked(true);
@@ -76,7 +87,7 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
         />
       </div>
       <Beam spec={beam.spec} summary={beam.summary} />
-      <EntriesToCome groups={groups} gaps={gapsOf(weighIn, data)} />
+      <EntriesToCome groups={groups} gaps={gapsOf(weighIn, data)} added={added} />
       {bySheetG !== null ? (
         <CheckField
           label={t('weighIn.fullCharge.set', { mass: format.mass(bySheetG) })}
@@ -101,10 +112,10 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
         occurredAt={weighIn.occurredAt ?? weighIn.legs.at(-1)?.endAt ?? null}
         onChange={(part) => dispatch({ type: 'say', part })}
       />
-      {posting.fault?.needsReason || weighIn.reason !== '' ? (
+      {reasons.length > 0 || weighIn.reason !== '' ? (
         <ReasonField
           value={weighIn.reason}
-          messages={posting.fault?.needsReason ? posting.fault.messages : []}
+          messages={reasons}
           onChange={(reason) => dispatch({ type: 'say', part: { reason } })}
         />
       ) : null}
