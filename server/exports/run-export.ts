@@ -19,7 +19,7 @@ export type ExportParts = Pick<Parts, 'settings' | 'log' | 'now' | 'newId' | 're
 
 /** Writes a document as PDF to the stream and ends it. @returns how many lines of the log it shows; null: no such subject */
 export type WriteDocument = (
-  parts: ExportParts,
+  parts: ExportParts & Pick<Parts, 'dataSource'>,
   manager: EntityManager,
   request: Exclude<CreateExportRequest, TableRequest>,
   actor: Actor,
@@ -173,7 +173,7 @@ async function fill(
   const request = row as CreateExportRequest;
   const work = async (manager: EntityManager): Promise<number> => {
     if (!isTable(request)) {
-      const lines = await writeDocument(parts, manager, request, actor, stream);
+      const lines = await writeDocument({ ...parts, dataSource: jobs }, manager, request, actor, stream);
       if (lines === null) throw new ExportRefusal('noSubject');
       return lines;
     }

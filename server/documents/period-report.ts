@@ -1,0 +1,124 @@
+import {
+  type BookKind,
+  balancesOf,
+  type Flow,
+  flowsOf,
+  isDifference,
+  type MonthSum,
+} from '../../shared/books/flows.ts';
+import type { FiltersOf } from '../../shared/exports/export.schema.ts';
+import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { type DocumentFrame, openPaper } from './document-frame.ts';
+import { findGwp } from './unit-figures.ts';
+
+type Sum = MonthSum & { refrigerant: string; isBefore: boolean };
+
+/** The books of some months: for each refrigerant what was on hand, what moved, where to, and what nobody can explain. */
+export async function periodReport(
+  frame: DocumentFrame,
+  { from, to }: FiltersOf<'periodReport'>,
+): Promise<number | null> {
+  const { words, manager, parts, firm } = frame;
+  const sums = await readSums(frame, to, from);
+  const closed = await manager.query<{ month: string; closedAt: Date; name: string | null }[]>(
+    `select p.month, p.closed_at as "closedAt", n.name from period p left join person n on n.id = p.closed_by
+       where p.month between $1 and $2 order by p.month`,
+    [from, to],
+  );
+  const subject = from === to ? words.month(from) : `${words.month(from)} – ${words.month(to)}`;
+  const paper = await openPaper(frame, { title: words.say('period.title'), subject, link: null });
+  if (closed.length === 0) paper.paragraph(words.say('period.notClosed'));
+  for (const { month, closedAt, name } of closed)
+    paper.paragraph(
+      words.say('period.closed', {
+        month: words.month(month),
+        at: words.instant(closedAt, firm.timeZone),
+        by: name ?? '',
+      }),
+    );
+  const refrigerants = [...new Set(sums.map(({ refrigerant }) => refrigerant))].sort();
+  if (refrigerants.length === 0) paper.paragraph(words.say('period.nothing'));
+  let lines = 0;
+  for (const refrigerant of refrigerants) {
+    const own = sums.filter((sum) => sum.refrigerant === refrigerant);
+    const flows = flowsOf(own.filter(({ isBefore }) => !isBefore));
+    const [before, after] = [balancesOf(own.filter(({ isBefore }) => isBefore)), balancesOf(own)];
+    const gwp = findGwp(parts.reference, refrigerant, firm.gwpSet);
+    const emitted = gramsOf(flows.filter(toAir)) - gramsOf(flows.filter(fromAir));
+    const unexplained =
+      gramsOf(flows.filter(({ toKind }) => isDifference(toKind))) -
+      gramsOf(flows.filter(({ fromKind }) => isDifference(fromKind)));
+    const held = (balances: Map<BookKind, bigint>, kind: BookKind) =>
+      words.mass(gramsOfMicrograms(balances.get(kind) ?? 0n));
+    paper.heading(refrigerant);
+    paper.facts(
+      [
+        [words.say('period.cylindersBefore'), held(before, 'cylinder')],
+        [words.say('period.cylindersAfter'), held(after, 'cylinder')],
+        [words.say('period.unitsBefore'), held(before, 'unit')],
+        [words.say('period.unitsAfter'), held(after, 'unit')],
+        [words.say('period.emitted'), words.mass(emitted)],
+        [
+          words.say('period.co2e', { set: firm.gwpSet }),
+          gwp === null ? words.say('unit.noGwp') : `${words.number((emitted * gwp) / 1e6, 3)} t`,
+        ],
+        [words.say('period.unexplained'), words.mass(unexplained)],
+      ],
+      4,
+    );
+    const bySize = [...flows].sort(
+      (a, b) => Number(isOdd(b)) - Number(isOdd(a)) || (a.massMicrograms < b.massMicrograms ? 1 : -1),
+    );
+    paper.table(
+      [
+        { head: words.say('col.from'), width: 28 },
+        { head: words.say('col.to'), width: 28 },
+        { head: words.say('col.mass', { unit: words.massUnit }), width: 16, align: 'right' },
+        { head: words.say('col.entries'), width: 12, align: 'right' },
+      ],
+      bySize.map((flow) => ({
+        strong: isOdd(flow),
+        cells: [
+          placeOf(frame, flow.fromKind),
+          placeOf(frame, flow.toKind),
+          words.massFigure(gramsOfMicrograms(flow.massMicrograms)),
+          String(flow.entryCount),
+        ],
+      })),
+    );
+    lines += flows.length;
+  }
+  paper.space(8);
+  paper.paragraph(words.say('period.note'), { size: 8 });
+  await paper.end();
+  return lines;
+}
+
+async function readSums({ manager }: DocumentFrame, to: string, from: string): Promise<Sum[]> {
+  const rows = await manager.query<
+    (Omit<Sum, 'massMicrograms' | 'reversalMicrograms' | 'entryCount'> & {
+      mass: string;
+      reversal: string;
+      entryCount: string;
+    })[]
+  >(
+    `select refrigerant, from_kind as "fromKind", to_kind as "toKind", month < $2 as "isBefore",
+        sum(mass_micrograms)::text as mass, sum(reversal_micrograms)::text as reversal, sum(entry_count)::text as "entryCount"
+      from month_sum where month <= $1 group by 1, 2, 3, 4`,
+    [to, from],
+  );
+  return rows.map(({ mass, reversal, entryCount, ...row }) => ({
+    ...row,
+    massMicrograms: BigInt(mass),
+    reversalMicrograms: BigInt(reversal),
+    entryCount: Number(entryCount),
+  }));
+}
+
+const toAir = ({ toKind }: Flow) => toKind.startsWith('atmosphere');
+const fromAir = ({ fromKind }: Flow) => fromKind.startsWith('atmosphere');
+/** What is looked at first. */
+const isOdd = ({ fromKind, toKind }: Flow) => isDifference(fromKind) || isDifference(toKind);
+const gramsOf = (flows: readonly Flow[]): number =>
+  gramsOfMicrograms(flows.reduce((sum, { massMicrograms }) => sum + massMicrograms, 0n));
+const placeOf = ({ words }: DocumentFrame, kind: BookKind): string => words.log(`place.${kind.replace(':', '.')}`);

@@ -1,0 +1,74 @@
+import type { EntryRow } from '../../shared/entries/entry.schema.ts';
+import logEn from '../../shared/messages/log-screen.en.json';
+import logEs from '../../shared/messages/log-screen.es.json';
+import type { Locale, Preferences } from '../../shared/session/session.schema.ts';
+import { fromBase } from '../../shared/units/quantities.ts';
+import { type MessageValues, messageFor } from '../messages/translate.ts';
+
+/** Words, dates and masses of one paper: in the language and units of who asked for it. */
+export interface Words {
+  locale: Locale;
+  say(key: string, values?: MessageValues): string;
+  /** Words of the log: `kind.extraCharge`, `place.factory`. */
+  log(key: string): string;
+  place(view: EntryRow['from']): string;
+  number(value: number, decimals: number): string;
+  /** With its unit. */
+  mass(massG: number | null): string | null;
+  /** Without it, for columns whose head says it. */
+  massFigure(massG: number): string;
+  massUnit: string;
+  day(day: string): string;
+  instant(at: string | Date, timeZone: string): string;
+  month(month: string): string;
+}
+
+const NAMED: ReadonlySet<string> = new Set([
+  'supplier',
+  'cylinder',
+  'unit',
+  'reclaimer',
+  'customer',
+  'otherContractor',
+]);
+/** A column has one unit; pounds and ounces are read in ounces there. */
+const SHOWN = {
+  g: { unit: 'g', decimals: 0 },
+  kg: { unit: 'kg', decimals: 3 },
+  oz: { unit: 'oz', decimals: 1 },
+  lbOz: { unit: 'oz', decimals: 1 },
+} as const;
+
+export function wordsOf(locale: Locale, massPreference: Preferences['mass'] | undefined): Words {
+  const logWords: Readonly<Record<string, string>> = locale.startsWith('es') ? logEs : logEn;
+  const shown = SHOWN[massPreference ?? 'g'];
+  const number = (value: number, decimals: number) =>
+    new Intl.NumberFormat(locale, { minimumFractionDigits: decimals, maximumFractionDigits: decimals }).format(value);
+  const massFigure = (massG: number) => {
+    const figure = number(fromBase('mass', shown.unit, massG), shown.decimals);
+    return /^-[0.,]+$/.test(figure) ? figure.slice(1) : figure;
+  };
+  const log = (key: string) => logWords[`log.${key}`] ?? key;
+  return {
+    locale,
+    say: (key, values) => messageFor(`doc.${key}`, locale, values),
+    log,
+    place({ place, as, label }) {
+      if (place === 'atmosphere') return log(`place.atmosphere.${as ?? 'measured'}`);
+      if (NAMED.has(place) && label !== '') return log(`placeNamed.${place}`).replace('{{label}}', label);
+      return log(`place.${place}`);
+    },
+    number,
+    massFigure,
+    mass: (massG) => (massG === null ? null : `${massFigure(massG)} ${shown.unit}`),
+    massUnit: shown.unit,
+    day: (day) =>
+      new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeZone: 'UTC' }).format(new Date(`${day}T12:00:00Z`)),
+    instant: (at, timeZone) =>
+      new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeStyle: 'short', timeZone }).format(new Date(at)),
+    month: (month) =>
+      new Intl.DateTimeFormat(locale, { year: 'numeric', month: 'long', timeZone: 'UTC' }).format(
+        new Date(`${month}-15T12:00:00Z`),
+      ),
+  };
+}

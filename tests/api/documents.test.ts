@@ -1,0 +1,214 @@
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { v7 as uuid } from 'uuid';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { writeDocument } from '../../server/documents/write-document.ts';
+import { type ExportWorker, startExportWorker } from '../../server/exports/export-worker.ts';
+import { startTestApp, type TestApp } from '../support/app.ts';
+import { type Ledger, startLedger, weighIn } from '../support/ledger.ts';
+import { readPdf } from '../support/read-pdf.ts';
+import type { TestClient } from '../support/test-client.ts';
+
+const home = mkdtempSync(path.join(tmpdir(), 'tarewright-documents-'));
+/** Where the papers of this run are left for somebody to look at. */
+const pictures = process.env.DOCUMENT_FOLDER;
+let app: TestApp;
+let us: Ledger;
+let eu: Ledger;
+let worker: ExportWorker;
+const ids = { us: { unit: '', cylinder: '', job: '' }, eu: { unit: '', cylinder: '', job: '' } };
+
+beforeAll(async () => {
+  app = await startTestApp({ environment: { TAREWRIGHT_HOME: home } });
+  us = await startLedger(app, { name: 'Harrow & Tansy', timeZone: 'America/New_York' });
+  eu = await startLedger(app, {
+    name: 'Brenhaven Kälte',
+    jurisdiction: 'EU',
+    locale: 'es-ES',
+    gwpSet: 'EU-2024-573',
+    timeZone: 'Europe/Madrid',
+  });
+  for (const [ledger, own] of [
+    [us, ids.us],
+    [eu, ids.eu],
+  ] as const) {
+    own.cylinder = (await ledger.cylinder('9500', { tag: '7741' })).id;
+    const unit = await ledger.unit(
+      '1250',
+      '1500',
+      { tag: '0412', serials: [{ part: 'outdoor', serial: 'SN-18', model: 'M-2' }] },
+      'factory',
+    );
+    own.unit = unit.id;
+    own.job = uuid();
+    await ledger.made('/jobs', {
+      id: own.job,
+      unitId: unit.id,
+      kind: 'install',
+      title: 'back bedroom',
+      openedAt: '2026-03-01T08:00:00Z',
+    });
+    const group = weighIn(ledger, { cylinderId: own.cylinder, unitId: unit.id, beforeG: 9500, afterG: 9410 });
+    const answer = await ledger.post({ ...group, jobId: own.job, note: 'Łódź, 12 ≥ 11 → fine' });
+    if (answer.status !== 201) throw new Error(JSON.stringify(answer.body));
+  }
+  await us.client.post('/journal/seals');
+  worker = await startExportWorker({
+    parts: app.parts,
+    jobsUrl: app.database.urls.jobs,
+    writeDocument,
+    pollEverySeconds: 0.5,
+  });
+});
+afterAll(async () => {
+  await worker.stop();
+  await app.close();
+  rmSync(home, { recursive: true, force: true });
+});
+
+async function paper(client: TestClient, what: string, filters: object) {
+  const id = uuid();
+  const answer = await client.post('/exports', { id, what, format: 'pdf', filters });
+  if (answer.status !== 201) throw new Error(`${answer.status}: ${JSON.stringify(answer.body)}`);
+  for (;;) {
+    const { body } = await client.get(`/exports/${id}`);
+    if (body.state === 'done') break;
+    if (body.state !== 'queued' && body.state !== 'running') throw new Error(JSON.stringify(body));
+    await new Promise((resolve) => setTimeout(resolve, 50));
+  }
+  const response = await fetch(`${app.url}/api/v1/exports/${id}/file`, { headers: { Cookie: String(client.cookie) } });
+  const bytes = Buffer.from(await response.arrayBuffer());
+  if (pictures) writeFileSync(path.join(pictures, `${what}-${client === us.client ? 'us' : 'eu'}.pdf`), bytes);
+  return readPdf(bytes);
+}
+const months = { from: '2026-01', to: '2026-12' };
+
+describe('A paper', () => {
+  it.each([
+    ['Letter, English', () => us, ids.us, { width: 612, height: 792 }, /1 of 1/, /made .* by Person/],
+    ['A4, Spanish', () => eu, ids.eu, { width: 595.28, height: 841.89 }, /1 de 1/, /hecho el .* por Person/],
+  ])('of each kind has its page number, who made it, and no grey: %s', async (_, ledger, own, size, page, made) => {
+    const statement = { cylinderId: own.cylinder, from: '2026-01-01', to: '2026-11-30' };
+    for (const [what, filters] of [
+      ['unitLog', { unitId: own.unit }],
+      ['chargeLabel', { unitId: own.unit }],
+      ['jobRecord', { jobId: own.job }],
+      ['cylinderStatement', statement],
+      ['periodReport', months],
+      ['disposalReport', months],
+    ] as const) {
+      const read = await paper(ledger().client, what, filters);
+      expect(read.pages, what).toHaveLength(1);
+      expect(read.pages[0]?.size, what).toEqual(size);
+      expect(read.pages[0]?.text, what).toMatch(page);
+      expect(read.pages[0]?.text, what).toMatch(made);
+      expect(read.pages[0]?.text, what).not.toMatch(/doc\.|log\.|undefined|NaN|\{\{/);
+      expect(read.colours, what).toEqual(new Set(['0 0 0']));
+    }
+  });
+});
+
+describe('A unit log', () => {
+  it('names the unit, each entry with its mass and both ends, and the last seal', async () => {
+    const { pages } = await paper(us.client, 'unitLog', { unitId: ids.us.unit });
+    const text = pages[0]?.text ?? '';
+    expect(text).toContain('Unit log');
+    expect(text).toMatch(/0412, back bedroom/);
+    expect(text).toMatch(/cyl\. 7741\s+unit 0412/);
+    // 90 g by the exact ounce, 28.349523125 g
+    expect(text).toMatch(/extra charge.*3\.2/);
+    expect(text).toMatch(/Last seal 20\d\d-\d\d-\d\d: record \d+, [0-9a-f]{4}( [0-9a-f]{4}){3}/);
+    expect(text).toMatch(/Log up to record \d+: [0-9a-f]{4}/);
+  });
+
+  it('goes over as many pages as it takes, each with its number and the head of the table', async () => {
+    const unit = await us.unit('1250', '9000', { tag: '0500' }, 'factory');
+    const cylinder = await us.cylinder('90000', { tag: '8000' });
+    for (let n = 0; n < 45; n++) {
+      const at = `2026-04-01T${String(8 + Math.floor(n / 6)).padStart(2, '0')}:${String((n % 6) * 10).padStart(2, '0')}:00Z`;
+      const group = weighIn(
+        us,
+        { cylinderId: cylinder.id, unitId: unit.id, beforeG: 90000 - n * 20, afterG: 89980 - n * 20 },
+        {},
+        at,
+      );
+      const answer = await us.post(group);
+      if (answer.status !== 201) throw new Error(JSON.stringify(answer.body));
+    }
+    const { pages } = await paper(us.client, 'unitLog', { unitId: unit.id });
+    expect(pages.length).toBeGreaterThan(1);
+    pages.forEach(({ text }, index) => {
+      expect(text).toContain(`${index + 1} of ${pages.length}`);
+      expect(text).toMatch(/from\s+to/);
+    });
+    expect(pages.flatMap(({ text }) => text.match(/extra charge/g) ?? [])).toHaveLength(45);
+  });
+});
+
+describe('A charge label', () => {
+  it('says what Regulation (EU) 2024/573, Article 12(3), asks for', async () => {
+    const text = (await paper(eu.client, 'chargeLabel', { unitId: ids.eu.unit })).pages[0]?.text ?? '';
+    expect(text).toContain('Contiene gases fluorados de efecto invernadero');
+    expect(text).toContain('R-410A');
+    expect(text).toMatch(/Carga de fábrica\s+1,250 kg/);
+    expect(text).toMatch(/Añadido en el lugar\s+0,090 kg/);
+    expect(text).toMatch(/Total\s+1,340 kg/);
+    // Annex I: R-32 675, R-125 3500, half and half by mass: 2087.5; 1.340 kg is 2.797 t
+    expect(text).toMatch(/GWP\s+2087,5/);
+    expect(text).toMatch(/CO\s?2\s?e\s+2,797 t/);
+  });
+
+  it('leaves a line to write on where the log does not know', async () => {
+    const unit = await eu.unit('0', null, { tag: '0999' }, 'notKnown');
+    const text = (await paper(eu.client, 'chargeLabel', { unitId: unit.id })).pages[0]?.text ?? '';
+    expect(text).toMatch(/Total\s+_+ kg/);
+    expect(text).not.toMatch(/Total\s+0/);
+  });
+});
+
+describe('A cylinder statement', () => {
+  it('gives opening, closing and the verdict in the three words', async () => {
+    const filters = { cylinderId: ids.us.cylinder, from: '2026-01-01', to: '2026-11-30' };
+    const text = (await paper(us.client, 'cylinderStatement', filters)).pages[0]?.text ?? '';
+    expect(text).toMatch(/Within the scales|Look again|Not explained|Not judged/);
+    // 9,500 g less 90 g, in ounces
+    expect(text).toMatch(/331\.9 oz/);
+  });
+});
+
+describe('A job record', () => {
+  it('shows words in the letters of Europe, what was read on the scale and what was noted', async () => {
+    const text = (await paper(us.client, 'jobRecord', { jobId: ids.us.job })).pages[0]?.text ?? '';
+    expect(text).toContain('Installation: back bedroom, 0412');
+    expect(text).toMatch(/Łódź, 12 >= 11\s+fine/);
+    expect(text).toMatch(/17200 g/);
+    expect(text).toMatch(/17110 g/);
+  });
+});
+
+describe('A disposal report', () => {
+  it('lists units, months and shipments with its source, and says where there is nothing', async () => {
+    const text = (await paper(us.client, 'disposalReport', months)).pages[0]?.text ?? '';
+    expect(text).toContain('Nothing was recovered in this period.');
+    expect(text).toContain('Nothing was sent in this period.');
+    expect(text).toContain('40 CFR 82.156(a)(3)');
+  });
+});
+
+describe('A paper about nothing', () => {
+  it('fails with its reason: a unit that is not there, or another firm’s', async () => {
+    for (const unitId of [uuid(), ids.eu.unit]) {
+      const id = uuid();
+      await us.client.post('/exports', { id, what: 'unitLog', format: 'pdf', filters: { unitId } });
+      let state = 'queued';
+      let problem: { code: string } | null = null;
+      while (state === 'queued' || state === 'running') {
+        ({ state, problem } = (await us.client.get(`/exports/${id}`)).body);
+        await new Promise((resolve) => setTimeout(resolve, 50));
+      }
+      expect(state).toBe('failed');
+      expect(problem).toMatchObject({ code: 'noSubject' });
+    }
+  });
+});
