@@ -1,0 +1,127 @@
+import type { GroupKind } from '../../../../shared/ledger/entry-group.schema.ts';
+import { clauseOfException, reachesLevel, requiredLevel } from '../../../../shared/reference/evacuation-level.ts';
+import type { Answers, FormContext } from '../answers.ts';
+import type { Question, RecordForm, SaidCaution } from '../form.ts';
+import { type BuiltGroup, GroupDraft } from '../group-draft.ts';
+import { massInto } from '../weighed-rows.ts';
+
+const IN_FRONT: readonly SaidCaution[] = [
+  { signal: 'danger', key: 'record.caution.noPumpDown' },
+  { signal: 'warning', key: 'record.caution.noVenting' },
+];
+const AT_THE_CYLINDERS: readonly SaidCaution[] = [
+  { signal: 'danger', key: 'record.caution.recoveryLimit' },
+  { signal: 'warning', key: 'record.caution.asphyxiation' },
+  { signal: 'caution', key: 'record.caution.frostbite' },
+];
+const BEFORE_OPENING: readonly SaidCaution[] = [{ signal: 'warning', key: 'record.caution.capacitors' }];
+
+/** Out of a unit into any number of cylinders; completed once, or not completed. */
+function outOfUnit(kind: GroupKind, answers: Answers, context: FormContext): GroupDraft {
+  const draft = new GroupDraft(kind, answers, context);
+  const from = { place: 'unit' as const, id: answers.unitId };
+  const refrigerant = context.unit?.refrigerant ?? '';
+  answers.rows.forEach((row, index) => {
+    draft.fills(row).reading(row, 'before', `rows.${index}`).reading(row, 'after', `rows.${index}`);
+  });
+  answers.rows.forEach((row, index) => {
+    const to = { place: 'cylinder' as const, id: row.cylinderId };
+    const mass = massInto(row, context);
+    draft.mass({ id: row.ids.mass, refrigerant, mass, from, to, howKnown: 'weighed' }, `rows.${index}.after`);
+  });
+  return draft;
+}
+
+export const isCompleted = ({ choice }: Answers): boolean => choice === 'completed';
+
+/** The law's level, where the site lies under it and the refrigerant is known. */
+export function levelAsked(answers: Answers, context: FormContext) {
+  if (context.jurisdiction !== 'US' || !context.unit) return null;
+  const { machineAge } = answers;
+  const madeOn =
+    context.machineMadeOn ?? (machineAge === 'older' ? '1993-11-14' : machineAge === 'newer' ? '1993-11-15' : null);
+  return requiredLevel(context.unit.refrigerant, context.unit.fullCharge?.massG ?? null, madeOn);
+}
+
+/** The level reached as a number, or null while it is not one. A comma counts as a point. */
+export function levelOf(answers: Answers): number | null {
+  const text = answers.levelReached.trim().replace(',', '.');
+  return /^\d+(\.\d+)?$/.test(text) ? Number(text) : null;
+}
+
+/** Completed, and the level that the law asks for was not reached, nor another one claimed. */
+export function fallsShort(answers: Answers, context: FormContext): boolean {
+  const required = levelAsked(answers, context);
+  const reached = levelOf(answers);
+  return required !== null && reached !== null && answers.levelException === '' && !reachesLevel(required, reached);
+}
+
+function levelNote(answers: Answers, context: FormContext): string {
+  const required = levelAsked(answers, context);
+  const reached = levelOf(answers);
+  if (!required || (reached === null && answers.levelException === '')) return '';
+  const { say } = context;
+  const exception = answers.levelException;
+  return say('record.note.level', {
+    required: say(`record.level.${required.unit}`, { value: required.value }),
+    clause: required.clause,
+    reached: reached === null ? say('record.level.notTold') : say(`record.level.${required.unit}`, { value: reached }),
+    exception:
+      exception === '' || exception === 'other'
+        ? ''
+        : say('record.note.exception', {
+            name: say(`record.exception.${exception}`),
+            clause: clauseOfException(exception),
+          }),
+  });
+}
+
+export function buildRecovery(answers: Answers, context: FormContext): BuiltGroup {
+  const draft = outOfUnit('recovery', answers, context);
+  if (isCompleted(answers)) draft.states('empty', 'recovery').note(levelNote(answers, context));
+  return draft.built();
+}
+
+const level: Question = { is: 'level', id: 'level', cautions: BEFORE_OPENING };
+const moment: Question = { is: 'moment', id: 'moment' };
+
+/** S6.5, S10, S12, S13, S14, S15, S18.2: the level is told once, with the completion. */
+export const recovery: RecordForm = {
+  kind: 'recovery',
+  about: 'unit',
+  rows: 1,
+  permission: 'entries:post',
+  questions: (answers, context) => [
+    { is: 'unit', id: 'unit', cautions: IN_FRONT },
+    { is: 'rows', id: 'recoveredInto', direction: 'into', many: true, hose: false, cautions: AT_THE_CYLINDERS },
+    { is: 'choice', id: 'completed', options: ['completed', 'notCompleted'] },
+    ...(isCompleted(answers) && (!context.unit || levelAsked(answers, context)) ? [level] : []),
+    moment,
+  ],
+  build: buildRecovery,
+};
+
+const withoutStatement = (
+  kind: 'partialRecovery' | 'overchargeRemoved',
+  groupKind: GroupKind,
+  more: readonly Question[],
+): RecordForm => ({
+  kind,
+  about: 'unit',
+  rows: 1,
+  permission: 'entries:post',
+  questions: () => [
+    { is: 'unit', id: 'unit', cautions: IN_FRONT.slice(1) },
+    { is: 'rows', id: 'recoveredInto', direction: 'into', many: true, hose: false, cautions: AT_THE_CYLINDERS },
+    ...more,
+    moment,
+  ],
+  build: (answers, context) => outOfUnit(groupKind, answers, context).states(answers.answer).built(),
+});
+
+/** S7.3, S10: states nothing about the unit. */
+export const partialRecovery = withoutStatement('partialRecovery', 'recovery', []);
+/** S3, S14.3: the answer is free. */
+export const overchargeRemoved = withoutStatement('overchargeRemoved', 'overchargeRemoved', [
+  { is: 'fullness', id: 'fullness' },
+]);
