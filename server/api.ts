@@ -1,3 +1,4 @@
+import { bookRoutes } from './books/books.router.ts';
 import { chargeSheetRoutes } from './charge-sheets/charge-sheet.router.ts';
 import { customerRoutes } from './customers/customer.router.ts';
 import { cylinderRoutes } from './cylinders/cylinder.router.ts';
@@ -38,6 +39,7 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   flagRoutes,
   exportRoutes,
   statementRoutes,
+  bookRoutes,
   todayRoutes,
   referenceListRoutes,
   sealRoutes,

@@ -105,6 +105,25 @@ export async function readCylinderSteps(
   return steps;
 }
 
+/** What each of these cylinders held by its book at the start of its span, all refrigerants together. */
+export async function readBooksAtStart(
+  manager: EntityManager,
+  spans: readonly CylinderSpan[],
+): Promise<Map<string, bigint>> {
+  if (spans.length === 0) return new Map();
+  const rows = await manager.query<{ id: string; mass: string }[]>(
+    `select c.id, (coalesce((select sum(b.mass_micrograms) from balance b
+          where b.firm_id = c.firm_id and b.place_key = 'cylinder:' || c.id), 0)
+        - coalesce((select sum(e.mass_micrograms) from entry e
+          where e.firm_id = c.firm_id and e.to_id = c.id and e.occurred_at >= x.since), 0)
+        + coalesce((select sum(e.mass_micrograms) from entry e
+          where e.firm_id = c.firm_id and e.from_id = c.id and e.occurred_at >= x.since), 0))::text as mass
+      from unnest($1::uuid[], $2::timestamptz[]) x(id, since) join cylinder c on c.id = x.id`,
+    [spans.map(({ cylinderId }) => cylinderId), spans.map(({ from }) => from)],
+  );
+  return new Map(rows.map(({ id, mass }) => [id, BigInt(mass)]));
+}
+
 function stepOf(row: StepRow): CylinderStep {
   return {
     groupId: row.groupId,

@@ -6,8 +6,6 @@ import { BOOK_KINDS, differencesOverPeriod, placesOverPeriod } from './places.ts
 
 const g = (mass: number): bigint => BigInt(Math.round(mass * 1e6));
 const sum = (fromKind: BookKind, toKind: BookKind, massG: number, reversedG = 0): MonthSum => ({
-  month: '2026-11',
-  refrigerant: 'R-410A',
   fromKind,
   toKind,
   massMicrograms: g(massG),
@@ -46,9 +44,10 @@ describe('On hand, bought and recovered', () => {
       sum('cylinder', 'unit', 180),
       sum('unit', 'cylinder', 90, 90),
     ];
-    expect(figures(month)).toMatchObject({
-      cameIn: { bought: 11_260, recovered: 0 },
-      wentOut: { intoUnits: 90, returned: 0, onHandEnd: 11_170 },
+    expect(figures(month)).toEqual({
+      cameIn: { onHandStart: 0, bought: 11_260 },
+      wentOut: { onHandEnd: 11_170, intoUnits: 90 },
+      totalG: 11_260,
     });
   });
 

@@ -69,7 +69,7 @@ const SIDES: Record<Exclude<BookKind, 'cylinder'>, { into: Side; out: Side }> = 
 };
 
 /**
- * The cylinders' side of the books. A difference counts net, as something that went out: below zero where readings
+ * The cylinders' side of the books, without what came to nothing. A difference counts net, as something that went out: below zero where readings
  * showed more than the book.
  */
 export function equationOf(flows: readonly Flow[], onHandStartMicrograms: bigint): Equation {
@@ -98,7 +98,9 @@ export function equationOf(flows: readonly Flow[], onHandStartMicrograms: bigint
   add({ part: 'onHandStart' }, onHandStartMicrograms, 0);
   add({ part: 'onHandEnd' }, onHandEnd, 0);
   const inOrder = <Name extends CameIn | WentOut>(names: readonly Name[]): EquationPart<Name>[] =>
-    names.flatMap((name) => (parts.get(name) as EquationPart<Name> | undefined) ?? []);
+    names
+      .flatMap((name) => (parts.get(name) as EquationPart<Name> | undefined) ?? [])
+      .filter(({ part, massMicrograms }) => massMicrograms !== 0n || part === 'onHandStart' || part === 'onHandEnd');
   const came = inOrder(CAME_IN);
   return {
     cameIn: came,

@@ -3,10 +3,8 @@ import type { AtmosphereKind, PlaceKind } from '../ledger/place.ts';
 /** A kind of place as the books by month name it: `cylinder`, `atmosphere:hose`. */
 export type BookKind = Exclude<PlaceKind, 'atmosphere'> | `atmosphere:${AtmosphereKind}`;
 
-/** One sum of the books by month: everything that went from one kind of place to another. */
+/** A sum of the books by month: everything that went from one kind of place to another in some months. */
 export interface MonthSum {
-  readonly month: string;
-  readonly refrigerant: string;
   readonly fromKind: BookKind;
   readonly toKind: BookKind;
   readonly massMicrograms: bigint;
