@@ -83,17 +83,25 @@ export function presentOutcome(outcome: PostingOutcome, locale: Locale): EntryGr
   };
 }
 
-/** What a flag says, in grams; the sign of a difference is in the words. */
+/** What a flag says, in grams; the sign of a difference is in the words. Screens say it anew in the person's unit. */
 export function flagMessage(
-  { code, mass, refrigerant, figures }: Pick<OutcomeFlag, 'code' | 'mass' | 'refrigerant' | 'figures'>,
+  flag: Pick<OutcomeFlag, 'code' | 'mass' | 'refrigerant' | 'figures'>,
   label: string,
   locale: Locale,
 ): string {
-  const inGrams = Object.fromEntries(
-    Object.entries(figures).map(([name, figure]) => [name.replace(/Micrograms$/, 'G'), grams(figure)]),
-  );
-  const massG = mass === null ? null : Math.abs(grams(mass));
-  return messageFor(`flag.${code}`, locale, { place: label, refrigerant: refrigerant ?? '', massG, ...inGrams });
+  const number = new Intl.NumberFormat(locale, { maximumFractionDigits: 1 });
+  const masses = Object.entries(flagMassesG(flag)).map(([name, massG]) => [name, `${number.format(massG)}\u00A0g`]);
+  return messageFor(`flag.${flag.code}`, locale, {
+    place: label,
+    refrigerant: flag.refrigerant ?? '',
+    ...Object.fromEntries(masses),
+  });
+}
+
+/** The masses of a flag's sentence by the names that the catalogue gives them: `mass`, `limit`, `fullCharge`. Grams. */
+export function flagMassesG({ mass, figures }: Pick<OutcomeFlag, 'mass' | 'figures'>): Record<string, number> {
+  const named = Object.entries(figures).map(([name, figure]) => [name.replace(/Micrograms$/, ''), grams(figure)]);
+  return { ...(mass === null ? {} : { mass: Math.abs(grams(mass)) }), ...Object.fromEntries(named) };
 }
 
 function warningsOf({ groups, entries }: PostingOutcome, locale: Locale): EntryGroupResponse['warnings'] {

@@ -4,7 +4,7 @@ import { FLAG_LEVELS } from '../../shared/ledger/flag.ts';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { type Labels, readLabels } from '../entries/place-labels.ts';
-import { flagMessage } from '../entries/posting-answer.ts';
+import { flagMassesG, flagMessage } from '../entries/posting-answer.ts';
 import { Conditions, cursorScope, readPage, type SortColumn } from '../lists/list-query.ts';
 import type { FlagEntity } from './flag.entity.ts';
 
@@ -70,6 +70,7 @@ function presentFlag(row: Row, labels: Labels, locale: Locale): FlagRow {
     groupId: row.groupId,
     massG: row.mass === null ? null : gramsOfMicrograms(BigInt(row.mass)),
     refrigerant: row.refrigerant,
+    massesG: flagMassesG(row),
     message: flagMessage(row, label, locale),
     openedAt: row.openedAt.toISOString(),
     openedBy: row.openedBy,

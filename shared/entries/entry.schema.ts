@@ -122,7 +122,9 @@ export const flagRow = z.strictObject({
   groupId: id,
   massG: z.number().nullable(),
   refrigerant: z.string().nullable(),
-  /** In the caller's language. */
+  /** The masses in the sentence by their names there: a screen says `flag.<code>` anew in the person's unit. */
+  massesG: z.record(z.string(), z.number()),
+  /** In the caller's language, masses in grams. */
   message: z.string(),
   openedAt: instant,
   /** The groups that opened and closed it. */

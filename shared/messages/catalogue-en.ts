@@ -2,6 +2,7 @@ import calculations from './calculations.en.json';
 import charge from './charge.en.json';
 import documents from './documents.en.json';
 import exports from './exports.en.json';
+import flags from './flags.en.json';
 import periods from './periods.en.json';
 import proof from './proof.en.json';
 import registers from './registers.en.json';
@@ -17,6 +18,7 @@ export const catalogueEn: Readonly<Record<string, string>> = {
   ...charge,
   ...documents,
   ...exports,
+  ...flags,
   ...proof,
   ...periods,
   ...registers,

@@ -2,6 +2,7 @@ import calculations from './calculations.es.json';
 import charge from './charge.es.json';
 import documents from './documents.es.json';
 import exports from './exports.es.json';
+import flags from './flags.es.json';
 import periods from './periods.es.json';
 import proof from './proof.es.json';
 import registers from './registers.es.json';
@@ -14,6 +15,7 @@ export const catalogueEs: Readonly<Record<string, string>> = {
   ...charge,
   ...documents,
   ...exports,
+  ...flags,
   ...proof,
   ...periods,
   ...registers,

@@ -94,7 +94,7 @@ function BandEnd() {
         <div className="type-label hidden text-right text-[0.875rem] leading-tight lg:block">
           <span className="text-ink-soft">{t('frame.onHand', { count: onHand.cylinderCount })}</span>
           <strong className="block text-[1.0625rem] font-[680] [font-stretch:100%]">
-            {format.kilograms(onHand.massG)}
+            {format.stock(onHand.massG)}
           </strong>
         </div>
       ) : null}

@@ -143,7 +143,11 @@ export function formatsFor(preferences: Preferences) {
       const text = `${formatNumber(locale, Number(typed.value), 9)}${NBSP}${typed.unit}`;
       return text === joined(massQuantity(preferences, massG)) ? null : text;
     },
-    kilograms: (massG: number) => `${formatNumber(locale, massG / gramsPer('kg'), 1, 1)}${NBSP}kg`,
+    /** A whole stock at a glance: pounds for those who read pounds or ounces, else kilograms. */
+    stock: (massG: number) =>
+      preferences.mass === 'lbOz' || preferences.mass === 'oz'
+        ? `${formatNumber(locale, massG / GRAMS_PER_POUND, 1, 1)}${NBSP}lb`
+        : `${formatNumber(locale, massG / gramsPer('kg'), 1, 1)}${NBSP}kg`,
     pounds: (massG: number) => `${formatNumber(locale, massG / GRAMS_PER_POUND, 2)}${NBSP}lb`,
     lengthParts: (lengthM: number) => lengthQuantity(preferences, lengthM),
     length: (lengthM: number) => joined(lengthQuantity(preferences, lengthM)),

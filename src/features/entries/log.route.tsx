@@ -118,7 +118,7 @@ function OnHand() {
   const format = useFormat();
   const t = useMessages();
   if (!onHand) return null;
-  return <span className="desk:hidden">{t('log.onHand', { mass: format.kilograms(onHand.massG) })}</span>;
+  return <span className="desk:hidden">{t('log.onHand', { mass: format.stock(onHand.massG) })}</span>;
 }
 
 function NothingHere({ filtered }: { filtered: boolean }) {

@@ -1,5 +1,6 @@
 import { Link } from 'react-router-dom';
 import type { FlagRow } from '../../../shared/entries/entry.schema.ts';
+import { useFlagSentence } from '../../lib/flag-sentence.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { SignalWord } from '../../ui/caution.tsx';
@@ -11,6 +12,7 @@ const ORDER: Record<FlagRow['level'], number> = { danger: 0, look: 1, note: 2 };
 export function Contradictions({ flags }: { flags: readonly FlagRow[] }) {
   const t = useMessages();
   const format = useFormat();
+  const sayFlag = useFlagSentence();
   const shown = [...flags].sort((a, b) => ORDER[a.level] - ORDER[b.level]);
   return (
     <Section title={t('today.contradicts')} count={flags.length > 0 ? format.number(flags.length) : undefined}>
@@ -28,7 +30,7 @@ export function Contradictions({ flags }: { flags: readonly FlagRow[] }) {
                     <SignalWord signal="danger" />
                   </span>
                 ) : null}
-                <span className="underline decoration-edge decoration-1 underline-offset-[3px]">{flag.message}</span>
+                <span className="underline decoration-edge decoration-1 underline-offset-[3px]">{sayFlag(flag)}</span>
               </span>
               <span className="type-label text-right text-ink-soft">{format.dateTime(flag.openedAt)}</span>
             </Link>

@@ -17,7 +17,7 @@ import { ToWeighBack } from './to-weigh-back.tsx';
 
 export async function loader({ request }: LoaderFunctionArgs) {
   await requireSession(request);
-  await loadMessages('today', 'log-screen');
+  await loadMessages('today', 'log-screen', 'flags');
   return { day: toDayInput(deviceNow()) };
 }
 

@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import { unitQueries } from '../../api/units.ts';
+import { useFlagSentence } from '../../lib/flag-sentence.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Part } from './part.tsx';
@@ -9,6 +10,7 @@ import { Part } from './part.tsx';
 export function OpenFlags({ unitId }: { unitId: string }) {
   const t = useMessages();
   const format = useFormat();
+  const sayFlag = useFlagSentence();
   const flags = useQuery(unitQueries.openFlags(unitId));
   if (!flags.data || flags.data.length === 0) return null;
   return (
@@ -21,7 +23,7 @@ export function OpenFlags({ unitId }: { unitId: string }) {
               className="grid min-h-12 grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-4 py-2.5 text-ink no-underline hover:bg-well"
             >
               <span className="leading-snug underline decoration-edge decoration-1 underline-offset-[3px]">
-                {flag.message}
+                {sayFlag(flag)}
               </span>
               <span className="type-label text-ink-soft">{format.dateTime(flag.openedAt)}</span>
             </Link>

@@ -17,7 +17,7 @@ import { UnitFacts } from './unit-facts.tsx';
 import { UnitLog } from './unit-log.tsx';
 
 export async function loader({ params, request }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('units-screen', 'log-screen')]);
+  await Promise.all([requireSession(request), loadMessages('units-screen', 'log-screen', 'flags')]);
   return queryClient.ensureQueryData(unitQueries.one(String(params.unitId)));
 }
 
