@@ -28,18 +28,21 @@ export function standingAround(place: string, group: readonly Moved[], all: read
       (Date.parse(entry.occurredAt) < time ||
         (Date.parse(entry.occurredAt) === time && entry.sequence < firstSequence)),
   );
-  const ownG = sumAt(
-    place,
-    group.filter(({ addedByServer }) => !addedByServer),
-  );
-  const foundG = sumAt(
-    place,
-    group.filter(({ addedByServer }) => addedByServer),
-  );
+  const own = group.filter(({ addedByServer }) => !addedByServer);
+  const found = group.filter(({ addedByServer }) => addedByServer);
+  const ownG = sumAt(place, own);
+  const foundG = sumAt(place, found);
   const beforeG = sumAt(place, earlier);
   const afterG = grams(beforeG + foundG + ownG);
   // Emptied, and less came out than the book held: the rest left as well, unseen.
-  if (ownG < 0 && foundG < 0) return { beforeG: grams(beforeG), afterG, lostG: grams(-foundG) };
+  const lostG =
+    ownG < 0
+      ? -sumAt(
+          place,
+          found.filter(({ to }) => to.place === 'atmosphere'),
+        )
+      : 0;
+  if (lostG > 0) return { beforeG: grams(beforeG + foundG + lostG), afterG, lostG: grams(lostG) };
   return { beforeG: grams(beforeG + foundG), afterG };
 }
 
