@@ -74,13 +74,16 @@ export function useRequestForm<V extends FieldValues>(spec: RequestFormSpec<V>) 
   }, [form]);
 
   /** Checks, then sends; what is refused stands beside its field and is read out first. */
-  const submit = (send: (request: never) => Promise<void>, wordsOf: (error: unknown) => readonly RequestError[]) =>
+  const submit = (
+    send: (request: never) => Promise<void>,
+    wordsOf: (error: unknown) => readonly RequestError[] | Promise<readonly RequestError[]>,
+  ) =>
     form.handleSubmit(
       async (values) => {
         try {
           await send(latest.current.toRequest(values as V).request as never);
         } catch (error) {
-          for (const said of wordsOf(error)) {
+          for (const said of await wordsOf(error)) {
             const field = fieldOf(latest.current.places(values as V), said.pointer);
             form.setError(field as Path<V>, { type: said.code, message: said.message });
           }
@@ -91,6 +94,17 @@ export function useRequestForm<V extends FieldValues>(spec: RequestFormSpec<V>) 
     );
   const forget = () => forgetDraft(latest.current.draftKey);
   return { form, submit, forget };
+}
+
+/**
+ * Lays what was typed over a newer version of what the form began with: a field that was not touched takes the newer
+ * value, the others keep what was typed.
+ */
+export function layOver<V extends FieldValues>(form: UseFormReturn<V>, before: V, newer: V): void {
+  const typed = form.getValues();
+  for (const name of Object.keys(newer) as Path<V>[]) {
+    if (JSON.stringify(typed[name]) === JSON.stringify(before[name])) form.setValue(name, newer[name]);
+  }
 }
 
 function fieldOf<V extends FieldValues>(places: ReturnType<RequestFormSpec<V>['places']>, pointer: string): string {

@@ -11,7 +11,7 @@ import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
 import { Page } from '../../ui/page.tsx';
-import { RequestForm, useRequestForm } from '../../ui/request-form.tsx';
+import { layOver, RequestForm, useRequestForm } from '../../ui/request-form.tsx';
 import { PlaceFields } from './site-fields.tsx';
 import { SITE_PLACES, type SiteValues, siteRequest, siteValues } from './site-values.ts';
 
@@ -28,7 +28,7 @@ export function Component() {
   const { locale, length } = usePreferences();
   const loaded = useLoaderData<typeof loader>();
   const site = useQuery({ ...siteQueries.one(loaded.id), initialData: loaded }).data;
-  const [before] = useState(() => siteValues(loaded, { locale, length }));
+  const [before, setBefore] = useState(() => siteValues(loaded, { locale, length }));
   const update = useUpdateSite({ id: site.id, version: site.version });
   const { form, submit, forget } = useRequestForm<SiteValues>({
     draftKey: `site.edit.${site.id}`,
@@ -50,9 +50,14 @@ export function Component() {
       forget();
       await navigate('/sites', { replace: true });
     },
-    (error) => {
+    async (error) => {
       if (error instanceof Problem && error.status === 412) {
-        void client.invalidateQueries({ queryKey: siteQueries.one(site.id).queryKey });
+        const newer = siteValues(await client.fetchQuery({ ...siteQueries.one(site.id), staleTime: 0 }), {
+          locale,
+          length,
+        });
+        layOver(form, before, newer);
+        setBefore(newer);
         return [{ pointer: '', code: error.code, message: t('units.edit.stale') }];
       }
       return answerErrors(error);

@@ -20,7 +20,7 @@ export function OnTheVan({ cylinders }: { cylinders: readonly Cylinder[] }) {
       title={t('today.onTheVan')}
       count={
         cylinders.length > 0
-          ? t('today.onTheVan.count', { count: cylinders.length, mass: format.mass(totalG) })
+          ? t('today.onTheVan.count', { count: cylinders.length, mass: format.massAbout(totalG) })
           : undefined
       }
     >
@@ -51,7 +51,7 @@ function CylinderOnVan({ cylinder }: { cylinder: Cylinder }) {
   const format = useFormat();
   const beamUnit = useBeamUnit();
   const { tag, tareG, contentG, limitG, refrigerant, mixed, retestDue } = cylinder;
-  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(Math.round(massG)) }) });
+  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.massAbout(massG) }) });
   const tare = said('today.beam.tare', tareG);
   const contents = said('today.beam.contents', contentG);
   const limit = limitG === null ? null : said('today.beam.limit', tareG + limitG);
@@ -69,7 +69,7 @@ function CylinderOnVan({ cylinder }: { cylinder: Cylinder }) {
             <strong className="text-[1.25rem] font-[680]">{tag}</strong>{' '}
             <span className="type-label text-ink-soft">{refrigerant}</span>
           </span>
-          <strong className="text-[1.25rem] font-[680]">{format.mass(contentG)}</strong>
+          <strong className="text-[1.25rem] font-[680]">{format.massAbout(contentG)}</strong>
         </span>
         {words.length > 0 ? <span className="block text-[0.9375rem] font-[600]">{words.join(' ')}</span> : null}
         <Beam

@@ -12,7 +12,7 @@ export function BookFigure({ unit }: { unit: Unit }) {
   const beamUnit = useBeamUnit();
   const { book, fullCharge, refrigerant } = unit;
   const shortG = fullCharge && book.known ? fullCharge.massG - book.massG : 0;
-  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(massG) }) });
+  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.massAbout(massG) }) });
   const bookPart = said(book.known ? 'units.beam.book' : 'units.beam.sum', book.massG);
   const lost = shortG > 0 ? said('units.beam.short', shortG) : null;
   const full = fullCharge ? said('units.beam.full', fullCharge.massG) : null;
@@ -23,21 +23,21 @@ export function BookFigure({ unit }: { unit: Unit }) {
         {t(book.known ? 'units.figure.book' : 'units.figure.notKnown', { refrigerant })}
       </p>
       {book.known ? (
-        <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">{format.mass(book.massG)}</p>
+        <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">{format.massAbout(book.massG)}</p>
       ) : (
         <p className="type-title pt-1 text-[1.75rem]">
-          {book.massG === 0 ? t('units.figure.nothing') : t('units.figure.sum', { mass: format.mass(book.massG) })}
+          {book.massG === 0 ? t('units.figure.nothing') : t('units.figure.sum', { mass: format.massAbout(book.massG) })}
         </p>
       )}
       {shortG > 0.5 ? (
-        <p className="pt-1 font-[600]">{t('units.figure.short', { mass: format.mass(shortG) })}</p>
+        <p className="pt-1 font-[600]">{t('units.figure.short', { mass: format.massAbout(shortG) })}</p>
       ) : null}
       {shortG < -0.5 ? (
-        <p className="pt-1 font-[600]">{t('units.figure.above', { mass: format.mass(-shortG) })}</p>
+        <p className="pt-1 font-[600]">{t('units.figure.above', { mass: format.massAbout(-shortG) })}</p>
       ) : null}
       {others.map((part) => (
         <p key={part.refrigerant} className="pt-1">
-          {t('units.figure.other', { mass: format.mass(part.massG), refrigerant: part.refrigerant })}
+          {t('units.figure.other', { mass: format.massAbout(part.massG), refrigerant: part.refrigerant })}
         </p>
       ))}
       {book.known || fullCharge || book.massG > 0 ? (

@@ -11,7 +11,7 @@ import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
 import { Page } from '../../ui/page.tsx';
-import { RequestForm, useRequestForm } from '../../ui/request-form.tsx';
+import { layOver, RequestForm, useRequestForm } from '../../ui/request-form.tsx';
 import { FormPart } from './form-part.tsx';
 import { ApplianceFields, NameFields, NameplateFields } from './plate-fields.tsx';
 import { changedUnitRequest, PLATE_PLACES, type PlateValues, plateOf, serialPlaces } from './unit-values.ts';
@@ -29,7 +29,7 @@ export function Component() {
   const preferences = usePreferences();
   const loaded = useLoaderData<typeof loader>();
   const unit = useQuery({ ...unitQueries.one(loaded.id), initialData: loaded }).data;
-  const [before] = useState(() => plateOf(loaded, preferences));
+  const [before, setBefore] = useState(() => plateOf(loaded, preferences));
   const update = useUpdateUnit({ id: unit.id, version: unit.version });
   const { form, submit, forget } = useRequestForm<PlateValues>({
     draftKey: `unit.edit.${unit.id}`,
@@ -44,10 +44,12 @@ export function Component() {
       forget();
       await navigate(`/units/${unit.id}`, { replace: true });
     },
-    (error) => {
-      // Changed by somebody else meanwhile: the newer version is read, so that the next press is made on it.
+    async (error) => {
+      // Changed by somebody else meanwhile: what was typed is laid over the newer version, on which the next press is made.
       if (error instanceof Problem && error.status === 412) {
-        void client.invalidateQueries({ queryKey: unitQueries.one(unit.id).queryKey });
+        const newer = await client.fetchQuery({ ...unitQueries.one(unit.id), staleTime: 0 });
+        layOver(form, before, plateOf(newer, preferences));
+        setBefore(plateOf(newer, preferences));
         return [{ pointer: '', code: error.code, message: t('units.edit.stale') }];
       }
       return answerErrors(error);

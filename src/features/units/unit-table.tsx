@@ -46,7 +46,8 @@ export function UnitTable({ units, loading, sort, onSort, to, more }: UnitListPr
         head: t('units.book'),
         unit: format.massUnit,
         figure: true,
-        cell: (unit) => (unit.book.known ? format.massFigure(unit.book.massG) : <Unknown text={t('units.notKnown')} />),
+        cell: (unit) =>
+          unit.book.known ? format.massFigure(Math.round(unit.book.massG)) : <Unknown text={t('units.notKnown')} />,
       },
     ],
     [t, format],

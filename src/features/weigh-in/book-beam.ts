@@ -20,9 +20,9 @@ export function bookBeam(
   const beforeG = emptied ? 0 : Math.max(unit.book.massG, 0);
   const afterG = beforeG + addedG;
   const known = emptied || unit.book.known;
-  const before = t(known ? 'weighIn.beam.bookBefore' : 'weighIn.beam.sumBefore', { mass: format.mass(beforeG) });
-  const added = t('weighIn.beam.added', { mass: format.mass(addedG) });
-  const after = t(known ? 'weighIn.beam.bookAfter' : 'weighIn.beam.sumAfter', { mass: format.mass(afterG) });
+  const before = t(known ? 'weighIn.beam.bookBefore' : 'weighIn.beam.sumBefore', { mass: format.massAbout(beforeG) });
+  const added = t('weighIn.beam.added', { mass: format.massAbout(addedG) });
+  const after = t(known ? 'weighIn.beam.bookAfter' : 'weighIn.beam.sumAfter', { mass: format.massAbout(afterG) });
   const full = fullChargeG === null ? null : t('weighIn.beam.full', { mass: format.mass(fullChargeG) });
   return {
     spec: {

@@ -39,7 +39,7 @@ export function Posted({
           {title ?? numbered}
         </h2>
         {intoUnitG > 0 ? (
-          <p className="type-figure pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">{format.mass(intoUnitG)}</p>
+          <p className="type-figure pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">{format.massAbout(intoUnitG)}</p>
         ) : null}
         {text ? <p className="pt-1 text-ink-soft">{text}</p> : null}
       </div>

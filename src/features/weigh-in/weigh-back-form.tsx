@@ -125,7 +125,7 @@ function Form({ group, open }: { group: GroupView; open: OpenStart }) {
       status={cylinder ? t('weighIn.cylinder', { tag: cylinder.tag }) : unit.refrigerant}
       next={
         <Button kind="act" wide busy={posting.busy} onClick={() => void press()}>
-          {body ? t('weighIn.review.post', { mass: format.mass(intoUnitG(body)) }) : t('weighIn.weighBack.act')}
+          {body ? t('weighIn.review.post', { mass: format.massAbout(intoUnitG(body)) }) : t('weighIn.weighBack.act')}
         </Button>
       }
     >

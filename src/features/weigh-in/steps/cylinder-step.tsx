@@ -58,7 +58,7 @@ export function CylinderStep({ weighIn, dispatch }: StepProps) {
       lead={
         wantedG === null
           ? t('weighIn.cylinder.lead', { refrigerant: unit.refrigerant })
-          : t('weighIn.cylinder.leadMass', { refrigerant: unit.refrigerant, mass: format.mass(wantedG) })
+          : t('weighIn.cylinder.leadMass', { refrigerant: unit.refrigerant, mass: format.massAbout(wantedG) })
       }
     >
       {failed ? <Failed error={failed.error} onRetry={failed.retry} /> : null}
@@ -101,7 +101,7 @@ function CylinderRow({ one, chosen, onChoose }: { one: JudgedCylinder; chosen: b
   const { cylinder, doubts, onVan } = one;
   const { contentG, tareG, limitG } = cylinder;
   // A limit is worked out from a density: its decimals mean nothing on a scale.
-  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(Math.round(massG)) }) });
+  const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.massAbout(massG) }) });
   const tare = said('weighIn.beam.tare', tareG);
   const contents = said('weighIn.beam.contents', contentG);
   const limit = limitG === null ? null : said('weighIn.beam.limit', tareG + limitG);
@@ -124,7 +124,7 @@ function CylinderRow({ one, chosen, onChoose }: { one: JudgedCylinder; chosen: b
           <span className="type-label font-[400] text-ink-soft">{cylinder.refrigerant}</span>
         </>
       }
-      aside={<strong className="text-ink">{format.mass(contentG)}</strong>}
+      aside={<strong className="text-ink">{format.massAbout(contentG)}</strong>}
       detail={words.length > 0 ? words.join(' ') : undefined}
       chosen={chosen}
       onChoose={onChoose}
@@ -145,7 +145,7 @@ function doubtText(
   format: Formats,
 ) {
   return t(`weighIn.doubt.${doubt}`, {
-    mass: format.mass(cylinder.contentG),
+    mass: format.massAbout(cylinder.contentG),
     date: cylinder.retestDue ? format.day(cylinder.retestDue) : '',
   });
 }

@@ -71,7 +71,7 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
       dispatch={dispatch}
       next={
         <Button kind="act" wide busy={posting.busy} onClick={() => void press()}>
-          {t('weighIn.review.post', { mass: format.mass(addedG) })}
+          {t('weighIn.review.post', { mass: format.massAbout(addedG) })}
         </Button>
       }
     >
@@ -79,7 +79,7 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
         <p className="type-label text-ink-soft">
           {t('weighIn.review.into', { unit: unit.tag, refrigerant: unit.refrigerant })}
         </p>
-        <p className="type-figure text-[clamp(2.5rem,14vw,4.25rem)] text-move">{format.mass(addedG)}</p>
+        <p className="type-figure text-[clamp(2.5rem,14vw,4.25rem)] text-move">{format.massAbout(addedG)}</p>
         <AgainstTarget
           weighIn={weighIn}
           addedG={addedG}
@@ -165,7 +165,7 @@ function AgainstTarget({ weighIn, addedG, toleranceOfG }: { weighIn: WeighIn; ad
   if (weighIn.target === null) return null;
   const targetG = Number(microgramsOfTyped(weighIn.target)) / 1e6;
   const over = Number((addedG - targetG).toFixed(3));
-  const mass = format.mass(Math.abs(over));
+  const mass = format.massAbout(Math.abs(over));
   const target = format.mass(targetG);
   const key = Math.abs(over) <= toleranceOfG ? (over === 0 ? 'exact' : 'within') : over > 0 ? 'over' : 'short';
   return <p className="pt-1 font-[600]">{t(`weighIn.review.${key}`, { mass, target })}</p>;
