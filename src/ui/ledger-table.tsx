@@ -1,8 +1,9 @@
 import { type ColumnDef, rowSortingFeature, type SortingState, tableFeatures, useTable } from '@tanstack/react-table';
-import { type KeyboardEvent, type ReactNode, type RefObject, useEffect, useMemo, useRef, useState } from 'react';
-import { Link, type To } from 'react-router-dom';
+import { type ReactNode, type RefObject, useEffect, useMemo, useRef } from 'react';
+import type { To } from 'react-router-dom';
 import { useMessages } from '../lib/messages.ts';
 import { Button } from './button.tsx';
+import { Opener, openRow, useRowKeys } from './ledger-rows.tsx';
 import { RowsSkeleton } from './notice.tsx';
 
 export interface LedgerColumn<Row> {
@@ -211,73 +212,6 @@ function SortMark({ direction }: { direction: false | 'asc' | 'desc' }) {
 function nextSort<Row>({ sort, firstDown }: LedgerColumn<Row>, direction: false | 'asc' | 'desc'): string {
   const down = direction === 'asc' || (direction === false && firstDown);
   return down ? `-${sort}` : (sort as string);
-}
-
-function Opener({
-  id,
-  tabbable,
-  to,
-  onOpen,
-  children,
-}: {
-  id: string;
-  tabbable: boolean;
-  to: To | undefined;
-  onOpen: () => void;
-  children: ReactNode;
-}) {
-  const shared = {
-    'data-row': id,
-    tabIndex: tabbable ? 0 : -1,
-    className:
-      'inline-flex min-h-12 min-w-12 items-center text-left desk:min-h-8 text-inherit no-underline [text-decoration:inherit]',
-  };
-  return to === undefined ? (
-    <button {...shared} type="button" onClick={onOpen}>
-      {children}
-    </button>
-  ) : (
-    <Link {...shared} to={to}>
-      {children}
-    </Link>
-  );
-}
-
-/** A press on a row is a press on its first cell, unless it hit another control or ended a selection of text. */
-function openRow(event: React.MouseEvent<HTMLTableRowElement>): void {
-  if ((event.target as Element).closest('a, button, input, select')) return;
-  if (window.getSelection()?.isCollapsed === false) return;
-  const opener = event.currentTarget.querySelector<HTMLElement>('[data-row]');
-  opener?.focus({ preventScroll: true });
-  opener?.click();
-}
-
-/** Puts the focus back on a row, once what it opened is closed. */
-export function focusRow(region: HTMLElement | null, id: string): void {
-  region?.querySelector<HTMLElement>(`[data-row="${CSS.escape(id)}"]`)?.focus();
-}
-
-function useRowKeys<Row extends object>({ rows, rowId, openId, more }: Props<Row>) {
-  const [active, setActive] = useState<string | null>(null);
-  const has = (id: string | null | undefined) => id != null && rows.some((row) => rowId(row) === id);
-  const tabbed = has(active) ? active : has(openId) ? openId : null;
-  return {
-    tabbable: (id: string, position: number) => (tabbed == null ? position === 0 : tabbed === id),
-    onFocus: (event: React.FocusEvent) => {
-      const id = (event.target as HTMLElement).dataset.row;
-      if (id !== undefined) setActive(id);
-    },
-    onKeyDown: (event: KeyboardEvent<HTMLTableSectionElement>) => {
-      if (event.altKey || event.ctrlKey || event.metaKey) return;
-      const all = [...event.currentTarget.querySelectorAll<HTMLElement>('[data-row]')];
-      const at = all.indexOf(event.target as HTMLElement);
-      const next = { ArrowDown: at + 1, ArrowUp: at - 1, Home: 0, End: all.length - 1 }[event.key];
-      if (at === -1 || next === undefined) return;
-      event.preventDefault();
-      if (next >= all.length && more?.has && !more.loading) more.load();
-      all[Math.max(0, Math.min(next, all.length - 1))]?.focus();
-    },
-  };
 }
 
 /** Loads when it comes into view; a button too, for those who do not scroll. */

@@ -9,7 +9,8 @@ import { requireSession, useOnHand, usePermission, useSession } from '../../api/
 import { useFormat } from '../../lib/format.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { ButtonLink } from '../../ui/button.tsx';
-import { focusRow, LedgerTable } from '../../ui/ledger-table.tsx';
+import { focusRow } from '../../ui/ledger-rows.tsx';
+import { LedgerTable } from '../../ui/ledger-table.tsx';
 import { Empty, Failed } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
 import { useLogColumns } from './log-columns.tsx';
