@@ -4,6 +4,9 @@ import type { TestContext } from 'vitest';
 import type { TestApp, TestPerson } from './app.ts';
 import { CHROMIUM } from './pictures.ts';
 
+/** Long enough for an answer to be drawn and to lead to the next request. */
+const QUIET_MS = 120;
+
 export interface VisitOptions {
   width?: number;
   height?: number;
@@ -17,11 +20,15 @@ export interface VisitOptions {
 export interface Visit {
   page: Page;
   context: BrowserContext;
+  /** Waits until nothing is asked for any more, the fonts are there and nothing stands in for what is still loading. */
+  atRest(): Promise<void>;
   /**
    * An answer of the server that this test provokes: the status and a part of the address. Any other refusal, console
    * error, thrown error or request to another site is a complaint.
    */
   expectRefusal(status: number, part: string): void;
+  /** Takes back what was complained about so far and fits: an error that this test planted. */
+  forgive(what: RegExp): void;
   complaints(): string[];
 }
 
@@ -40,8 +47,16 @@ export interface TestBrowser {
 export async function startBrowser(app: TestApp): Promise<TestBrowser> {
   const browser = await chromium.launch(CHROMIUM);
   let visits: Visit[] = [];
+  const cookies = new Map<string, Promise<SessionCookie>>();
+  /** Somebody signs in once for all their visits: a password takes long to check on purpose. */
+  const cookieOf = (person: TestPerson): Promise<SessionCookie> => {
+    const known = cookies.get(person.id) ?? signedInCookie(app, person);
+    cookies.set(person.id, known);
+    return known;
+  };
   const open = async (options: VisitOptions): Promise<Visit> => {
-    const visit = await startVisit(browser, app, options);
+    const cookie = options.as ? await cookieOf(options.as) : null;
+    const visit = await startVisit(browser, app, { ...options, cookie });
     visits.push(visit);
     return visit;
   };
@@ -64,8 +79,12 @@ export async function startBrowser(app: TestApp): Promise<TestBrowser> {
   };
 }
 
-async function startVisit(browser: Browser, app: TestApp, options: VisitOptions): Promise<Visit> {
-  const { width = 1440, height = 900, theme = 'light', locale = 'en-GB' } = options;
+async function startVisit(
+  browser: Browser,
+  app: TestApp,
+  options: VisitOptions & { cookie: SessionCookie | null },
+): Promise<Visit> {
+  const { width = 1440, height = 900, theme = 'light', locale = 'en-GB', cookie } = options;
   const context = await browser.newContext({
     viewport: { width, height },
     colorScheme: theme,
@@ -77,9 +96,9 @@ async function startVisit(browser: Browser, app: TestApp, options: VisitOptions)
     acceptDownloads: true,
   });
   await context.clock.setFixedTime(app.parts.now());
-  if (options.as) await context.addCookies([await cookieOf(app, options.as)]);
+  if (cookie) await context.addCookies([cookie]);
   const expected: { status: number; part: string }[] = [{ status: 401, part: '/api/v1/session' }];
-  const complaints: string[] = [];
+  let complaints: string[] = [];
   context.on('request', (request) => {
     if (!request.url().startsWith(app.url) && !/^(data|blob):/.test(request.url())) {
       complaints.push(`asked another site: ${request.url()}`);
@@ -96,17 +115,48 @@ async function startVisit(browser: Browser, app: TestApp, options: VisitOptions)
     if (message.type() === 'error' && !repeated) complaints.push(`console: ${message.text()}`);
   });
   context.on('weberror', (error) => complaints.push(`thrown: ${error.error()}`));
+  let underWay = 0;
+  let quietSince = Date.now();
+  const ended = () => {
+    underWay -= 1;
+    quietSince = Date.now();
+  };
+  context.on('request', () => {
+    underWay += 1;
+  });
+  context.on('requestfinished', ended);
+  context.on('requestfailed', ended);
   const page = await context.newPage();
   page.setDefaultTimeout(15_000);
   return {
     page,
     context,
+    async atRest() {
+      const loading = () =>
+        document.fonts.status !== 'loaded' ||
+        !document.querySelector('h1, h2') ||
+        document.querySelector('[aria-busy="true"]');
+      const until = Date.now() + 15_000;
+      while (underWay > 0 || Date.now() - quietSince < QUIET_MS || (await page.evaluate(loading))) {
+        if (Date.now() > until) throw new Error(`${page.url()} does not come to rest`);
+        await page.waitForTimeout(20);
+      }
+    },
     expectRefusal: (status, part) => void expected.push({ status, part }),
+    forgive: (what) => {
+      complaints = complaints.filter((each) => !what.test(each));
+    },
     complaints: () => [...complaints],
   };
 }
 
-async function cookieOf(app: TestApp, person: TestPerson) {
+interface SessionCookie {
+  name: string;
+  value: string;
+  url: string;
+}
+
+async function signedInCookie(app: TestApp, person: TestPerson): Promise<SessionCookie> {
   const { cookie } = await app.signIn(person);
   const [name = '', value = ''] = (cookie ?? '').split('=');
   return { name, value, url: app.url };
