@@ -36,6 +36,7 @@ const pages: RouteObject[] = [
   { path: 'sites/:siteId/edit', lazy: () => import('./features/sites/site-edit.route.tsx') },
   { path: 'units/:unitId/weigh-in', lazy: () => import('./features/weigh-in/weigh-in.route.tsx') },
   { path: 'weigh-back/:groupId', lazy: () => import('./features/weigh-in/weigh-back.route.tsx') },
+  { path: 'exports', lazy: () => import('./features/exports/exports.route.tsx') },
   { path: 'people', lazy: () => import('./features/people/people.route.tsx') },
   { path: 'tools', lazy: () => import('./features/registers/tools.route.tsx') },
   { path: 'parties', lazy: () => import('./features/registers/parties.route.tsx') },

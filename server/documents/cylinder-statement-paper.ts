@@ -60,7 +60,7 @@ export async function cylinderStatementPaper(
   else
     paper.table(
       [
-        { head: words.say('col.when'), width: 17 },
+        { head: words.say('col.when'), width: 21 },
         { head: words.say('col.what'), width: 24 },
         { head: words.say('col.otherEnd'), width: 22 },
         { head: words.say('col.mass', { unit: words.massUnit }), width: 11, align: 'right' },

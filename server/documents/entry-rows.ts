@@ -5,13 +5,13 @@ import type { Words } from './words.ts';
 /** Columns of a list of entries; what was typed stands beside the mass, because prints show it. */
 export const entryColumns = (words: Words): TableColumn[] => [
   { head: words.say('col.no'), width: 5, align: 'right' },
-  { head: words.say('col.when'), width: 15 },
-  { head: words.say('col.what'), width: 15 },
-  { head: words.say('col.fromTo'), width: 24 },
-  { head: words.say('col.refrigerant'), width: 9 },
+  { head: words.say('col.when'), width: 18 },
+  { head: words.say('col.what'), width: 14 },
+  { head: words.say('col.fromTo'), width: 23 },
+  { head: words.say('col.refrigerant'), width: 10 },
   { head: words.say('col.mass', { unit: words.massUnit }), width: 9, align: 'right' },
   { head: words.say('col.typed'), width: 10, align: 'right' },
-  { head: words.say('col.by'), width: 13 },
+  { head: words.say('col.by'), width: 12 },
 ];
 
 export function entryTableRow(words: Words, entry: EntryRow): TableRow {

@@ -173,7 +173,7 @@ export class Paper {
     const total = columns.reduce((sum, { width }) => sum + width, 0);
     const widths = columns.map(({ width }) => (width / total) * this.width);
     const lefts = widths.map((_, index) => this.left + widths.slice(0, index).reduce((sum, width) => sum + width, 0));
-    const gap = 6;
+    const gap = 9;
     const draw = (cells: readonly string[], style: TextStyle): void => {
       const { size = 9 } = style;
       const lines = cells.map((cell, at) =>
