@@ -26,10 +26,12 @@ export type WriteDocument = (
   stream: Writable,
 ) => Promise<number | null>;
 
+type Failure = 'noRights' | 'noSubject' | 'tooManyRows' | 'folder' | 'interrupted' | 'fault';
+
 /** A reason to give up that is no fault of the server: the code of its sentence, `export.problem.<code>`. */
 export class ExportRefusal extends Error {
   override readonly name = 'ExportRefusal';
-  constructor(readonly code: 'noRights' | 'noSubject' | 'tooManyRows' | 'folder' | 'interrupted' | 'fault') {
+  constructor(readonly code: Failure) {
     super(code);
   }
 }
@@ -86,7 +88,7 @@ export async function runExport(
 
 const PROGRAM = '00000000-0000-0000-0000-000000000000';
 
-const codeOf = (error: unknown): ExportRefusal['code'] => {
+const codeOf = (error: unknown): Failure => {
   if (error instanceof ExportRefusal) return error.code;
   return error instanceof FolderRefusal ? 'folder' : 'fault';
 };
