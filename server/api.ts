@@ -9,8 +9,10 @@ import { exportRoutes } from './exports/export.router.ts';
 import { flagRoutes } from './flags/flag.router.ts';
 import type { ApiRoutes } from './http/api-routes.ts';
 import type { Parts } from './http/parts.ts';
+import { importRoutes } from './imports/import.router.ts';
 import { jobRoutes } from './jobs/job.router.ts';
 import { partyRoutes } from './parties/party.router.ts';
+import { periodRoutes } from './periods/period.router.ts';
 import { journalRoutes } from './proof/journal.router.ts';
 import { proofPackageRoutes } from './proof/package.router.ts';
 import { referenceListRoutes } from './reference-lists/reference-list.router.ts';
@@ -38,8 +40,10 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   entryRoutes,
   flagRoutes,
   exportRoutes,
+  importRoutes,
   statementRoutes,
   bookRoutes,
+  periodRoutes,
   todayRoutes,
   referenceListRoutes,
   sealRoutes,

@@ -38,6 +38,9 @@ export function settlementRepository(manager: EntityManager) {
     async insert(row: SettlementRow): Promise<void> {
       await manager.getRepository(SettlementEntity).insert(row);
     },
+    async massOf(id: string): Promise<bigint> {
+      return (await manager.getRepository(SettlementEntity).findOneByOrFail({ id })).massMicrograms;
+    },
     /** Of differences that were judged in these cylinders and units, or in a reclaimer for this group. */
     async standingIn(placeIds: readonly string[], certificateGroupId: string | null): Promise<StandingSettlement[]> {
       const rows = await manager.query<Row[]>(

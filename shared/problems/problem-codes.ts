@@ -21,6 +21,7 @@ export const PROBLEM_STATUS = {
   exportNotDone: 409,
   exportExpired: 410,
   stale: 412,
+  seenChanged: 412,
   bodyTooLarge: 413,
   unsupportedMediaType: 415,
   requestNotValid: 422,
