@@ -13,11 +13,12 @@ import { ChargeSheetsPart } from './charge-sheets-part.tsx';
 import { FullChargePart } from './full-charge-part.tsx';
 import { LineSetPart } from './line-set-part.tsx';
 import { OpenFlags } from './open-flags.tsx';
+import { RecordLinks } from './record-links.tsx';
 import { UnitFacts } from './unit-facts.tsx';
 import { UnitLog } from './unit-log.tsx';
 
 export async function loader({ params, request }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('units-screen', 'log-screen', 'flags')]);
+  await Promise.all([requireSession(request), loadMessages('units-screen', 'log-screen', 'record-links', 'flags')]);
   return queryClient.ensureQueryData(unitQueries.one(String(params.unitId)));
 }
 
@@ -67,6 +68,7 @@ export function Component() {
               <ButtonLink className="min-h-14" to={`/units/${unit.id}/weigh-in`}>
                 {t('units.weighIn')}
               </ButtonLink>
+              <RecordLinks unitId={unit.id} />
             </div>
           ) : null}
           <OpenFlags unitId={unit.id} />

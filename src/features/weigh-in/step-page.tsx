@@ -11,11 +11,13 @@ interface Props extends StepProps {
   title?: string;
   lead?: ReactNode;
   next?: ReactNode;
+  /** The keys: under the rest on a phone, beside it on a desk. */
+  pad?: ReactNode;
   children: ReactNode;
 }
 
 /** One question a screen, with how far it has come, the way back, and the next action within reach of the thumb. */
-export function StepPage({ weighIn, dispatch, title, lead, next, children }: Props) {
+export function StepPage({ weighIn, dispatch, title, lead, next, pad, children }: Props) {
   const t = useMessages();
   const { unit, sheet, cylinderOf } = useWeighInData();
   const cylinder = weighIn.adding ? null : cylinderOf(weighIn.legs.at(-1)?.cylinderId ?? null);
@@ -32,12 +34,17 @@ export function StepPage({ weighIn, dispatch, title, lead, next, children }: Pro
       next={next}
     >
       {step > 0 ? <Steps step={step} count={steps.length} label={t('weighIn.progress')} /> : null}
-      <div className="page-gutter flex w-full max-w-2xl flex-col gap-3.5 pt-2.5">
-        <div ref={heading} tabIndex={-1} className={title || lead ? 'outline-none' : 'sr-only'}>
-          {title ? <h2 className="type-title text-[1.5rem] desk:text-[1.75rem]">{title}</h2> : null}
-          {lead ? <div className="pt-1.5 text-ink-soft">{lead}</div> : null}
+      <div
+        className={`page-gutter w-full pt-2.5 ${pad ? 'grid max-w-6xl gap-x-14 gap-y-3.5 lg:grid-cols-[minmax(0,1fr)_24rem]' : 'max-w-2xl'}`}
+      >
+        <div className="flex min-w-0 flex-col gap-3.5">
+          <div ref={heading} tabIndex={-1} className={title || lead ? 'outline-none' : 'sr-only'}>
+            {title ? <h2 className="type-title text-[1.5rem] desk:text-[1.75rem]">{title}</h2> : null}
+            {lead ? <div className="pt-1.5 text-ink-soft">{lead}</div> : null}
+          </div>
+          {children}
         </div>
-        {children}
+        {pad ? <div className="flex flex-col gap-3.5">{pad}</div> : null}
       </div>
     </Page>
   );

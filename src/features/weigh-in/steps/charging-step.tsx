@@ -48,6 +48,28 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
           {t('weighIn.charging.end')}
         </Button>
       }
+      pad={
+        <>
+          <NumberPad
+            reading={leg.now}
+            onChange={(reading) => {
+              setAsked(false);
+              dispatch({ type: 'keyNow', reading });
+            }}
+            beside={[
+              { label: t('weighIn.charging.change'), onPress: () => end(true) },
+              {
+                label: t('weighIn.charging.leaveOpen'),
+                onPress: () => dispatch({ type: 'leaveOpen' }),
+                disabled: leg.mode === 'zeroed',
+              },
+            ]}
+          />
+          {leg.mode === 'zeroed' ? (
+            <p className="text-[0.9375rem] text-ink-soft">{t('weighIn.charging.zeroedNotOpen')}</p>
+          ) : null}
+        </>
+      }
     >
       <div>
         <ReadingWindow
@@ -75,24 +97,6 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
       ) : (
         <Cautions refrigerant={unit.refrigerant} at="charging" />
       )}
-      <NumberPad
-        reading={leg.now}
-        onChange={(reading) => {
-          setAsked(false);
-          dispatch({ type: 'keyNow', reading });
-        }}
-        beside={[
-          { label: t('weighIn.charging.change'), onPress: () => end(true) },
-          {
-            label: t('weighIn.charging.leaveOpen'),
-            onPress: () => dispatch({ type: 'leaveOpen' }),
-            disabled: leg.mode === 'zeroed',
-          },
-        ]}
-      />
-      {leg.mode === 'zeroed' ? (
-        <p className="text-[0.9375rem] text-ink-soft">{t('weighIn.charging.zeroedNotOpen')}</p>
-      ) : null}
       {weighIn.purpose === 'adjust' ? <AdjustHelp /> : null}
     </StepPage>
   );

@@ -92,6 +92,12 @@ function GrossStart({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
           {t('weighIn.start.act')}
         </Button>
       }
+      pad={
+        <>
+          <NumberPad reading={leg.start} onChange={(reading) => dispatch({ type: 'keyStart', reading })} />
+          <Cautions refrigerant={unit.refrigerant} at="start" />
+        </>
+      }
     >
       <ReadingWindow
         label={t('weighIn.window')}
@@ -117,8 +123,6 @@ function GrossStart({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
           <p className="type-label text-ink-soft">{t('weighIn.start.neverWeighed')}</p>
         )}
       </div>
-      <NumberPad reading={leg.start} onChange={(reading) => dispatch({ type: 'keyStart', reading })} />
-      <Cautions refrigerant={unit.refrigerant} at="start" />
     </StepPage>
   );
 }
