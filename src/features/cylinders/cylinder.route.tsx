@@ -20,10 +20,14 @@ import { CylinderFacts } from './cylinder-facts.tsx';
 import { CylinderEntries, CylinderReadings } from './cylinder-history.tsx';
 import { dangersOf, marksOf } from './cylinder-marks.tsx';
 import { JudgedAgain } from './judged-again.tsx';
+import { RecordLinks } from './record-links.tsx';
 import { type CylinderFigures, useCylinderFigures } from './use-cylinder-figures.ts';
 
 export async function loader({ request, params }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('cylinders-screen', 'log-screen', 'server', 'stock-take')]);
+  await Promise.all([
+    requireSession(request),
+    loadMessages('cylinders-screen', 'log-screen', 'server', 'record-links', 'stock-take'),
+  ]);
   // A cylinder that is not there is the page's own "nothing here", with the frame around it.
   await queryClient.ensureQueryData(cylinderQueries.one(params.cylinderId ?? ''));
   return null;
@@ -105,6 +109,7 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
                   {t(`cylinders.action.${other}`)}
                 </Button>
               ))}
+              {mayPost ? <RecordLinks cylinderId={cylinder.id} /> : null}
             </div>
           ) : null}
           <CylinderFacts cylinder={cylinder} figures={figures} />

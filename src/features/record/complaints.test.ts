@@ -1,0 +1,115 @@
+import { describe, expect, it } from 'vitest';
+import { complaintsOf } from './complaints.ts';
+import type { Question } from './form.ts';
+import { recovery } from './forms/recovery.ts';
+import { transfer } from './forms/transfer.ts';
+import { answersOf, contextOf, grams, weighed } from './record.fixture.ts';
+import { rowDangers } from './row-dangers.ts';
+
+const rowsOf = (form: typeof recovery): Question =>
+  form.questions(answersOf({}), contextOf('S13.1')).find(({ is }) => is === 'rows') as Question;
+const keys = (question: Question, answers: Parameters<typeof answersOf>[0], id = 'S13.1') =>
+  complaintsOf(question, answersOf(answers), contextOf(id)).map(({ field, key }) => `${field} ${key}`);
+
+describe('A question', () => {
+  it('says at its blank what is missing', () => {
+    expect(keys(rowsOf(recovery), { rows: [weighed('', 0, null)] })).toEqual([
+      'rows.0.cylinderId record.need.cylinder',
+      'rows.0.after record.need.reading',
+    ]);
+    expect(keys({ is: 'unit', id: 'unit' }, { unitId: '' })).toEqual(['unitId record.need.unit']);
+  });
+
+  it('names both readings where a cylinder became lighter while it was filled', () => {
+    const answers = answersOf({ rows: [weighed('R1', 900, 100)] });
+    expect(complaintsOf(rowsOf(recovery), answers, contextOf('S13.1'))).toEqual([
+      { field: 'rows.0.after', key: 'record.wrong.lighter', params: { before: '8600 g', after: '7800 g' } },
+    ]);
+  });
+
+  it('takes one cylinder once', () => {
+    expect(keys(rowsOf(recovery), { rows: [weighed('R1', 0, 5), weighed('R1', 5, 9)] })).toEqual([
+      'rows.1.cylinderId record.wrong.twice',
+    ]);
+  });
+
+  it('leaves a value that cannot be read to its blank', () => {
+    const row = { ...weighed('R1', 0, 5), after: grams('twelve') };
+    expect(keys(rowsOf(recovery), { rows: [row] })).toEqual(['rows.0.after ']);
+  });
+});
+
+describe('What must not be done', () => {
+  /** Source: case S17.2. */
+  it('S17.2: refilling a non-refillable cylinder is stopped while it is planned, and asks its reason once it is done', () => {
+    const rows = [weighed('C1', 9500, 9100), weighed('N1', 0, 400)];
+    expect(keys(rowsOf(transfer), { rows }, 'S17.2')).toEqual(['happened record.danger.stopped']);
+    expect(keys(rowsOf(transfer), { rows, happened: true }, 'S17.2')).toEqual(['reason record.need.reason']);
+    expect(keys(rowsOf(transfer), { rows, happened: true, reason: 'no other' }, 'S17.2')).toEqual([]);
+  });
+
+  /** Source: case S18.2. */
+  it('S18.2: another refrigerant than the cylinder holds is seen as soon as the cylinder is chosen', () => {
+    const answers = answersOf({ rows: [weighed('R1', 4000, null)] });
+    expect(rowDangers(rowsOf(recovery), answers, contextOf('S18.2'))).toMatchObject([
+      { is: 'otherRefrigerant', holds: 'R-410A', comes: 'R-22' },
+    ]);
+  });
+
+  it('includes a fill past the limit, and a cylinder that cannot bear the pressure', () => {
+    const context = contextOf('S13.1');
+    const weak = {
+      ...context,
+      cylinder: (id: string) => {
+        const known = context.cylinder(id);
+        return known && { ...known, limitG: 500, pressureRatingHolds: false };
+      },
+    };
+    expect(
+      rowDangers(rowsOf(recovery), answersOf({ rows: [weighed('R1', 0, 501)] }), weak).map(({ is }) => is),
+    ).toEqual(['pressure', 'overLimit']);
+    expect(
+      rowDangers(rowsOf(recovery), answersOf({ rows: [weighed('R1', 0, 500)] }), weak).map(({ is }) => is),
+    ).toEqual(['pressure']);
+  });
+});
+
+/** Source: 40 CFR 82.156(a) Table 1: R-410A below 200 lb, 0 in Hg; at 200 lb and more, 10 in Hg. */
+describe('The level of a recovery that is completed', () => {
+  const level: Question = { is: 'level', id: 'level' };
+  const us = (lb: number) => {
+    const context = contextOf('S13.1');
+    const fullCharge = { massG: lb * 453.59237 } as never;
+    return { ...context, jurisdiction: 'US', unit: context.unit && { ...context.unit, fullCharge } };
+  };
+  const said = (lb: number, over: Parameters<typeof answersOf>[0]) =>
+    complaintsOf(level, answersOf({ choice: 'completed', ...over }), us(lb)).map(({ key }) => key);
+
+  it('is asked for, and refused where it is not deep enough unless another level applies', () => {
+    expect(said(250, {})).toEqual(['record.need.level']);
+    expect(said(250, { levelReached: '9.5' })).toEqual(['record.wrong.notDeep.inHgVacuum']);
+    expect(said(250, { levelReached: '10' })).toEqual([]);
+    expect(said(250, { levelReached: '2', levelException: 'leaking' })).toEqual([]);
+    expect(said(250, { levelReached: '2', levelException: 'other' })).toEqual(['record.need.reason']);
+    expect(said(3, { levelReached: '0' })).toEqual([]);
+    expect(said(3, { levelReached: 'deep' })).toEqual(['record.wrong.level']);
+  });
+
+  it('stands in the note with its clause, as required and as reached', () => {
+    const answers = answersOf({
+      rows: [weighed('R1', 0, 900)],
+      choice: 'completed',
+      levelReached: '10',
+      machineAge: 'newer',
+    });
+    expect(recovery.build(answers, us(250)).body.note).toContain('40 CFR 82.156(a), Table 1');
+    expect(recovery.build({ ...answers, choice: 'notCompleted' }, us(250)).body.note).toBeNull();
+  });
+
+  it('is asked of a completed recovery under that law alone', () => {
+    const asks = (over: Parameters<typeof answersOf>[0], jurisdiction: string) =>
+      recovery.questions(answersOf(over), { ...us(3), jurisdiction }).some(({ is }) => is === 'level');
+    expect([asks({ choice: 'completed' }, 'US'), asks({ choice: 'notCompleted' }, 'US')]).toEqual([true, false]);
+    expect(asks({ choice: 'completed' }, 'EU')).toBe(false);
+  });
+});

@@ -1,0 +1,126 @@
+import { useQuery } from '@tanstack/react-query';
+import { useCallback, useEffect, useMemo, useState } from 'react';
+import { usePostGroup, useReverseGroup } from '../../api/entries.ts';
+import { previewQueries, type ToPreview } from '../../api/entry-previews.ts';
+import { answerErrors, type FormError } from '../../api/form-errors.ts';
+import { useDraft } from '../../lib/draft.ts';
+import { deviceNow, toDayInput, toLocalInput } from '../../lib/local-time.ts';
+import { useMessages } from '../../lib/messages.ts';
+import { newId } from '../../lib/new-id.ts';
+import { usePreferences } from '../../lib/preferences.ts';
+import { type Answers, emptyAnswers, type MassUnit } from './answers.ts';
+import { type Complaint, complaintsOf } from './complaints.ts';
+import type { RecordForm } from './form.ts';
+import type { BuiltGroup } from './group-draft.ts';
+import { useFormContext } from './use-form-context.ts';
+
+/** Long enough that a figure is typed to its end before it is judged. */
+const SETTLES_MS = 350;
+
+/** The state of one form: what was typed, what is wrong with it, what it would post, and posting it. */
+export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId: string }) {
+  const t = useMessages();
+  const preferences = usePreferences();
+  const unit = (preferences.mass === 'lbOz' ? 'lb' : preferences.mass) as MassUnit;
+  const initial = useCallback((): Answers => {
+    const now = deviceNow();
+    const at = { local: toLocalInput(now), day: toDayInput(now) };
+    return emptyAnswers({ newId, unit, now: at, ...begin }, form.rows);
+  }, [unit, begin, form]);
+  const [answers, setAnswers, clear] = useDraft<Answers>(
+    `record.${form.kind}.${begin.unitId || begin.cylinderId}`,
+    initial,
+  );
+  const context = useFormContext(answers);
+  const questions = form.questions(answers, context);
+  const complaints = questions.map((question) => complaintsOf(question, answers, context));
+  const isWhole = complaints.every((found) => found.length === 0);
+  const nothing = form.nothingToPost?.(answers, context) ?? null;
+  const built = useMemo(() => form.build(answers, context), [form, answers, context]);
+  const asked = useSettled(useMemo(() => (isWhole && !nothing ? toPreview(built) : null), [isWhole, nothing, built]));
+  const preview = useQuery(previewQueries.of(asked));
+  const [refused, setRefused] = useState<FormError[]>([]);
+  const change = useCallback(
+    (part: Partial<Answers>) => {
+      setRefused([]);
+      setAnswers((now) => ({ ...now, ...part }));
+    },
+    [setAnswers],
+  );
+  const answerAsked = questions.some(({ is }) => is === 'fullness') || (preview.data?.questions.length ?? 0) > 0;
+  const staleAnswer = preview.isSuccess && !answerAsked && answers.answer !== null;
+  useEffect(() => {
+    // The masses changed and the unit is no longer in question: an answer that nobody sees is not posted.
+    if (staleAnswer) setAnswers((now) => ({ ...now, answer: null }));
+  }, [staleAnswer, setAnswers]);
+  const post = usePostGroup();
+  const reverse = useReverseGroup(built.reverses?.groupId ?? '');
+  const send = (onDone: () => void) => {
+    const deviceSentAt = deviceNow().toISOString();
+    const settled = {
+      onSuccess: () => {
+        clear();
+        onDone();
+      },
+      onError: (error: unknown) => setRefused(answerErrors(error)),
+    };
+    if (built.reverses) reverse.mutate({ ...reversalOf(built), deviceSentAt }, settled);
+    else post.mutate({ ...built.body, deviceSentAt }, settled);
+  };
+  const serverErrors = refused.length > 0 ? refused : preview.isError ? answerErrors(preview.error) : [];
+  const fieldOf = (pointer: string) =>
+    built.places.find(([place]) => pointer === place || pointer.startsWith(`${place}/`))?.[1];
+  return {
+    answers,
+    change,
+    context,
+    questions,
+    complaints,
+    isWhole,
+    nothing,
+    built,
+    /** Of what is on the screen now; a moment after a keystroke there is none. */
+    preview: asked !== null && sameBody(asked, built) ? preview : null,
+    isWaiting: isWhole && nothing === null && (preview.isFetching || asked === null || !sameBody(asked, built)),
+    send,
+    isSending: post.isPending || reverse.isPending,
+    startOver: clear,
+    errorAt: (field: string): string | undefined =>
+      serverErrors.find(({ pointer }) => fieldOf(pointer) === field)?.message,
+    errorsElsewhere: [
+      ...new Set(serverErrors.filter(({ pointer }) => !fieldOf(pointer)).map(({ message }) => message)),
+    ],
+    refused,
+    words: ({ key, params }: Complaint): string => (key ? t(key, params) : ''),
+  };
+}
+export type RecordState = ReturnType<typeof useRecord>;
+
+const reversalOf = ({ body, reverses }: BuiltGroup) => ({
+  groupId: reverses?.reversalId ?? '',
+  schema: 1 as const,
+  reason: reverses?.reason ?? '',
+  replacement: body,
+});
+
+const toPreview = (built: BuiltGroup): ToPreview =>
+  built.reverses
+    ? { is: 'reversal', groupId: built.reverses.groupId, body: reversalOf(built) }
+    : { is: 'group', body: built.body };
+
+const sameBody = (asked: ToPreview, built: BuiltGroup): boolean =>
+  JSON.stringify(asked) === JSON.stringify(toPreview(built));
+
+/** The value once it has not changed for a while; nothing to ask is known at once. */
+function useSettled(value: ToPreview | null): ToPreview | null {
+  const [settled, setSettled] = useState(value);
+  useEffect(() => {
+    if (value === null) {
+      setSettled(null);
+      return;
+    }
+    const timer = setTimeout(() => setSettled(value), SETTLES_MS);
+    return () => clearTimeout(timer);
+  }, [value]);
+  return settled;
+}
