@@ -3,6 +3,7 @@ import charge from './charge.en.json';
 import documents from './documents.en.json';
 import exports from './exports.en.json';
 import flags from './flags.en.json';
+import imports from './imports.en.json';
 import periods from './periods.en.json';
 import proof from './proof.en.json';
 import registers from './registers.en.json';
@@ -18,6 +19,7 @@ export const catalogueEn: Readonly<Record<string, string>> = {
   ...charge,
   ...documents,
   ...exports,
+  ...imports,
   ...flags,
   ...proof,
   ...periods,

@@ -3,6 +3,7 @@ import charge from './charge.es.json';
 import documents from './documents.es.json';
 import exports from './exports.es.json';
 import flags from './flags.es.json';
+import imports from './imports.es.json';
 import periods from './periods.es.json';
 import proof from './proof.es.json';
 import registers from './registers.es.json';
@@ -15,6 +16,7 @@ export const catalogueEs: Readonly<Record<string, string>> = {
   ...charge,
   ...documents,
   ...exports,
+  ...imports,
   ...flags,
   ...proof,
   ...periods,
