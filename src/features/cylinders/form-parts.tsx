@@ -1,6 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
 import type { ReactNode } from 'react';
+import type { Tool } from '../../../shared/tools/tools.schema.ts';
 import { errorsElsewhere, type FormError } from '../../api/form-errors.ts';
+import { useSession } from '../../api/session.ts';
 import { toolQueries } from '../../api/tools.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMedia } from '../../lib/media.ts';
@@ -16,17 +18,30 @@ export const MASS_UNITS = ['g', 'kg', 'lb', 'oz'] as const;
 /** The unit that a person's masses are typed in; pounds and ounces are typed as `11 lb 4.5 oz` in the field of pounds. */
 export const massUnitOf = (mass: 'g' | 'kg' | 'oz' | 'lbOz') => (mass === 'lbOz' ? 'lb' : mass);
 
-/** The scale of the reading; a scale that is not named counts as one of 5 g steps. */
-export function ScaleField({ value, onChange }: { value: string; onChange: (toolId: string) => void }) {
+/**
+ * The scale that a reading is taken with: the one chosen, else one's own, where there is just one. Null where none is
+ * named; it then counts as one of 5 g steps.
+ * @param chosen null: nothing chosen yet; empty: none
+ */
+export function useChosenScale(chosen: string | null): Tool | null {
+  const scales = useQuery(toolQueries.choice('scale')).data;
+  const me = useSession()?.person.id;
+  if (chosen !== null) return scales?.find(({ id }) => id === chosen) ?? null;
+  const own = scales?.filter(({ heldBy }) => heldBy === me) ?? [];
+  return own.length === 1 ? (own[0] ?? null) : null;
+}
+
+export function ScaleField({ scale, onChange }: { scale: Tool | null; onChange: (toolId: string) => void }) {
   const t = useMessages();
   const scales = useQuery(toolQueries.choice('scale'));
   return (
     <SelectField
       layout="row"
       label={t('cylinders.form.scale')}
+      hint={scale === null ? t('cylinders.form.noScaleHint') : undefined}
       placeholder={t('cylinders.form.noScale')}
       choices={scales.data?.map(({ id, name }) => ({ value: id, label: name })) ?? []}
-      value={value}
+      value={scale?.id ?? ''}
       onChange={(event) => onChange(event.target.value)}
     />
   );

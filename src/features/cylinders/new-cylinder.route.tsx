@@ -20,7 +20,7 @@ import { QuantityInput } from '../../ui/quantity-input.tsx';
 import { CollarFields, IdentityFields } from './collar-fields.tsx';
 import { CylinderPreview } from './cylinder-preview.tsx';
 import { fillDangers } from './fill-dangers.ts';
-import { DangerGate, FormFoot, MASS_UNITS, massUnitOf, ScaleField, WhenField } from './form-parts.tsx';
+import { DangerGate, FormFoot, MASS_UNITS, massUnitOf, ScaleField, useChosenScale, WhenField } from './form-parts.tsx';
 import { PURCHASE_PLACES, PurchaseFields } from './purchase-fields.tsx';
 import {
   beginningRequest,
@@ -67,6 +67,7 @@ export function Component() {
   const setWeighing = (change: Partial<RegisterDraft['weighing']>) =>
     setDraft((now) => ({ ...now, weighing: { ...now.weighing, ...change } }));
 
+  const tool = useChosenScale(draft.weighing.toolId);
   const read = readRegisterDraft(draft, preferences.locale);
   const massOf = (of: typeof read.tare) => (of.is === 'read' ? of.base : null);
   const figures = useCylinderFigures({
@@ -99,7 +100,10 @@ export function Component() {
 
   const send = async () => {
     const cylinder = cylinderRequest(draft, read);
-    const beginning = beginningRequest(draft, read, deviceNow().toISOString());
+    const beginning = beginningRequest(draft, read, {
+      toolId: tool?.id ?? null,
+      deviceSentAt: deviceNow().toISOString(),
+    });
     const found = [
       ...(draft.made ? [] : schemaErrors(createCylinderRequest, cylinder)),
       ...(beginning ? schemaErrors(entryGroupRequest, beginning) : []),
@@ -172,7 +176,7 @@ export function Component() {
                 error={errorAt(errors, '/readings/0') ? t('cylinders.form.readingNeeded') : undefined}
                 onChange={(gross) => setWeighing({ gross })}
               />
-              <ScaleField value={draft.weighing.toolId} onChange={(toolId) => setWeighing({ toolId })} />
+              <ScaleField scale={tool} onChange={(toolId) => setWeighing({ toolId })} />
               <WhenField
                 label={t('cylinders.form.readAt')}
                 value={draft.weighing.at}

@@ -22,7 +22,10 @@ const begin = (change: Partial<RegisterDraft> = {}): RegisterDraft => ({
 });
 const requests = (draft: RegisterDraft, locale = 'en-US') => {
   const read = readRegisterDraft(draft, locale);
-  return { cylinder: cylinderRequest(draft, read), beginning: beginningRequest(draft, read, SENT) };
+  return {
+    cylinder: cylinderRequest(draft, read),
+    beginning: beginningRequest(draft, read, { toolId: null, deviceSentAt: SENT }),
+  };
 };
 const complaints = (result: { error?: { issues: readonly { path: PropertyKey[] }[] } | undefined }) =>
   result.error?.issues.map(({ path }) => path.join('/')) ?? [];

@@ -25,7 +25,7 @@ export interface RegisterDraft {
   batch: string;
   begins: 'bought' | 'weighed' | 'empty';
   purchase: PurchaseDraft;
-  weighing: { groupId: string; readingId: string; gross: QuantityDraft<'mass'>; toolId: string; at: string };
+  weighing: { groupId: string; readingId: string; gross: QuantityDraft<'mass'>; toolId: string | null; at: string };
   /** The register has it; only the beginning of its content is still to be posted. */
   made: boolean;
 }
@@ -53,7 +53,7 @@ export function emptyRegisterDraft(
     batch: '',
     begins: 'bought',
     purchase: emptyPurchase(newId, units.mass, now),
-    weighing: { groupId: newId(), readingId: newId(), gross: emptyQuantity(units.mass), toolId: '', at: now.local },
+    weighing: { groupId: newId(), readingId: newId(), gross: emptyQuantity(units.mass), toolId: null, at: now.local },
     made: false,
   };
 }
@@ -102,7 +102,11 @@ export function cylinderRequest(draft: RegisterDraft, read: ReadDraft): z.input<
 }
 
 /** The first group of the cylinder; null where it begins empty. */
-export function beginningRequest(draft: RegisterDraft, read: ReadDraft, deviceSentAt: string): GroupRequest | null {
+export function beginningRequest(
+  draft: RegisterDraft,
+  read: ReadDraft,
+  { toolId, deviceSentAt }: { toolId: string | null; deviceSentAt: string },
+): GroupRequest | null {
   if (draft.begins === 'empty') return null;
   if (draft.begins === 'bought') return purchaseRequest(draft.purchase, draft, read.bought, deviceSentAt);
   const { weighing } = draft;
@@ -117,7 +121,7 @@ export function beginningRequest(draft: RegisterDraft, read: ReadDraft, deviceSe
       {
         id: weighing.readingId,
         cylinderId: draft.id,
-        toolId: weighing.toolId || null,
+        toolId,
         moment: 'only',
         mode: 'gross',
         value: typed.value,

@@ -1,4 +1,3 @@
-import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import { entryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
@@ -7,7 +6,6 @@ import { verdictOf } from '../../../shared/scale/reconcile.ts';
 import { microgramsOfGrams } from '../../../shared/units/mass.ts';
 import { usePostGroup } from '../../api/entries.ts';
 import { answerErrors, errorAt, type FormError, schemaErrors } from '../../api/form-errors.ts';
-import { toolQueries } from '../../api/tools.ts';
 import { useDraft } from '../../lib/draft.ts';
 import { useFormat } from '../../lib/format.ts';
 import { deviceNow, instantOfLocal, toLocalInput } from '../../lib/local-time.ts';
@@ -19,13 +17,14 @@ import { TextField } from '../../ui/field.tsx';
 import { Notice } from '../../ui/notice.tsx';
 import { emptyQuantity, type QuantityDraft, readQuantity } from '../../ui/quantity-draft.ts';
 import { QuantityInput } from '../../ui/quantity-input.tsx';
-import { FormFoot, MASS_UNITS, massUnitOf, ScaleField, WhenField } from './form-parts.tsx';
+import { FormFoot, MASS_UNITS, massUnitOf, ScaleField, useChosenScale, WhenField } from './form-parts.tsx';
 
 interface Draft {
   groupId: string;
   readingId: string;
   gross: QuantityDraft<'mass'>;
-  toolId: string;
+  /** Null: nothing chosen yet. */
+  toolId: string | null;
   at: string;
   reason: string;
 }
@@ -50,15 +49,15 @@ export function WeighForm({
     groupId: newId(),
     readingId: newId(),
     gross: emptyQuantity(massUnitOf(preferences.mass)),
-    toolId: '',
+    toolId: null,
     at: toLocalInput(deviceNow()),
     reason: '',
   }));
   const [errors, setErrors] = useState<FormError[]>([]);
-  const scales = useQuery(toolQueries.choice('scale'));
+  const tool = useChosenScale(draft.toolId);
   const reading = readQuantity('mass', draft.gross, { locale: preferences.locale });
   const grossG = reading.is === 'read' ? reading.base : null;
-  const scale = scales.data?.find(({ id }) => id === draft.toolId)?.scale ?? ASSUMED_SCALE;
+  const scale = tool?.scale ?? ASSUMED_SCALE;
   const reasonError = errorAt(errors, '/reason');
   const set = (change: Partial<Draft>) => setDraft((now) => ({ ...now, ...change }));
   const send = () => {
@@ -72,7 +71,7 @@ export function WeighForm({
         {
           id: draft.readingId,
           cylinderId: cylinder.id,
-          toolId: draft.toolId || null,
+          toolId: tool?.id ?? null,
           moment: 'only' as const,
           mode: 'gross' as const,
           value: reading.is === 'read' ? reading.typed.value : '',
@@ -120,7 +119,7 @@ export function WeighForm({
         error={errorAt(errors, '/readings/0/value')}
         onChange={(gross) => set({ gross })}
       />
-      <ScaleField value={draft.toolId} onChange={(toolId) => set({ toolId })} />
+      <ScaleField scale={tool} onChange={(toolId) => set({ toolId })} />
       <WhenField
         label={t('cylinders.form.readAt')}
         value={draft.at}

@@ -58,6 +58,7 @@ function answer(path: string, method: string, body: string | null): Response {
   return json({ items: [], nextCursor: null });
 }
 
+vi.setConfig({ testTimeout: 20_000 });
 beforeAll(startMessages);
 beforeEach(() => {
   [rows, groups, permissions, asked, posted] = [[], [], MANAGER, [], []];

@@ -49,10 +49,10 @@ function PlaceBeam({ place, group }: { place: EntryRow['from']; group: GroupView
     return standingBeam(
       standing,
       {
-        before: t('log.group.beam.before', { mass: format.mass(standing.beforeG) }),
-        after: t('log.group.beam.after', { mass: format.mass(standing.afterG) }),
-        lost: t('log.group.beam.lost', { mass: format.mass(standing.lostG ?? 0) }),
-        limit: limitG === null ? null : { massG: limitG, label: t(limitWords, { mass: format.mass(limitG) }) },
+        before: t('log.group.beam.before', { mass: format.massAbout(standing.beforeG) }),
+        after: t('log.group.beam.after', { mass: format.massAbout(standing.afterG) }),
+        lost: t('log.group.beam.lost', { mass: format.massAbout(standing.lostG ?? 0) }),
+        limit: limitG === null ? null : { massG: limitG, label: t(limitWords, { mass: format.massAbout(limitG) }) },
         limitKind: isCylinder ? 'stop' : 'target',
       },
       unit,
@@ -68,8 +68,8 @@ function PlaceBeam({ place, group }: { place: EntryRow['from']; group: GroupView
         spec={spec}
         summary={t('log.group.beamOf', {
           place: words,
-          before: format.mass(standing.beforeG),
-          after: format.mass(standing.afterG),
+          before: format.massAbout(standing.beforeG),
+          after: format.massAbout(standing.afterG),
         })}
       />
     </div>

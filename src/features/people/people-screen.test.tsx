@@ -75,6 +75,7 @@ function answer(path: string, method: string, body: string | null, version: stri
   return json({ items: [], nextCursor: null });
 }
 
+vi.setConfig({ testTimeout: 20_000 });
 beforeAll(startMessages);
 beforeEach(() => {
   [permissions, sent] = [OWNER, []];
