@@ -5,9 +5,9 @@ import type { Words } from './words.ts';
 /** Columns of a list of entries; what was typed stands beside the mass, because prints show it. */
 export const entryColumns = (words: Words): TableColumn[] => [
   { head: words.say('col.no'), width: 5, align: 'right' },
-  { head: words.say('col.when'), width: 18 },
+  { head: words.say('col.when'), width: 20 },
   { head: words.say('col.what'), width: 14 },
-  { head: words.say('col.fromTo'), width: 23 },
+  { head: words.say('col.fromTo'), width: 21 },
   { head: words.say('col.refrigerant'), width: 10 },
   { head: words.say('col.mass', { unit: words.massUnit }), width: 9, align: 'right' },
   { head: words.say('col.typed'), width: 10, align: 'right' },

@@ -101,10 +101,11 @@ function watchExport(parts: ExportParts, jobs: DataSource, row: ExportRow, stopp
   let total: number | null = null;
   let isEnded = false;
   let touching: Promise<void> = Promise.resolve();
+  // Only a statement of the jobs' own role can be cancelled by it.
+  const cancel = async () => void (pid !== null && (await jobs.query('select pg_cancel_backend($1)', [pid])));
   const end = async () => {
     isEnded = true;
-    // Only a statement of the jobs' own role can be cancelled by it.
-    if (pid !== null) await jobs.query('select pg_cancel_backend($1)', [pid]);
+    await cancel();
   };
   const touch = async () => {
     if (pid !== null) {
@@ -139,6 +140,7 @@ function watchExport(parts: ExportParts, jobs: DataSource, row: ExportRow, stopp
       rows = count;
       this.throwIfEnded();
     },
+    cancel,
     ended: () => isEnded,
     throwIfEnded() {
       if (isEnded) throw new NotWanted();
@@ -184,7 +186,7 @@ async function fill(
     const total = Number(counted?.count);
     if (request.format === 'xlsx' && total > XLSX_LARGEST_ROWS) throw new ExportRefusal('tooManyRows');
     watch.counted(total);
-    if (request.format === 'csv') return writeCsv(manager, rows, stream, (statement) => watch.running(statement));
+    if (request.format === 'csv') return writeCsv(manager, rows, stream, watch);
     return writeXlsx(manager, request.what, rows, stream, (count) => watch.reached(count));
   };
   try {
