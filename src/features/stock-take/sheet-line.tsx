@@ -33,7 +33,10 @@ export function SheetLine({
   return (
     <li className="grid gap-x-8 gap-y-1 border-b border-rule py-3 desk:grid-cols-[11rem_minmax(0,1fr)_minmax(0,1.2fr)] desk:items-start">
       <div className="flex items-baseline justify-between gap-4 desk:block">
-        <Link to={`/cylinders/${cylinder.id}`} className="text-[1.25rem] font-[680] text-ink">
+        <Link
+          to={`/cylinders/${cylinder.id}`}
+          className="inline-flex min-h-12 items-center text-[1.25rem] font-[680] text-ink"
+        >
           {tag}
         </Link>
         <span className="type-label text-ink-soft desk:block">
