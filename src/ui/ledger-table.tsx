@@ -50,6 +50,8 @@ interface Props<Row> {
   more?: { has: boolean; loading: boolean; load: () => void; label?: string; end?: ReactNode };
   /** The first page is on its way: rows of the same height stand in. */
   loading?: boolean;
+  /** Height of those rows, where they hold more than one line. */
+  loadingRow?: string;
   /** `own`: fills its flex parent and scrolls in itself both ways, so that head and first column stay on a phone too. */
   scroll?: 'page' | 'own';
   /** The element around the table, for `focusRow`. */
@@ -184,7 +186,7 @@ export function LedgerTable<Row extends object>(props: Props<Row>) {
           })}
         </tbody>
       </table>
-      {loading ? <RowsSkeleton rows={10} rowClass="h-12 desk:h-10" /> : null}
+      {loading ? <RowsSkeleton rows={10} rowClass={props.loadingRow ?? 'h-12 desk:h-10'} /> : null}
       {more?.has ? <More {...more} root={own ? region : null} /> : null}
       {more && !more.has && more.end ? (
         <p className={`type-label sticky left-0 py-4 text-ink-soft ${own ? 'page-gutter' : ''}`}>{more.end}</p>

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import { CONTENT_STATES, type Cylinder, updateCylinderRequest } from '../../../shared/cylinders/cylinder.schema.ts';
 import { useUpdateCylinder } from '../../api/cylinders.ts';
 import { answerErrors, errorAt, type FormError, schemaErrors } from '../../api/form-errors.ts';
+import { useDraft } from '../../lib/draft.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { SelectField, TextField } from '../../ui/field.tsx';
@@ -11,6 +12,35 @@ import { FormFoot, MASS_UNITS, massUnitOf } from './form-parts.tsx';
 
 const SHOWN = ['/tag', '/batch', '/retestDue', '/waterCapacity', '/servicePressureKPaGauge', '/contentState'];
 const PRESSURE_UNITS = ['psi', 'bar', 'kPa'] as const;
+
+interface Draft {
+  tag: string;
+  batch: string;
+  state: string;
+  retestDue: string;
+  capacity: QuantityDraft<'mass'>;
+  service: QuantityDraft<'pressureGauge'>;
+}
+
+function draftOf(
+  cylinder: Cylinder,
+  massUnit: (typeof MASS_UNITS)[number],
+  pressureUnit: (typeof PRESSURE_UNITS)[number],
+  locale: string,
+): Draft {
+  const { waterCapacityG, servicePressureKPaGauge } = cylinder;
+  return {
+    tag: cylinder.tag,
+    batch: cylinder.batch ?? '',
+    state: cylinder.contentState,
+    retestDue: cylinder.retestDue ?? '',
+    capacity: waterCapacityG === null ? emptyQuantity(massUnit) : quantityOf('mass', waterCapacityG, massUnit, locale),
+    service:
+      servicePressureKPaGauge === null
+        ? emptyQuantity<'pressureGauge'>(pressureUnit)
+        : quantityOf('pressureGauge', servicePressureKPaGauge, pressureUnit, locale),
+  };
+}
 
 /** What stands on the collar, corrected or renewed (a re-test, a new tag). What stays blank stays as it is. */
 export function ChangeForm({
@@ -26,21 +56,11 @@ export function ChangeForm({
   const { mass, pressure, locale } = usePreferences();
   const update = useUpdateCylinder(cylinder);
   const [errors, setErrors] = useState<FormError[]>([]);
-  const [tag, setTag] = useState(cylinder.tag);
-  const [batch, setBatch] = useState(cylinder.batch ?? '');
-  const [state, setState] = useState<string>(cylinder.contentState);
-  const [retestDue, setRetestDue] = useState(cylinder.retestDue ?? '');
-  const [capacity, setCapacity] = useState<QuantityDraft<'mass'>>(() =>
-    cylinder.waterCapacityG === null
-      ? emptyQuantity(massUnitOf(mass))
-      : quantityOf('mass', cylinder.waterCapacityG, massUnitOf(mass), locale),
+  const [draft, setDraft, clear] = useDraft<Draft>(`cylinder.${cylinder.id}.change.${cylinder.version}`, () =>
+    draftOf(cylinder, massUnitOf(mass), pressure === 'psig' ? 'psi' : pressure, locale),
   );
-  const [service, setService] = useState<QuantityDraft<'pressureGauge'>>(() => {
-    const unit = pressure === 'psig' ? 'psi' : pressure;
-    return cylinder.servicePressureKPaGauge === null
-      ? emptyQuantity<'pressureGauge'>(unit)
-      : quantityOf('pressureGauge', cylinder.servicePressureKPaGauge, unit, locale);
-  });
+  const set = (change: Partial<Draft>) => setDraft((now) => ({ ...now, ...change }));
+  const { tag, batch, state, retestDue, capacity, service } = draft;
   const send = () => {
     const typedCapacity = readQuantity('mass', capacity, { locale });
     const typedService = readQuantity('pressureGauge', service, { locale });
@@ -74,7 +94,10 @@ export function ChangeForm({
       return;
     }
     update.mutate(change, {
-      onSuccess: () => onDone(t('cylinders.change.done')),
+      onSuccess: () => {
+        clear();
+        onDone(t('cylinders.change.done'));
+      },
       onError: (error) => setErrors(answerErrors(error)),
     });
   };
@@ -93,7 +116,7 @@ export function ChangeForm({
         value={tag}
         maxLength={40}
         error={errorAt(errors, '/tag')}
-        onChange={(event) => setTag(event.target.value)}
+        onChange={(event) => set({ tag: event.target.value })}
       />
       <TextField
         layout="row"
@@ -101,7 +124,7 @@ export function ChangeForm({
         label={t('cylinders.retest')}
         value={retestDue}
         error={errorAt(errors, '/retestDue')}
-        onChange={(event) => setRetestDue(event.target.value)}
+        onChange={(event) => set({ retestDue: event.target.value })}
       />
       <QuantityInput
         kind="pressureGauge"
@@ -109,7 +132,7 @@ export function ChangeForm({
         units={PRESSURE_UNITS}
         draft={service}
         error={errorAt(errors, '/servicePressureKPaGauge') ? t('cylinders.form.pressureNeeded') : undefined}
-        onChange={setService}
+        onChange={(changed) => set({ service: changed })}
       />
       <QuantityInput
         kind="mass"
@@ -117,14 +140,14 @@ export function ChangeForm({
         units={MASS_UNITS}
         draft={capacity}
         error={errorAt(errors, '/waterCapacity') ? t('cylinders.form.massNeeded') : undefined}
-        onChange={setCapacity}
+        onChange={(changed) => set({ capacity: changed })}
       />
       <SelectField
         layout="row"
         label={t('cylinders.contentState')}
         choices={CONTENT_STATES.map((value) => ({ value, label: t(`cylinders.state.${value}`) }))}
         value={state}
-        onChange={(event) => setState(event.target.value)}
+        onChange={(event) => set({ state: event.target.value })}
       />
       <TextField
         layout="row"
@@ -132,7 +155,7 @@ export function ChangeForm({
         value={batch}
         maxLength={60}
         error={errorAt(errors, '/batch')}
-        onChange={(event) => setBatch(event.target.value)}
+        onChange={(event) => set({ batch: event.target.value })}
       />
       <FormFoot
         errors={errors}

@@ -79,6 +79,7 @@ export function CylinderTable({ cylinders, loading, sort, onSort, more }: Cylind
       onSort={onSort}
       more={more}
       loading={loading}
+      loadingRow="h-[4.75rem]"
     />
   );
 }
