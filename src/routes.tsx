@@ -41,6 +41,7 @@ const pages: RouteObject[] = [
   { path: 'record/:kind', lazy: () => import('./features/record/record-form.route.tsx') },
   { path: 'people', lazy: () => import('./features/people/people.route.tsx') },
   { path: 'tools', lazy: () => import('./features/registers/tools.route.tsx') },
+  { path: 'imports', lazy: () => import('./features/imports/imports.route.tsx') },
   { path: 'parties', lazy: () => import('./features/registers/parties.route.tsx') },
   { path: 'more', lazy: () => import('./features/session/more.route.tsx') },
   { path: 'preferences', lazy: () => import('./features/session/preferences.route.tsx') },

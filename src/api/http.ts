@@ -56,7 +56,9 @@ async function request<T>(method: string, path: string, body: unknown, options: 
     Accept: 'application/json, application/problem+json',
     'Accept-Language': readPreferences().locale,
   };
-  if (body !== undefined) headers['Content-Type'] = 'application/json';
+  // A form with a file names its own type, with the mark that separates its parts.
+  const isForm = body instanceof FormData;
+  if (body !== undefined && !isForm) headers['Content-Type'] = 'application/json';
   if (options.version !== undefined) headers['If-Match'] = `"${options.version}"`;
   let response: Response;
   try {
@@ -64,7 +66,7 @@ async function request<T>(method: string, path: string, body: unknown, options: 
       method,
       headers,
       credentials: 'same-origin',
-      body: body === undefined ? null : JSON.stringify(body),
+      body: body === undefined ? null : isForm ? body : JSON.stringify(body),
       signal: options.signal ?? null,
     });
   } catch (error) {

@@ -6,7 +6,7 @@ import { Failed } from '../../ui/notice.tsx';
 import { SessionPage } from './session-page.tsx';
 
 export async function loader() {
-  await loadMessages('session');
+  await loadMessages('session', 'imports');
   return null;
 }
 
@@ -16,12 +16,14 @@ export function Component() {
   const navigate = useNavigate();
   const session = useSession();
   const seesPeople = usePermission('people:read');
+  const mayImport = usePermission('registers:correct');
   const signOut = useSignOut();
   const leave = (everywhere: boolean) =>
     signOut.mutate({ everywhere }, { onSuccess: () => void navigate('/sign-in', { replace: true }) });
   const links = [
     ...(session ? [{ to: '/units', name: t('frame.units') }] : []),
     ...(seesPeople ? [{ to: '/people', name: t('frame.people') }] : []),
+    ...(mayImport ? [{ to: '/imports', name: t('imports.title') }] : []),
     { to: '/preferences', name: t('frame.preferences') },
     ...(session && session.firms.length > 1 ? [{ to: '/choose-firm', name: t('session.firm.title') }] : []),
     ...(session ? [] : [{ to: '/sign-in', name: t('frame.signIn') }]),

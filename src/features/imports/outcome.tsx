@@ -1,0 +1,89 @@
+import { useEffect, useRef } from 'react';
+import type { ImportError, ImportView } from '../../../shared/imports/import.schema.ts';
+import { answerErrors } from '../../api/form-errors.ts';
+import { importErrorsHref, isAtWork, useRefreshAfterImport, useRunImport } from '../../api/imports.ts';
+import { useMessages } from '../../lib/messages.ts';
+import { Button } from '../../ui/button.tsx';
+import { FieldError } from '../../ui/field.tsx';
+import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
+import { Done, Notice } from '../../ui/notice.tsx';
+
+/** What the check or the import came to: progress, errors by row and column, or the way on. */
+export function Outcome({ file }: { file: ImportView }) {
+  const t = useMessages();
+  const run = useRunImport(file.id);
+  const refresh = useRefreshAfterImport();
+  const refreshed = useRef(false);
+  useEffect(() => {
+    if (file.state !== 'done' || refreshed.current) return;
+    refreshed.current = true;
+    void refresh();
+  }, [file.state, refresh]);
+  if (file.state === 'read') return null;
+  if (isAtWork(file)) return <Progress file={file} />;
+  if (file.state === 'failed') return <Notice role="alert" title={t('imports.failed')} />;
+  if (file.state === 'done') {
+    return (
+      <div className="flex flex-col gap-3">
+        <Done>{file.made === 0 ? t('imports.doneNothing') : t('imports.done', { count: file.made })}</Done>
+        {file.already > 0 ? <p>{t('imports.already', { count: file.already })}</p> : null}
+      </div>
+    );
+  }
+  if (file.wrongRows > 0) return <Errors file={file} />;
+  return (
+    <div className="flex max-w-xl flex-col gap-3">
+      <p role="status" className="type-title text-[1.5rem]">
+        {t('imports.right', { count: file.made })}
+      </p>
+      {file.already > 0 ? <p>{t('imports.already', { count: file.already })}</p> : null}
+      {run.isError
+        ? answerErrors(run.error).map(({ message }) => <FieldError key={message}>{message}</FieldError>)
+        : null}
+      {file.made === 0 ? null : (
+        <Button kind="act" wide busy={run.isPending} onClick={() => run.mutate()}>
+          {t('imports.run', { count: file.made })}
+        </Button>
+      )}
+    </div>
+  );
+}
+
+function Progress({ file }: { file: ImportView }) {
+  const t = useMessages();
+  const words = t('imports.progress', { done: file.rowsDone, rows: file.read.rows });
+  return (
+    <div className="flex max-w-xl flex-col gap-2" aria-live="polite">
+      <p className="type-title text-[1.5rem]">{t(`imports.${file.state}`)}</p>
+      <progress
+        className="h-3 w-full accent-rest"
+        max={file.read.rows}
+        value={file.rowsDone}
+        aria-label={t(`imports.${file.state}`)}
+      />
+      <p className="text-ink-soft">{words}</p>
+    </div>
+  );
+}
+
+function Errors({ file }: { file: ImportView }) {
+  const t = useMessages();
+  const columns: LedgerColumn<ImportError & { id: string }>[] = [
+    { id: 'row', head: t('imports.row'), cell: ({ row }) => row, figure: true },
+    { id: 'column', head: t('imports.column'), cell: ({ column }) => column ?? t('imports.wholeRow') },
+    { id: 'given', head: t('imports.given'), cell: ({ given }) => given ?? '' },
+    { id: 'what', head: t('imports.what'), cell: ({ message }) => message },
+  ];
+  const rows = file.errors.map((error, at) => ({ ...error, id: `${error.row} ${error.column} ${at}` }));
+  return (
+    <div className="flex min-w-0 flex-col gap-3">
+      <Notice role="alert" title={t('imports.wrong', { count: file.wrongRows })}>
+        {t('imports.wrongText')}
+      </Notice>
+      <a href={importErrorsHref(file.id)} download className="inline-flex min-h-12 items-center self-start">
+        {t('imports.errorsFile')}
+      </a>
+      <LedgerTable caption={t('imports.what')} columns={columns} rows={rows} rowId={({ id }) => id} />
+    </div>
+  );
+}
