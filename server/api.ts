@@ -2,6 +2,7 @@ import { bookRoutes } from './books/books.router.ts';
 import { chargeSheetRoutes } from './charge-sheets/charge-sheet.router.ts';
 import { customerRoutes } from './customers/customer.router.ts';
 import { cylinderRoutes } from './cylinders/cylinder.router.ts';
+import { emissionRoutes } from './emissions/emission.router.ts';
 import { entryRoutes } from './entries/entry.router.ts';
 import { entryGroupRoutes } from './entries/entry-group.router.ts';
 import { entryPreviewRoutes } from './entry-previews/entry-preview.router.ts';
@@ -43,6 +44,7 @@ export const RESOURCES: readonly ((parts: Parts) => ApiRoutes)[] = [
   importRoutes,
   statementRoutes,
   bookRoutes,
+  emissionRoutes,
   periodRoutes,
   todayRoutes,
   referenceListRoutes,

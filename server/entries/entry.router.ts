@@ -1,7 +1,5 @@
 import {
   countedAdditionsResponse,
-  emissionsQuery,
-  emissionsResponse,
   entryExportQuery,
   entryListQuery,
   entryPage,
@@ -12,15 +10,7 @@ import {
 } from '../../shared/entries/entry.schema.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import {
-  exportEntries,
-  getCountedAdditions,
-  getEmissions,
-  getGroup,
-  getOnHand,
-  listEntries,
-  listReadings,
-} from './entry.service.ts';
+import { exportEntries, getCountedAdditions, getGroup, getOnHand, listEntries, listReadings } from './entry.service.ts';
 
 export function entryRoutes(parts: Parts): ApiRoutes {
   const routes = apiRoutes(parts, 'Log');
@@ -72,16 +62,6 @@ export function entryRoutes(parts: Parts): ApiRoutes {
       responses: { 200: countedAdditionsResponse },
     },
     async ({ actor, params }) => ok(await getCountedAdditions(parts, actor, params.id)),
-  );
-  routes.add(
-    {
-      ...reads,
-      path: '/emissions',
-      summary: 'What went to the atmosphere, by booking month',
-      query: emissionsQuery,
-      responses: { 200: emissionsResponse },
-    },
-    async ({ actor, query }) => ok(await getEmissions(parts, actor, query)),
   );
   routes.add(
     { ...reads, path: '/on-hand', summary: 'What is in cylinders', responses: { 200: onHand } },

@@ -1,15 +1,12 @@
 import type { Response } from 'express';
-import type { z } from 'zod';
 import type {
   EntryExportQuery,
   EntryListQuery,
-  emissionsQuery,
   GroupView,
   OnHand,
   ReadingListQuery,
 } from '../../shared/entries/entry.schema.ts';
 import { countedAdditions, fullChargeRises } from '../../shared/ledger/counted-additions.ts';
-import type { AtmosphereKind } from '../../shared/ledger/place.ts';
 import { dayInZone } from '../../shared/units/calendar.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { inFirm } from '../database/firm-scope.ts';
@@ -76,32 +73,6 @@ export function getCountedAdditions(parts: Parts, actor: Actor, unitId: string) 
         refrigerant: addition.refrigerant,
         putInG: gramsOfMicrograms(addition.putInMicrograms),
         countedG: gramsOfMicrograms(addition.countedMicrograms),
-      })),
-    };
-  });
-}
-
-export function getEmissions(parts: Parts, actor: Actor, { from, to }: z.output<typeof emissionsQuery>) {
-  return inFirm(parts.dataSource, actor, async (manager) => {
-    const rows = await manager.query<
-      { bookingMonth: string; refrigerant: string; as: AtmosphereKind; mass: string; atLeast: string }[]
-    >(
-      `select a.booking_month as "bookingMonth", a.refrigerant, a.as_kind as "as", sum(a.mass)::text as mass,
-          coalesce(sum(a.mass) filter (where a.at_least), 0)::text as "atLeast"
-        from (select booking_month, refrigerant, at_least, to_as as as_kind, mass_micrograms as mass
-            from entry where to_place = 'atmosphere'
-          union all select booking_month, refrigerant, at_least, from_as, -mass_micrograms
-            from entry where from_place = 'atmosphere') a
-        where ($1::text is null or a.booking_month >= $1) and ($2::text is null or a.booking_month <= $2)
-        group by 1, 2, 3 having sum(a.mass) <> 0 or coalesce(sum(a.mass) filter (where a.at_least), 0) <> 0
-        order by 1, 2, 3`,
-      [from ?? null, to ?? null],
-    );
-    return {
-      items: rows.map(({ mass, atLeast, ...row }) => ({
-        ...row,
-        massG: gramsOfMicrograms(BigInt(mass)),
-        atLeastG: gramsOfMicrograms(BigInt(atLeast)),
       })),
     };
   });

@@ -21,7 +21,12 @@ const periodFields = {
 export const ofPeriod = <T extends z.ZodType<{ from: string; to: string }>>(schema: T) =>
   schema.superRefine(({ from, to }, ctx) => {
     if (from > to) {
-      ctx.addIssue({ code: 'custom', path: ['to'], message: 'backwards', params: { code: 'periodBackwards' } });
+      ctx.addIssue({
+        code: 'custom',
+        path: ['to'],
+        message: 'backwards',
+        params: { code: 'periodBackwards', allowed: from },
+      });
     } else if (monthsApart(from, to) >= MOST_MONTHS) {
       const params = { code: 'periodTooLong', allowed: MOST_MONTHS };
       ctx.addIssue({ code: 'custom', path: ['to'], message: 'too long', params });

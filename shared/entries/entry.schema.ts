@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { GROUP_KINDS, READING_MODES, READING_MOMENTS } from '../ledger/entry-group.schema.ts';
 import { FLAG_CODES } from '../ledger/flag.ts';
-import { ATMOSPHERE_KINDS, PLACE_KINDS } from '../ledger/place.ts';
+import { PLACE_KINDS } from '../ledger/place.ts';
 import { flagText, id, instant, month, pageOf, pageQuery } from '../lists/list.schema.ts';
 
 /** One end of an entry as lists show it: the place and the words a person knows it by. */
@@ -192,18 +192,3 @@ export const countedAddition = z.strictObject({
   countedG: z.number(),
 });
 export const countedAdditionsResponse = z.strictObject({ unitId: id, items: z.array(countedAddition) });
-
-/** What went to the atmosphere, by booking month, refrigerant and how. Below zero where more was taken back. */
-export const emissionsQuery = z.strictObject({ from: month.optional(), to: month.optional() });
-export const emissionsResponse = z.strictObject({
-  items: z.array(
-    z.strictObject({
-      bookingMonth: month,
-      refrigerant: z.string(),
-      as: z.enum(ATMOSPHERE_KINDS),
-      massG: z.number(),
-      /** The part of it that is only "at least". */
-      atLeastG: z.number(),
-    }),
-  ),
-});

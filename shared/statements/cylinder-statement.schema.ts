@@ -16,10 +16,9 @@ export const statementQuery = z
     from: day.optional(),
     to: day.optional(),
   })
-  .refine(({ from, to }) => !from || !to || from <= to, {
-    path: ['to'],
-    message: 'the last day is not before the first',
-    params: { code: 'periodBackwards' },
+  .superRefine(({ from, to }, ctx) => {
+    if (!from || !to || from <= to) return;
+    ctx.addIssue({ code: 'custom', path: ['to'], message: 'backwards', params: { code: 'periodBackwards', allowed: from } });
   });
 export type StatementQuery = z.output<typeof statementQuery>;
 
