@@ -44,7 +44,7 @@ export function walkOf(page: Page, say: Words) {
       for (const digit of reading) await pad.getByRole('button', { name: digit, exact: true }).click();
     },
 
-    /** From the choice of the cylinder to its start reading: gross on scale 1, hose full with 28 g, lost at the end. */
+    /** From the choice of the cylinder to its start reading, to a known stop: gross on scale 1, a hose with 28 g, lost. */
     async startOnScale(cylinder: string, start: string) {
       await heading(say('weighIn.cylinder.title')).waitFor();
       await answer(cylinder).click();
@@ -54,8 +54,8 @@ export function walkOf(page: Page, say: Words) {
       await page.getByRole('radio', { name: say('weighIn.hose.full.yes') }).check();
       await box(say('weighIn.hose.content')).fill('28');
       await button(say('weighIn.goOn')).click();
-      if (await heading(say('weighIn.hosePlan.title', { hose: '28 g' })).isVisible())
-        await answer(say('weighIn.hoseEnd.lost')).click();
+      await heading(say('weighIn.hosePlan.title', { hose: '28 g' })).waitFor();
+      await answer(say('weighIn.hoseEnd.lost')).click();
       await this.keyIn(start);
       await button(say('weighIn.start.act')).click();
     },
