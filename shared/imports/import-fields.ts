@@ -71,8 +71,8 @@ export const IMPORT_FIELDS: Readonly<Record<ImportKind, readonly ImportField[]>>
 /** Words for what stands in a cell of a closed list; the list's own names are always taken. */
 export const CELL_WORDS: Readonly<Record<string, Readonly<Record<string, string>>>> = {
   kind: {
-    refillable: 'refillable|returnable|rellenable|retornable',
-    nonRefillable: 'non-refillable|non refillable|nonrefillable|disposable|no rellenable|desechable',
+    refillable: 'refillable|returnable|recargable|rellenable|retornable',
+    nonRefillable: 'non-refillable|non refillable|nonrefillable|disposable|no recargable|no rellenable|desechable',
     recovery: 'recovery|recovery cylinder|recuperacion|de recuperacion',
   },
   contentState: {

@@ -175,10 +175,9 @@ function TermsForm({ cylinderId, view, onDone }: { cylinderId: string; view: Ren
         send();
       }}
     >
-      <h2 className="type-title text-[1.25rem]">{t('rental.add')}</h2>
       {view.rental ? (
         <ChoiceField
-          label={t('rental.add')}
+          label={t('rental.what')}
           name="rental-what"
           value={draft.what}
           choices={[
@@ -187,7 +186,9 @@ function TermsForm({ cylinderId, view, onDone }: { cylinderId: string; view: Ren
           ]}
           onChange={(what) => set({ what: what as Draft['what'] })}
         />
-      ) : null}
+      ) : (
+        <h2 className="type-title text-[1.25rem]">{t('rental.add')}</h2>
+      )}
       <TextField
         layout="row"
         type="date"

@@ -40,7 +40,7 @@ export function Component() {
       }
     >
       <div className="page-gutter flex flex-col items-start gap-4 pt-4">
-        <div className="not-on-tag flex flex-wrap items-center gap-x-5 gap-y-2">
+        <div className="flex flex-wrap items-center gap-x-5 gap-y-2">
           <Button kind="act" onClick={() => window.print()}>
             {t('tag.print')}
           </Button>
