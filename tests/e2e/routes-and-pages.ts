@@ -44,6 +44,13 @@ export const ROUTE_PAGES: readonly RoutePage[] = [
   { route: '/log', path: () => '/log', who: 'owner' },
   { route: '/log/:groupId', path: ({ wrongGroupId }) => `/log/${wrongGroupId}`, who: 'owner' },
   { route: '/units', path: () => '/units', who: 'owner' },
+  { route: '/record', path: () => '/record', who: 'technician', field: true },
+  {
+    route: '/record/:kind',
+    path: (world) => `/record/relocation?unit=${world.unit.id}`,
+    who: 'technician',
+    field: true,
+  },
   { route: '/units/new', path: () => '/units/new', who: 'owner', types: [/^name/, 'roof, east'] },
   { route: '/units/:unitId', path: unit, who: 'owner' },
   { route: '/units/:unitId/edit', path: (world) => `${unit(world)}/edit`, who: 'owner', types: [/^name/, 'back room'] },

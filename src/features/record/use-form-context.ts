@@ -1,4 +1,4 @@
-import { useQuery } from '@tanstack/react-query';
+import { useQueries, useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { entryQueries } from '../../api/entries.ts';
@@ -19,10 +19,18 @@ export function useFormContext(answers: Answers): FormContext {
   const siteId = unit?.siteId ?? '';
   const site = useQuery({ ...siteQueries.one(siteId), enabled: siteId !== '' }).data;
   const cylinders = useQuery(cylinderQueries.choice()).data?.items;
+  // A choice lists the first of them; one that was chosen elsewhere is read by itself.
+  const chosen = useQueries({
+    queries: answers.rows
+      .map(({ cylinderId }) => cylinderId)
+      .filter((id) => id !== '' && cylinders !== undefined && !cylinders.some((cylinder) => cylinder.id === id))
+      .map((id) => cylinderQueries.one(id)),
+    combine: (results) => results.flatMap(({ data }) => (data ? [data] : [])),
+  });
   const machines = useQuery(toolQueries.choice('recoveryMachine')).data;
   const group = useQuery({ ...entryQueries.group(aboutGroupId), enabled: aboutGroupId !== '' }).data;
   return useMemo(() => {
-    const byId = new Map((cylinders ?? []).map((cylinder) => [cylinder.id, cylinder]));
+    const byId = new Map([...(cylinders ?? []), ...chosen].map((cylinder) => [cylinder.id, cylinder]));
     const bought = group?.entries.find(({ from, to }) => from.place === 'supplier' && to.place === 'cylinder');
     return {
       locale,
@@ -43,5 +51,11 @@ export function useFormContext(answers: Answers): FormContext {
       instant: (local) => instantOfLocal(local) ?? '',
       say: t,
     };
-  }, [locale, unit, site, cylinders, machines, machineId, group, t]);
+  }, [locale, unit, site, cylinders, chosen, machines, machineId, group, t]);
 }
+
+/** Whether everything that was chosen has been read: before that a form would build a request with holes. */
+export const isReady = ({ unitId, rows, aboutGroupId }: Answers, context: FormContext): boolean =>
+  (unitId === '' || (context.unit !== null && context.jurisdiction !== null)) &&
+  rows.every(({ cylinderId }) => cylinderId === '' || context.cylinder(cylinderId) !== undefined) &&
+  (aboutGroupId === '' || context.purchase !== null);

@@ -12,7 +12,7 @@ import { type Answers, emptyAnswers, type MassUnit } from './answers.ts';
 import { type Complaint, complaintsOf } from './complaints.ts';
 import type { RecordForm } from './form.ts';
 import type { BuiltGroup } from './group-draft.ts';
-import { useFormContext } from './use-form-context.ts';
+import { isReady, useFormContext } from './use-form-context.ts';
 
 /** Long enough that a figure is typed to its end before it is judged. */
 const SETTLES_MS = 350;
@@ -34,7 +34,7 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
   const context = useFormContext(answers);
   const questions = form.questions(answers, context);
   const complaints = questions.map((question) => complaintsOf(question, answers, context));
-  const isWhole = complaints.every((found) => found.length === 0);
+  const isWhole = isReady(answers, context) && complaints.every((found) => found.length === 0);
   const nothing = form.nothingToPost?.(answers, context) ?? null;
   const built = useMemo(() => form.build(answers, context), [form, answers, context]);
   const asked = useSettled(useMemo(() => (isWhole && !nothing ? toPreview(built) : null), [isWhole, nothing, built]));

@@ -15,7 +15,7 @@ export const foundEmpty: RecordForm = {
       options: ['foundFlat', 'open'],
       cautions: [{ signal: 'warning', key: 'record.caution.asphyxiation' }],
     },
-    { is: 'moment', id: 'moment' },
+    { is: 'moment', id: 'foundAt' },
   ],
   build: (answers, context) =>
     new GroupDraft('loss', answers, context)

@@ -215,7 +215,9 @@ function CylinderSelect({
 }) {
   const t = useMessages();
   const format = useFormat();
-  const cylinders = useQuery(cylinderQueries.choice()).data?.items ?? [];
+  const listed = useQuery(cylinderQueries.choice()).data?.items ?? [];
+  const own = context.cylinder(value);
+  const cylinders = own && !listed.some(({ id }) => id === own.id) ? [own, ...listed] : listed;
   const { direction } = question;
   const refrigerant = direction === 'into' || direction === 'outOf' ? (context.unit?.refrigerant ?? null) : null;
   const fits = (cylinder: (typeof cylinders)[number]) =>
