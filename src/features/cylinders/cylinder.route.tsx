@@ -170,6 +170,7 @@ function Content({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderF
 
 function Cautions({ cylinder }: { cylinder: Cylinder }) {
   const t = useMessages();
+  const mayPost = usePermission('entries:post');
   const marks = marksOf(cylinder, '');
   return (
     <>
@@ -180,7 +181,9 @@ function Cautions({ cylinder }: { cylinder: Cylinder }) {
       ))}
       {cylinder.openWeighInGroupId ? (
         <Notice title={t('cylinders.one.openWeighIn')}>
-          <Link to={`/weigh-back/${cylinder.openWeighInGroupId}`}>{t('cylinders.one.weighBack')}</Link>
+          {mayPost ? (
+            <Link to={`/weigh-back/${cylinder.openWeighInGroupId}`}>{t('cylinders.one.weighBack')}</Link>
+          ) : null}
         </Notice>
       ) : null}
       {marks.includes('neverWeighed') ? <Notice>{t('cylinders.one.neverWeighed')}</Notice> : null}

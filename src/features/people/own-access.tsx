@@ -20,7 +20,9 @@ export function OwnAccess() {
     <>
       {hasTokens ? <Tokens /> : null}
       <Section title={t('people.sessions')}>
-        <p className="max-w-prose text-ink-soft">{t('people.sessionsText')}</p>
+        <p className="max-w-prose text-ink-soft">
+          {[t('people.sessionsText'), ...(hasTokens ? [t('people.sessionsTokens')] : [])].join(' ')}
+        </p>
         {signOut.isError ? <Failed error={signOut.error} /> : null}
         <div className="flex flex-wrap gap-3">
           {asked ? (
