@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import type { LoaderFunctionArgs } from 'react-router-dom';
+import { Link, type LoaderFunctionArgs } from 'react-router-dom';
 import { requireSession, usePermission, useSession } from '../../api/session.ts';
 import { todayQueries } from '../../api/today.ts';
 import { useFormat } from '../../lib/format.ts';
@@ -17,7 +17,7 @@ import { ToWeighBack } from './to-weigh-back.tsx';
 
 export async function loader({ request }: LoaderFunctionArgs) {
   await requireSession(request);
-  await loadMessages('today', 'log-screen', 'flags');
+  await loadMessages('today', 'log-screen', 'record-links', 'flags');
   return { day: toDayInput(deviceNow()) };
 }
 
@@ -39,6 +39,13 @@ export function Component() {
       title={t('today.title')}
       status={<span>{at > 0 ? format.day(toDayInput(new Date(at))) : ''}</span>}
       {...(session ? { lead: t(isOffice ? 'today.leadOffice' : 'today.lead', { firm: session.firm.name }) } : {})}
+      actions={
+        mayPost ? (
+          <Link to="/record" className="inline-flex min-h-12 items-center">
+            {t('recordLinks.record')}
+          </Link>
+        ) : undefined
+      }
       next={
         mayPost && !isOffice ? (
           <ButtonLink kind="act" wide to="/units?then=charge">

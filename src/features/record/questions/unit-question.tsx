@@ -36,7 +36,7 @@ export function UnitQuestion({ answers, context, change, error }: Of<'unit'>) {
             {unit.fullCharge ? ` ${t('record.unit.full', { mass: format.mass(unit.fullCharge.massG) })}` : ''}
           </span>
         </p>
-        <Button kind="quiet" onClick={() => change({ unitId: '', jobId: '' })}>
+        <Button kind="quiet" className="shrink-0" onClick={() => change({ unitId: '', jobId: '' })}>
           {t('record.unit.other')}
         </Button>
       </div>
