@@ -1,14 +1,8 @@
 import { useCallback, useMemo } from 'react';
 import { forgetDraft, useDraft } from '../../lib/draft.ts';
 import { newId } from '../../lib/new-id.ts';
-import {
-  type Action,
-  type LegIds,
-  startWeighIn,
-  type WeighIn,
-  type WeighInStart,
-  weighInReducer,
-} from './weigh-in-state.ts';
+import { type Action, weighInReducer } from './weigh-in-reducer.ts';
+import { type LegIds, startWeighIn, type WeighIn, type WeighInStart } from './weigh-in-state.ts';
 
 export const newLegIds = (): LegIds => ({ before: newId(), after: newId(), mass: newId(), hose: newId() });
 

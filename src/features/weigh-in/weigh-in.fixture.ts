@@ -1,7 +1,8 @@
 import type { EntryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
 import { microgramsOfTyped } from '../../../shared/units/mass.ts';
 import { emptyReading, type Key, type KeyedReading, press, type ReadingUnit } from './scale-reading.ts';
-import { type Action, type Habits, startWeighIn, type WeighIn, weighInReducer } from './weigh-in-state.ts';
+import { type Action, weighInReducer } from './weigh-in-reducer.ts';
+import { type Habits, startWeighIn, type WeighIn } from './weigh-in-state.ts';
 
 /** Ids as the browser makes them (version 7), numbered so that a test can name them. */
 export const idOf = (n: number): string => `0193a000-0000-7000-8000-${String(n).padStart(12, '0')}`;
