@@ -26,4 +26,5 @@ export const AREAS: readonly Area[] = [
 ];
 
 /** On a phone what has no place in the bar stands under "more". */
-export const MORE = /^\/(more|units(?!.*\/(charge|weigh-in)$)|sites|people|preferences|choose-firm)/;
+export const MORE =
+  /^\/(more|units(?!.*\/(charge|weigh-in)$)|sites|people|tools|parties|exports|imports|preferences|choose-firm)/;

@@ -6,7 +6,7 @@ import { Failed } from '../../ui/notice.tsx';
 import { SessionPage } from './session-page.tsx';
 
 export async function loader() {
-  await loadMessages('session', 'imports');
+  await loadMessages('session', 'imports', 'exports-screen', 'people-screen');
   return null;
 }
 
@@ -23,6 +23,9 @@ export function Component() {
   const links = [
     ...(session ? [{ to: '/units', name: t('frame.units') }] : []),
     ...(seesPeople ? [{ to: '/people', name: t('frame.people') }] : []),
+    ...(seesPeople ? [{ to: '/tools', name: t('registers.tools.title') }] : []),
+    ...(seesPeople ? [{ to: '/parties', name: t('registers.parties.title') }] : []),
+    ...(session ? [{ to: '/exports', name: t('exports.title') }] : []),
     ...(mayImport ? [{ to: '/imports', name: t('imports.title') }] : []),
     { to: '/preferences', name: t('frame.preferences') },
     ...(session && session.firms.length > 1 ? [{ to: '/choose-firm', name: t('session.firm.title') }] : []),
