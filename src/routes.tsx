@@ -17,6 +17,7 @@ const pages: RouteObject[] = [
   { path: 'cylinders/scan', lazy: () => import('./features/stock-take/scan.route.tsx') },
   { path: 'cylinders/:cylinderId/tag', lazy: () => import('./features/stock-take/tag.route.tsx') },
   { path: 'cylinders/:cylinderId/rental', lazy: () => import('./features/stock-take/rental.route.tsx') },
+  { path: 'cylinders/:cylinderId/statement', lazy: () => import('./features/statement/statement.route.tsx') },
   { path: 'cylinders/:cylinderId', lazy: () => import('./features/cylinders/cylinder.route.tsx') },
   {
     path: 'log',

@@ -41,6 +41,7 @@ export const ROUTE_PAGES: readonly RoutePage[] = [
   { route: '/cylinders/scan', path: () => '/cylinders/scan', who: 'technician', field: true },
   { route: '/cylinders/:cylinderId/tag', path: ({ short }) => `/cylinders/${short.id}/tag`, who: 'owner' },
   { route: '/cylinders/:cylinderId/rental', path: ({ short }) => `/cylinders/${short.id}/rental`, who: 'owner' },
+  { route: '/cylinders/:cylinderId/statement', path: ({ short }) => `/cylinders/${short.id}/statement`, who: 'owner' },
   { route: '/log', path: () => '/log', who: 'owner' },
   { route: '/log/:groupId', path: ({ wrongGroupId }) => `/log/${wrongGroupId}`, who: 'owner' },
   { route: '/units', path: () => '/units', who: 'owner' },
