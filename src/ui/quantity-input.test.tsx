@@ -118,4 +118,19 @@ describe('A quantity field', () => {
     await userEvent.type(field(), '26');
     expect(screen.getByRole('alert')).toHaveTextContent('The manual allows 25 m.');
   });
+
+  it('names what was typed and what it takes before anything that is said of it from elsewhere', async () => {
+    const { rerender } = render(<Stored kind="mass" unit="g" units={['g', 'kg']} max={10_000} error="Not valid." />);
+    await userEvent.type(field(), '20 kg');
+    expect(screen.getByRole('alert')).toHaveTextContent('20,000 g is above the most, 10,000 g.');
+    await userEvent.clear(field());
+    await userEvent.type(field(), '0.001 t');
+    expect(screen.getByRole('alert')).toHaveTextContent('“t” is not a unit this field knows. It takes g, kg.');
+    rerender(<Stored kind="mass" unit="g" units={['g', 'kg']} max={10_000} />);
+    expect(screen.queryByRole('alert')).toBeNull();
+    await userEvent.clear(field());
+    await userEvent.type(field(), '5');
+    rerender(<Stored kind="mass" unit="g" units={['g', 'kg']} max={10_000} error="The scale says otherwise." />);
+    expect(screen.getByRole('alert')).toHaveTextContent('The scale says otherwise.');
+  });
 });

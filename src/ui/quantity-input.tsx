@@ -70,8 +70,10 @@ function QuantityInputOnce<Kind extends QuantityKind>(props: Props<Kind>) {
   );
   const reading = readQuantity(kind, draft, options);
   const own = ownError(props, reading, t, locale);
-  // Half a word is no mistake yet: the form of a value is judged when the field is left, its size at once.
-  const error = props.error ?? (reading.is === 'refused' && !left ? undefined : own);
+  // Half a word is no mistake yet: the form of a value is judged when the field is left, its size at once. What the field
+  // says itself names the value as it was typed, and goes before what is said of it from elsewhere.
+  const saysItself = own !== undefined && (left || reading.is !== 'refused' || props.error !== undefined);
+  const error = saysItself ? own : (unitNotOffered(props, reading, t, locale) ?? props.error);
   const understood = reading.is === 'read' ? understoodText(kind, draft.unit, reading, locale) : null;
   const metric = METRIC.has(draft.unit) && !allowNegative;
   return (
@@ -204,6 +206,20 @@ function WhichOne<Kind extends QuantityKind>({
       </div>
     </fieldset>
   );
+}
+
+/** A unit that can be read, but that what is asked for cannot be recorded in. Only once somebody has said so. */
+function unitNotOffered<Kind extends QuantityKind>(
+  { kind, units, error }: Props<Kind>,
+  reading: QuantityReading<Kind>,
+  t: Translate,
+  locale: string,
+): string | undefined {
+  if (error === undefined || reading.is !== 'read' || units.includes(reading.typed.unit)) return undefined;
+  return t('ui.quantity.unknownUnit', {
+    typed: unitSymbol(kind, reading.typed.unit, locale),
+    units: units.map((unit) => unitSymbol(kind, unit, locale)).join(', '),
+  });
 }
 
 /** Without grouping, so that the two answers cannot look like what was typed. */

@@ -131,6 +131,8 @@ export function ChangeForm({
         label={t('cylinders.pressure')}
         units={PRESSURE_UNITS}
         draft={service}
+        min={0.1}
+        max={30_000}
         error={errorAt(errors, '/servicePressureKPaGauge') ? t('cylinders.form.pressureNeeded') : undefined}
         onChange={(changed) => set({ service: changed })}
       />
@@ -139,6 +141,7 @@ export function ChangeForm({
         label={t('cylinders.waterCapacity')}
         units={MASS_UNITS}
         draft={capacity}
+        min={0.001}
         error={errorAt(errors, '/waterCapacity') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(changed) => set({ capacity: changed })}
       />

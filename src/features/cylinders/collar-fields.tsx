@@ -125,6 +125,7 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         label={t('cylinders.tare')}
         units={MASS_UNITS}
         draft={draft.tare}
+        min={0.001}
         error={errorAt(errors, '/tare/mass') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(tare) => onChange({ tare })}
       />
@@ -146,6 +147,7 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         }
         units={MASS_UNITS}
         draft={draft.waterCapacity}
+        min={0.001}
         error={errorAt(errors, '/waterCapacity') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(waterCapacity) => onChange({ waterCapacity })}
       />
@@ -155,6 +157,7 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         hint={t('cylinders.new.ifStamped')}
         units={MASS_UNITS}
         draft={draft.stampedLimit}
+        min={0.001}
         error={errorAt(errors, '/stampedLimit') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(stampedLimit) => onChange({ stampedLimit })}
       />
@@ -172,6 +175,8 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         }
         units={['psi', 'bar', 'kPa']}
         draft={draft.servicePressure}
+        min={0.1}
+        max={30_000}
         error={errorAt(errors, '/servicePressureKPaGauge') ? t('cylinders.form.pressureNeeded') : undefined}
         onChange={(servicePressure) => onChange({ servicePressure })}
       />

@@ -45,6 +45,7 @@ export function PurchaseFields({
         label={t('cylinders.buy.mass')}
         units={MASS_UNITS}
         draft={draft.mass}
+        min={0.001}
         error={errorAt(errors, '/entries/0/mass') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(mass) => onChange({ mass })}
       />

@@ -81,6 +81,7 @@ export function TareForm({
         label={t('cylinders.tare.new')}
         units={MASS_UNITS}
         draft={draft.tare}
+        min={0.001}
         error={errorAt(errors, '/tare') ? t('cylinders.form.massNeeded') : undefined}
         onChange={(value) => set({ tare: value })}
       />
