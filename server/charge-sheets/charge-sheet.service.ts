@@ -2,6 +2,7 @@ import type { EntityManager } from 'typeorm';
 import type { z } from 'zod';
 import { chargeCalculation } from '../../shared/charge/charge-calculation.ts';
 import type { ChargeSheet, createChargeSheetRequest } from '../../shared/charge-sheets/charge-sheet.schema.ts';
+import { checkRoomOfSheet } from '../../shared/charge-sheets/room-of-sheet.ts';
 import type { PageQuery } from '../../shared/lists/list.schema.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
@@ -17,6 +18,7 @@ const REFERENCES = { charge_sheet_unit_fkey: '', charge_sheet_job_fkey: '/jobId'
 /**
  * Freezes a calculation: the server works it out again from the request, so that a sheet never holds a figure that its
  * inputs do not give. Never changed afterwards.
+ * @throws Problem 422, also where the charge is over what the room takes
  */
 export function createChargeSheet(
   parts: Parts,
@@ -30,6 +32,9 @@ export function createChargeSheet(
     throw problemOfRefusals(calculated.refusals.map((refusal) => ({ ...refusal, path: `/request${refusal.path}` })));
   }
   const result = chargeCalculation.present(calculated.value, (key, params) => messageFor(key, actor.locale, params));
+  const { refrigerant } = request.basis;
+  const fits = checkRoomOfSheet({ refrigerant, result, room }, parts.reference);
+  if (!fits.ok) throw problemOfRefusals(fits.refusals);
   const madeAt = parts.now();
   const row = {
     firmId: actor.firmId,

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { chargeBasis, chargeRequest, chargeResponse } from '../charge/charge.schema.ts';
 import { id, instant, pageOf, shortText } from '../lists/list.schema.ts';
+import { roomLimitRequest } from '../room-limit/room-limit.schema.ts';
 
 /** Where the manual says it: the document, its page, and a photo's hash when there is one. */
 export const manualReference = z.strictObject({ document: shortText(160), page: shortText(20).nullish() });
@@ -27,6 +28,8 @@ export type StoredChargeBasis = z.output<typeof storedChargeBasis>;
 export const chargeRoom = z.strictObject({
   areaM2: z.number().positive().max(100_000),
   mounting: z.enum(['floor', 'window', 'wall', 'ceiling']),
+  standard: roomLimitRequest.shape.standard,
+  manualTable: roomLimitRequest.shape.manualTable,
 });
 
 /** A charge sheet freezes inputs, result and versions. It is calculated by the server from `request` and never changed. */

@@ -80,6 +80,35 @@ describe('A charge sheet', () => {
     expect((await ledger.client.get(`/charge-sheets/${body.id}`)).status).toBe(404);
   });
 
+  /**
+   * 1,200 + 42.5 x 20 = 2,050 g of R-32 is above m1 (1,842 g); 3 m2 at 1.8 m take 0.75 x 0.307 x 1.8 x 3 = 1.243 kg, so
+   * m1 (IEC 60335-2-40:2018, Annex GG, linear cap). The manual's own table goes before the standard.
+   */
+  it('is not made over what the smallest room takes; the manual’s own table decides where there is one', async () => {
+    const { id: unitId } = await unit();
+    const long = request(50);
+    long.basis.limits.maxLengthM = 60;
+    const inRoom = (room: Record<string, unknown>) => sheet({ request: long, room: { mounting: 'wall', ...room } });
+    const post = (body: object) => ledger.client.post(`/units/${unitId}/charge-sheets`, body);
+
+    const over = inRoom({ areaM2: 3 });
+    const answer = await post(over);
+    expect(answer.status).toBe(422);
+    expect(answer.body.errors).toMatchObject([{ code: 'overRoomLimit', path: '/room', given: 2050, allowed: 1842 }]);
+    expect((await ledger.client.get(`/charge-sheets/${over.id}`)).status).toBe(404);
+
+    expect((await post(inRoom({ areaM2: 18 }))).status).toBe(201);
+    const table = (minimumAreaM2: number) => [{ chargeG: 2100, minimumAreaM2 }];
+    const allowed = await post(inRoom({ areaM2: 3, manualTable: table(2.5) }));
+    expect([allowed.status, allowed.body.room?.manualTable]).toEqual([201, table(2.5)]);
+    expect((await post(inRoom({ areaM2: 18, manualTable: table(20) }))).body.errors).toMatchObject([
+      { code: 'overRoomLimit', path: '/room' },
+    ]);
+    expect(
+      (await post(inRoom({ areaM2: 18, manualTable: [{ chargeG: 2000, minimumAreaM2: 5 }] }))).body.errors,
+    ).toMatchObject([{ code: 'tableEndsShort', path: '/room/manualTable', given: 2050, allowed: 2000 }]);
+  });
+
   it('cannot be changed or removed, whoever asks', async () => {
     const { id: unitId } = await unit();
     const body = sheet();

@@ -16,6 +16,7 @@ import { type ChargeDraft, fieldUnits } from './charge-draft.ts';
 import { ChargePage, type ChargeState } from './charge-page.tsx';
 import { CylinderChoice } from './cylinder-choice.tsx';
 import { draftOfUnit } from './unit-draft.ts';
+import { roomTableOf } from './use-room.ts';
 
 export async function loader({ request, params }: LoaderFunctionArgs) {
   const unitId = params.unitId ?? '';
@@ -43,7 +44,7 @@ export function Component() {
   // A newer basis or line set begins a new draft: what was typed over the old one must not hide it.
   const key = `charge.${unit.id}.${basis?.id ?? ''}.${lineSet?.id ?? ''}`;
   const [draft, setDraft, clear] = useDraft<ChargeDraft>(key, initial);
-  const { keep, kept, save } = useKeptSheet(unit.id, draft);
+  const { keep, isKeptNow, save } = useKeptSheet(unit.id, draft);
 
   const begin = async (request: ChargeRequest) => {
     const sheetId = await keep(request);
@@ -56,7 +57,7 @@ export function Component() {
   const next = ({ answer, overRoom }: ChargeState) => {
     if (!mayKeep || answer.is !== 'done') return null;
     const { request, result } = answer;
-    const isKept = kept?.text === JSON.stringify(request);
+    const isKept = isKeptNow(request);
     return (
       <div className="flex flex-col gap-2">
         {save.isError ? <Failed title={t('chargeScreen.unit.notSaved')} error={save.error} /> : null}
@@ -114,26 +115,32 @@ function useKeptSheet(unitId: string, draft: ChargeDraft) {
   const ids = useRef(new Map<string, string>());
   const [kept, setKept] = useState<{ id: string; text: string } | null>(null);
 
-  const keep = async (request: ChargeRequest): Promise<string | null> => {
-    const text = JSON.stringify(request);
-    if (kept?.text === text) return kept.id;
-    const id = ids.current.get(text) ?? newId();
-    ids.current.set(text, id);
+  const contentOf = (request: ChargeRequest) => {
     const areaM2 = baseOf('area', draft.roomArea, { locale });
     const document = draft.document.trim();
     const page = draft.page.trim();
+    const { mounting, roomStandard: standard } = draft;
+    return {
+      request,
+      manual: document === '' ? null : { document, page: page === '' ? null : page },
+      room: areaM2 === null ? null : { areaM2, mounting, standard, manualTable: roomTableOf(draft, locale) },
+    };
+  };
+
+  const keep = async (request: ChargeRequest): Promise<string | null> => {
+    const content = contentOf(request);
+    const text = JSON.stringify(content);
+    if (kept?.text === text) return kept.id;
+    const id = ids.current.get(text) ?? newId();
+    ids.current.set(text, id);
     try {
-      await save.mutateAsync({
-        id,
-        request,
-        manual: document === '' ? null : { document, page: page === '' ? null : page },
-        room: areaM2 === null ? null : { areaM2, mounting: draft.mounting },
-      });
+      await save.mutateAsync({ id, ...content });
     } catch {
       return null; // shown from `save.error`; everything typed stays
     }
     setKept({ id, text });
     return id;
   };
-  return { keep, kept, save };
+  const isKeptNow = (request: ChargeRequest) => kept?.text === JSON.stringify(contentOf(request));
+  return { keep, isKeptNow, save };
 }

@@ -11,6 +11,19 @@ interface Judge {
 }
 let fetched: Judge | undefined;
 
+/** The rows of the manual's table that are whole; null: none. */
+export function roomTableOf({ roomTable }: Pick<ChargeDraft, 'roomTable'>, locale: string) {
+  const rows = roomTable
+    .map((row) => ({
+      chargeG: baseOf('mass', row.charge, { locale }),
+      minimumAreaM2: baseOf('area', row.area, { locale }),
+    }))
+    .filter(
+      (row): row is { chargeG: number; minimumAreaM2: number } => row.chargeG !== null && row.minimumAreaM2 !== null,
+    );
+  return rows.length > 0 ? rows : null;
+}
+
 /** The room's verdict on this charge; null where no room is given, or its rules are still on their way. */
 export function useRoom(draft: ChargeDraft, totalG: number | null): RoomLimitResponse | null {
   const { locale } = usePreferences();
@@ -35,14 +48,6 @@ export function useRoom(draft: ChargeDraft, totalG: number | null): RoomLimitRes
   }, [wanted, ready]);
   return useMemo(() => {
     if (!ready || !wanted || totalG === null || draft.refrigerant === '') return null;
-    const rows = draft.roomTable
-      .map((row) => ({
-        chargeG: baseOf('mass', row.charge, { locale }),
-        minimumAreaM2: baseOf('area', row.area, { locale }),
-      }))
-      .filter(
-        (row): row is { chargeG: number; minimumAreaM2: number } => row.chargeG !== null && row.minimumAreaM2 !== null,
-      );
     const outcome = ready.judge(
       {
         refrigerant: draft.refrigerant,
@@ -50,7 +55,7 @@ export function useRoom(draft: ChargeDraft, totalG: number | null): RoomLimitRes
         areaM2,
         mounting: draft.mounting,
         standard: draft.roomStandard,
-        manualTable: rows.length > 0 ? rows : null,
+        manualTable: roomTableOf({ roomTable: draft.roomTable }, locale),
       },
       reference,
     );

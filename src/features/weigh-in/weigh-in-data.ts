@@ -1,9 +1,9 @@
 import { useQuery } from '@tanstack/react-query';
 import { createContext, useContext, useMemo } from 'react';
 import type { ChargeSheet } from '../../../shared/charge-sheets/charge-sheet.schema.ts';
+import { checkRoomOfSheet } from '../../../shared/charge-sheets/room-of-sheet.ts';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import { ASSUMED_SCALE, type Scale } from '../../../shared/ledger/scale.ts';
-import { judgeRoomLimit } from '../../../shared/room-limit/judge-room-limit.ts';
 import type { Tool } from '../../../shared/tools/tools.schema.ts';
 import type { Unit } from '../../../shared/unit-register/unit.schema.ts';
 import { cylinderQueries } from '../../api/cylinders.ts';
@@ -102,8 +102,7 @@ export function fullChargeToSet(
 
 /** The circuit's whole charge is more than the smallest room served takes: that stops the charge step, with no override. */
 export function isOverRoom(sheet: ChargeSheet | null): boolean {
-  if (!sheet?.room) return false;
-  const { refrigerant } = sheet.request.basis;
-  const judged = judgeRoomLimit({ refrigerant, chargeG: sheet.result.totalG, ...sheet.room }, referenceData);
-  return judged.ok && judged.value.verdict === 'over';
+  if (!sheet) return false;
+  const { request, result, room } = sheet;
+  return !checkRoomOfSheet({ refrigerant: request.basis.refrigerant, result, room }, referenceData).ok;
 }
