@@ -51,9 +51,12 @@ function Sum({ name, total = false, children }: { name: string; total?: boolean;
   );
 }
 
-/** With its sign, also above zero. */
-export const signed = (format: Formats, massG: number): string =>
-  massG > 0 ? `+${format.mass(massG)}` : format.mass(massG);
+/** With its sign, also above zero; without one where no figure of it is left to show. */
+export function signed(format: Formats, massG: number): string {
+  const text = format.mass(massG);
+  if (text === format.mass(-massG)) return format.mass(0);
+  return massG > 0 ? `+${text}` : text;
+}
 
 function AgainstScale({ statement }: { statement: CylinderStatement }) {
   const t = useMessages();

@@ -39,7 +39,11 @@ function useColumns(zone: string): LedgerColumn<StatementLine>[] {
       {
         id: 'what',
         head: t('statement.col.what'),
-        cell: (line) => (line.line === 'entry' ? entryWords(t, format, line) : readingWords(t, format, line)),
+        cell: (line) => (
+          <span className="block w-38 leading-tight whitespace-normal desk:w-auto desk:whitespace-nowrap">
+            {line.line === 'entry' ? entryWords(t, format, line) : readingWords(t, format, line)}
+          </span>
+        ),
       },
       {
         id: 'in',
