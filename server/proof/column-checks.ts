@@ -20,7 +20,7 @@ const RECORD: Columns = [
 ];
 
 const GROUP: Columns = [
-  ['id', uuid('id')],
+  ['sequence', 'd.sequence'],
   ['kind', text('kind')],
   ['unit_id', uuid('unitId')],
   ['site_id', uuid('siteId')],
@@ -47,9 +47,9 @@ const GROUP: Columns = [
 ];
 
 const ENTRY: Columns = [
-  ['id', uuid('id')],
+  ['sequence', 'd.sequence'],
   ['group_id', uuid('groupId')],
-  ['kind', `(select g.kind from entry_group g where g.firm_id = d.firm_id and g.id = (doc ->> 'groupId')::uuid)`],
+  ['kind', `(select g.kind from entry_group g where g.firm_id = d.firm_id and g.id = x.group_id)`],
   ['refrigerant', text('refrigerant')],
   ['mass_micrograms', `(doc ->> 'massMicrograms')::bigint`],
   ['typed_value', `doc #>> '{typed,value}'`],
@@ -120,20 +120,24 @@ const firstDifferent = (columns: Columns): string =>
 const anyDifferent = (columns: Columns): string =>
   columns.map(([column, sql]) => `x.${column} is distinct from ${sql}`).join(' or ');
 
-/** One row a record: the row of the same sequence, or none at all. */
-const rowOf = (table: string, type: string, columns: Columns, key: string): string => `
+/**
+ * Rows are found by primary keys alone, and by columns of `docs` and `parts` rather than by expressions over a text. For a
+ * firm that the statistics do not know yet, PostgreSQL takes any index that starts with the firm for equally good; and
+ * under row-level security it puts no condition into an index that might leak what it sees, as taking a text apart might.
+ * Either would read all rows of the firm for each record.
+ */
+const rowOf = (table: string, type: string, columns: Columns): string => `
   select d.sequence, '${table}' as "table", case when x.firm_id is null then '' else ${firstDifferent(columns)} end as "column"
-    from docs d left join ${table} x on x.firm_id = d.firm_id and x.sequence = d.sequence
-    where d.type = '${type}' and (x.${key} is null or ${anyDifferent(columns)})`;
+    from docs d left join lateral (
+      select * from ${table} y where y.firm_id = d.firm_id and y.id = d.record_id offset 0) x on true
+    where d.type = '${type}' and (x.firm_id is null or ${anyDifferent(columns)})`;
 
-/** One row for each part of a group, found by `key`. */
+/** One row for each part of a group. */
 const partsOf = (table: string, list: string, columns: Columns, key: string): string => `
   select d.sequence, '${table}', case when x.firm_id is null then '' else ${firstDifferent(columns)} end
-    from docs d cross join lateral jsonb_array_elements(doc -> '${list}') with ordinality parts(part, ordinal)
-    left join ${table} x on x.firm_id = d.firm_id and ${key}
-    where d.type = 'group' and (x.firm_id is null or ${anyDifferent(columns)})`;
-
-const inGroup = `x.group_id = (doc ->> 'id')::uuid and x.ordinal = parts.ordinal`;
+    from parts d left join lateral (
+      select * from ${table} y where y.firm_id = d.firm_id and ${key} offset 0) x on true
+    where d.list = '${list}' and (x.firm_id is null or ${anyDifferent(columns)})`;
 
 /**
  * The first record of a range ($1 excluded, $2 included) whose table says otherwise, as `sequence`, `table`, `column`;
@@ -141,17 +145,20 @@ const inGroup = `x.group_id = (doc ->> 'id')::uuid and x.ordinal = parts.ordinal
  */
 export const FIRST_DIFFERENT = `
   with docs as materialized (
-    select firm_id, sequence, type, content::jsonb as doc from journal_record
-      where sequence > $1 and sequence <= $2)
+    select *, content::jsonb as doc from journal_record where sequence > $1 and sequence <= $2),
+  parts as materialized (
+    select d.firm_id, d.sequence, d.record_id, d.doc, l.list, a.part, a.ordinal, (a.part ->> 'id')::uuid as part_id
+      from docs d, unnest(array['readings', 'statements', 'documents']) l(list),
+        jsonb_array_elements(d.doc -> l.list) with ordinality a(part, ordinal)
+      where d.type = 'group')
   select * from (
-    select d.sequence, 'journal_record' as "table", ${firstDifferent(RECORD)} as "column"
-      from docs d join journal_record x on x.firm_id = d.firm_id and x.sequence = d.sequence
-      where ${anyDifferent(RECORD)}
-    union all ${rowOf('entry_group', 'group', GROUP, 'id')}
-    union all ${rowOf('entry', 'entry', ENTRY, 'id')}
-    union all ${partsOf('reading', 'readings', READING, `x.id = (part ->> 'id')::uuid`)}
-    union all ${partsOf('statement', 'statements', STATEMENT, inGroup)}
-    union all ${partsOf('group_document', 'documents', DOCUMENT, inGroup)}
+    select x.sequence, 'journal_record' as "table", ${firstDifferent(RECORD)} as "column"
+      from docs x where ${anyDifferent(RECORD)}
+    union all ${rowOf('entry_group', 'group', GROUP)}
+    union all ${rowOf('entry', 'entry', ENTRY)}
+    union all ${partsOf('reading', 'readings', READING, 'y.id = d.part_id')}
+    union all ${partsOf('statement', 'statements', STATEMENT, 'y.group_id = d.record_id and y.ordinal = d.ordinal')}
+    union all ${partsOf('group_document', 'documents', DOCUMENT, 'y.group_id = d.record_id and y.ordinal = d.ordinal')}
   ) different order by sequence limit 1`;
 
 /** How many rows the texts of a range speak of, by table. */

@@ -45,9 +45,9 @@ export function readPacked(
     `select j.sequence, j.record_id as "recordId", j.content, encode(j.hash, 'hex') as hash,
          case j.type
            when 'entry' then exists (select from entry e
-             where e.firm_id = j.firm_id and e.sequence = j.sequence and ${OWN_ENTRY})
+             where e.firm_id = j.firm_id and e.id = j.record_id and ${OWN_ENTRY})
            when 'group' then exists (select from entry_group g
-             where g.firm_id = j.firm_id and g.sequence = j.sequence and ${OWN_GROUP})
+             where g.firm_id = j.firm_id and g.id = j.record_id and ${OWN_GROUP})
            when 'register' then coalesce(${OWN_REGISTER}, false)
            when 'export' then j.sequence = $10 or coalesce(j.recorded_at >= $5::timestamptz and j.recorded_at < $6::timestamptz, false)
            else j.type in ('seal', 'sealKey') end as "isWhole"

@@ -13,7 +13,7 @@ export interface ChainedRow {
   sequence: string;
   content: string;
   contentHash: Buffer;
-  hash: string;
+  hash: Buffer;
 }
 export interface Difference {
   sequence: number;
@@ -34,7 +34,7 @@ export async function planForRanges(manager: EntityManager): Promise<void> {
 
 export function readChain(manager: EntityManager, after: number, limit: number): Promise<ChainedRow[]> {
   return manager.query(
-    `select sequence, content, content_hash as "contentHash", encode(hash, 'hex') as hash from journal_record
+    `select sequence, content, content_hash as "contentHash", hash from journal_record
        where sequence > $1 order by sequence limit $2`,
     [after, limit],
   );

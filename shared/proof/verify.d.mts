@@ -78,7 +78,7 @@ export class Chain {
   readonly seals: string[];
   readonly keys: string[];
   /** @throws Fault */
-  add(sequence: number, hash: string, content: Uint8Array | null, contentHash?: Uint8Array | null): void;
+  add(sequence: number, hash: Uint8Array, content: Uint8Array | null, contentHash?: Uint8Array | null): void;
   /** @throws Fault */
   addWords(sequence: number, field: string, salt: string, content: string | null): void;
   /** @throws Fault */

@@ -49,6 +49,28 @@ const utf8 = new TextEncoder();
 const textOf = (bytes) => new TextDecoder().decode(bytes);
 const bytesOfBase64 = (base64) => Uint8Array.from(atob(base64), (letter) => letter.charCodeAt(0));
 const bytesOfHex = (hex) => Uint8Array.from(hex.match(/../g) ?? [], (pair) => Number.parseInt(pair, 16));
+const DIGITS = new Int8Array(256).fill(-1);
+for (const digit of '0123456789abcdef') DIGITS[digit.charCodeAt(0)] = Number.parseInt(digit, 16);
+
+/** Writes the 32 bytes that 64 hexadecimal digits of a line stand for; false where there are none. */
+function readHashAt(line, from, target, at) {
+  let all = 0;
+  for (let index = 0; index < 32; index++) {
+    const high = DIGITS[line[from + 2 * index]];
+    const low = DIGITS[line[from + 2 * index + 1]];
+    all |= high | low;
+    target[at + index] = (high << 4) | low;
+  }
+  return all >= 0;
+}
+function isSame(first, second) {
+  for (let index = 0; index < 32; index++) if (first[index] !== second[index]) return false;
+  return first.length === second.length;
+}
+function standsAt(line, from, text) {
+  for (let index = 0; index < text.length; index++) if (line[from + index] !== text[index]) return false;
+  return true;
+}
 const PAIRS = Array.from({ length: 256 }, (_, byte) => byte.toString(16).padStart(2, '0'));
 function hexOf(bytes) {
   if (bytes.hexSlice) return bytes.hexSlice(0, bytes.length);
@@ -56,9 +78,10 @@ function hexOf(bytes) {
   for (let index = 0; index < bytes.length; index++) hex += PAIRS[bytes[index]];
   return hex;
 }
-const ascii = (bytes, from, to) =>
-  bytes.latin1Slice ? bytes.latin1Slice(from, to) : String.fromCharCode(...bytes.subarray(from, to));
-const endsWith = (bytes, ending) => ascii(bytes, Math.max(0, bytes.length - ending.length), bytes.length) === ending;
+const ofType = (type) => utf8.encode(`"type":"${type}"}`);
+const SEAL_END = ofType('seal');
+const KEY_END = ofType('sealKey');
+const endsWith = (bytes, ending) => standsAt(bytes, bytes.length - ending.length, ending);
 
 function parsed(bytes, fault) {
   try {
@@ -94,7 +117,7 @@ export class Chain {
   #options;
   #block = new Uint8Array(72);
   #view = new DataView(this.#block.buffer);
-  #hash = '0'.repeat(64);
+  #hash = new Uint8Array(32);
   #sequence = 0;
   #content = null;
   #key = null;
@@ -107,25 +130,28 @@ export class Chain {
     this.#options = options;
   }
 
-  /** `content`: bytes of the record's text, or null with `contentHash` where only that is known. Given both, both count. */
+  /**
+   * `hash` and `contentHash` are 32 bytes each. `content`: bytes of the record's text, or null with `contentHash` where only
+   * that is known. Given both, both count.
+   */
   add(sequence, hash, content, contentHash = null) {
     const due = this.#sequence + 1;
     if (sequence > due) throw new Fault('missing', due, { found: sequence });
     if (sequence < due) throw new Fault('repeated', due, { found: sequence });
     const inner = content ? this.#tools.sha256(content) : contentHash;
-    if (content && contentHash && hexOf(inner) !== hexOf(contentHash)) throw new Fault('textChanged', sequence);
+    if (content && contentHash && !isSame(inner, contentHash)) throw new Fault('textChanged', sequence);
     this.#view.setUint32(0, Math.floor(sequence / 2 ** 32));
     this.#view.setUint32(4, sequence >>> 0);
     this.#block.set(inner, 40);
     const outer = this.#tools.sha256(this.#block);
-    if (hexOf(outer) !== hash) throw new Fault('doesNotFollow', sequence);
-    if (content && endsWith(content, '"type":"seal"}')) this.#addSeal(sequence, content);
-    if (content && endsWith(content, '"type":"sealKey"}')) this.#addKey(sequence, content);
+    if (!isSame(outer, hash)) throw new Fault('doesNotFollow', sequence);
+    if (content && endsWith(content, SEAL_END)) this.#addSeal(sequence, content);
+    if (content && endsWith(content, KEY_END)) this.#addKey(sequence, content);
     const { knownHead } = this.#options;
-    if (knownHead?.sequence === sequence && knownHead.hash !== hash)
+    if (knownHead?.sequence === sequence && knownHead.hash !== hexOf(outer))
       throw new Fault('notTheKnownHead', this.#firstUnsealed(), { to: sequence });
     this.#block.set(outer, 8);
-    this.#hash = hash;
+    this.#hash = outer;
     this.#sequence = sequence;
     this.#content = content;
     this.#found.records++;
@@ -176,7 +202,7 @@ export class Chain {
     if (seal.firmId !== (this.#options.firmId ?? seal.firmId)) throw new Fault('ofAnotherFirm', sequence);
     if (seal.keyId !== this.#key?.keyId) throw new Fault('sealKeyUnknown', sequence);
     if (!this.#isSigned(seal, this.#key, signature)) throw fault;
-    if (Number(seal.sequence) !== this.#sequence || seal.hash !== this.#hash)
+    if (Number(seal.sequence) !== this.#sequence || seal.hash !== hexOf(this.#hash))
       throw new Fault('sealedOtherwise', this.#firstUnsealed(), { to: sequence, at: seal.at, sealed: seal.sequence });
     this.#found.seals++;
     this.#found.sealed = {
@@ -205,35 +231,49 @@ export class Chain {
     if (this.#lostAt) throw new Fault('signerLost', this.#lostAt);
     return {
       ...this.#found,
-      head: { sequence: this.#sequence, hash: this.#hash },
+      head: { sequence: this.#sequence, hash: hexOf(this.#hash) },
       signer: keyFingerprint && sealed ? 'checked' : 'notChecked',
       end: knownHead ? 'checked' : 'notChecked',
     };
   }
 }
 
-const LINE = /^\{"sequence":([1-9]\d{0,14}),"hash":"([0-9a-f]{64})","content(Hash)?":/;
+const [WORDS, SEQUENCE, HASH_NAME, CONTENT, CONTENT_HASH] = [
+  '{"words":',
+  '{"sequence":',
+  ',"hash":"',
+  '","content":',
+  '","contentHash":"',
+].map((text) => utf8.encode(text));
 const LONGEST_LINE = 8_000_000;
+const hashOfLine = new Uint8Array(32);
+const contentHashOfLine = new Uint8Array(32);
 
 /** One line of records.jsonl. The content is taken as the bytes that stand there, not read and written again. */
 function addLine(chain, line, fault) {
-  if (ascii(line, 0, 9) === '{"words":') {
-    const { words, field, salt, content } = parsed(line, fault);
-    const isWords =
-      /^\w{1,60}$/.test(field) && (content === null || (typeof content === 'string' && /^[0-9a-f]*$/.test(salt)));
-    if (!isWords) throw fault;
-    chain.addWords(words, field, salt, content);
-    return;
+  if (standsAt(line, 0, WORDS)) return addWords(chain, parsed(line, fault()), fault);
+  if (!standsAt(line, 0, SEQUENCE)) throw fault();
+  let at = SEQUENCE.length;
+  let sequence = 0;
+  for (; line[at] >= 0x30 && line[at] <= 0x39 && at < SEQUENCE.length + 15; at++)
+    sequence = sequence * 10 + line[at] - 0x30;
+  if (!standsAt(line, at, HASH_NAME) || !readHashAt(line, at + HASH_NAME.length, hashOfLine, 0)) throw fault();
+  at += HASH_NAME.length + 64;
+  if (standsAt(line, at, CONTENT)) {
+    const from = at + CONTENT.length;
+    if (line[from] !== 0x7b || line[line.length - 1] !== 0x7d) throw fault();
+    return chain.add(sequence, hashOfLine, line.subarray(from, line.length - 1));
   }
-  const head = LINE.exec(ascii(line, 0, Math.min(line.length, 200)));
-  if (!head) throw fault;
-  const [start, sequence, hash, isHash] = head;
-  const content = line.subarray(start.length, line.length - 1);
-  if (line[line.length - 1] !== 0x7d) throw fault;
-  if (!isHash) return chain.add(Number(sequence), hash, content);
-  const hex = ascii(content, 1, content.length - 1);
-  if (!HASH.test(hex) || content[0] !== 0x22 || content[content.length - 1] !== 0x22) throw fault;
-  chain.add(Number(sequence), hash, null, bytesOfHex(hex));
+  const from = at + CONTENT_HASH.length;
+  const isHash = standsAt(line, at, CONTENT_HASH) && readHashAt(line, from, contentHashOfLine, 0);
+  if (!isHash || line.length !== from + 66 || line[from + 64] !== 0x22 || line[from + 65] !== 0x7d) throw fault();
+  chain.add(sequence, hashOfLine, null, contentHashOfLine);
+}
+
+function addWords(chain, { words, field, salt, content }, fault) {
+  const isText = typeof content === 'string' && /^[0-9a-f]{2,200}$/.test(salt);
+  if (!/^\w{1,60}$/.test(field) || !(isText || content === null)) throw fault();
+  chain.addWords(words, field, salt, content);
 }
 
 function joined(first, second) {
@@ -287,9 +327,10 @@ export async function checkPackage(files, tools, { keyFingerprint, knownHead, on
   const records = files.open('records.jsonl');
   if (!records) throw new Fault('noFile', null, { file: 'records.jsonl' });
   let lines = 0;
+  const unreadableLine = () => new Fault('notReadable', null, { file: `records.jsonl:${lines}` });
   await eachLine(records, (line) => {
     lines++;
-    addLine(chain, line, new Fault('notReadable', null, { file: `records.jsonl:${lines}` }));
+    addLine(chain, line, unreadableLine);
     if (lines % 20_000 === 0) onProgress?.(lines, proof.records);
   });
   const found = chain.finish();
