@@ -108,8 +108,7 @@ export function apiRoutes(parts: Parts, tag: string) {
       const expressPath = (operation.path as string).replaceAll(/\{(\w+)\}/g, ':$1');
       router[operation.method](expressPath, ...(operation.before ?? []), async (req, res) => {
         const actor = actorFor(operation.access, req);
-        const params = req.params as Record<string, string>;
-        for (const value of Object.values(params)) if (!id.safeParse(value).success) throw new Problem('notFound');
+        const params = idsOf(req.params as Record<string, string>);
         if (operation.body) await readJsonBody(req, res, operation.bodyLimit);
         const answer = await handle({
           req,
@@ -127,6 +126,16 @@ export function apiRoutes(parts: Parts, tag: string) {
       });
     },
   };
+}
+
+/** Capitals are the same id (RFC 9562, section 4). @throws Problem 404 */
+function idsOf(params: Record<string, string>): Record<string, string> {
+  const read = Object.entries(params).map(([name, value]) => {
+    const parsed = id.safeParse(value);
+    if (!parsed.success) throw new Problem('notFound');
+    return [name, parsed.data];
+  });
+  return Object.fromEntries(read);
 }
 
 function actorFor(access: Access, req: Request): Actor | undefined {

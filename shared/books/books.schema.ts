@@ -269,7 +269,7 @@ export const purchasePage = pageOf(purchaseRow).extend({ currency: z.string() })
 export type PurchaseRow = z.output<typeof purchaseRow>;
 
 export const addPriceRequest = z.strictObject({
-  id: z.uuidv7(),
+  id: z.uuidv7().toLowerCase(),
   groupId: id,
   refrigerant: refrigerantName,
   price: z.strictObject({

@@ -63,9 +63,10 @@ const storableText = (maxLength: number) =>
     .max(maxLength)
     .refine(storable, { message: 'Characters that cannot be stored', params: { code: 'textNotStorable' } });
 
-const id = z.uuid();
+/** Capitals are the same id (RFC 9562, section 4); books and look-ups know the small letters. */
+const id = z.uuid().toLowerCase();
 /** Made by the client and kept across retries, so that a resend cannot post twice. */
-const clientMadeId = z.uuidv7();
+const clientMadeId = z.uuidv7().toLowerCase();
 const instant = z.iso.datetime({ offset: true });
 const refrigerantName = z.string().regex(/^R-[0-9A-Za-z()]{1,15}$/);
 

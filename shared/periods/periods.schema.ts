@@ -131,7 +131,7 @@ export type Checklist = z.output<typeof checklist>;
 export const SETTLED_TO = ['atmosphere', 'supplier', 'missing'] as const;
 export const settleRequest = z.strictObject({
   /** Of the settlement, and of the group that is posted. */
-  id: z.uuidv7(),
+  id: z.uuidv7().toLowerCase(),
   month,
   key: itemKey,
   to: z.strictObject({ place: z.enum(SETTLED_TO), id: id.nullish() }),
@@ -153,7 +153,7 @@ export const carryRequest = z.strictObject({
   carriedBy: id,
   reason: shortText(500),
   items: z
-    .array(z.strictObject({ id: z.uuidv7(), key: itemKey }))
+    .array(z.strictObject({ id: z.uuidv7().toLowerCase(), key: itemKey }))
     .min(1)
     .max(500),
 });
@@ -162,7 +162,7 @@ export const carryResponse = z.strictObject({ count: z.int() });
 
 /** `POST /periods`: the owner signs the month off. There is no reopening. */
 export const closeRequest = z.strictObject({
-  id: z.uuidv7(),
+  id: z.uuidv7().toLowerCase(),
   month,
   /** As the checklist that was read told it. */
   sumsHash: z.string().regex(/^[0-9a-f]{64}$/),

@@ -76,6 +76,27 @@ describe('Posting a group', () => {
     expect(await ledger.sequence()).toBe(sequence);
   });
 
+  it('takes an id in capitals for the same id, in the body and in the address (RFC 9562, section 4)', async () => {
+    const cylinder = await ledger.cylinder('9500');
+    const unit = await ledger.unit('1250', '1340', {}, 'factory');
+    const body = weighIn(ledger, { cylinderId: cylinder.id, unitId: unit.id, beforeG: 9500, afterG: 9410 });
+    const inCapitals = JSON.parse(
+      JSON.stringify(body).replace(/[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}/g, (id) => id.toUpperCase()),
+    );
+
+    const answer = await posted(ledger.client, inCapitals);
+    expect(answer.body.entries.map(({ id }: { id: string }) => id)).toEqual(body.entries.map(({ id }) => id));
+    expect(await ledger.contentG(cylinder.id)).toBe(9410);
+    expect(await ledger.bookG(unit.id)).toBe(1340);
+    const again = await ledger.post(body);
+    expect({ status: again.status, body: again.body }).toEqual({ status: 200, body: answer.body });
+
+    const reversal = { groupId: uuid(), schema: 1, reason: 'wrong unit' };
+    const path = `/entry-groups/${body.groupId.toUpperCase()}/reversal`;
+    expect((await ledger.client.post(path, reversal)).status).toBe(201);
+    expect((await ledger.client.post(path.toLowerCase(), reversal)).status).toBe(200);
+  });
+
   it('refuses other content under an id that was used, and posts nothing of it', async () => {
     const cylinder = await ledger.cylinder('9500');
     const body = bought(cylinder.id, '100');
