@@ -18,7 +18,12 @@ export const statementQuery = z
   })
   .superRefine(({ from, to }, ctx) => {
     if (!from || !to || from <= to) return;
-    ctx.addIssue({ code: 'custom', path: ['to'], message: 'backwards', params: { code: 'periodBackwards', allowed: from } });
+    ctx.addIssue({
+      code: 'custom',
+      path: ['to'],
+      message: 'backwards',
+      params: { code: 'periodBackwards', allowed: from },
+    });
   });
 export type StatementQuery = z.output<typeof statementQuery>;
 

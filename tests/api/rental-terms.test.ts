@@ -74,7 +74,9 @@ describe('The rental of a cylinder', () => {
     const verification = await fetch(`${app.url}/api/v1/journal/verification`, {
       headers: { Cookie: String(ledger.client.cookie) },
     });
-    expect(JSON.parse(String((await verification.text()).trim().split('\n').at(-1)))).toMatchObject({ result: 'intact' });
+    expect(JSON.parse(String((await verification.text()).trim().split('\n').at(-1)))).toMatchObject({
+      result: 'intact',
+    });
   });
 
   it('is neither written by a reader nor seen by another firm', async () => {
