@@ -41,9 +41,17 @@ export default defineConfig(({ mode }) =>
                 environment: 'jsdom',
                 include: ['src/**/*.test.{ts,tsx}'],
                 setupFiles: ['tests/support/client-setup.ts'],
+                testTimeout: 30_000,
               },
             },
-            { test: { name: 'unit', environment: 'node', include: ['{shared,server}/**/*.test.ts'] } },
+            {
+              test: {
+                name: 'unit',
+                environment: 'node',
+                include: ['{shared,server}/**/*.test.ts'],
+                testTimeout: 30_000,
+              },
+            },
             { test: { ...underPostgres, name: 'database', include: ['tests/{api,database,proof}/**/*.test.ts'] } },
             // The last two start whole programs: one at a time, and after the others, so that nothing starves on two cores.
             {

@@ -1,6 +1,6 @@
 import { memo, type ReactNode, useMemo, useState } from 'react';
 import { formatQuantity, unitSymbol } from '../../shared/units/format-quantity.ts';
-import { QUANTITIES, type QuantityKind, type UnitOf } from '../../shared/units/quantities.ts';
+import { fromBase, QUANTITIES, type QuantityKind, type UnitOf } from '../../shared/units/quantities.ts';
 import { formatNumber, NBSP } from '../lib/format.ts';
 import { type Translate, useMessages } from '../lib/messages.ts';
 import { usePreferences } from '../lib/preferences.ts';
@@ -270,7 +270,9 @@ function ownError<Kind extends QuantityKind>(
     });
   }
   if (reading.is !== 'read') return undefined;
-  const say = (base: number) => formatQuantity(kind, base, draft.unit as never, { locale });
+  // As exact as it was typed: a limit of 0.001 g is not 0 g.
+  const say = (base: number) =>
+    `${formatNumber(locale as 'en-US', fromBase(kind, draft.unit, base), 6)}${NBSP}${unitSymbol(kind, draft.unit, locale)}`;
   if (min !== undefined && reading.base < min) {
     return t('ui.quantity.tooSmall', { given: say(reading.base), allowed: say(min) });
   }

@@ -53,6 +53,10 @@ export function CustomerFields() {
 export function PlaceFields() {
   const t = useMessages();
   const { length } = usePreferences();
+  const zone = String(useWatch({ name: 'timeZone' }) ?? '');
+  // What the browser lists leaves out some that a firm may have: UTC, say.
+  const listed = Intl.supportedValuesOf('timeZone');
+  const zones = zone === '' || listed.includes(zone) ? listed : [zone, ...listed];
   return (
     <>
       <FormText name="name" label={t('sites.name')} maxLength={160} autoComplete="off" />
@@ -60,7 +64,7 @@ export function PlaceFields() {
       <FormSelect
         name="timeZone"
         label={t('sites.timeZone')}
-        choices={Intl.supportedValuesOf('timeZone').map((value) => ({ value, label: value.replaceAll('_', ' ') }))}
+        choices={zones.map((value) => ({ value, label: value.replaceAll('_', ' ') }))}
       />
       <FormQuantity
         kind="length"
