@@ -15,33 +15,84 @@ export interface BroughtIn {
   faults: RowFaults[];
 }
 
+/** Rows behind one savepoint. Each savepoint makes every later look at the head of the log slower. */
+const AT_ONCE = 250;
+
 /**
  * Brings rows in, all or nothing, in one transaction. A row that is refused does not hide what is wrong with the others:
- * each stands behind a savepoint, and one refusal keeps the whole from being kept.
+ * the rows around it are taken one by one, and one refusal keeps the whole from being kept.
  * @param rehearsal everything is judged as it will be, and nothing kept
+ * @param independent no row rests on another: a rehearsal then holds the firm's log for a part of the rows at a time
  */
 export async function bringIn(
   parts: PostingParts,
   actor: Actor,
   plans: readonly RowPlan[],
-  { rehearsal, onRow }: { rehearsal: boolean; onRow: () => void },
+  { rehearsal, independent, onRow }: { rehearsal: boolean; independent: boolean; onRow: () => void },
 ): Promise<BroughtIn> {
   const outcome: BroughtIn = { made: 0, already: 0, faults: [] };
   const inTime = plans.toSorted((a, b) => (a.at < b.at ? -1 : a.at > b.at ? 1 : a.number - b.number));
+  const together = rehearsal && independent ? AT_ONCE : Math.max(1, inTime.length);
+  for (let at = 0; at < inTime.length; at += together) {
+    const some = inTime.slice(at, at + together);
+    await inTransaction(
+      parts,
+      actor,
+      () => rehearsal || outcome.faults.length > 0,
+      async (manager) => {
+        for (let from = 0; from < some.length; from += AT_ONCE) {
+          const few = some.slice(from, from + AT_ONCE);
+          if (await bringInTogether(manager, few, outcome, onRow)) continue;
+          for (const plan of few) await bringInOne(manager, plan, outcome);
+        }
+      },
+    );
+  }
+  outcome.faults.sort((a, b) => a.number - b.number);
+  return outcome;
+}
+
+async function inTransaction(
+  parts: PostingParts,
+  actor: Actor,
+  keepsNothing: () => boolean,
+  work: (manager: EntityManager) => Promise<void>,
+): Promise<void> {
   try {
     await inFirm(parts.dataSource, actor, async (manager) => {
       await lockHead(manager);
-      for (const plan of inTime) {
-        await bringInOne(manager, plan, outcome);
-        onRow();
-      }
-      if (rehearsal || outcome.faults.length > 0) throw new NothingKept();
+      await work(manager);
+      if (keepsNothing()) throw new NothingKept();
     });
   } catch (error) {
     if (!(error instanceof NothingKept)) throw error;
   }
-  outcome.faults.sort((a, b) => a.number - b.number);
-  return outcome;
+}
+
+/** False: one of them was refused, and none of them is there. */
+async function bringInTogether(
+  manager: EntityManager,
+  plans: readonly RowPlan[],
+  outcome: BroughtIn,
+  onRow: () => void,
+): Promise<boolean> {
+  await manager.query('savepoint import_rows');
+  let made = 0;
+  let refused = false;
+  for (const plan of plans) {
+    try {
+      if (!refused && (await plan.bringIn(manager))) made += 1;
+    } catch (error) {
+      if (!(error instanceof Problem) || error.status >= 500) throw error;
+      refused = true;
+    }
+    onRow();
+  }
+  await manager.query(`${refused ? 'rollback to' : 'release'} savepoint import_rows`);
+  if (refused) return false;
+  outcome.made += made;
+  outcome.already += plans.length - made;
+  return true;
 }
 
 async function bringInOne(manager: EntityManager, plan: RowPlan, outcome: BroughtIn): Promise<void> {

@@ -93,7 +93,11 @@ function work(
         const onRow = () => {
           stored.rowsDone += 1;
         };
-        const { made, already, faults } = await bringIn(parts, actor, plans, { rehearsal, onRow });
+        const { made, already, faults } = await bringIn(parts, actor, plans, {
+          rehearsal,
+          independent: stored.kind !== 'entries',
+          onRow,
+        });
         Object.assign(stored, { made, already, faults });
       }
       stored.state = rehearsal || stored.faults.length > 0 ? 'checked' : 'done';
