@@ -277,7 +277,7 @@ describe('Flags', () => {
         level: 'look',
         subject: { kind: 'cylinder', id: cylinderId, label: 'C0001' },
         massG: -82,
-        message: 'Cylinder C0001: the reading and the book differ by 82 g; the scales do not explain it.',
+        message: 'Cylinder C0001: the reading and the book differ by 82\u00a0g; the scales do not explain it.',
         closedAt: null,
       },
     ]);
@@ -285,6 +285,6 @@ describe('Flags', () => {
     const spanish = await app.signIn(ledger.owner);
     await spanish.patch('/me', null, { preferences: { locale: 'es-ES' } });
     const said = (await spanish.get(`/flags?cylinderId=${cylinderId}`)).body.items[0].message;
-    expect(said).toBe('Cilindro C0001: la lectura y el libro difieren en 82 g; las básculas no lo explican.');
+    expect(said).toBe('Cilindro C0001: la lectura y el libro difieren en 82\u00a0g; las básculas no lo explican.');
   });
 });

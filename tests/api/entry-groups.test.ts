@@ -358,7 +358,7 @@ describe('A gross reading', () => {
     ]);
     expect(answer.body.flags).toMatchObject([{ code: 'cylinderNotExplained', massG: -60 }]);
     expect(answer.body.flags[0].message).toBe(
-      `Cylinder ${cylinder.tag}: the reading and the book differ by 60 g; the scales do not explain it.`,
+      `Cylinder ${cylinder.tag}: the reading and the book differ by 60\u00a0g; the scales do not explain it.`,
     );
     const { body: view } = await ledger.client.get(`/cylinders/${cylinder.id}`);
     expect(view).toMatchObject({ contentG: 9350, lastReadingGrossG: 9350 + TARE_G });
