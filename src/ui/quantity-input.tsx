@@ -4,6 +4,7 @@ import { fromBase, QUANTITIES, type QuantityKind, type UnitOf } from '../../shar
 import { formatNumber, NBSP } from '../lib/format.ts';
 import { type Translate, useMessages } from '../lib/messages.ts';
 import { usePreferences } from '../lib/preferences.ts';
+import { exampleIn } from './example-in.ts';
 import { blank, Chevron, Field, type FieldLayout } from './field.tsx';
 import {
   answerSeparator,
@@ -101,7 +102,7 @@ function QuantityInputOnce<Kind extends QuantityKind>(props: Props<Kind>) {
             autoComplete="off"
             autoCorrect="off"
             spellCheck={false}
-            placeholder={props.example}
+            placeholder={props.example && exampleIn(kind, props.example, draft.unit, locale)}
             className={`min-w-0 flex-1 bg-transparent py-1 pl-3 placeholder:font-[400] placeholder:text-ink-soft ${layout === 'row' ? 'text-right' : ''}`}
             onChange={(event) => onChange(typeQuantity(draft, event.target.value))}
             onFocus={(event) => event.target.select()}

@@ -84,7 +84,7 @@ export function HoseStep({ weighIn, dispatch }: StepProps) {
         onChange={setContent}
         units={['g', 'oz']}
         max={MOST_HOSE_G}
-        example="28 g"
+        example="1 oz"
         error={asked && !counts && reading.is !== 'refused' ? t('weighIn.hose.contentNeeded') : undefined}
       />
       <HoseSize
