@@ -116,6 +116,19 @@ function rateQuantity({ locale, mass }: Pick<Preferences, 'locale' | 'mass'>, gP
 /** Whole grams from ten on, below that tenths. */
 const aboutGrams = (massG: number) => roundTo(massG, Math.abs(massG) >= 10 ? 0 : 1);
 
+const totalGrams = (massG: number) => roundTo(massG, Math.abs(massG) >= 1000 ? 0 : 1);
+
+/** Steps that scales of this trade have (common practice); 0.01 lb and 0.1 oz are 4.536 g and 2.835 g. */
+const STEPS = { oz: [0.05, 0.1, 0.2, 0.25, 0.5, 1], lb: [0.01, 0.02, 0.05, 0.1, 0.2, 0.5] } as const;
+
+function scaleStep(locale: Locale, stepG: number): string {
+  for (const unit of ['oz', 'lb'] as const) {
+    const step = STEPS[unit].find((known) => Math.abs(known * gramsPer(unit) - stepG) < 0.001);
+    if (step !== undefined) return `${formatNumber(locale, step, 2)}${NBSP}${unit}`;
+  }
+  return `${formatNumber(locale, stepG, 3)}${NBSP}g`;
+}
+
 const joined = ({ value, unit }: Quantity) => `${value}${NBSP}${unit}`;
 
 /** All formats of one person, as plain functions. */
@@ -134,6 +147,11 @@ export function formatsFor(preferences: Preferences) {
     },
     /** To what a scale of this trade can show: a worked-out mass carries no more figures than that. */
     massAbout: (massG: number) => joined(massQuantity(preferences, aboutGrams(massG))),
+    /** A worked-out total: whole grams from a kilogram on, tenths below it. */
+    massTotal: (massG: number) => joined(massQuantity(preferences, totalGrams(massG))),
+    massTotalPieces: (massG: number) => massPieces(preferences, totalGrams(massG)),
+    /** One step of a scale's display, in the unit that it was made in: a round number of ounces or pounds, else grams. */
+    scaleStep: (stepG: number) => scaleStep(locale, stepG),
     massAboutParts: (massG: number) => massQuantity(preferences, aboutGrams(massG)),
     massUnit: preferences.mass === 'lbOz' ? 'lb oz' : preferences.mass,
     /** What a person typed, `2,310 g`, where it reads otherwise than the mass is shown; else null. */

@@ -28,7 +28,7 @@ export const Answer = forwardRef<HTMLDivElement, Props>(function Answer({ draft,
   const format = useFormat();
   const unit = useBeamUnit();
   const spec = beamOf(answer, room, { t, format, unit });
-  const total = answer.is === 'done' ? format.massPieces(answer.result.totalG) : null;
+  const total = answer.is === 'done' ? format.massTotalPieces(answer.result.totalG) : null;
   return (
     <div ref={ref} className="pt-3 pb-1 desk:pt-2">
       <p className="type-label text-ink-soft">
@@ -172,7 +172,10 @@ function beamOf(
   const said = (key: string, massG: number) => ({ massG, label: t(key, { mass: format.mass(massG) }) });
   const maxTotalG = request.basis.limits?.maxTotalChargeG ?? null;
   const roomStop = room && room.limitG !== null && room.verdict !== 'noCheckNeeded' ? Math.floor(room.limitG) : null;
-  const total = said('chargeScreen.beam.total', result.totalG);
+  const total = {
+    massG: result.totalG,
+    label: t('chargeScreen.beam.total', { mass: format.massTotal(result.totalG) }),
+  };
   const stops = [
     ...(roomStop === null ? [] : [said('chargeScreen.beam.room', roomStop)]),
     ...(maxTotalG === null ? [] : [said('chargeScreen.beam.maxTotal', maxTotalG)]),

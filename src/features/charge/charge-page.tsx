@@ -61,7 +61,7 @@ export function ChargePage({ title, lead, status, actions, draft, change, onExam
       {...(actions ? { actions } : {})}
       status={
         outOfSight && totalG !== null ? (
-          <strong className="text-[1.25rem] font-[720] text-ink [font-stretch:110%]">{format.mass(totalG)}</strong>
+          <strong className="text-[1.25rem] font-[720] text-ink [font-stretch:110%]">{format.massTotal(totalG)}</strong>
         ) : (
           status
         )

@@ -86,9 +86,8 @@ function columnsOf(t: Translate, format: Formats): LedgerColumn<Tool>[] {
     {
       id: 'resolution',
       head: t('registers.resolution'),
-      unit: 'g',
       figure: true,
-      cell: ({ scale }) => (scale ? format.number(scale.resolutionG, 3) : ''),
+      cell: ({ scale }) => (scale ? format.scaleStep(scale.resolutionG) : ''),
     },
     {
       id: 'span',

@@ -1,3 +1,4 @@
+import { ASSUMED_SCALE } from '../../../../shared/ledger/scale.ts';
 import type { Tool } from '../../../../shared/tools/tools.schema.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
@@ -87,7 +88,7 @@ function ScaleChoice({
             detail={scaleDetail(
               scale,
               t,
-              (massG) => format.number(massG, 2),
+              (massG) => format.scaleStep(massG),
               (day) => format.day(day),
             )}
             checked={scale.id === toolId}
@@ -96,7 +97,7 @@ function ScaleChoice({
         ))}
         <ScaleRow
           title={t('weighIn.scale.none')}
-          detail={t('weighIn.scale.none.detail')}
+          detail={t('weighIn.scale.none.detail', { steps: format.scaleStep(ASSUMED_SCALE.resolutionG) })}
           checked={!known}
           onChange={() => onChange(null)}
         />
@@ -105,9 +106,9 @@ function ScaleChoice({
   );
 }
 
-function scaleDetail(scale: Tool, t: Translate, number: (value: number) => string, day: (day: string) => string) {
+function scaleDetail(scale: Tool, t: Translate, step: (massG: number) => string, day: (day: string) => string) {
   const parts = [
-    ...(scale.scale ? [t('weighIn.scale.steps', { steps: number(scale.scale.resolutionG) })] : []),
+    ...(scale.scale ? [t('weighIn.scale.steps', { steps: step(scale.scale.resolutionG) })] : []),
     scale.lastCheckedOn
       ? t('weighIn.scale.checked', { date: day(scale.lastCheckedOn) })
       : t('weighIn.scale.neverChecked'),
