@@ -26,7 +26,9 @@ export function Component() {
   const t = useMessages();
   const session = useSession();
   const [search, setSearch] = useSearchParams();
-  const holder = search.get('heldBy') ?? session?.person.id ?? IN_THE_SHOP;
+  // Whoever drives no van starts with the shop's own shelf, not with an empty sheet.
+  const mine = session?.roles.includes('technician') ? session.person.id : IN_THE_SHOP;
+  const holder = search.get('heldBy') ?? mine;
   const held = useQuery(stockTakeQueries.heldBy(holder));
   if (held.data && held.data.length > 0) {
     return <Sheet key={holder} holder={holder} cylinders={held.data} onHolder={choose} />;
