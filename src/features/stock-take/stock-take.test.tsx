@@ -44,6 +44,7 @@ function answer(path: string, method: string, body: string | null): Response {
       person: { id: 'p', name: 'M. Oduya', email: 'm@example.org', preferences: preferencesFor('en-GB') },
       firm: { id: 'f', name: 'Harrow & Tansy Climate', gwpSet: 'AR4' },
       firms: [],
+      roles: ['technician'],
       permissions: ['entries:post'],
     });
   if (path.startsWith('/tools'))
