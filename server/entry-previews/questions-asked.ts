@@ -30,7 +30,7 @@ export function questionsAsked(
     const fullCharge = fullChargeAt(register, refrigerant, group.occurredAt);
     return [
       {
-        code: 'howFull' as const,
+        asks: 'howFull' as const,
         unitId,
         bookG: state.known ? gramsOfMicrograms(massOf(state.book, refrigerant)) : null,
         fullChargeG: fullCharge === null ? null : gramsOfMicrograms(fullCharge),

@@ -21,7 +21,7 @@ export type PreviewedBalance = z.output<typeof previewedBalance>;
 
 /** Is the unit full now? Asked where the book is not known or would pass full charge by more than the scales explain. */
 export const previewedQuestion = z.strictObject({
-  code: z.literal('howFull'),
+  asks: z.literal('howFull'),
   unitId: z.uuid(),
   /** The book before this group; null where it is not known. */
   bookG: z.number().nullable(),

@@ -90,7 +90,7 @@ describe('A preview', () => {
     const unit = await ledger.unit('1290', '1290');
     const body = weighIn(ledger, { cylinderId: cylinder.id, unitId: unit.id, beforeG: 9500, afterG: 9200 });
     const asked = await ledger.client.post('/entry-groups/preview', { ...body, kind: 'refill' });
-    expect(asked.body.questions).toEqual([{ code: 'howFull', unitId: unit.id, bookG: 1290, fullChargeG: 1290 }]);
+    expect(asked.body.questions).toEqual([{ asks: 'howFull', unitId: unit.id, bookG: 1290, fullChargeG: 1290 }]);
     const room = await ledger.unit('1000', '1290');
     const small = weighIn(ledger, { cylinderId: cylinder.id, unitId: room.id, beforeG: 9500, afterG: 9300 });
     expect((await ledger.client.post('/entry-groups/preview', small)).body.questions).toEqual([]);
