@@ -14,7 +14,7 @@ import type {
   cylinderKind,
   updateCylinderRequest,
 } from '../../shared/cylinders/cylinder.schema.ts';
-import type { ReadingRow } from '../../shared/entries/entry.schema.ts';
+import type { FlagRow, ReadingRow } from '../../shared/entries/entry.schema.ts';
 import type { EntryGroupResponse } from '../../shared/ledger/entry-group-response.schema.ts';
 import { http, isStale, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
@@ -43,6 +43,13 @@ export const cylinderQueries = {
       queryFn: ({ signal }) =>
         http.get<PageOf<Cylinder>>(`/cylinders${queryString({ ...filters, limit: 200 })}`, { signal }),
     }),
+  openFlags: (id: string) =>
+    queryOptions({
+      queryKey: ['flags', 'cylinder', id] as const,
+      queryFn: ({ signal }) =>
+        http.get<PageOf<FlagRow>>(`/flags${queryString({ cylinderId: id, open: true })}`, { signal }),
+      select: (page) => page.items,
+    }),
   one: (id: string) =>
     queryOptions({
       queryKey: [...cylinderQueries.all(), id] as const,
@@ -62,6 +69,7 @@ export const cylinderQueries = {
 export const refreshCylinders = (client: QueryClient) =>
   Promise.all([
     client.invalidateQueries({ queryKey: cylinderQueries.all() }),
+    client.invalidateQueries({ queryKey: ['flags'] }),
     client.invalidateQueries({ queryKey: ['today'] }),
   ]);
 

@@ -137,7 +137,6 @@ export function formatsFor(preferences: Preferences) {
   return {
     locale,
     number: (value: number, most = 3, least = 0) => formatNumber(locale, value, most, least),
-    massParts: (massG: number) => massQuantity(preferences, massG),
     massPieces: (massG: number) => massPieces(preferences, massG),
     mass: (massG: number) => joined(massQuantity(preferences, massG)),
     /** Only the figure, for a table whose head names the unit; pounds and ounces keep theirs, or 0.5 could be either. */
@@ -153,6 +152,7 @@ export function formatsFor(preferences: Preferences) {
     /** One step of a scale's display, in the unit that it was made in: a round number of ounces or pounds, else grams. */
     scaleStep: (stepG: number) => scaleStep(locale, stepG),
     massAboutParts: (massG: number) => massQuantity(preferences, aboutGrams(massG)),
+    massAboutPieces: (massG: number) => massPieces(preferences, aboutGrams(massG)),
     massUnit: preferences.mass === 'lbOz' ? 'lb oz' : preferences.mass,
     /** What a person typed, `2,310 g`, where it reads otherwise than the mass is shown; else null. */
     massAsTyped: (typed: { value: string; unit: string }, massG: number): string | null => {

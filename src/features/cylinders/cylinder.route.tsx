@@ -12,6 +12,7 @@ import { Beam } from '../../ui/beam/beam.tsx';
 import { useBeamUnit } from '../../ui/beam/use-beam-unit.ts';
 import { Button } from '../../ui/button.tsx';
 import { Caution } from '../../ui/caution.tsx';
+import { Figure } from '../../ui/figure.tsx';
 import { Done, Failed, Notice } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
 import { ActionDialog, type CylinderAction } from './action-dialog.tsx';
@@ -20,13 +21,14 @@ import { CylinderFacts } from './cylinder-facts.tsx';
 import { CylinderEntries, CylinderReadings } from './cylinder-history.tsx';
 import { dangersOf, marksOf } from './cylinder-marks.tsx';
 import { JudgedAgain } from './judged-again.tsx';
+import { OpenFlags } from './open-flags.tsx';
 import { RecordLinks } from './record-links.tsx';
 import { type CylinderFigures, useCylinderFigures } from './use-cylinder-figures.ts';
 
 export async function loader({ request, params }: LoaderFunctionArgs) {
   await Promise.all([
     requireSession(request),
-    loadMessages('cylinders-screen', 'log-screen', 'server', 'record-links', 'stock-take'),
+    loadMessages('cylinders-screen', 'log-screen', 'server', 'record-links', 'stock-take', 'flags'),
   ]);
   // A cylinder that is not there is the page's own "nothing here", with the frame around it.
   await queryClient.ensureQueryData(cylinderQueries.one(params.cylinderId ?? ''));
@@ -72,6 +74,9 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
       status={<span className="desk:hidden">{cylinder.refrigerant}</span>}
       actions={
         <>
+          <Link to={`/cylinders/${cylinder.id}/statement`} className="inline-flex min-h-12 items-center">
+            {t('cylinders.toStatement')}
+          </Link>
           <Link to={`/cylinders/${cylinder.id}/tag`} className="inline-flex min-h-12 items-center">
             {t('rental.tagLink')}
           </Link>
@@ -112,6 +117,7 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
               {mayPost ? <RecordLinks cylinderId={cylinder.id} /> : null}
             </div>
           ) : null}
+          <OpenFlags cylinderId={cylinder.id} />
           <CylinderFacts cylinder={cylinder} figures={figures} />
         </div>
         <div className="flex min-w-0 flex-col gap-8 text-base">
@@ -146,15 +152,13 @@ function Content({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderF
     () => fullCylinderBeam(cylinder, figures.heelG, { t, format }, unit),
     [cylinder, figures.heelG, t, format, unit],
   );
-  const { value, unit: symbol } = format.massAboutParts(cylinder.contentG);
   return (
     <section aria-label={t('cylinders.content')}>
       <p className="type-label text-ink-soft">
         {t('cylinders.one.holds', { refrigerant: cylinder.refrigerant, kind: t(`cylinders.kind.${cylinder.kind}`) })}
       </p>
-      <p className="type-figure mt-1 text-[3.25rem]">
-        {value}
-        <span className="pl-2 text-[1.375rem] font-[600] tracking-normal">{symbol}</span>
+      <p className="mt-1 text-[3.25rem]">
+        <Figure pieces={format.massAboutPieces(cylinder.contentG)} />
       </p>
       {cylinder.limitG === null ? null : (
         <p className="mt-2 text-[1.0625rem] font-[600]">

@@ -5,6 +5,7 @@ import { entryMarks, placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
 import { type Translate, useMessages } from '../../lib/messages.ts';
 import { Fact, Facts } from '../../ui/facts.tsx';
+import { Figure } from '../../ui/figure.tsx';
 import { GroupEntries } from './group-entries.tsx';
 import { GroupReadings } from './group-readings.tsx';
 import { Mark } from './log-columns.tsx';
@@ -71,13 +72,11 @@ export function GroupDetails({ group, main }: { group: GroupView; main: EntryRow
 
 function BigMass({ entry, struck }: { entry: EntryRow; struck: boolean }) {
   const format = useFormat();
-  const { value, unit } = format.massParts(entry.massG);
   const t = useMessages();
   const asTyped = entry.typed ? format.massAsTyped(entry.typed, entry.massG) : null;
   return (
     <p className={`type-figure mt-1 text-[2.625rem] ${struck ? 'text-ink-soft' : 'text-move'}`}>
-      <span className={struck ? 'line-through decoration-2' : ''}>{value}</span>
-      <span className="pl-2 text-[1.125rem] font-[600] tracking-normal">{unit}</span>
+      <Figure pieces={format.massPieces(entry.massG)} className={struck ? 'line-through decoration-2' : ''} />
       {asTyped ? (
         <span className="type-label block pt-1.5 text-[0.9375rem] leading-tight font-[400] tracking-normal text-ink-soft">
           {t('log.group.typed', { typed: asTyped })}
