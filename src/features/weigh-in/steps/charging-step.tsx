@@ -68,6 +68,8 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
           {leg.mode === 'zeroed' ? (
             <p className="text-[0.9375rem] text-ink-soft">{t('weighIn.charging.zeroedNotOpen')}</p>
           ) : null}
+          {/* Under the keys: on a phone they must be within reach while it charges. */}
+          {weighIn.purpose === 'adjust' ? <AdjustHelp /> : null}
         </>
       }
     >
@@ -97,7 +99,6 @@ function Charging({ weighIn, dispatch, leg }: StepProps & { leg: Leg }) {
       ) : (
         <Cautions refrigerant={unit.refrigerant} at="charging" />
       )}
-      {weighIn.purpose === 'adjust' ? <AdjustHelp /> : null}
     </StepPage>
   );
 }
