@@ -60,7 +60,12 @@ export function createChargeSheet(
     },
     REFERENCES,
     async (manager) => {
-      await requireUnit(manager, unitId);
+      const unit = await requireUnit(manager, unitId);
+      if (unit.refrigerant !== refrigerant) {
+        const figures = { given: refrigerant, allowed: unit.refrigerant };
+        const path = '/request/basis/refrigerant';
+        throw problemOfRefusals([{ code: 'notTheUnitsRefrigerant', path, ...figures }]);
+      }
       await chargeSheetsRepository(manager).insert(row);
     },
     (manager) => requireView(manager, unitId, id),
@@ -82,8 +87,10 @@ export function getChargeSheet(parts: Parts, actor: Actor, id: string): Promise<
   });
 }
 
-async function requireUnit(manager: EntityManager, unitId: string): Promise<void> {
-  if (!(await unitsRepository(manager).find(unitId))) throw new Problem('notFound');
+async function requireUnit(manager: EntityManager, unitId: string) {
+  const unit = await unitsRepository(manager).find(unitId);
+  if (!unit) throw new Problem('notFound');
+  return unit;
 }
 
 async function requireView(manager: EntityManager, unitId: string, id: string): Promise<ChargeSheet> {

@@ -109,6 +109,15 @@ describe('A charge sheet', () => {
     ).toMatchObject([{ code: 'tableEndsShort', path: '/room/manualTable', given: 2050, allowed: 2000 }]);
   });
 
+  it('is not made for another refrigerant than the unit’s: its figure would be weighed in of the wrong one', async () => {
+    const { id: unitId } = await ledger.unit('1200', '1290', { refrigerant: 'R-410A' }, 'factory');
+    const answer = await ledger.client.post(`/units/${unitId}/charge-sheets`, sheet());
+    expect(answer.status).toBe(422);
+    expect(answer.body.errors).toMatchObject([
+      { code: 'notTheUnitsRefrigerant', path: '/request/basis/refrigerant', given: 'R-32', allowed: 'R-410A' },
+    ]);
+  });
+
   it('cannot be changed or removed, whoever asks', async () => {
     const { id: unitId } = await unit();
     const body = sheet();

@@ -130,7 +130,14 @@ const bodies = (): [path: string, body: Body][] => [
     `/units/${unitId}/charge-bases`,
     { id: uuid(), validFrom: SINCE, basis: CHARGE_REQUEST.basis, manual: { document: 'd', page: '1' }, note: 'n' },
   ],
-  [`/units/${unitId}/charge-sheets`, { id: uuid(), request: CHARGE_REQUEST, room: { areaM2: 18, mounting: 'wall' } }],
+  [
+    `/units/${unitId}/charge-sheets`,
+    {
+      id: uuid(),
+      request: { ...CHARGE_REQUEST, basis: { ...CHARGE_REQUEST.basis, refrigerant: 'R-410A' } },
+      room: { areaM2: 18, mounting: 'wall' },
+    },
+  ],
   [
     '/entry-groups',
     {

@@ -92,7 +92,9 @@ class Played {
     }
     const [unit] = unitRegisters;
     const unitId = this.idOf(unit?.unitId ?? '');
-    await ledger.made(`/units/${unitId}/charge-sheets`, { id: this.idOf('sheet'), request: CHARGE_REQUEST });
+    const { refrigerant } = (await ledger.client.get(`/units/${unitId}`)).body;
+    const request = { ...CHARGE_REQUEST, basis: { ...CHARGE_REQUEST.basis, refrigerant } };
+    await ledger.made(`/units/${unitId}/charge-sheets`, { id: this.idOf('sheet'), request });
     for (const job of ['J1', 'J2']) {
       await ledger.made('/jobs', { id: this.idOf(job), unitId, kind: 'serviceWithLeak', openedAt: SINCE });
     }

@@ -246,7 +246,10 @@ export class ScenarioOverHttp {
   private async chargeSheet(symbol: string, unit: string): Promise<void> {
     const id = this.idOf(symbol);
     if (this.made.has(id)) return;
-    await this.ledger.made(`/units/${this.idOf(unit)}/charge-sheets`, { id, request: CHARGE_REQUEST });
+    const path = `/units/${this.idOf(unit)}`;
+    const { refrigerant } = (await this.ledger.client.get(path)).body;
+    const request = { ...CHARGE_REQUEST, basis: { ...CHARGE_REQUEST.basis, refrigerant } };
+    await this.ledger.made(`${path}/charge-sheets`, { id, request });
     this.made.add(id);
   }
 
