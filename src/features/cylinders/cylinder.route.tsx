@@ -102,6 +102,7 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
           {judged ? <JudgedAgain cylinder={cylinder} entries={judged} /> : null}
           <Content cylinder={cylinder} figures={figures} />
           <Cautions cylinder={cylinder} />
+          <OpenFlags cylinderId={cylinder.id} />
           {mayPost || mayWrite ? (
             <div className="flex flex-wrap gap-3">
               {mayPost ? (
@@ -117,7 +118,6 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
               {mayPost ? <RecordLinks cylinderId={cylinder.id} /> : null}
             </div>
           ) : null}
-          <OpenFlags cylinderId={cylinder.id} />
           <CylinderFacts cylinder={cylinder} figures={figures} />
         </div>
         <div className="flex min-w-0 flex-col gap-8 text-base">
