@@ -24,6 +24,7 @@ const pages: RouteObject[] = [
     lazy: () => import('./features/entries/log.route.tsx'),
     children: [{ path: ':groupId', lazy: () => import('./features/entries/entry.route.tsx') }],
   },
+  { path: 'log/proof', lazy: () => import('./features/proof/proof.route.tsx') },
   { path: 'units', lazy: () => import('./features/units/units.route.tsx') },
   { path: 'units/new', lazy: () => import('./features/units/unit-new.route.tsx') },
   { path: 'units/:unitId', lazy: () => import('./features/units/unit.route.tsx') },

@@ -43,6 +43,7 @@ export const ROUTE_PAGES: readonly RoutePage[] = [
   { route: '/cylinders/:cylinderId/rental', path: ({ short }) => `/cylinders/${short.id}/rental`, who: 'owner' },
   { route: '/cylinders/:cylinderId/statement', path: ({ short }) => `/cylinders/${short.id}/statement`, who: 'owner' },
   { route: '/log', path: () => '/log', who: 'owner' },
+  { route: '/log/proof', path: () => '/log/proof', who: 'owner' },
   { route: '/log/:groupId', path: ({ wrongGroupId }) => `/log/${wrongGroupId}`, who: 'owner' },
   { route: '/units', path: () => '/units', who: 'owner' },
   { route: '/record', path: () => '/record', who: 'technician', field: true },

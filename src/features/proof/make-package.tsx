@@ -1,0 +1,148 @@
+import { useQuery, useQueryClient } from '@tanstack/react-query';
+import { useState } from 'react';
+import { customerQueries } from '../../api/customers.ts';
+import { journalQueries, packagePath } from '../../api/journal.ts';
+import { unitQueries } from '../../api/units.ts';
+import { deviceNow, toDayInput } from '../../lib/local-time.ts';
+import { useMessages } from '../../lib/messages.ts';
+import { CheckField, ChoiceField, SelectField, TextField } from '../../ui/field.tsx';
+import { Notice } from '../../ui/notice.tsx';
+
+type Subject = 'period' | 'unit' | 'customer';
+
+/** The subject that a link asked for: `/log/proof?unitId=...`. */
+export interface Asked {
+  unitId: string | null;
+  customerId: string | null;
+}
+
+/** A package for somebody else, streamed straight to the disk. `held`: the server can seal, without which there is none. */
+export function MakePackage({ asked, held }: { asked: Asked; held: boolean }) {
+  const t = useMessages();
+  const client = useQueryClient();
+  const [kind, setKind] = useState<Subject>(asked.unitId ? 'unit' : asked.customerId ? 'customer' : 'period');
+  const [unitId, setUnitId] = useState(asked.unitId ?? '');
+  const [customerId, setCustomerId] = useState(asked.customerId ?? '');
+  const [days, setDays] = useState(() => {
+    const now = deviceNow();
+    return { from: `${now.getFullYear()}-01-01`, to: toDayInput(now) };
+  });
+  const [words, setWords] = useState(false);
+  const [paper, setPaper] = useState('');
+  const isChosen = {
+    period: days.from !== '' && days.to !== '' && days.from <= days.to,
+    unit: unitId !== '',
+    customer: customerId !== '',
+  }[kind];
+  const subject = { period: days, unit: { unitId }, customer: { customerId } }[kind];
+  return (
+    <section className="flex max-w-prose flex-col gap-3" aria-labelledby="proof-make">
+      <h2 id="proof-make" className="type-title text-[1.25rem]">
+        {t('proof.make.title')}
+      </h2>
+      <p className="text-ink-soft">{t('proof.make.lead')}</p>
+      <ChoiceField
+        label={t('proof.make.about')}
+        name="proof-about"
+        value={kind}
+        choices={(['period', 'unit', 'customer'] as const).map((value) => ({ value, label: t(`proof.make.${value}`) }))}
+        onChange={(value) => setKind(value as Subject)}
+      />
+      {kind === 'period' ? (
+        <div className="grid grid-cols-2 gap-4">
+          {(['from', 'to'] as const).map((end) => (
+            <TextField
+              key={end}
+              type="date"
+              label={t(`proof.make.${end}`)}
+              value={days[end]}
+              onChange={(event) => setDays({ ...days, [end]: event.target.value })}
+            />
+          ))}
+        </div>
+      ) : null}
+      {kind === 'period' && !isChosen && days.from && days.to ? (
+        <Notice role="status">{t('proof.make.backwards')}</Notice>
+      ) : null}
+      {kind === 'unit' ? <UnitChoice value={unitId} onChange={setUnitId} /> : null}
+      {kind === 'customer' ? <CustomerChoice value={customerId} onChange={setCustomerId} /> : null}
+      <SelectField
+        label={t('proof.make.paper')}
+        value={paper}
+        onChange={(event) => setPaper(event.target.value)}
+        choices={[
+          { value: '', label: t('proof.make.paperOfCountry') },
+          { value: 'A4', label: 'A4' },
+          { value: 'Letter', label: 'Letter' },
+        ]}
+      />
+      <CheckField
+        label={t('proof.make.words')}
+        hint={t('proof.make.wordsHint')}
+        checked={words}
+        onChange={(event) => setWords(event.target.checked)}
+      />
+      {isChosen && held ? (
+        <a
+          href={packagePath({ ...subject, words, paper: paper || undefined })}
+          download
+          className="type-narrow inline-flex min-h-12 items-center justify-center self-start bg-rest px-5 py-2 leading-tight font-[600] text-on-rest no-underline hover:bg-rest-strong"
+          // The export and its seal are records of their own: what stands above is read again once they are written.
+          onClick={() => setTimeout(() => void client.invalidateQueries({ queryKey: journalQueries.all() }), 2_000)}
+        >
+          {t('proof.make.download')}
+        </a>
+      ) : (
+        <Notice>{t(held ? 'proof.make.choose' : 'proof.make.cannotSeal')}</Notice>
+      )}
+    </section>
+  );
+}
+
+/** A native list of what fits the words typed: a firm has more units than a list of all would bear. */
+function UnitChoice({ value, onChange }: { value: string; onChange: (id: string) => void }) {
+  const t = useMessages();
+  const [search, setSearch] = useState('');
+  const found = useQuery({ ...unitQueries.one(value), enabled: value !== '' });
+  const list = useQuery({
+    queryKey: [...unitQueries.all(), 'proof-choice', search] as const,
+    queryFn: async ({ client }) =>
+      (await client.fetchInfiniteQuery(unitQueries.list({ search: search || undefined }, 50))).pages[0]?.items ?? [],
+  });
+  const units = list.data ?? [];
+  const chosen = found.data && !units.some(({ id }) => id === value) ? [found.data] : [];
+  return (
+    <div className="grid gap-4 xs:grid-cols-2">
+      <TextField
+        type="search"
+        label={t('proof.make.unitSearch')}
+        value={search}
+        onChange={(event) => setSearch(event.target.value)}
+      />
+      <SelectField
+        label={t('proof.make.unit')}
+        placeholder={t('proof.make.pick')}
+        value={value}
+        onChange={(event) => onChange(event.target.value)}
+        choices={[...chosen, ...units].map(({ id, tag, name, siteName }) => ({
+          value: id,
+          label: `${tag}, ${name}, ${siteName}`,
+        }))}
+      />
+    </div>
+  );
+}
+
+function CustomerChoice({ value, onChange }: { value: string; onChange: (id: string) => void }) {
+  const t = useMessages();
+  const customers = useQuery(customerQueries.choice());
+  return (
+    <SelectField
+      label={t('proof.make.customer')}
+      placeholder={t('proof.make.pick')}
+      value={value}
+      onChange={(event) => onChange(event.target.value)}
+      choices={customers.data?.map(({ id, name }) => ({ value: id, label: name })) ?? []}
+    />
+  );
+}
