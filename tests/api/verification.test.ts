@@ -256,7 +256,7 @@ describe('The check of the log', () => {
   it('speaks the language of whoever asks', async () => {
     await history.client.patch('/me', 1, { preferences: { locale: 'es-ES' } });
     await history.tamper('delete from journal_record where FIRM and sequence = 9');
-    expect((await verification()).fault?.message).toMatch(/^Falta el registro 9/);
+    expect((await verification()).fault?.message).toMatch(/^Falta el apunte 9/);
   });
 });
 

@@ -10,7 +10,7 @@ import { Done, Failed } from '../../ui/notice.tsx';
 
 /** Long hashes break where the line ends, and nowhere else. */
 export function Code({ children }: { children: string }) {
-  return <span className="font-mono text-[0.8125rem] leading-normal break-all">{children}</span>;
+  return <span className="font-mono text-[0.8125rem] leading-normal wrap-anywhere">{children}</span>;
 }
 
 /** Where the chain stands: its head, its last seal, and what that does not cover yet. */

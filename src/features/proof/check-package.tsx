@@ -97,7 +97,7 @@ function Result({ found }: { found: CheckedPackage }) {
         })}
       </p>
       <p>
-        {t('proof.key')}: <span className="font-mono text-[0.875rem] break-all">{grouped(sealed.keyId)}</span>
+        {t('proof.key')}: <span className="font-mono text-[0.875rem] wrap-anywhere">{grouped(sealed.keyId)}</span>
       </p>
       <p className="type-label mt-2">{t('proof.package.cannot')}</p>
       <ul className="list-disc pl-5 text-ink-soft">

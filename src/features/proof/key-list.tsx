@@ -27,7 +27,7 @@ export function KeyList({ keys }: { keys: SealKeys }) {
       {keys.items.length === 0 ? <p>{t('proof.noKey')}</p> : null}
       <ul className="border-t border-rule">
         {keys.items.map((key, index) => (
-          <li key={key.keyId} className="border-b border-rule-faint py-3">
+          <li key={key.keyId} className="pt-3">
             <p className="font-[600]">
               {t(index === 0 ? 'proof.keys.current' : 'proof.keys.earlier', {
                 at: format.longDateTime(key.at),
