@@ -6,7 +6,7 @@ import { Failed } from '../../ui/notice.tsx';
 import { SessionPage } from './session-page.tsx';
 
 export async function loader() {
-  await loadMessages('session', 'imports', 'exports-screen', 'people-screen');
+  await loadMessages('session', 'imports', 'exports-screen', 'people-screen', 'proof');
   return null;
 }
 
@@ -26,6 +26,7 @@ export function Component() {
     ...(seesPeople ? [{ to: '/tools', name: t('registers.tools.title') }] : []),
     ...(seesPeople ? [{ to: '/parties', name: t('registers.parties.title') }] : []),
     ...(session ? [{ to: '/exports', name: t('exports.title') }] : []),
+    ...(mayImport ? [{ to: '/log/proof', name: t('proof.title') }] : []),
     ...(mayImport ? [{ to: '/imports', name: t('imports.title') }] : []),
     { to: '/preferences', name: t('frame.preferences') },
     ...(session && session.firms.length > 1 ? [{ to: '/choose-firm', name: t('session.firm.title') }] : []),
