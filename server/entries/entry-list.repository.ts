@@ -44,13 +44,15 @@ const SELECT = `e.id, e.sequence::text, e.group_id as "groupId", e.kind, e.refri
   e.corrects_group_id as "correctsGroupId", r.id as "reversedBy", g.reverses_group_id as "reverses",
   p.name as "recordedByName", e.unit_id as "unitId"`;
 
-/** `base` is the entries to read, as `e`. */
-export const entriesFrom = (base: string): string => `${base}
-  join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
+const JOINED = `join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
   join firm f on f.id = e.firm_id
   left join site s on s.firm_id = e.firm_id and s.id = e.site_id
   left join entry_group r on r.firm_id = e.firm_id and r.reverses_group_id = e.group_id
   left join person p on p.id = e.recorded_by`;
+
+/** `base` is the entries to read, as `e`. */
+export const entriesFrom = (base: string): string => `${base}
+  ${JOINED}`;
 
 export const ENTRY_SORT: Record<EntryListQuery['sort'], Sort> = {
   '-sequence': { columns: [{ sql: 'e.sequence', type: 'bigint' }], direction: 'desc' },
@@ -71,7 +73,8 @@ export function entryListRepository(manager: EntityManager, locale: Locale) {
       const conditions = entryConditions(query);
       const list = {
         select: SELECT,
-        from: entriesFrom('entry e'),
+        from: 'entry e',
+        joined: { alias: 'e', sql: JOINED },
         conditions,
         sort: ENTRY_SORT[query.sort],
         page: query,

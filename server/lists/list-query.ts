@@ -74,7 +74,7 @@ export interface PageRequest {
  */
 export async function readPage<Row, Item>(
   manager: EntityManager,
-  { select, from, conditions, sort, page, of }: ListQuery,
+  { select, from, joined, conditions, sort, page, of }: ListQuery,
   present: (row: Row) => Item,
 ): Promise<{ items: Item[]; nextCursor: string | null }> {
   const { columns, direction } = sort;
@@ -88,8 +88,12 @@ export async function readPage<Row, Item>(
   }
   const keys = columns.map(({ sql }, index) => `(${sql})::text as sort_${index}`).join(', ');
   const order = columns.map(({ sql }) => `${sql} ${direction}`).join(', ');
+  const range = `where ${conditions.sql} order by ${order} limit ${page.limit + 1}`;
   const rows = await manager.query<(Row & Record<string, string>)[]>(
-    `select ${select}, ${keys} from ${from} where ${conditions.sql} order by ${order} limit ${page.limit + 1}`,
+    joined
+      ? `select ${select}, ${keys} from (select ${joined.alias}.* from ${from} ${range}) ${joined.alias}
+          ${joined.sql} order by ${order}`
+      : `select ${select}, ${keys} from ${from} ${range}`,
     conditions.values,
   );
   return presentPage(rows, page.limit, of, (row) => columns.map((_, index) => row[`sort_${index}`] ?? null), present);
@@ -98,6 +102,11 @@ export async function readPage<Row, Item>(
 export interface ListQuery {
   select: string;
   from: string;
+  /**
+   * Joins made to the page alone, where conditions and sort speak of nothing but `from`'s alias. Joined before the limit
+   * a planner that expects few rows reads the whole table.
+   */
+  joined?: { alias: string; sql: string };
   conditions: Conditions;
   sort: Sort;
   page: PageRequest;
