@@ -184,7 +184,7 @@ export function formatsFor(preferences: Preferences) {
       formatDate(locale, new Date(instant), timeZone, {
         day: 'numeric',
         month: 'short',
-        hour: '2-digit',
+        hour: locale.endsWith('US') ? 'numeric' : '2-digit', // 1:40 PM, but 08:05
         minute: '2-digit',
       }),
     longDateTime: (instant: string, timeZone?: string) =>

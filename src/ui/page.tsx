@@ -43,7 +43,7 @@ export function Page({
     <div className={`flex flex-1 flex-col ${field ? 'field-screen' : ''} ${fill ? 'min-h-0 min-w-0' : ''}`}>
       <title>{inTab ? `${inTab} · Tarewright` : 'Tarewright'}</title>
       <div className="sticky top-0 z-10 border-b-2 border-ink bg-ground page-gutter desk:static desk:border-0 desk:bg-transparent">
-        <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:items-end desk:pt-6">
+        <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:items-end desk:gap-x-8 desk:pt-6">
           {back ? (
             <button
               type="button"
@@ -57,13 +57,15 @@ export function Page({
               </svg>
             </button>
           ) : null}
-          <h1 className="type-narrow min-w-0 flex-1 truncate text-[1.0625rem] font-[640] desk:whitespace-normal desk:text-[1.875rem] desk:type-title">
+          <h1 className="type-narrow min-w-0 flex-1 truncate text-[1.0625rem] font-[640] desk:min-w-min desk:whitespace-normal desk:text-[1.875rem] desk:[overflow-wrap:normal] desk:type-title">
             {title}
           </h1>
-          <div className="type-label flex shrink-0 items-center gap-4 text-ink-soft">
+          <div className="type-label flex shrink-0 items-center gap-4 text-ink-soft desk:shrink">
             {online ? null : <span className="text-ink">{t('frame.offline')}</span>}
             {status}
-            {actions ? <span className="hidden items-center gap-5 desk:flex">{actions}</span> : null}
+            {actions ? (
+              <span className="hidden flex-wrap items-center justify-end gap-x-5 gap-y-1 desk:flex">{actions}</span>
+            ) : null}
           </div>
         </div>
       </div>

@@ -4,6 +4,7 @@ import { useMessages } from '../../lib/messages.ts';
 import { Beam } from '../../ui/beam/beam.tsx';
 import { useBeamUnit } from '../../ui/beam/use-beam-unit.ts';
 import { Caution } from '../../ui/caution.tsx';
+import { Figure } from '../../ui/figure.tsx';
 import { beamSummary, fullCylinderBeam } from './cylinder-beam.ts';
 import type { CylinderFigures } from './use-cylinder-figures.ts';
 
@@ -37,16 +38,14 @@ export function CylinderPreview({
     () => fullCylinderBeam(shown, figures.heelG, { t, format }, unit),
     [shown, figures.heelG, t, format, unit],
   );
-  const { value, unit: symbol } = format.massAboutParts(shown.contentG);
   return (
     <aside aria-label={t('cylinders.new.preview')} className="min-w-0 lg:sticky lg:top-20 lg:self-start">
       <p className="type-label text-ink-soft">
         {[tag || t('cylinders.new.untagged'), refrigerant].filter(Boolean).join(', ')}
       </p>
       {contentG === null ? null : (
-        <p className="type-figure mt-1 text-[3.25rem]">
-          {value}
-          <span className="pl-2 text-[1.375rem] font-[600] tracking-normal">{symbol}</span>
+        <p className="mt-1 text-[3.25rem]">
+          <Figure pieces={format.massAboutPieces(shown.contentG)} />
         </p>
       )}
       {known ? (

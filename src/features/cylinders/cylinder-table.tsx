@@ -46,7 +46,7 @@ export function CylinderTable({ cylinders, loading, sort, onSort, more }: Cylind
       {
         id: 'beam',
         head: t('cylinders.beam.head'),
-        cell: (cylinder) => <SmallBeam cylinder={cylinder} className="w-[clamp(14rem,42vw,44rem)] pt-1" />,
+        cell: (cylinder) => <SmallBeam cylinder={cylinder} className="w-[clamp(16rem,calc(100vw-31rem),60rem)] pt-1" />,
       },
       {
         id: 'content',

@@ -104,7 +104,7 @@ function CylinderPage({ cylinder }: { cylinder: Cylinder }) {
           <Cautions cylinder={cylinder} />
           <OpenFlags cylinderId={cylinder.id} />
           {mayPost || mayWrite ? (
-            <div className="flex flex-wrap gap-3">
+            <div className="grid grid-cols-2 gap-3 desk:flex desk:flex-wrap">
               {mayPost ? (
                 <Button kind="act" className="not-desk:hidden" onClick={() => setAction('weigh')}>
                   {t('cylinders.action.weigh')}

@@ -45,7 +45,8 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
       id: 'why',
       head: t('log.why'),
       keep: true,
-      cell: (row) => <Why row={row} rows={rows} ties={ties} />,
+      // Beside the open sheet there is no room for marks; the sheet says what they say.
+      cell: (row) => <Why row={row} rows={rows} ties={ties} marks={!beside} />,
     };
     const who: LedgerColumn<EntryRow> = { id: 'who', head: t('log.who'), cell: (row) => row.recordedByName };
     if (phone) {
@@ -124,7 +125,17 @@ function zoneWord({ locale }: Formats, { occurredAt, timeZone }: EntryRow): stri
 }
 
 /** What was done, what cancels what, and in words what else has to be known of the entry. */
-export function Why({ row, rows, ties }: { row: EntryRow; rows: readonly EntryRow[]; ties: Ties }) {
+export function Why({
+  row,
+  rows,
+  ties,
+  marks = true,
+}: {
+  row: EntryRow;
+  rows: readonly EntryRow[];
+  ties: Ties;
+  marks?: boolean;
+}) {
   const t = useMessages();
   const format = useFormat();
   return (
@@ -132,7 +143,7 @@ export function Why({ row, rows, ties }: { row: EntryRow; rows: readonly EntryRo
       <span>
         <What row={row} rows={rows} ties={ties} />
       </span>
-      {entryMarks(t, row, format.month).map((mark) => (
+      {(marks ? entryMarks(t, row, format.month) : []).map((mark) => (
         <Mark key={mark}>{mark}</Mark>
       ))}
     </span>
@@ -147,7 +158,7 @@ export function Mark({ children }: { children: ReactNode }) {
   );
 }
 
-function What({ row, rows, ties }: Parameters<typeof Why>[0]) {
+function What({ row, rows, ties }: Omit<Parameters<typeof Why>[0], 'marks'>) {
   const t = useMessages();
   const format = useFormat();
   const words = reasonWords(t, row);

@@ -159,7 +159,6 @@ function Sheet({
             onChange={(event) => setUnit(event.target.value as SheetUnit)}
           />
           <TextField
-            layout="row"
             type="datetime-local"
             label={t('stockTake.at')}
             value={sheet.at}

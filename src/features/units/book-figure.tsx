@@ -4,6 +4,7 @@ import { useMessages } from '../../lib/messages.ts';
 import { Beam } from '../../ui/beam/beam.tsx';
 import { unitBeam } from '../../ui/beam/presets.ts';
 import { useBeamUnit } from '../../ui/beam/use-beam-unit.ts';
+import { Figure } from '../../ui/figure.tsx';
 
 /** The one number of this page: what the unit holds by its book, on the beam against its full charge. */
 export function BookFigure({ unit }: { unit: Unit }) {
@@ -23,7 +24,9 @@ export function BookFigure({ unit }: { unit: Unit }) {
         {t(book.known ? 'units.figure.book' : 'units.figure.notKnown', { refrigerant })}
       </p>
       {book.known ? (
-        <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">{format.massAbout(book.massG)}</p>
+        <p className="text-[clamp(2.75rem,14vw,4.25rem)]">
+          <Figure pieces={format.massAboutPieces(book.massG)} />
+        </p>
       ) : (
         <p className="type-title pt-1 text-[1.75rem]">
           {book.massG === 0 ? t('units.figure.nothing') : t('units.figure.sum', { mass: format.massAbout(book.massG) })}

@@ -5,12 +5,13 @@ import { queryClient } from '../../api/query-client.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
 import { unitQueries } from '../../api/units.ts';
 import { useFormat } from '../../lib/format.ts';
-import { loadMessages, useMessages } from '../../lib/messages.ts';
+import { loadMessages, type Translate, useMessages } from '../../lib/messages.ts';
 import { Beam } from '../../ui/beam/beam.tsx';
 import { chargeBeam } from '../../ui/beam/presets.ts';
 import { useBeamUnit } from '../../ui/beam/use-beam-unit.ts';
 import { Button, ButtonLink } from '../../ui/button.tsx';
 import { Caution } from '../../ui/caution.tsx';
+import { Figure } from '../../ui/figure.tsx';
 import { Notice } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
 import { Fact, Part } from './part.tsx';
@@ -23,6 +24,15 @@ export async function loader({ params, request }: LoaderFunctionArgs) {
   const sheet = await queryClient.ensureQueryData(chargeSheetQueries.one(String(params.sheetId)));
   const unit = await queryClient.ensureQueryData(unitQueries.one(sheet.unitId));
   return { sheet, unit };
+}
+
+const NAMED_VERSIONS = ['chargeRules', 'gwp', 'tubes', 'refrigerants'];
+
+/** `saturation/R-32`: which table or rule a version is of, in words; what has none yet keeps its name. */
+function versionWords(t: Translate, name: string): string {
+  const [table = '', of] = name.split('/');
+  if (of !== undefined && table === 'saturation') return t('units.sheet.version.saturation', { refrigerant: of });
+  return NAMED_VERSIONS.includes(name) ? t(`units.sheet.version.${name}`) : name;
 }
 
 /** A charge sheet as it was made: inputs, every step, result, versions and hash. It never changes. */
@@ -69,7 +79,9 @@ export function Component() {
             <p className="type-label text-ink-soft">
               {t('units.sheet.totalOf', { refrigerant: request.basis.refrigerant })}
             </p>
-            <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">{format.mass(result.totalG)}</p>
+            <p className="text-[clamp(2.75rem,14vw,4.25rem)]">
+              <Figure pieces={format.massPieces(result.totalG)} />
+            </p>
             <p className="pt-1.5 text-[1.1875rem] font-[620] text-move">{whatToDo()}</p>
             {result.co2eT === null ? null : (
               <p className="type-label text-ink-soft">
@@ -103,7 +115,7 @@ export function Component() {
                 {format.longDateTime(sheet.madeAt)}, {sheet.madeByName}
               </Fact>
               {Object.entries(result.versions).map(([name, version]) => (
-                <Fact key={name} name={name}>
+                <Fact key={name} name={versionWords(t, name)}>
                   <span className="font-mono text-[0.875rem]">{version}</span>
                 </Fact>
               ))}

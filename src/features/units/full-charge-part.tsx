@@ -4,6 +4,7 @@ import type { Unit } from '../../../shared/unit-register/unit.schema.ts';
 import { unitQueries } from '../../api/units.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
+import { Figure } from '../../ui/figure.tsx';
 import { Part } from './part.tsx';
 
 /** How much a full unit holds, by which of the law's methods and since when; earlier ones under it. */
@@ -26,7 +27,9 @@ export function FullChargePart({ unit, mayWrite }: { unit: Unit; mayWrite: boole
     >
       {now ? (
         <div className="py-3">
-          <p className="type-figure text-[2rem]">{format.mass(now.massG)}</p>
+          <p className="text-[2rem]">
+            <Figure pieces={format.massPieces(now.massG)} />
+          </p>
           <p className="pt-1 text-ink-soft">
             {t(`units.method.${now.method}`)}, {format.longDateTime(now.validFrom)}
           </p>

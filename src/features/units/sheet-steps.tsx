@@ -17,7 +17,7 @@ export function SheetSteps({ steps }: { steps: ChargeResponse['steps'] }) {
           <li
             // biome-ignore lint/suspicious/noArrayIndexKey: a line is its place in the working
             key={index}
-            className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-4 border-b border-rule-faint py-1.5"
+            className="grid grid-cols-[minmax(0,1fr)_auto] grid-rows-[auto_1fr] items-baseline gap-x-4 border-b border-rule-faint py-1.5"
           >
             <p className="leading-snug">
               {asWritten(step.expression, separator)} ={' '}
@@ -26,7 +26,7 @@ export function SheetSteps({ steps }: { steps: ChargeResponse['steps'] }) {
                 {step.unit === '' ? '' : `${NBSP}${step.unit}`}
               </strong>
             </p>
-            <p className="type-label max-w-40 text-right text-[0.875rem] leading-tight text-ink-soft desk:max-w-60">
+            <p className="type-label row-span-2 max-w-40 self-start pt-1 text-right text-[0.875rem] leading-tight text-ink-soft desk:max-w-60">
               {step.source}
             </p>
             <p className="type-label text-[0.875rem] leading-tight text-ink-soft">{step.label}</p>

@@ -58,7 +58,7 @@ export function Component() {
         <div className="flex min-w-0 flex-col gap-8">
           <BookFigure unit={unit} />
           {mayPost ? (
-            <div className="flex flex-wrap gap-3">
+            <div className="grid grid-cols-2 gap-3 desk:flex desk:flex-wrap">
               <div className="hidden w-56 desk:block">{charge}</div>
               {open ? (
                 <ButtonLink className="min-h-14" to={`/weigh-back/${open.groupId}`}>

@@ -2,6 +2,7 @@ import { type ReactNode, useEffect, useRef } from 'react';
 import type { EntryGroupResponse } from '../../../shared/ledger/entry-group-response.schema.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
+import { Figure } from '../../ui/figure.tsx';
 import { Notice } from '../../ui/notice.tsx';
 import { PostedEntries } from './entry-lines.tsx';
 
@@ -39,7 +40,9 @@ export function Posted({
           {title ?? numbered}
         </h2>
         {intoUnitG > 0 ? (
-          <p className="type-figure pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">{format.massAbout(intoUnitG)}</p>
+          <p className="pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">
+            <Figure pieces={format.massAboutPieces(intoUnitG)} />
+          </p>
         ) : null}
         {text ? <p className="pt-1 text-ink-soft">{text}</p> : null}
       </div>

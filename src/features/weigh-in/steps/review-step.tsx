@@ -9,6 +9,7 @@ import { Beam } from '../../../ui/beam/beam.tsx';
 import { useBeamUnit } from '../../../ui/beam/use-beam-unit.ts';
 import { Button } from '../../../ui/button.tsx';
 import { CheckField, FieldError } from '../../../ui/field.tsx';
+import { Figure } from '../../../ui/figure.tsx';
 import { bookBeam } from '../book-beam.ts';
 import { EntriesToCome, type Gap } from '../entry-lines.tsx';
 import { FullQuestion } from '../full-question.tsx';
@@ -79,7 +80,9 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
         <p className="type-label text-ink-soft">
           {t('weighIn.review.into', { unit: unit.tag, refrigerant: unit.refrigerant })}
         </p>
-        <p className="type-figure text-[clamp(2.5rem,14vw,4.25rem)] text-move">{format.massAbout(addedG)}</p>
+        <p className="text-[clamp(2.5rem,14vw,4.25rem)] text-move">
+          <Figure pieces={format.massAboutPieces(addedG)} />
+        </p>
         <AgainstTarget
           weighIn={weighIn}
           addedG={addedG}
