@@ -44,7 +44,7 @@ export function CylinderPreview({
         {[tag || t('cylinders.new.untagged'), refrigerant].filter(Boolean).join(', ')}
       </p>
       {contentG === null ? null : (
-        <p className="mt-1 text-[3.25rem]">
+        <p className="type-figure mt-1 text-[3.25rem]">
           <Figure pieces={format.massAboutPieces(shown.contentG)} />
         </p>
       )}

@@ -46,7 +46,9 @@ export function CylinderTable({ cylinders, loading, sort, onSort, more }: Cylind
       {
         id: 'beam',
         head: t('cylinders.beam.head'),
-        cell: (cylinder) => <SmallBeam cylinder={cylinder} className="w-[clamp(16rem,calc(100vw-31rem),60rem)] pt-1" />,
+        cell: (cylinder) => (
+          <SmallBeam cylinder={cylinder} className="w-[clamp(16rem,calc(100vw-32.5rem),60rem)] pt-1" />
+        ),
       },
       {
         id: 'content',

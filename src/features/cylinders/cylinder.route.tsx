@@ -157,7 +157,7 @@ function Content({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderF
       <p className="type-label text-ink-soft">
         {t('cylinders.one.holds', { refrigerant: cylinder.refrigerant, kind: t(`cylinders.kind.${cylinder.kind}`) })}
       </p>
-      <p className="mt-1 text-[3.25rem]">
+      <p className="type-figure mt-1 text-[3.25rem]">
         <Figure pieces={format.massAboutPieces(cylinder.contentG)} />
       </p>
       {cylinder.limitG === null ? null : (

@@ -140,7 +140,7 @@ export function Why({
   const format = useFormat();
   return (
     <span className="flex items-center gap-2">
-      <span>
+      <span className={marks ? '' : 'block max-w-44 truncate'}>
         <What row={row} rows={rows} ties={ties} />
       </span>
       {(marks ? entryMarks(t, row, format.month) : []).map((mark) => (

@@ -24,7 +24,7 @@ export function BookFigure({ unit }: { unit: Unit }) {
         {t(book.known ? 'units.figure.book' : 'units.figure.notKnown', { refrigerant })}
       </p>
       {book.known ? (
-        <p className="text-[clamp(2.75rem,14vw,4.25rem)]">
+        <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">
           <Figure pieces={format.massAboutPieces(book.massG)} />
         </p>
       ) : (

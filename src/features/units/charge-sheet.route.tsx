@@ -79,7 +79,7 @@ export function Component() {
             <p className="type-label text-ink-soft">
               {t('units.sheet.totalOf', { refrigerant: request.basis.refrigerant })}
             </p>
-            <p className="text-[clamp(2.75rem,14vw,4.25rem)]">
+            <p className="type-figure text-[clamp(2.75rem,14vw,4.25rem)]">
               <Figure pieces={format.massPieces(result.totalG)} />
             </p>
             <p className="pt-1.5 text-[1.1875rem] font-[620] text-move">{whatToDo()}</p>

@@ -27,7 +27,7 @@ export function FullChargePart({ unit, mayWrite }: { unit: Unit; mayWrite: boole
     >
       {now ? (
         <div className="py-3">
-          <p className="text-[2rem]">
+          <p className="type-figure text-[2rem]">
             <Figure pieces={format.massPieces(now.massG)} />
           </p>
           <p className="pt-1 text-ink-soft">

@@ -40,7 +40,7 @@ export function Posted({
           {title ?? numbered}
         </h2>
         {intoUnitG > 0 ? (
-          <p className="pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">
+          <p className="type-figure pt-2 text-[clamp(2.5rem,14vw,4.25rem)]">
             <Figure pieces={format.massAboutPieces(intoUnitG)} />
           </p>
         ) : null}

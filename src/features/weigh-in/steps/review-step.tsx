@@ -80,7 +80,7 @@ export function ReviewStep({ weighIn, dispatch }: StepProps) {
         <p className="type-label text-ink-soft">
           {t('weighIn.review.into', { unit: unit.tag, refrigerant: unit.refrigerant })}
         </p>
-        <p className="text-[clamp(2.5rem,14vw,4.25rem)] text-move">
+        <p className="type-figure text-[clamp(2.5rem,14vw,4.25rem)] text-move">
           <Figure pieces={format.massAboutPieces(addedG)} />
         </p>
         <AgainstTarget
