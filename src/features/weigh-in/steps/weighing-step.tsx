@@ -12,12 +12,16 @@ import { type StepProps, useStepDraft } from '../use-weigh-in.ts';
 import { useWeighInData } from '../weigh-in-data.ts';
 import type { Mode } from '../weigh-in-state.ts';
 
+/** Nobody has said otherwise: the scale on one's own van. */
+const OWN = 'own';
+
 /** On which scale and how it is read. The last choice of this device stands already. */
 export function WeighingStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
-  const { scales, failed } = useWeighInData();
+  const { scales, failed, myId } = useWeighInData();
   const leg = weighIn.legs.at(-1);
-  const [toolId, setToolId] = useStepDraft<string | null>(weighIn, 'tool', () => leg?.toolId ?? null);
+  const [chosen, setToolId] = useStepDraft<string | null>(weighIn, 'tool', () => leg?.toolId ?? OWN);
+  const toolId = chosen === OWN ? (scales?.find(({ heldBy }) => heldBy === myId)?.id ?? null) : chosen;
   const [mode, setMode] = useStepDraft<Mode>(weighIn, 'mode', () => leg?.mode ?? 'gross');
   const [unit, setUnit] = useStepDraft<ReadingUnit>(weighIn, 'unit', () => leg?.unit ?? 'g');
   const goOn = () => {
