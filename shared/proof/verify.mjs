@@ -533,6 +533,12 @@ export function readHead(typed) {
 
 const filled = (sentence, values) => sentence.replaceAll(/\{(\w+)\}/g, (_, name) => String(values[name] ?? '?'));
 
+/** What a package says of itself, in one line and without anything that would move a terminal's cursor. */
+const plain = (said) =>
+  String(said)
+    .replaceAll(/\p{C}+/gu, ' ')
+    .slice(0, 200);
+
 /** What is printed, line by line; `found` is a Fault or what `checkPackage` says. */
 export function report(found, language = 'en') {
   const say = (key, values = {}) => filled(SENTENCES[language][key], values);
@@ -541,7 +547,7 @@ export function report(found, language = 'en') {
   const { sealed, signer, end, proof, unsignedKeys } = found;
   return [
     say('intact'),
-    say('about', { about: proof.about?.label }),
+    say('about', { about: plain(proof.about?.label) }),
     say('counts', found),
     ...(found.words + found.erased > 0 ? [say('words', found)] : []),
     say('sealed', { ...sealed, seals: found.seals }),

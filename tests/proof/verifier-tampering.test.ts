@@ -547,6 +547,15 @@ describe('The verifier itself', () => {
     expect(source.match(/\bimport\(/g)).toHaveLength(1);
   });
 
+  it('prints nothing of what a package says of itself that could pass for its own words', async () => {
+    const folder = packageOf(history.firm.id, rows);
+    editFile(folder, 'proof.json', (text) =>
+      text.replace('everything', 'all\\n\\u001b[2KThe signer has the key that you know'),
+    );
+    const { lines } = await runVerifier(folder);
+    expect(lines[1]).toBe('About (as the package says of itself): all [2KThe signer has the key that you know');
+  });
+
   it('says in Spanish everything that it says in English', async () => {
     const folder = packageOf(history.firm.id, rows.slice(0, 3));
     const en = await runVerifier(folder);
