@@ -66,9 +66,9 @@ describe('A cylinder on its beam', () => {
     );
   });
 
-  it('names in a list only its limit: the names stand in the columns', () => {
+  it('names in a list only its limit, as the scale would show it: the other figures stand in the columns', () => {
     const layout = layOutBeam(smallCylinderBeam(bottle, words(), GRAMS), 400, String);
-    expect(layout.above.map(({ text }) => plain(text))).toEqual(['limit 12,224 g']);
+    expect(layout.above.map(({ text }) => plain(text))).toEqual(['limit 18,329 g']);
     expect(layout.below).toEqual([]);
   });
 

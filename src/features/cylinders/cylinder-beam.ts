@@ -59,7 +59,8 @@ export function smallCylinderBeam(
       fillLimit:
         limitG === null
           ? null
-          : { massG: tareG + limitG, label: t('cylinders.beam.fillLimit', { mass: format.massAbout(limitG) }) },
+          : // On a scale that begins with the tare, the limit is what the scale may show.
+            { massG: tareG + limitG, label: t('cylinders.beam.fillLimit', { mass: format.massAbout(tareG + limitG) }) },
       gross: { massG: tareG + contentG, label: '' },
     },
     unit,
