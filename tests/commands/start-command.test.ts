@@ -131,9 +131,13 @@ describe('npm start', () => {
       const connected = await runOnce<{ usename: string; rolsuper: boolean; rolbypassrls: boolean }>(
         postgres.url('postgres', 'records'),
         `SELECT DISTINCT usename, rolsuper, rolbypassrls FROM pg_stat_activity JOIN pg_roles ON rolname = usename
-          WHERE datname = 'records' AND pid <> pg_backend_pid()`,
+          WHERE datname = 'records' AND pid <> pg_backend_pid() ORDER BY 1`,
       );
-      expect(connected).toEqual([{ usename: 'tarewright_app', rolsuper: false, rolbypassrls: false }]);
+      const bound = { rolsuper: false, rolbypassrls: false };
+      expect(connected).toEqual([
+        { usename: 'tarewright_app', ...bound },
+        { usename: 'tarewright_jobs', ...bound },
+      ]);
       command.child.kill('SIGTERM');
       expect(await command.ended).toBe(0);
     } finally {
