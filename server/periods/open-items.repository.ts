@@ -1,4 +1,9 @@
 import type { EntityManager } from 'typeorm';
+import { ASSUMED_SCALE } from '../../shared/ledger/scale.ts';
+import { microgramsOfGrams } from '../../shared/units/mass.ts';
+
+/** A cylinder that holds no more than one step of an ordinary scale is empty: no reading could say otherwise. */
+const LEAST_CONTENT = microgramsOfGrams(ASSUMED_SCALE.resolutionG);
 
 export interface MonthSpan {
   month: string;
@@ -87,12 +92,12 @@ export function openItemsRepository(manager: EntityManager) {
                 where e.firm_id = c.firm_id and e.to_id = c.id and e.occurred_at >= $2), 0)
               + coalesce((select sum(e.mass_micrograms) from entry e
                 where e.firm_id = c.firm_id and e.from_id = c.id and e.occurred_at >= $2), 0) as content) w
-          where w.content > 0 and not exists (select from reading r
+          where w.content > $3 and not exists (select from reading r
             where r.firm_id = c.firm_id and r.cylinder_id = c.id and r.mode = 'gross' and r.read_at >= $1
               and not exists (select from entry_group x
                 where x.firm_id = r.firm_id and x.reverses_group_id = r.group_id))
           order by c.tag, c.id limit 2000`,
-        [start, end],
+        [start, end, LEAST_CONTENT.toString()],
       ),
     /** Jobs of the month that moved nothing: begun by its end, and not ended before it began. */
     jobsWithoutPosting: ({ start, end }: MonthSpan): Promise<JobRow[]> =>

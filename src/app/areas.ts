@@ -6,6 +6,8 @@ export interface Area {
   /** Addresses that belong to it. */
   holds: RegExp;
   signedOut?: boolean;
+  /** Shown to those who may alone. */
+  permission?: string;
   /** In the bar at the bottom of a phone; the others are found under "more". */
   onPhone: boolean;
 }
@@ -23,8 +25,9 @@ export const AREAS: readonly Area[] = [
   { to: '/units', name: 'frame.units', holds: /^\/(units|sites)(?!.*\/(charge|weigh-in)$)/, onPhone: false },
   { to: '/cylinders', name: 'frame.cylinders', holds: /^\/cylinders/, onPhone: true },
   { to: '/log', name: 'frame.log', holds: /^\/log/, onPhone: true },
+  { to: '/books', name: 'frame.books', holds: /^\/books/, onPhone: false, permission: 'books:read' },
 ];
 
 /** On a phone what has no place in the bar stands under "more". */
 export const MORE =
-  /^\/(more|units(?!.*\/(charge|weigh-in)$)|sites|people|tools|parties|exports|imports|preferences|choose-firm)/;
+  /^\/(more|units(?!.*\/(charge|weigh-in)$)|sites|books|people|tools|parties|exports|imports|preferences|choose-firm)/;

@@ -12,7 +12,10 @@ export function Frame() {
   const session = useSession();
   const navigation = useNavigation();
   const signedIn = session != null;
-  const areas = AREAS.filter((area) => signedIn || area.signedOut);
+  const areas = AREAS.filter(
+    ({ signedOut, permission }) =>
+      (signedIn || signedOut) && (!permission || session?.permissions.includes(permission)),
+  );
   return (
     <div className="flex min-h-dvh flex-col">
       <a

@@ -16,12 +16,14 @@ export function Component() {
   const navigate = useNavigate();
   const session = useSession();
   const seesPeople = usePermission('people:read');
+  const seesBooks = usePermission('books:read');
   const mayImport = usePermission('registers:correct');
   const signOut = useSignOut();
   const leave = (everywhere: boolean) =>
     signOut.mutate({ everywhere }, { onSuccess: () => void navigate('/sign-in', { replace: true }) });
   const links = [
     ...(session ? [{ to: '/units', name: t('frame.units') }] : []),
+    ...(seesBooks ? [{ to: '/books', name: t('frame.books') }] : []),
     ...(seesPeople ? [{ to: '/people', name: t('frame.people') }] : []),
     ...(seesPeople ? [{ to: '/tools', name: t('registers.tools.title') }] : []),
     ...(seesPeople ? [{ to: '/parties', name: t('registers.parties.title') }] : []),

@@ -1,0 +1,138 @@
+import { useState } from 'react';
+import { addPriceRequest, type PurchaseRow } from '../../../shared/books/books.schema.ts';
+import { MASS_FACTORS } from '../../../shared/units/factors.ts';
+import { readNumber } from '../../../shared/units/read-number.ts';
+import { useAddPrice } from '../../api/books.ts';
+import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../api/form-errors.ts';
+import { useFormat } from '../../lib/format.ts';
+import { useMessages } from '../../lib/messages.ts';
+import { newId } from '../../lib/new-id.ts';
+import { usePreferences } from '../../lib/preferences.ts';
+import { Button } from '../../ui/button.tsx';
+import { Dialog } from '../../ui/dialog.tsx';
+import { ChoiceField, FieldError, TextField } from '../../ui/field.tsx';
+import { decimalSeparatorOf } from '../../ui/quantity-draft.ts';
+import { money } from './book-words.ts';
+import { useOpens } from './use-opens.ts';
+
+const SHOWN = ['/price/value', '/currency'];
+
+/** What a purchase cost. A price given again takes the place of the one before; both stay on record. */
+export function PriceDialog({
+  purchase,
+  currency,
+  onClose,
+}: {
+  purchase: PurchaseRow;
+  currency: string;
+  onClose: () => void;
+}) {
+  const t = useMessages();
+  const format = useFormat();
+  const { locale, mass } = usePreferences();
+  const add = useAddPrice();
+  const opens = useOpens();
+  const [id] = useState(newId);
+  const [text, setText] = useState(() => shownPrice(purchase, locale));
+  const [per, setPer] = useState<'kg' | 'lb'>(purchase.price?.per ?? (mass === 'lbOz' || mass === 'oz' ? 'lb' : 'kg'));
+  const [currencyText, setCurrencyText] = useState(currency);
+  const [errors, setErrors] = useState<FormError[]>([]);
+  const value = readPrice(text, locale);
+  const massOf = purchase.massG / MASS_FACTORS[per].perUnit.valueOf();
+  const send = () => {
+    const body = {
+      id,
+      groupId: purchase.groupId,
+      refrigerant: purchase.refrigerant,
+      price: { value: value ?? '', per },
+      currency: currencyText.trim().toUpperCase(),
+    };
+    const found = schemaErrors(addPriceRequest, body);
+    setErrors(found);
+    if (found.length > 0) return;
+    add.mutate(body, { onSuccess: onClose, onError: (error) => setErrors(answerErrors(error)) });
+  };
+  return (
+    <Dialog
+      open={opens}
+      onClose={onClose}
+      title={t('books.price.title', { refrigerant: purchase.refrigerant, supplier: purchase.supplierName })}
+      actions={
+        <>
+          <Button kind="act" busy={add.isPending} onClick={send}>
+            {value === null
+              ? t('books.price.keep')
+              : t('books.price.keepOf', {
+                  cost: money(locale, Number(value) * massOf, currencyOf(currencyText, currency)),
+                })}
+          </Button>
+          <Button onClick={onClose}>{t('books.cancel')}</Button>
+        </>
+      }
+    >
+      <form
+        noValidate
+        className="flex flex-col gap-4"
+        onSubmit={(event) => {
+          event.preventDefault();
+          send();
+        }}
+      >
+        <p className="text-ink-soft">
+          {t('books.price.lead', {
+            mass: format.mass(purchase.massG),
+            paper: purchase.documentNumber ?? t('books.price.noPaper'),
+          })}
+        </p>
+        <TextField
+          label={t('books.price.value')}
+          inputMode="decimal"
+          autoComplete="off"
+          value={text}
+          error={errorAt(errors, '/price/value') ? t('books.price.valueNeeded') : undefined}
+          onChange={({ target }) => setText(target.value)}
+        />
+        <ChoiceField
+          label={t('books.price.per')}
+          name="per"
+          value={per}
+          choices={[
+            { value: 'kg', label: t('books.price.per.kg') },
+            { value: 'lb', label: t('books.price.per.lb') },
+          ]}
+          onChange={(unit) => setPer(unit === 'lb' ? 'lb' : 'kg')}
+        />
+        <TextField
+          label={t('books.price.currency')}
+          hint={t('books.price.currency.hint')}
+          autoComplete="off"
+          maxLength={3}
+          value={currencyText}
+          error={errorAt(errors, '/currency')}
+          onChange={({ target }) => setCurrencyText(target.value)}
+        />
+        {errorsElsewhere(errors, SHOWN).map((message) => (
+          <FieldError key={message}>{message}</FieldError>
+        ))}
+      </form>
+    </Dialog>
+  );
+}
+
+/** While a currency is being typed the one before stands in. */
+const currencyOf = (text: string, before: string): string =>
+  /^[A-Za-z]{3}$/.test(text.trim()) ? text.trim().toUpperCase() : before;
+
+const shownPrice = ({ price }: PurchaseRow, locale: string): string =>
+  price ? price.value.replace('.', decimalSeparatorOf(locale)) : '';
+
+/** A price as the wire has it; null: it cannot be read. A single separator of three digits is the locale's. */
+function readPrice(text: string, locale: string): string | null {
+  if (text.trim() === '') return null;
+  const first = readNumber(text.trim());
+  const read = first.is === 'ambiguous' ? readNumber(text.trim(), meaningIn(text, locale)) : first;
+  return read.is === 'number' ? read.value : null;
+}
+
+const meaningIn = (text: string, locale: string) =>
+  text.includes(decimalSeparatorOf(locale)) ? ('decimal' as const) : ('grouping' as const);
