@@ -27,6 +27,9 @@ export function longMonth(locale: string, month: string): string {
   return format.format(new Date(`${month}-15T12:00:00Z`));
 }
 
+/** As a title begins: Spanish writes its months small. */
+export const asTitle = (text: string): string => text.charAt(0).toLocaleUpperCase() + text.slice(1);
+
 /** Stock at a glance, and what is less than that would show as it is read. */
 export const bookMass = (format: Formats, massG: number): string =>
   Math.abs(massG) >= 1000 ? format.stock(massG) : format.mass(massG);

@@ -11,7 +11,7 @@ import { ButtonLink } from '../../ui/button.tsx';
 import { Empty, Failed, RowsSkeleton } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
 import { BookTables } from './book-tables.tsx';
-import { bookMass, longMonth } from './book-words.ts';
+import { asTitle, bookMass, longMonth } from './book-words.ts';
 import { readPeriod, usualMonth } from './books-period.ts';
 import { DifferenceList } from './difference-list.tsx';
 import { DifferencePlaces } from './difference-places.tsx';
@@ -61,7 +61,7 @@ function Books({ periods, usual }: { periods: PeriodsResponse; usual: string }) 
   const period = readPeriod(search, { from: usual, to: usual });
   const books = useQuery({ ...bookQueries.books(period), placeholderData: keepPreviousData });
   const differences = useQuery({ ...bookQueries.differences(period), placeholderData: keepPreviousData });
-  const title = [periodWords(format.locale, period), period.refrigerant].filter(Boolean).join(', ');
+  const title = asTitle([periodWords(format.locale, period), period.refrigerant].filter(Boolean).join(', '));
   const failed = [books, differences].find(({ isError }) => isError);
   const isOld = books.isPlaceholderData || differences.isPlaceholderData;
   return (

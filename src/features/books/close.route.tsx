@@ -8,7 +8,7 @@ import { useFormat } from '../../lib/format.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { Failed, Notice, RowsSkeleton } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
-import { longMonth } from './book-words.ts';
+import { asTitle, longMonth } from './book-words.ts';
 import { CarryDialog } from './close/carry-dialog.tsx';
 import { MonthList } from './close/month-list.tsx';
 import { OpenItems } from './close/open-items.tsx';
@@ -33,7 +33,7 @@ export function Component() {
   const name = longMonth(locale, month);
   return (
     <Page
-      title={t(data?.state === 'closed' ? 'books.close.titleClosed' : 'books.close.title', { month: name })}
+      title={asTitle(t(data?.state === 'closed' ? 'books.close.titleClosed' : 'books.close.title', { month: name }))}
       {...(data ? { lead: <Lead checklist={data} /> } : {})}
       actions={
         <Link to={`/books?from=${month}&to=${month}`} className="inline-flex min-h-12 items-center">

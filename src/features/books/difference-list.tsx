@@ -30,13 +30,13 @@ export function DifferenceList({ period, found }: { period: BooksPeriod; found: 
   return (
     <Section title={t('books.differences')} csv={booksCsvPath('items', period)}>
       {shown.length > 0 ? (
-        <Differences rows={shown} found={found} />
+        <Differences caption={t('books.differences')} rows={shown} found={found} />
       ) : (
         <p className="py-3">{t('books.differences.noneBeyond')}</p>
       )}
       {folds ? (
         <Disclosure title={t('books.differences.within', { count: within.length })}>
-          <Differences rows={within} found={found} />
+          <Differences caption={t('books.differences.within', { count: within.length })} rows={within} found={found} />
         </Disclosure>
       ) : null}
       {found.notListed.count > 0 ? (
@@ -54,14 +54,21 @@ export function DifferenceList({ period, found }: { period: BooksPeriod; found: 
 const FEW = 3;
 
 /** A table where there is room for one, else a line for each. */
-function Differences({ rows, found }: { rows: readonly DifferenceItem[]; found: DifferencesResponse }) {
-  const t = useMessages();
+function Differences({
+  caption,
+  rows,
+  found,
+}: {
+  caption: string;
+  rows: readonly DifferenceItem[];
+  found: DifferencesResponse;
+}) {
   const desk = useMedia('(width >= 64rem)');
   const columns = useColumns(found);
   if (desk) {
     return (
       <LedgerTable
-        caption={t('books.differences')}
+        caption={caption}
         columns={columns}
         rows={rows}
         rowId={(item) => item.key}

@@ -230,7 +230,7 @@ const FIGURE_PX = 17 * 1.36;
 
 /** What a part's words take, their name on two lines where one is too long, px. */
 const wordsWidth = (name: string, figure: string, most: number): number =>
-  Math.max(textWidth(figure, FIGURE_PX), ...wrapped(name, most).map((line) => textWidth(line, NAME_PX)));
+  Math.ceil(Math.max(textWidth(figure, FIGURE_PX), ...wrapped(name, most).map((line) => textWidth(line, NAME_PX)))) + 1;
 
 /** Two lines at most, broken between words. */
 function wrapped(text: string, width: number): string[] {
