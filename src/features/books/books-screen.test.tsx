@@ -140,7 +140,7 @@ describe('The books', () => {
 
   it('fold away what the scales explain, so that it does not stand before the books', async () => {
     await openBooks();
-    const within4 = await screen.findByText('4 differences that the scales explain');
+    const within4 = await screen.findByText('4 differences that the scales explain', { selector: 'summary *' });
     expect(within4.closest('details')?.open).toBe(false);
   });
 
