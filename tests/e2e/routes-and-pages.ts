@@ -100,6 +100,7 @@ export const ROUTE_PAGES: readonly RoutePage[] = [
   { route: '/books/close/:month', path: () => '/books/close/2026-11', who: 'owner' },
   { route: '/books/emissions', path: () => '/books/emissions', who: 'owner' },
   { route: '/exports', path: () => '/exports', who: 'owner' },
+  { route: '/imports', path: () => '/imports', who: 'owner' },
   { route: '/people', path: () => '/people', who: 'owner' },
   { route: '/tools', path: () => '/tools', who: 'owner' },
   { route: '/parties', path: () => '/parties', who: 'owner' },

@@ -102,7 +102,11 @@ function NotNext({ state }: { state: 'over' | 'running' }) {
   const next = useQuery(periodQueries.list()).data?.next;
   return (
     <Notice title={t(`books.close.notNext.${state}`)}>
-      {next ? <Link to={`/books/close/${next}`}>{t('books.toClose', { month: longMonth(locale, next) })}</Link> : null}
+      {next ? (
+        <Link to={`/books/close/${next}`} className="inline-flex min-h-6 items-center">
+          {t('books.toClose', { month: longMonth(locale, next) })}
+        </Link>
+      ) : null}
     </Notice>
   );
 }

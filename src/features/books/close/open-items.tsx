@@ -86,7 +86,7 @@ function Item({ item, timeZone, onSettle, onCarry }: { item: OpenItem; timeZone:
     <li className="flex flex-wrap items-start justify-between gap-x-8 gap-y-1 border-b border-rule py-3">
       <div className="min-w-0 flex-1 basis-52 leading-snug">
         <p className="flex flex-wrap items-baseline gap-x-4">
-          <Link to={itemPath(item)} className="font-[650] text-ink">
+          <Link to={itemPath(item)} className="inline-flex min-h-6 items-center font-[650] text-ink">
             {itemTitle(t, format, item)}
           </Link>
           {item.kind === 'difference' ? <Verdict verdict={item.difference.verdict} /> : null}

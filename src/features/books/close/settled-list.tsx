@@ -15,7 +15,7 @@ export function SettledList({ rows, timeZone }: { rows: readonly SettledRow[]; t
         {rows.map((row) => (
           <li key={row.id} className="border-b border-rule py-3 leading-snug">
             <p>
-              <Link to={`/log/${row.groupId}`} className="font-[650] text-ink">
+              <Link to={`/log/${row.groupId}`} className="inline-flex min-h-6 items-center font-[650] text-ink">
                 {t('books.settledLine', {
                   what: row.label,
                   refrigerant: row.refrigerant,

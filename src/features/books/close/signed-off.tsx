@@ -44,7 +44,9 @@ export function SignedOff({ checklist, closed }: { checklist: Checklist; closed:
         </Facts>
         {next ? (
           <p className="pt-3">
-            <Link to={`/books/close/${next}`}>{t('books.toClose', { month: longMonth(format.locale, next) })}</Link>
+            <Link to={`/books/close/${next}`} className="inline-flex min-h-6 items-center">
+              {t('books.toClose', { month: longMonth(format.locale, next) })}
+            </Link>
           </p>
         ) : null}
       </Section>
