@@ -84,6 +84,8 @@ describe('An error in a page', () => {
     const reported = app.logLines().filter((line) => line.includes('planted in the page'));
     expect(reported.length).toBeGreaterThan(0);
     forgive(/planted in the page/);
+    // As many routes as there are report more errors a minute than the server takes; that it refuses is its own test.
+    forgive(/^429 POST \S+client-errors$/);
   });
 });
 
