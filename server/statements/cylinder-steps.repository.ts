@@ -39,10 +39,16 @@ const ENTERED = (end: 'from' | 'to', when: string, rest = '') => `(select e.grou
 
 const NEWEST_FIRST = `order by e.occurred_at desc, e.sequence desc limit ${LOOK_BACK}`;
 
+/**
+ * A cylinder at a time, by its id. A plain join is taken for one row on either side, so that the whole register may be
+ * gone through first and everything below looked up for each of its cylinders.
+ */
+const ONE_CYLINDER = '(select c.id, c.firm_id from cylinder c where c.id = x.id offset 0)';
+
 /** Groups of a period that touch some cylinders, and those shortly before it; nothing that was reversed. */
-const STEPS = `with asked as (select c.id, c.firm_id, x.since, x.until
-    from unnest($1::uuid[], $2::timestamptz[], $3::timestamptz[]) x(id, since, until) join cylinder c on c.id = x.id),
-  touching as (
+const STEPS = `with asked as materialized (select c.id, c.firm_id, x.since, x.until
+    from unnest($1::uuid[], $2::timestamptz[], $3::timestamptz[]) x(id, since, until) cross join lateral ${ONE_CYLINDER} c),
+  touching as materialized (
     select a.id as cylinder_id, a.until, t.group_id from asked a cross join lateral (
       (select r.group_id from reading r where r.firm_id = a.firm_id and r.cylinder_id = a.id
         and r.read_at >= a.since and r.read_at < a.until)
@@ -118,7 +124,7 @@ export async function readBooksAtStart(
           where e.firm_id = c.firm_id and e.to_id = c.id and e.occurred_at >= x.since), 0)
         + coalesce((select sum(e.mass_micrograms) from entry e
           where e.firm_id = c.firm_id and e.from_id = c.id and e.occurred_at >= x.since), 0))::text as mass
-      from unnest($1::uuid[], $2::timestamptz[]) x(id, since) join cylinder c on c.id = x.id`,
+      from unnest($1::uuid[], $2::timestamptz[]) x(id, since) cross join lateral ${ONE_CYLINDER} c`,
     [spans.map(({ cylinderId }) => cylinderId), spans.map(({ from }) => from)],
   );
   return new Map(rows.map(({ id, mass }) => [id, BigInt(mass)]));
