@@ -1,6 +1,7 @@
 import type { DifferenceItem } from '../../../shared/books/books.schema.ts';
 import type { Holder } from '../../../shared/statements/cylinder-statement.schema.ts';
 import { dayInZone } from '../../../shared/units/calendar.ts';
+import { roundTo } from '../../../shared/units/round.ts';
 import type { Formats } from '../../lib/format.ts';
 import type { Translate } from '../../lib/messages.ts';
 import type { FlowPart } from './flow-parts.ts';
@@ -64,6 +65,14 @@ export const handsWords = (t: Translate, held: readonly Holder[]): string =>
   held.length === 0
     ? t('books.handsNotKnown')
     : held.map(({ name, van }) => [name ?? t('books.handsNobody'), van].filter(Boolean).join(', ')).join('; ');
+
+/** The same as a sentence: `In the hands of S. Brandt, van 3`. */
+export const handsSentence = (t: Translate, held: readonly Holder[]): string =>
+  held.length === 0 ? t('books.hands.notKnown') : t('books.hands', { who: handsWords(t, held) });
+
+/** Twice an uncertainty is worked out, and carries no more figures than a scale shows. */
+export const aboutFigure = (format: Formats, massG: number): string =>
+  format.massFigure(roundTo(massG, Math.abs(massG) >= 10 ? 0 : 1));
 
 /** A kind of place as the books name it: `atmosphere:hose`, `cylinderDifference`. */
 export const placeKindWords = (t: Translate, kind: string): string =>

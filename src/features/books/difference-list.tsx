@@ -7,7 +7,16 @@ import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Disclosure } from '../../ui/disclosure.tsx';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
-import { bookMass, differencePath, handsWords, money, signed, subjectWords } from './book-words.ts';
+import {
+  aboutFigure,
+  bookMass,
+  differencePath,
+  handsSentence,
+  handsWords,
+  money,
+  signed,
+  subjectWords,
+} from './book-words.ts';
 import { Section } from './section.tsx';
 import { Verdict } from './verdict.tsx';
 
@@ -110,7 +119,13 @@ function useColumns({ currency, items }: DifferencesResponse): LedgerColumn<Diff
         figure: true,
         cell: (item) => massFigure(item.differenceG),
       },
-      { id: 'twoU', head: '2u', unit, figure: true, cell: (item) => known(item.twoUG) },
+      {
+        id: 'twoU',
+        head: '2u',
+        unit,
+        figure: true,
+        cell: (item) => (item.twoUG === null ? '' : aboutFigure(format, item.twoUG)),
+      },
       ...(settled
         ? [
             {
@@ -174,12 +189,12 @@ function PhoneLine({ item, currency }: { item: DifferenceItem; currency: string 
               ? t('books.settled')
               : item.twoUG === null
                 ? null
-                : t('books.scalesExplain', { mass: format.mass(item.twoUG) })}
+                : t('books.scalesExplain', { mass: format.massAbout(item.twoUG) })}
           </span>
         </span>
         <span className="block leading-snug">
           {item.subject.kind === 'cylinder'
-            ? t('books.hands', { who: handsWords(t, item.heldBetween) })
+            ? handsSentence(t, item.heldBetween)
             : t('books.recordedBy', { who: item.recordedByName })}
           {item.cost === null ? null : `, ${money(format.locale, item.cost, currency)}`}
         </span>

@@ -32,7 +32,9 @@ export function HeldBetween({ statement }: { statement: CylinderStatement }) {
             </p>
             <p className="leading-snug">
               {between(t, format, difference, timeZone)}{' '}
-              <span className="text-ink-soft">{t('statement.limit', { mass: format.mass(difference.twoUG) })}</span>
+              <span className="text-ink-soft">
+                {t('statement.limit', { mass: format.massAbout(difference.twoUG) })}
+              </span>
               <span className="block font-[600]">{hands(t, format, difference.heldBetween, timeZone)}</span>
             </p>
           </li>

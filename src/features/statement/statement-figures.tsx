@@ -109,7 +109,7 @@ function summaryOf({ lastReading, difference }: CylinderStatement, t: Translate,
     book: format.mass(lastReading?.expectedG ?? 0),
     scale: format.mass(lastReading?.contentG ?? 0),
     difference: format.mass(difference?.differenceG ?? 0),
-    twoU: format.mass(difference?.twoUG ?? 0),
+    twoU: format.massAbout(difference?.twoUG ?? 0),
   });
 }
 
@@ -132,7 +132,7 @@ function Basis({ statement: { lastReading, difference, timeZone } }: { statement
   return (
     <Facts className="mt-3">
       <Fact name={t('statement.twoU')}>
-        <span className="font-[600]">{format.mass(difference.twoUG)}</span>{' '}
+        <span className="font-[600]">{format.massAbout(difference.twoUG)}</span>{' '}
         <span className="text-ink-soft">
           {[
             t('statement.readings', { count: difference.independentReadings }),

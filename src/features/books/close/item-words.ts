@@ -1,7 +1,7 @@
 import type { OpenItem } from '../../../../shared/periods/periods.schema.ts';
 import type { Formats } from '../../../lib/format.ts';
 import type { Translate } from '../../../lib/messages.ts';
-import { differencePath, handsWords, signed, subjectWords } from '../book-words.ts';
+import { differencePath, handsSentence, signed, subjectWords } from '../book-words.ts';
 
 /** What is open, in one line. */
 export function itemTitle(t: Translate, format: Formats, item: OpenItem): string {
@@ -36,7 +36,7 @@ export function itemDetail(t: Translate, format: Formats, item: OpenItem, timeZo
       const when = format.longDateTime(difference.at, difference.timeZone);
       const hands =
         difference.subject.kind === 'cylinder'
-          ? t('books.hands', { who: handsWords(t, difference.heldBetween) })
+          ? handsSentence(t, difference.heldBetween)
           : t('books.recordedBy', { who: difference.recordedByName });
       return t('books.item.difference.detail', { when, hands });
     }

@@ -94,7 +94,7 @@ function Item({ item, timeZone, onSettle, onCarry }: { item: OpenItem; timeZone:
         <p className="text-[0.9375rem] text-ink-soft">
           {itemDetail(t, format, item, timeZone)}
           {item.kind === 'difference' && item.difference.twoUG !== null
-            ? ` ${t('books.scalesExplain', { mass: format.mass(item.difference.twoUG) })}`
+            ? ` ${t('books.scalesExplain', { mass: format.massAbout(item.difference.twoUG) })}`
             : null}
         </p>
         <Decision item={item} />

@@ -29,7 +29,8 @@ export function SignOff({ checklist, onClosed }: { checklist: Checklist; onClose
     const found = schemaErrors(closeRequest, body);
     setErrors(found);
     if (found.length > 0) return;
-    close.mutate(body, { onSuccess: onClosed, onError: (error) => setErrors(answerErrors(error)) });
+    // The month is read again before this answers, and what is closed has no sign-off any more: told all the same.
+    close.mutateAsync(body).then(onClosed, (error: unknown) => setErrors(answerErrors(error)));
   };
   return (
     <Section title={t('books.signOff')}>
