@@ -97,7 +97,7 @@ export const ROUTE_PAGES: readonly RoutePage[] = [
     types: [/^scale reads now/, '950'],
   },
   { route: '/books', path: () => '/books?table=purchases', who: 'owner' },
-  { route: '/books/close/:month', path: () => '/books/close/2026-11', who: 'owner' },
+  { route: '/books/close/:month', path: () => '/books/close/2026-01', who: 'owner', types: [/^note/, 'all looked at'] },
   { route: '/books/emissions', path: () => '/books/emissions', who: 'owner' },
   { route: '/exports', path: () => '/exports', who: 'owner' },
   { route: '/imports', path: () => '/imports', who: 'owner' },

@@ -5,6 +5,7 @@ import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { afterEach, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import { carryRequest, closeRequest, settleRequest } from '../../../shared/periods/periods.schema.ts';
 import { queryClient } from '../../api/query-client.ts';
+import { forgetAllDrafts } from '../../lib/draft.ts';
 import { startMessages } from '../../lib/messages.ts';
 import { changePreferences, preferencesFor } from '../../lib/preferences.ts';
 import {
@@ -65,6 +66,7 @@ beforeEach(() => {
   };
   changePreferences({ ...preferencesFor('en-GB'), mass: 'g' });
   queryClient.clear();
+  forgetAllDrafts();
 });
 afterEach(() => {
   cleanup();

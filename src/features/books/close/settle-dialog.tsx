@@ -4,6 +4,7 @@ import { type OpenItem, SETTLED_TO, settleRequest } from '../../../../shared/per
 import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../../api/form-errors.ts';
 import { partyQueries } from '../../../api/parties.ts';
 import { useSettleDifference } from '../../../api/periods.ts';
+import { useDraft } from '../../../lib/draft.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { newId } from '../../../lib/new-id.ts';
@@ -19,6 +20,13 @@ type DifferenceOpen = Extract<OpenItem, { kind: 'difference' }>;
 /** A wrong tare is no settlement: the tare is revised, and the readings are judged again. */
 type Answer = (typeof SETTLED_TO)[number] | 'wrongTare';
 
+interface Draft {
+  id: string;
+  answer: Answer | '';
+  supplierId: string;
+  reason: string;
+}
+
 const SHOWN = ['/to/id', '/to', '/reason'];
 
 /** What a difference turned out to be. It is posted as a group of month close; what is explained later takes it back. */
@@ -33,10 +41,14 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
     ...(difference.subject.kind === 'cylinder' ? (['wrongTare'] as const) : []),
   ];
   const opens = useOpens();
-  const [id] = useState(newId);
-  const [answer, setAnswer] = useState<Answer | ''>(difference.kind === 'supplierShortFill' ? 'supplier' : '');
-  const [supplierId, setSupplierId] = useState('');
-  const [reason, setReason] = useState('');
+  const [draft, setDraft, clear] = useDraft<Draft>(`settle.${month}.${item.key}`, () => ({
+    id: newId(),
+    answer: difference.kind === 'supplierShortFill' ? 'supplier' : '',
+    supplierId: '',
+    reason: '',
+  }));
+  const set = (change: Partial<Draft>) => setDraft((now) => ({ ...now, ...change }));
+  const { answer, supplierId } = draft;
   const [errors, setErrors] = useState<FormError[]>([]);
   useFocusFirstError(errors);
   const suppliers = useQuery({ ...partyQueries.choice('supplier'), enabled: answer === 'supplier' });
@@ -47,11 +59,17 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
       return;
     }
     const to = { place: answer, ...(answer === 'supplier' && supplierId ? { id: supplierId } : {}) };
-    const body = { id, month, key: item.key, to, reason: reason.trim() };
+    const body = { id: draft.id, month, key: item.key, to, reason: draft.reason.trim() };
     const found = schemaErrors(settleRequest, body);
     setErrors(found);
     if (found.length > 0) return;
-    settle.mutate(body, { onSuccess: onClose, onError: (error) => setErrors(answerErrors(error)) });
+    settle.mutate(body, {
+      onSuccess: () => {
+        clear();
+        onClose();
+      },
+      onError: (error) => setErrors(answerErrors(error)),
+    });
   };
   return (
     <Dialog
@@ -93,7 +111,7 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
             hint: t(`books.settle.to.${value}.hint`),
           }))}
           onChange={(value) => {
-            setAnswer(value as Answer);
+            set({ answer: value as Answer });
             setErrors([]);
           }}
         />
@@ -104,16 +122,16 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
             value={supplierId}
             choices={suppliers.data?.map((party) => ({ value: party.id, label: party.name })) ?? []}
             error={errorAt(errors, '/to/id')}
-            onChange={({ target }) => setSupplierId(target.value)}
+            onChange={({ target }) => set({ supplierId: target.value })}
           />
         ) : null}
         {answer === 'wrongTare' ? null : (
           <TextField
             label={t('books.settle.reason')}
             maxLength={500}
-            value={reason}
+            value={draft.reason}
             error={errorAt(errors, '/reason') ? t('books.reasonNeeded') : undefined}
-            onChange={({ target }) => setReason(target.value)}
+            onChange={({ target }) => set({ reason: target.value })}
           />
         )}
         {errorsElsewhere(errors, SHOWN).map((message) => (

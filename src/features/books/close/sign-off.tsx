@@ -3,6 +3,7 @@ import { type Checklist, type CloseResponse, closeRequest } from '../../../../sh
 import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../../api/form-errors.ts';
 import { useCloseMonth } from '../../../api/periods.ts';
 import { usePermission } from '../../../api/session.ts';
+import { useDraft } from '../../../lib/draft.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { newId } from '../../../lib/new-id.ts';
@@ -18,19 +19,24 @@ export function SignOff({ checklist, onClosed }: { checklist: Checklist; onClose
   const format = useFormat();
   const isOwner = usePermission('periods:close');
   const close = useCloseMonth();
-  const [id] = useState(newId);
-  const [note, setNote] = useState('');
+  const [draft, setDraft, clear] = useDraft(`close.${checklist.month}`, () => ({ id: newId(), note: '' }));
   const [errors, setErrors] = useState<FormError[]>([]);
   const { month, sumsHash, undecided, equation, settled, items } = checklist;
   const name = longMonth(format.locale, month);
   const partOf = (part: string) => equation.wentOut.find((each) => each.part === part)?.massG ?? 0;
   const send = () => {
-    const body = { id, month, sumsHash, note: note.trim() || null };
+    const body = { id: draft.id, month, sumsHash, note: draft.note.trim() || null };
     const found = schemaErrors(closeRequest, body);
     setErrors(found);
     if (found.length > 0) return;
     // The month is read again before this answers, and what is closed has no sign-off any more: told all the same.
-    close.mutateAsync(body).then(onClosed, (error: unknown) => setErrors(answerErrors(error)));
+    close.mutateAsync(body).then(
+      (closed) => {
+        clear();
+        onClosed(closed);
+      },
+      (error: unknown) => setErrors(answerErrors(error)),
+    );
   };
   return (
     <Section title={t('books.signOff')}>
@@ -61,9 +67,9 @@ export function SignOff({ checklist, onClosed }: { checklist: Checklist; onClose
               label={t('books.signOff.note')}
               hint={t('ui.optional')}
               maxLength={1000}
-              value={note}
+              value={draft.note}
               error={errorAt(errors, '/note')}
-              onChange={({ target }) => setNote(target.value)}
+              onChange={({ target }) => setDraft((now) => ({ ...now, note: target.value }))}
             />
             <div>
               <Button kind="grave" type="submit" busy={close.isPending} disabled={undecided > 0}>
