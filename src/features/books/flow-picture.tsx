@@ -141,7 +141,7 @@ function Ribbon({ ribbon, layout, dimmed, isPinned, words, figure, label, onPoin
       tabIndex={0}
       aria-label={label}
       aria-pressed={isPinned}
-      className={`group cursor-pointer outline-none transition-opacity duration-150 ${dimmed ? 'opacity-35' : ''}`}
+      className="group cursor-pointer outline-none"
       onPointerEnter={() => onPoint(part.key)}
       onPointerLeave={() => onPoint(null)}
       onFocus={() => onPoint(part.key)}
@@ -153,7 +153,11 @@ function Ribbon({ ribbon, layout, dimmed, isPinned, words, figure, label, onPoin
         onPin();
       }}
     >
-      <path d={path} className={`${FILL[part.kind]} ${outer.height > 5 ? 'stroke-ground' : ''}`} strokeWidth="0.75" />
+      <path
+        d={path}
+        className={`${FILL[part.kind]} ${outer.height > 5 ? 'stroke-ground' : ''} transition-opacity duration-150 ${dimmed ? 'opacity-35' : ''}`}
+        strokeWidth="0.75"
+      />
       {/* A flow as thin as a hair is still as easy to hit as any other. */}
       <path d={path} fill="transparent" stroke="transparent" strokeWidth="14" />
       <rect
