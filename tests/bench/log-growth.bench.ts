@@ -41,32 +41,37 @@ async function found(parts: Parts, entryCount: number): Promise<LoadedFirm & { e
   return { firmId, personId: owner.id, entryCount, email: owner.email };
 }
 
+/** Loaded side by side, each on connections of its own: every firm has a head of its own. */
+const LOADERS = 2;
+
 /** The firms to compare: the large one and the last of the small ones. */
 async function loadFirms(database: ClonedDatabase, parts: Parts, say: BenchContext['say']) {
-  const superuser = new pg.Client({ connectionString: database.urls.superuser });
-  const app = new pg.Client({ connectionString: database.urls.app });
-  await superuser.connect();
-  await app.connect();
-  try {
-    const start = performance.now();
-    const filled = async (entryCount: number) => {
-      const firm = await found(parts, entryCount);
-      await loadRegisters(superuser, firm);
-      await loadLog(app, firm);
-      return firm;
-    };
-    let small = await filled(SIZE.smallEntries);
-    for (let count = 2; count < SIZE.smallFirms; count++) await filled(SIZE.smallEntries);
-    const large = await filled(SIZE.largeEntries);
-    if (SIZE.smallFirms > 1) small = await filled(SIZE.smallEntries);
-    await superuser.query('vacuum analyze');
-    const total = SIZE.smallFirms * SIZE.smallEntries + SIZE.largeEntries;
-    say(`${total} entries were posted in ${((performance.now() - start) / 1000).toFixed(0)} s`);
-    return { small, large };
-  } finally {
-    await superuser.end();
-    await app.end();
-  }
+  const start = performance.now();
+  const sizes = [SIZE.largeEntries, ...Array.from({ length: SIZE.smallFirms }, () => SIZE.smallEntries)];
+  const firms: (LoadedFirm & { email: string })[] = [];
+  const waiting = [...sizes.keys()];
+  const loader = async () => {
+    const superuser = new pg.Client({ connectionString: database.urls.superuser });
+    const app = new pg.Client({ connectionString: database.urls.app });
+    await superuser.connect();
+    await app.connect();
+    try {
+      for (let index = waiting.shift(); index !== undefined; index = waiting.shift()) {
+        const firm = await found(parts, sizes[index] as number);
+        await loadRegisters(superuser, firm);
+        await loadLog(app, firm);
+        firms[index] = firm;
+      }
+    } finally {
+      await superuser.end();
+      await app.end();
+    }
+  };
+  await Promise.all(Array.from({ length: LOADERS }, loader));
+  await database.query('superuser', 'vacuum analyze');
+  const total = sizes.reduce((sum, size) => sum + size, 0);
+  say(`${total} entries were posted in ${((performance.now() - start) / 1000).toFixed(0)} s`);
+  return { large: firms[0] as LoadedFirm & { email: string }, small: firms.at(-1) as LoadedFirm & { email: string } };
 }
 
 interface Asked {

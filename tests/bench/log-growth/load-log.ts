@@ -14,7 +14,8 @@ export const ENTRIES_A_UNIT = 100;
 const UNITS_A_CYLINDER = 2;
 export const FIRST_DAY_MS = Date.UTC(2023, 11, 1);
 const THREE_YEARS_MS = 1_095 * 24 * 60 * 60_000;
-const GROUPS_A_CALL = 5_000;
+/** A group with its one entry each: 1,500 records, as many as a call takes best. */
+const GROUPS_A_CALL = 750;
 const OPENING_G = 9_500;
 const MASS_G = 90;
 const TARE_G = 7_700;
