@@ -8,17 +8,18 @@ import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
+import { requireJobOfUnit } from '../jobs/job-of-unit.ts';
 import { messageFor } from '../messages/translate.ts';
 import { type Made, makeOnce } from '../registers/register-rows.ts';
 import { unitsRepository } from '../units/unit.repository.ts';
 import { chargeSheetsRepository } from './charge-sheet.repository.ts';
 
-const REFERENCES = { charge_sheet_unit_fkey: '', charge_sheet_job_fkey: '/jobId' };
+const REFERENCES = { charge_sheet_unit_fkey: '' };
 
 /**
  * Freezes a calculation: the server works it out again from the request, so that a sheet never holds a figure that its
  * inputs do not give. Never changed afterwards.
- * @throws Problem 422, also where the charge is over what the room takes
+ * @throws Problem 422, also where the charge is over what the room takes, or the job is of another unit
  */
 export function createChargeSheet(
   parts: Parts,
@@ -66,6 +67,7 @@ export function createChargeSheet(
         const path = '/request/basis/refrigerant';
         throw problemOfRefusals([{ code: 'notTheUnitsRefrigerant', path, ...figures }]);
       }
+      await requireJobOfUnit(manager, unitId, jobId);
       await chargeSheetsRepository(manager).insert(row);
     },
     (manager) => requireView(manager, unitId, id),

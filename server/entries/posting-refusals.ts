@@ -8,6 +8,7 @@ import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
 import { LARGEST_MICROGRAMS, microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
 import { isStoredMassUnit, STORED_MASS_UNITS } from '../../shared/units/stored-mass.ts';
+import { belongsRefusal } from '../jobs/job-of-unit.ts';
 import { bookAfter, bookBefore, movedMasses } from './books-after.ts';
 import type { JudgedPosting, Posting } from './judge-posting.ts';
 import type { PostingFacts, StoredGroup } from './posting-facts.ts';
@@ -90,15 +91,12 @@ function referenceRefusals({ body, at, facts, reference }: Asked): Refusal[] {
   const { unitId, jobId, chargeSheetId, supervisedBy } = body;
   if (unitId) need(facts.units.has(unitId), '/unitId', unitId);
   if (supervisedBy) need(facts.people.has(supervisedBy), '/supervisedBy', supervisedBy);
-  for (const [path, id, found] of [
-    ['/jobId', jobId, jobId ? facts.jobs.get(jobId) : undefined],
-    ['/chargeSheetId', chargeSheetId, chargeSheetId ? facts.chargeSheets.get(chargeSheetId) : undefined],
-  ] as const) {
-    if (!id) continue;
-    need(found !== undefined, path, id);
-    if (found && unitId && found.unitId !== unitId) {
-      refusals.push({ code: 'ofAnotherUnit', path: `${at}${path}`, given: id });
-    }
+  const belongings = [
+    ['/jobId', jobId, facts.jobs],
+    ['/chargeSheetId', chargeSheetId, facts.chargeSheets],
+  ] as const;
+  for (const [path, id, known] of belongings) {
+    if (id) refusals.push(...belongsRefusal({ path: `${at}${path}`, id, unitId }, known.get(id)));
   }
   body.readings?.forEach(({ cylinderId, toolId }, index) => {
     need(facts.cylinders.has(cylinderId), `/readings/${index}/cylinderId`, cylinderId);

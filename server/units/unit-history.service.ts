@@ -15,16 +15,16 @@ import { presentOutcome } from '../entries/posting-answer.ts';
 import { CLOCK_ALLOWANCE_MS } from '../entries/posting-refusals.ts';
 import type { Actor } from '../http/actor.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
+import { requireJobOfUnit } from '../jobs/job-of-unit.ts';
 import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { journalChange, type RegisterRow, wasMade } from '../journal/register-journal.ts';
-import { type Made, makeOnce, refusingReferences } from '../registers/register-rows.ts';
+import { type Made, makeOnce } from '../registers/register-rows.ts';
 import { unitsRepository } from './unit.repository.ts';
 import { datedFacts, refuseRefrigerant, type UnitParts } from './unit.service.ts';
 import { unitHistoryRepository } from './unit-history.repository.ts';
 
 const NOTE = ['note'];
-const JOB_REFERENCES = { unit_full_charge_job_fkey: '/jobId', unit_refrigerant_job_fkey: '/jobId' };
 
 /** A full charge as determined; the whole timeline of the unit is judged again by it. */
 export function addFullCharge(
@@ -179,7 +179,8 @@ function reviseUnit(
       const outcome = await outcomeOfRevision(manager, revision, row);
       return { isNew: false, value: presentOutcome(outcome, actor.locale) };
     }
-    await refusingReferences(JOB_REFERENCES, insert);
+    await requireJobOfUnit(manager, unitId, request.jobId ?? null);
+    await insert();
     const outcome = await journalAndJudgeAgain(manager, parts, actor, revision, row);
     return { isNew: true, value: presentOutcome(outcome, actor.locale) };
   });

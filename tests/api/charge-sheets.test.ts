@@ -118,6 +118,22 @@ describe('A charge sheet', () => {
     ]);
   });
 
+  it('is not made for a job of another unit, nor for one that is not known here', async () => {
+    const { id: unitId } = await unit();
+    const other = await unit();
+    const jobOf = (of: string) =>
+      ledger.made('/jobs', { id: uuid(), unitId: of, kind: 'install', openedAt: '2026-11-30T08:00:00Z' });
+    const [own, anothers] = [await jobOf(unitId), await jobOf(other.id)];
+    const post = (jobId: string) => ledger.client.post(`/units/${unitId}/charge-sheets`, sheet({ jobId }));
+
+    const answer = await post(anothers.id);
+    expect(answer.status).toBe(422);
+    expect(answer.body.errors).toMatchObject([{ code: 'ofAnotherUnit', path: '/jobId', given: anothers.id }]);
+    expect((await post(uuid())).body.errors).toMatchObject([{ code: 'notKnownHere', path: '/jobId' }]);
+    expect((await ledger.client.get(`/units/${unitId}/charge-sheets`)).body.items).toEqual([]);
+    expect((await post(own.id)).body).toMatchObject({ jobId: own.id });
+  });
+
   it('cannot be changed or removed, whoever asks', async () => {
     const { id: unitId } = await unit();
     const body = sheet();

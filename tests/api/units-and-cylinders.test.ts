@@ -160,6 +160,30 @@ describe('A unit', () => {
   });
 });
 
+describe('A full charge or a refrigerant of a unit', () => {
+  it('is not dated under a job of another unit', async () => {
+    const [unit, other] = [await ledger.unit('1290', null), await ledger.unit('1290', null)];
+    const jobOf = (unitId: string) =>
+      ledger.made('/jobs', { id: uuid(), unitId, kind: 'retrofit', openedAt: '2026-03-01T08:00:00Z' });
+    const [own, anothers] = [await jobOf(unit.id), await jobOf(other.id)];
+    const validFrom = '2026-03-01T00:00:00Z';
+    const mass = { value: '1290', unit: 'g' };
+    const bodies = {
+      'full-charges': { mass, method: 'manufacturer', validFrom, reason: 'nameplate found' },
+      refrigerants: { refrigerant: 'R-410A', validFrom },
+    };
+    for (const [path, body] of Object.entries(bodies)) {
+      const post = (jobId: string) => ledger.client.post(`/units/${unit.id}/${path}`, { id: uuid(), ...body, jobId });
+      expect((await post(anothers.id)).body, path).toMatchObject({
+        status: 422,
+        errors: [{ code: 'ofAnotherUnit', path: '/jobId', given: anothers.id }],
+      });
+      expect((await post(uuid())).body.errors, path).toMatchObject([{ code: 'notKnownHere', path: '/jobId' }]);
+      expect((await post(own.id)).status, path).toBe(201);
+    }
+  });
+});
+
 describe('A register change that would make a known book unknown', () => {
   it('is refused, and neither the row nor a record of it is kept', async () => {
     const unit = await ledger.unit('0', '1290', {}, 'notKnown');
