@@ -3,6 +3,7 @@ import type { z } from 'zod';
 import type { createExportRequest, ExportFormat, ExportView, ExportWhat } from '../../shared/exports/export.schema.ts';
 import { http, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
+import { useSession } from './session.ts';
 
 const LOOK_AGAIN_MS = 1_000;
 const isUnderWay = ({ state }: ExportView): boolean => state === 'queued' || state === 'running';
@@ -44,13 +45,35 @@ export const exportFileHref = (id: string): string => `/api/v1/exports/${id}/fil
  * Where a screen leads to take out what it shows, as filtered: a link on it is all that it takes. Filters are those of
  * its list; the page of the exports shows them before anything is begun.
  */
-export function exportPath(
-  what: ExportWhat,
-  filters: Readonly<Record<string, string | number | boolean | null | undefined>> = {},
-  format?: ExportFormat,
-): string {
-  const set = Object.fromEntries(Object.entries(filters).map(([name, value]) => [`filter.${name}`, value]));
+export function exportPath(what: ExportWhat, filters: object = {}, format?: ExportFormat): string {
+  const set = Object.fromEntries(
+    Object.entries(filters).map(([name, value]) => [`filter.${name}`, value as string | undefined]),
+  );
   return `/exports${queryString({ what, format, ...set })}`;
+}
+
+/** Tables and papers that who only reads may take out; the server holds it besides. */
+const FOR_READERS: ReadonlySet<ExportWhat> = new Set([
+  'entries',
+  'units',
+  'sites',
+  'customers',
+  'unitLog',
+  'jobRecord',
+]);
+/** Papers of the work in hand. */
+const FOR_TECHNICIANS: ReadonlySet<ExportWhat> = new Set(['unitLog', 'jobRecord', 'cylinderStatement']);
+
+/** `exportPath` for who may take this out; null for everybody else, who is not led there. */
+export function useExportPath(...[what, filters, format]: Parameters<typeof exportPath>): string | null {
+  const session = useSession();
+  if (!session) return null;
+  const { permissions, roles } = session;
+  const may =
+    permissions.includes('exports:make') ||
+    (roles.includes('reader') && FOR_READERS.has(what)) ||
+    (roles.includes('technician') && FOR_TECHNICIANS.has(what));
+  return may ? exportPath(what, filters, format) : null;
 }
 
 /** What a link of `exportPath` asks for; null where it asks for nothing. */

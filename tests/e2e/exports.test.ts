@@ -63,7 +63,7 @@ describe.each(['en-GB', 'es-ES'] as const)('Taking out what was recorded, in %s'
     await walk.signIn(world.manager);
     await page.getByText(say('exports.none')).waitFor();
     expect(await what.inputValue()).toBe('units');
-    await page.getByText(say('exports.filtered', { filters: 'search 0412' })).waitFor();
+    await page.getByText(say('exports.filtered', { filters: `${say('exports.filter.search')}: 0412` })).waitFor();
     await picture('first');
     await format.selectOption('xlsx');
     await start();

@@ -2,7 +2,8 @@ import { keepPreviousData, useQuery } from '@tanstack/react-query';
 import { Link, type LoaderFunctionArgs, useSearchParams } from 'react-router-dom';
 import type { BooksResponse, DifferencesResponse } from '../../../shared/books/books.schema.ts';
 import type { PeriodsResponse } from '../../../shared/periods/periods.schema.ts';
-import { bookQueries, booksCsvPath } from '../../api/books.ts';
+import { type BooksPeriod, bookQueries, booksCsvPath } from '../../api/books.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { periodQueries } from '../../api/periods.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
 import { type Formats, useFormat } from '../../lib/format.ts';
@@ -10,9 +11,10 @@ import { loadMessages, type Translate, useMessages } from '../../lib/messages.ts
 import { ButtonLink } from '../../ui/button.tsx';
 import { Empty, Failed, RowsSkeleton } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { BookTables } from './book-tables.tsx';
 import { asTitle, bookMass, longMonth } from './book-words.ts';
-import { readPeriod, usualMonth } from './books-period.ts';
+import { lastDayOf, readPeriod, usualMonth } from './books-period.ts';
 import { DifferenceList } from './difference-list.tsx';
 import { DifferencePlaces } from './difference-places.tsx';
 import { FlowPicture } from './flow-picture.tsx';
@@ -68,7 +70,7 @@ function Books({ periods, usual }: { periods: PeriodsResponse; usual: string }) 
     <Page
       title={title}
       {...(differences.data ? { lead: leadOf(t, format, differences.data) } : {})}
-      actions={<Ways periods={periods} />}
+      actions={<Ways periods={periods} period={period} />}
     >
       <div className="pt-3">
         <PeriodFilter
@@ -128,11 +130,15 @@ function leadOf(t: Translate, format: Formats, { totals }: DifferencesResponse):
     : t('books.lead', { parts: format.list([...parts, ...settled]) });
 }
 
-/** On to the month that is to be closed, and to emissions. */
-function Ways({ periods: { next } }: { periods: PeriodsResponse }) {
+/** On to the month that is to be closed, to emissions, and to what is handed over of this period. */
+function Ways({ periods: { next }, period }: { periods: PeriodsResponse; period: BooksPeriod }) {
   const t = useMessages();
   const { locale } = useFormat();
   const settles = usePermission('books:settle');
+  const { from, to } = period;
+  const report = useExportPath('periodReport', { from, to });
+  const disposal = useExportPath('disposalReport', { from, to });
+  const proves = usePermission('exports:make');
   return (
     <>
       {next && settles ? (
@@ -143,6 +149,13 @@ function Ways({ periods: { next } }: { periods: PeriodsResponse }) {
       <Link to="/books/emissions" className="inline-flex min-h-12 items-center">
         {t('books.toEmissions')}
       </Link>
+      <TakeOutLink to={report} label={t('books.toReport')} />
+      <TakeOutLink to={disposal} label={t('books.toDisposal')} />
+      {proves ? (
+        <Link to={`/log/proof?from=${from}-01&to=${lastDayOf(to)}`} className="inline-flex min-h-12 items-center">
+          {t('books.toProof')}
+        </Link>
+      ) : null}
     </>
   );
 }

@@ -3,6 +3,7 @@ import { useMemo } from 'react';
 import { Link, type LoaderFunctionArgs, useNavigate, useSearchParams } from 'react-router-dom';
 import { CYLINDER_KINDS, CYLINDER_SORTS, type Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import { type CylinderFilters, cylinderQueries } from '../../api/cylinders.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { rowsOf } from '../../api/page.ts';
 import { peopleQueries } from '../../api/people.ts';
 import { queryClient } from '../../api/query-client.ts';
@@ -15,6 +16,7 @@ import { ButtonLink } from '../../ui/button.tsx';
 import { FilterBar, FilterSelect, SearchField } from '../../ui/filter-bar.tsx';
 import { Empty, Failed } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { CylinderLines } from './cylinder-lines.tsx';
 import { CylinderTable } from './cylinder-table.tsx';
 
@@ -55,6 +57,7 @@ export function Component() {
       { replace: true },
     );
   const filtered = [filters.search, filters.refrigerant, filters.heldBy, filters.kind].some(Boolean);
+  const takeOut = useExportPath('cylinders', filters);
   const List = desk ? CylinderTable : CylinderLines;
   return (
     <Page
@@ -73,6 +76,7 @@ export function Component() {
           <Link to="/parties" className="inline-flex min-h-12 items-center">
             {t('cylinders.toParties')}
           </Link>
+          <TakeOutLink to={takeOut} />
           {mayWrite && desk ? (
             <ButtonLink kind="act" to="/cylinders/new">
               {t('cylinders.register')}

@@ -1,11 +1,13 @@
 import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { EntryRow, GroupView } from '../../../shared/entries/entry.schema.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { entryMarks, placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
 import { type Translate, useMessages } from '../../lib/messages.ts';
 import { Fact, Facts } from '../../ui/facts.tsx';
 import { Figure } from '../../ui/figure.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { GroupEntries } from './group-entries.tsx';
 import { GroupReadings } from './group-readings.tsx';
 import { Mark } from './log-columns.tsx';
@@ -66,6 +68,7 @@ export function GroupDetails({ group, main }: { group: GroupView; main: EntryRow
       </Facts>
       <OpenWeighIn group={group} />
       <GroupEntries group={group} main={main} />
+      {group.jobId ? <JobRecord jobId={group.jobId} /> : null}
     </>
   );
 }
@@ -136,6 +139,11 @@ function Documents({ group }: { group: GroupView }) {
           ))}
     </Fact>
   );
+}
+
+function JobRecord({ jobId }: { jobId: string }) {
+  const t = useMessages();
+  return <TakeOutLink to={useExportPath('jobRecord', { jobId })} label={t('log.group.jobRecord')} />;
 }
 
 function OpenWeighIn({ group }: { group: GroupView }) {

@@ -7,6 +7,7 @@ import { PLACE_KINDS } from '../../../shared/ledger/place.ts';
 import type { Session } from '../../../shared/session/session.schema.ts';
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { type EntryListQuery, entriesCsvPath } from '../../api/entries.ts';
+import { exportPath } from '../../api/exports.ts';
 import { peopleQueries } from '../../api/people.ts';
 import { useOnHand, usePermission, useSession } from '../../api/session.ts';
 import { useFormat } from '../../lib/format.ts';
@@ -16,6 +17,7 @@ import { useMessages } from '../../lib/messages.ts';
 import { useRefrigerantNames } from '../../lib/refrigerant-names.ts';
 import { Button } from '../../ui/button.tsx';
 import { FilterBar, FilterSelect, FilterTag } from '../../ui/filter-bar.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { type FilterName, filterCount, recentMonths, withFilter, withoutFilters } from './log-filters.ts';
 
 /** Period, refrigerant, place, who and why, as they stand in the address; and the same list as a file. */
@@ -60,6 +62,9 @@ export function LogFilters({ filters }: { filters: EntryListQuery }) {
             <a href={entriesCsvPath(exported)} download className="inline-flex min-h-11 items-center">
               {t(exported.personId === filters.personId ? 'log.export' : 'log.exportOwn')}
             </a>
+          ) : null}
+          {exported ? (
+            <TakeOutLink to={exportPath('entries', { ...exported }, 'xlsx')} label={t('log.exportSheet')} />
           ) : null}
         </>
       }

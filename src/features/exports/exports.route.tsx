@@ -11,7 +11,10 @@ import { ExportTable } from './export-table.tsx';
 import { NewExport } from './new-export.tsx';
 
 export async function loader({ request }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('exports-screen', 'exports')]);
+  await Promise.all([
+    requireSession(request),
+    loadMessages('exports-screen', 'exports', 'log-screen', 'cylinders-screen', 'people-screen'),
+  ]);
   return null;
 }
 

@@ -14,6 +14,7 @@ import { newId } from '../../lib/new-id.ts';
 import { Button } from '../../ui/button.tsx';
 import { SelectField, TextField } from '../../ui/field.tsx';
 import { Failed } from '../../ui/notice.tsx';
+import { filterWords } from './filter-words.ts';
 
 interface Asked {
   what: string;
@@ -25,6 +26,7 @@ interface Asked {
 const REPORTS: readonly ExportWhat[] = ['periodReport', 'disposalReport'];
 const isWhat = (what: string): what is ExportWhat =>
   ([...EXPORT_TABLES, ...EXPORT_DOCUMENTS] as readonly string[]).includes(what);
+const PERIODS: readonly ExportWhat[] = [...REPORTS, 'cylinderStatement'];
 const isDocument = (what: ExportWhat): boolean => (EXPORT_DOCUMENTS as readonly string[]).includes(what);
 
 /** One export: what, as which file, which months. Filters of the list that led here stand in words before it is begun. */
@@ -36,12 +38,15 @@ export function NewExport({ asked, onStarted }: { asked: Asked | null; onStarted
   const [what, setWhat] = useState<ExportWhat>(asked && isWhat(asked.what) ? asked.what : 'entries');
   const [format, setFormat] = useState(asked?.format === 'xlsx' ? 'xlsx' : 'csv');
   const thisMonth = toDayInput(deviceNow()).slice(0, 7);
-  const [months, setMonths] = useState({ from: thisMonth, to: thisMonth });
-  const [days, setDays] = useState({ from: `${thisMonth}-01`, to: toDayInput(deviceNow()) });
-  const carried = asked && asked.what === what ? asked.filters : {};
+  const carried = asked && asked.what === what ? withoutPeriod(what, asked.filters) : {};
+  const [months, setMonths] = useState(() => spanOf(asked, /^\d{4}-\d{2}$/, { from: thisMonth, to: thisMonth }));
+  const [days, setDays] = useState(() =>
+    spanOf(asked, /^\d{4}-\d{2}-\d{2}$/, { from: `${thisMonth}-01`, to: toDayInput(deviceNow()) }),
+  );
   const choices: readonly ExportWhat[] = makes ? [...EXPORT_TABLES, ...REPORTS] : [];
   const shown = choices.includes(what) ? choices : [what, ...choices];
   if (!makes && asked === null) return null;
+  const said = Object.entries(carried).flatMap(([name, value]) => filterWords(t, what, name, value));
   const again = () => {
     start.reset();
     setId(newId());
@@ -89,15 +94,7 @@ export function NewExport({ asked, onStarted }: { asked: Asked | null; onStarted
         {REPORTS.includes(what) ? <Period type="month" value={months} onChange={changing(setMonths)} /> : null}
         {what === 'cylinderStatement' ? <Period type="date" value={days} onChange={changing(setDays)} /> : null}
       </div>
-      {Object.keys(carried).length > 0 ? (
-        <p className="text-ink-soft">
-          {t('exports.filtered', {
-            filters: Object.entries(carried)
-              .map(([name, value]) => (/^[0-9a-f-]{36}$/.test(value) ? t('exports.thisOne') : `${name} ${value}`))
-              .join(', '),
-          })}
-        </p>
-      ) : null}
+      {said.length > 0 ? <p className="text-ink-soft">{t('exports.filtered', { filters: said.join(', ') })}</p> : null}
       {start.isError ? <Failed title={t('exports.notStarted')} error={start.error} /> : null}
       <div>
         <Button kind="act" busy={start.isPending} onClick={send}>
@@ -106,6 +103,17 @@ export function NewExport({ asked, onStarted }: { asked: Asked | null; onStarted
       </div>
     </section>
   );
+}
+
+/** Its fields show the period, and what they show is what is sent. */
+function withoutPeriod(what: ExportWhat, filters: Record<string, string>): Record<string, string> {
+  if (!PERIODS.includes(what)) return filters;
+  return Object.fromEntries(Object.entries(filters).filter(([name]) => name !== 'from' && name !== 'to'));
+}
+
+function spanOf(asked: Asked | null, form: RegExp, usual: Span): Span {
+  const { from = '', to = '' } = asked?.filters ?? {};
+  return form.test(from) && form.test(to) ? { from, to } : usual;
 }
 
 interface Span {

@@ -10,10 +10,12 @@ import { Notice } from '../../ui/notice.tsx';
 
 type Subject = 'period' | 'unit' | 'customer';
 
-/** The subject that a link asked for: `/log/proof?unitId=...`. */
+/** The subject that a link asked for: `/log/proof?unitId=...`, `?customerId=...` or `?from=2026-11-01&to=2026-11-30`. */
 export interface Asked {
   unitId: string | null;
   customerId: string | null;
+  from: string | null;
+  to: string | null;
 }
 
 /** A package for somebody else, streamed straight to the disk. `held`: the server can seal, without which there is none. */
@@ -25,7 +27,7 @@ export function MakePackage({ asked, held }: { asked: Asked; held: boolean }) {
   const [customerId, setCustomerId] = useState(asked.customerId ?? '');
   const [days, setDays] = useState(() => {
     const now = deviceNow();
-    return { from: `${now.getFullYear()}-01-01`, to: toDayInput(now) };
+    return { from: asked.from ?? `${now.getFullYear()}-01-01`, to: asked.to ?? toDayInput(now) };
   });
   const [words, setWords] = useState(false);
   const [paper, setPaper] = useState('');

@@ -21,6 +21,9 @@ export async function loader({ request }: LoaderFunctionArgs) {
   return null;
 }
 
+/** Null for what is no day: an old or a mistyped link still opens. */
+const dayOf = (text: string | null) => (text !== null && /^\d{4}-\d{2}-\d{2}$/.test(text) ? text : null);
+
 /** That nothing in the log was changed: what stands, the check of it, and what others are given to check by themselves. */
 export function Component() {
   const t = useMessages();
@@ -31,7 +34,12 @@ export function Component() {
   const keys = useQuery(journalQueries.keys());
   const [before, setBefore] = useState(NOTHING_BEFORE);
   const failed = [state, keys].find(({ isError }) => isError);
-  const asked = { unitId: search.get('unitId'), customerId: search.get('customerId') };
+  const asked = {
+    unitId: search.get('unitId'),
+    customerId: search.get('customerId'),
+    from: dayOf(search.get('from')),
+    to: dayOf(search.get('to')),
+  };
   return (
     <Page
       title={t('proof.title')}

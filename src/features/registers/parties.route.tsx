@@ -2,6 +2,7 @@ import { useInfiniteQuery } from '@tanstack/react-query';
 import { useMemo, useState } from 'react';
 import { type LoaderFunctionArgs, useSearchParams } from 'react-router-dom';
 import { PARTY_KINDS, type Party } from '../../../shared/parties/parties.schema.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { rowsOf } from '../../api/page.ts';
 import { type PartyFilters, partyQueries } from '../../api/parties.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
@@ -33,6 +34,7 @@ export function Component() {
   );
   const list = useInfiniteQuery({ ...partyQueries.list(filters), placeholderData: (before) => before });
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
+  const takeOut = useExportPath('parties', filters);
   const columns = useMemo<LedgerColumn<Party>[]>(
     () => [
       {
@@ -75,6 +77,7 @@ export function Component() {
           onChange={(value) => set('kind', value)}
         />
       }
+      takeOut={takeOut}
       open={open}
       onOpen={setOpen}
       openTitle={open === 'new' || open === null ? t('registers.parties.new') : open.name}

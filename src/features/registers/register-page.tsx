@@ -8,6 +8,7 @@ import { FilterBar, SearchField } from '../../ui/filter-bar.tsx';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Done, Empty, Failed } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 
 interface List {
   isPending: boolean;
@@ -37,6 +38,8 @@ interface Props<Row extends { id: string }> {
   open: Row | 'new' | null;
   onOpen: (open: Row | 'new' | null) => void;
   openTitle: string;
+  /** Where this list is taken out as filtered; null for who may not. */
+  takeOut: string | null;
   form: (onDone: (message: string) => void) => ReactNode;
 }
 
@@ -55,11 +58,14 @@ export function RegisterPage<Row extends { id: string }>(props: Props<Row>) {
       title={t(`${words}.title`)}
       lead={t(`${words}.lead`)}
       actions={
-        mayWrite ? (
-          <Button kind="act" onClick={add}>
-            {t(`${words}.new`)}
-          </Button>
-        ) : undefined
+        <>
+          <TakeOutLink to={props.takeOut} />
+          {mayWrite ? (
+            <Button kind="act" onClick={add}>
+              {t(`${words}.new`)}
+            </Button>
+          ) : null}
+        </>
       }
     >
       <div className="pt-4">

@@ -2,6 +2,7 @@ import { useInfiniteQuery } from '@tanstack/react-query';
 import { useMemo, useState } from 'react';
 import { type LoaderFunctionArgs, useSearchParams } from 'react-router-dom';
 import { TOOL_KINDS, type Tool } from '../../../shared/tools/tools.schema.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { rowsOf } from '../../api/page.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
 import { type ToolFilters, toolQueries } from '../../api/tools.ts';
@@ -35,6 +36,7 @@ export function Component() {
   );
   const list = useInfiniteQuery({ ...toolQueries.list(filters), placeholderData: (before) => before });
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
+  const takeOut = useExportPath('tools', filters);
   const columns = useMemo(() => columnsOf(t, format), [t, format]);
   // As it stands now, should somebody have changed it meanwhile.
   const row = open === 'new' || open === null ? null : (rows.find(({ id }) => id === open.id) ?? open);
@@ -61,6 +63,7 @@ export function Component() {
           onChange={(value) => set('kind', value)}
         />
       }
+      takeOut={takeOut}
       open={open}
       onOpen={setOpen}
       openTitle={open === 'new' || open === null ? t('registers.tools.new') : open.name}

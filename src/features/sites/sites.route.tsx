@@ -2,6 +2,7 @@ import { useInfiniteQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { Link, type LoaderFunctionArgs, useSearchParams } from 'react-router-dom';
 import { SITE_SORTS, type Site } from '../../../shared/sites/sites.schema.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { rowsOf } from '../../api/page.ts';
 import { queryClient } from '../../api/query-client.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
@@ -14,6 +15,7 @@ import { SearchField } from '../../ui/filter-bar.tsx';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Empty, Failed } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 
 export async function loader({ request }: LoaderFunctionArgs) {
   await Promise.all([requireSession(request), loadMessages('units-screen')]);
@@ -37,6 +39,8 @@ export function Component() {
   const list = useInfiniteQuery({ ...siteQueries.list(filters), placeholderData: (before) => before });
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
   const mayWrite = usePermission('sites:write');
+  const mayProve = usePermission('exports:make');
+  const takeOut = useExportPath('sites', filters);
   const set = (name: keyof SiteFilters) => (value: string) =>
     setSearch(
       (before) => {
@@ -55,6 +59,21 @@ export function Component() {
       { id: 'address', head: t('sites.address'), quiet: true, cell: (site) => site.addressLines.join(', ') },
       { id: 'jurisdiction', head: t('sites.jurisdiction'), cell: (site) => site.jurisdiction },
       { id: 'units', head: t('units.title'), figure: true, cell: (site) => format.number(site.unitCount) },
+      ...(mayProve
+        ? [
+            {
+              id: 'proof',
+              head: t('sites.proof'),
+              headHidden: true,
+              cell: (site: Site) => (
+                <Link to={`/log/proof?customerId=${site.customerId}`}>
+                  {t('sites.proof')}
+                  <span className="sr-only"> {site.customerName}</span>
+                </Link>
+              ),
+            },
+          ]
+        : []),
       ...(mayWrite
         ? [
             {
@@ -66,7 +85,7 @@ export function Component() {
           ]
         : []),
     ],
-    [t, format, mayWrite],
+    [t, format, mayWrite, mayProve],
   );
   const add = mayWrite ? (
     <ButtonLink kind="act" to="/sites/new">
@@ -74,7 +93,15 @@ export function Component() {
     </ButtonLink>
   ) : null;
   return (
-    <Page title={t('sites.title')} actions={add ?? undefined}>
+    <Page
+      title={t('sites.title')}
+      actions={
+        <>
+          <TakeOutLink to={takeOut} />
+          {add}
+        </>
+      }
+    >
       <div className="page-gutter flex flex-col gap-2 pt-3">
         <div className="max-w-md">
           <SearchField label={t('sites.search')} value={typed} onChange={type} />

@@ -1,5 +1,6 @@
 import { keepPreviousData, useQuery } from '@tanstack/react-query';
 import { Link, type LoaderFunctionArgs, useParams, useSearchParams } from 'react-router-dom';
+import { useExportPath } from '../../api/exports.ts';
 import { requireSession } from '../../api/session.ts';
 import { type StatementPeriod, statementCsvPath, statementQueries } from '../../api/statements.ts';
 import { useFormat } from '../../lib/format.ts';
@@ -9,6 +10,7 @@ import { Button } from '../../ui/button.tsx';
 import { TextField } from '../../ui/field.tsx';
 import { Failed, RowsSkeleton } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { HeldBetween } from './held-between.tsx';
 import './statement.css';
 import { StatementFigures } from './statement-figures.tsx';
@@ -29,6 +31,11 @@ export function Component() {
   const period = readPeriod(search);
   const statement = useQuery({ ...statementQueries.of(cylinderId, period), placeholderData: keepPreviousData });
   const { data } = statement;
+  const asPdf = useExportPath('cylinderStatement', {
+    cylinderId,
+    from: period.from ?? data?.from,
+    to: period.to ?? data?.to,
+  });
   return (
     <Page
       title={data ? t('statement.title', { tag: data.cylinder.tag }) : t('statement.titleBare')}
@@ -51,6 +58,7 @@ export function Component() {
           <a href={statementCsvPath(cylinderId, period)} download className="inline-flex min-h-12 items-center">
             {t('statement.csv')}
           </a>
+          <TakeOutLink to={asPdf} label={t('statement.pdf')} />
           <Link to={`/cylinders/${cylinderId}`} className="inline-flex min-h-12 items-center">
             {t('statement.toCylinder')}
           </Link>

@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link, type LoaderFunctionArgs, useLoaderData } from 'react-router-dom';
+import { useExportPath } from '../../api/exports.ts';
 import { queryClient } from '../../api/query-client.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
 import { todayQueries } from '../../api/today.ts';
@@ -7,6 +8,7 @@ import { unitQueries } from '../../api/units.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { ButtonLink } from '../../ui/button.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { BookFigure } from './book-figure.tsx';
 import { ChargeBasisPart } from './charge-basis-part.tsx';
 import { ChargeSheetsPart } from './charge-sheets-part.tsx';
@@ -29,6 +31,8 @@ export function Component() {
   const unit = useQuery({ ...unitQueries.one(loaded.id), initialData: loaded }).data;
   const mayPost = usePermission('entries:post');
   const mayWrite = usePermission('units:write');
+  const mayProve = usePermission('exports:make');
+  const unitLog = useExportPath('unitLog', { unitId: unit.id });
   const today = useQuery({ ...todayQueries.today(), enabled: mayPost });
   const open = today.data?.toWeighBack.find((weighIn) => weighIn.unitId === unit.id);
   const charge = (
@@ -46,11 +50,19 @@ export function Component() {
       }
       status={<span className="desk:hidden">{unit.refrigerant}</span>}
       actions={
-        mayWrite ? (
-          <Link to={`/units/${unit.id}/edit`} className="inline-flex min-h-12 items-center">
-            {t('units.edit')}
-          </Link>
-        ) : undefined
+        <>
+          <TakeOutLink to={unitLog} label={t('units.logAsPdf')} />
+          {mayProve ? (
+            <Link to={`/log/proof?unitId=${unit.id}`} className="inline-flex min-h-12 items-center">
+              {t('units.proof')}
+            </Link>
+          ) : null}
+          {mayWrite ? (
+            <Link to={`/units/${unit.id}/edit`} className="inline-flex min-h-12 items-center">
+              {t('units.edit')}
+            </Link>
+          ) : null}
+        </>
       }
       next={mayPost ? <div className="desk:hidden">{charge}</div> : undefined}
     >

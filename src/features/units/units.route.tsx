@@ -2,6 +2,7 @@ import { useInfiniteQuery, useQuery } from '@tanstack/react-query';
 import { useCallback, useMemo } from 'react';
 import { Link, type LoaderFunctionArgs, useSearchParams } from 'react-router-dom';
 import { UNIT_SORTS, type Unit } from '../../../shared/unit-register/unit.schema.ts';
+import { useExportPath } from '../../api/exports.ts';
 import { rowsOf } from '../../api/page.ts';
 import { queryClient } from '../../api/query-client.ts';
 import { requireSession, usePermission } from '../../api/session.ts';
@@ -15,6 +16,7 @@ import { ButtonLink } from '../../ui/button.tsx';
 import { FilterBar, FilterSelect, SearchField } from '../../ui/filter-bar.tsx';
 import { Empty, Failed } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { TakeOutLink } from '../../ui/take-out-link.tsx';
 import { UnitLines } from './unit-lines.tsx';
 import { UnitTable } from './unit-table.tsx';
 
@@ -55,6 +57,7 @@ export function Component() {
       { replace: true },
     );
   const filtered = [filters.search, filters.refrigerant, filters.siteId].some(Boolean);
+  const takeOut = useExportPath('units', filters);
   const register = (
     <ButtonLink kind="act" wide={!desk} to="/units/new">
       {t('units.register')}
@@ -70,6 +73,7 @@ export function Component() {
           <Link to="/sites" className="inline-flex min-h-12 items-center">
             {t('units.toSites')}
           </Link>
+          {charging ? null : <TakeOutLink to={takeOut} />}
           {mayWrite && desk ? register : null}
         </>
       }

@@ -1,8 +1,11 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
+import { Link } from 'react-router-dom';
 import type { JobBook } from '../../../../shared/books/books.schema.ts';
 import { type BooksPeriod, bookQueries } from '../../../api/books.ts';
+import { exportPath } from '../../../api/exports.ts';
 import { rowsOf } from '../../../api/page.ts';
+import { usePermission } from '../../../api/session.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import type { LedgerColumn } from '../../../ui/ledger-table.tsx';
@@ -14,6 +17,7 @@ export function JobTable({ period }: { period: BooksPeriod }) {
   const t = useMessages();
   const format = useFormat();
   const query = useInfiniteQuery(bookQueries.jobs(period));
+  const takesOut = usePermission('exports:make');
   const currency = query.data?.pages[0]?.currency;
   const columns = useMemo((): LedgerColumn<JobBook>[] => {
     const { massUnit: unit, massFigure, locale } = format;
@@ -42,8 +46,23 @@ export function JobTable({ period }: { period: BooksPeriod }) {
         cell: (row) => (row.cost === null || !currency ? '' : money(locale, row.cost, currency)),
       },
       { id: 'opened', head: t('books.col.opened'), cell: (row) => format.dateTime(row.openedAt), quiet: true },
+      ...(takesOut
+        ? [
+            {
+              id: 'record',
+              head: t('books.jobRecord'),
+              headHidden: true,
+              cell: (row: JobBook) => (
+                <Link to={exportPath('jobRecord', { jobId: row.jobId })}>
+                  {t('books.jobRecord')}
+                  <span className="sr-only"> {row.title ?? t(`books.jobKind.${row.kind}`)}</span>
+                </Link>
+              ),
+            },
+          ]
+        : []),
     ];
-  }, [t, format, currency]);
+  }, [t, format, currency, takesOut]);
   return (
     <BookTable
       name="jobs"
