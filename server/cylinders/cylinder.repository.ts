@@ -3,6 +3,7 @@ import type { Cylinder, CylinderListQuery } from '../../shared/cylinders/cylinde
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import type { StoredMassUnit } from '../../shared/units/stored-mass.ts';
 import { Conditions, cursorScope, readPage, type SortColumn } from '../lists/list-query.ts';
+import { insertRows } from '../registers/insert-rows.ts';
 import { CylinderEntity } from './cylinder.entity.ts';
 import { CylinderTareEntity } from './cylinder-tare.entity.ts';
 
@@ -63,15 +64,12 @@ export function cylindersRepository(manager: EntityManager) {
   const rows = manager.getRepository(CylinderEntity);
   return {
     find: (id: string): Promise<CylinderRow | null> => rows.findOneBy({ id }),
-    async insert(row: Omit<CylinderRow, 'version'>): Promise<void> {
-      await rows.insert(row);
-    },
+    insert: (...many: readonly Omit<CylinderRow, 'version'>[]): Promise<void> =>
+      insertRows(manager, CylinderEntity, many),
     async update({ firmId, id, version: _version, ...facts }: CylinderRow): Promise<void> {
       await rows.update({ firmId, id }, facts);
     },
-    async addTare(row: CylinderTareRow): Promise<void> {
-      await manager.getRepository(CylinderTareEntity).insert(row);
-    },
+    addTare: (...many: readonly CylinderTareRow[]): Promise<void> => insertRows(manager, CylinderTareEntity, many),
     async findView(id: string): Promise<CylinderViewRow | null> {
       const [row] = await manager.query<CylinderViewRow[]>(`select ${SELECT} from ${FROM} where c.id = $1`, [id]);
       return row ?? null;

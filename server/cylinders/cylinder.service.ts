@@ -1,6 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { z } from 'zod';
-import { cylinderLimit, pressureRatingHolds } from '../../shared/cylinder-fill/cylinder-limits.ts';
+import { pressureRatingHolds } from '../../shared/cylinder-fill/cylinder-limits.ts';
 import type {
   addTareRequest,
   CreateCylinderRequest,
@@ -9,32 +9,27 @@ import type {
   updateCylinderRequest,
 } from '../../shared/cylinders/cylinder.schema.ts';
 import type { EntryGroupResponse } from '../../shared/ledger/entry-group-response.schema.ts';
-import { microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import { journalAndJudgeAgain, outcomeOfRevision } from '../entries/judge-again.ts';
 import type { PostingParts } from '../entries/post-group.ts';
 import { presentOutcome } from '../entries/posting-answer.ts';
 import type { Actor } from '../http/actor.ts';
-import { Problem, problemOfRefusals } from '../http/problem.ts';
+import { Problem } from '../http/problem.ts';
 import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
-import { journalNewRows, type RegisterRow, wasMade } from '../journal/register-journal.ts';
-import { changeRow, type Made, refusingReferences, taken } from '../registers/register-rows.ts';
+import { orThrow, wasMade } from '../journal/register-journal.ts';
+import { changeRow, type Made, taken } from '../registers/register-rows.ts';
+import { type CylinderRow, type CylinderViewRow, cylindersRepository, presentCylinder } from './cylinder.repository.ts';
 import {
-  type CylinderRow,
-  type CylinderTareRow,
-  type CylinderViewRow,
-  cylindersRepository,
-  presentCylinder,
-} from './cylinder.repository.ts';
-
-const REFERENCES = {
-  cylinder_owner_party_fkey: '/owner/id',
-  cylinder_owner_customer_fkey: '/owner/id',
-  cylinder_held_by_fkey: '/heldBy',
-};
-type NewRow = Omit<CylinderRow, 'version'>;
-const factsOf = ({ firmId: _firm, id: _id, version: _version, ...facts }: NewRow & { version?: number }) => facts;
+  factsOf,
+  makeCylinders,
+  REFERENCES,
+  stampedLimit,
+  tareRegister,
+  tareRowOf,
+  waterCapacity,
+  withLimit,
+} from './make-cylinders.ts';
 
 export function listCylinders(parts: PostingParts, actor: Actor, query: CylinderListQuery) {
   return inFirm(parts.dataSource, actor, (manager) =>
@@ -51,28 +46,10 @@ export function createCylinder(
   actor: Actor,
   request: CreateCylinderRequest,
 ): Promise<Made<Cylinder>> {
-  const { id, refrigerant, tare } = request;
-  if (!parts.reference.findRefrigerant(refrigerant)) {
-    const given = { given: refrigerant, params: { given: refrigerant } };
-    throw problemOfRefusals([{ code: 'unknownRefrigerant', path: '/refrigerant', ...given }]);
-  }
-  const row = newRow(parts, actor.firmId, request);
-  const tareRow = tareRowOf(actor.firmId, id, { ...tare, reason: null });
-  const registers: [RegisterRow, RegisterRow] = [
-    { noun: 'cylinder', subjectId: id, facts: factsOf(row) },
-    tareRegister(tareRow),
-  ];
   return inFirm(parts.dataSource, actor, async (manager) => {
     await lockHead(manager);
-    const isNew = !(await wasMade(manager, registers[0]));
-    if (isNew) {
-      await refusingReferences(REFERENCES, () => cylindersRepository(manager).insert(row));
-      await cylindersRepository(manager).addTare(tareRow);
-      await journalNewRows({ ...parts, personId: actor.personId }, manager, registers);
-    } else if (!(await wasMade(manager, registers[1]))) {
-      throw new Problem('idReused');
-    }
-    return { isNew, value: await requireView(parts, manager, id) };
+    const [made] = await makeCylinders(manager, parts, actor, [request]);
+    return { isNew: orThrow(made), value: await requireView(parts, manager, request.id) };
   });
 }
 
@@ -133,65 +110,6 @@ export function addTare(
     const outcome = await journalAndJudgeAgain(manager, parts, actor, revision, tareRegister(row));
     return { isNew: true, value: presentOutcome(outcome, actor.locale) };
   });
-}
-
-function newRow(parts: PostingParts, firmId: string, request: CreateCylinderRequest): NewRow {
-  const { owner } = request;
-  return withLimit(parts, {
-    firmId,
-    id: request.id,
-    tag: request.tag,
-    kind: request.kind,
-    refrigerant: request.refrigerant,
-    contentState: request.contentState,
-    ownerKind: owner.kind,
-    ownerPartyId: owner.kind === 'party' ? owner.id : null,
-    ownerCustomerId: owner.kind === 'customer' ? owner.id : null,
-    ...waterCapacity(request.waterCapacity ?? null),
-    ...stampedLimit(request.stampedLimit ?? null),
-    limitMicrograms: null,
-    servicePressureKPaGauge: request.servicePressureKPaGauge ?? null,
-    retestDue: request.retestDue ?? null,
-    heldBy: request.heldBy ?? null,
-    batch: request.batch ?? null,
-  });
-}
-
-const withLimit = <Row extends NewRow>({ reference }: PostingParts, row: Row): Row => ({
-  ...row,
-  limitMicrograms: cylinderLimit(row, reference),
-});
-
-const waterCapacity = (mass: TypedMass | null) => ({
-  waterCapacityMicrograms: mass && (microgramsOfTyped(mass) as bigint),
-  waterCapacityValue: mass?.value ?? null,
-  waterCapacityUnit: mass?.unit ?? null,
-});
-const stampedLimit = (mass: TypedMass | null) => ({
-  stampedLimitMicrograms: mass && (microgramsOfTyped(mass) as bigint),
-  stampedLimitValue: mass?.value ?? null,
-  stampedLimitUnit: mass?.unit ?? null,
-});
-
-function tareRowOf(
-  firmId: string,
-  cylinderId: string,
-  { id, mass, validFrom, reason }: { id: string; mass: TypedMass; validFrom: string; reason: string | null },
-): CylinderTareRow {
-  return {
-    firmId,
-    id,
-    cylinderId,
-    massMicrograms: microgramsOfTyped(mass),
-    typedValue: mass.value,
-    typedUnit: mass.unit,
-    validFrom: new Date(validFrom),
-    reason,
-  };
-}
-
-function tareRegister({ firmId: _firm, id, ...facts }: CylinderTareRow): RegisterRow {
-  return { noun: 'cylinderTare', subjectId: id, facts };
 }
 
 async function requireView(parts: PostingParts, manager: EntityManager, id: string): Promise<Cylinder> {

@@ -7,15 +7,11 @@ import { Problem } from '../http/problem.ts';
 import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead, postRecords } from '../journal/post-records.ts';
 import type { Made } from '../registers/register-rows.ts';
-import type { Posting } from './judge-posting.ts';
 import { namedIds } from './named-ids.ts';
 import { outcomeOfAdded } from './outcome-of-added.ts';
-import { authorOf, enter, findRepeated, judge, type PostingParts, refuseWithoutReason } from './post-group.ts';
+import { authorOf, findRepeated, judgeBody, type PostingParts } from './post-group.ts';
 import { type PostingOutcome, presentOutcome } from './posting-answer.ts';
 import { loadPostingFacts } from './posting-facts.repository.ts';
-import { recordsOfPosting } from './posting-records.ts';
-import { reasonRefusals } from './posting-refusals.ts';
-import { findGroup } from './timeline.repository.ts';
 
 /**
  * Posts a group: whole or not at all, once however often it is sent.
@@ -47,13 +43,7 @@ export async function postWithin(
     const repeated = await findRepeated(manager, body.groupId, hash);
     if (repeated) return { isNew: false, value: repeated };
   }
-  const opening = body.closesGroupId ? await findGroup(manager, body.closesGroupId) : null;
-  const added = enter(parts, facts, body, { at: '', opening, place: 1 });
-  const posting: Posting = { recordId: body.groupId, added };
-  const { judged, stored } = await judge(manager, posting, facts);
-  refuseWithoutReason(reasonRefusals(posting, judged, facts, body.reason));
-  const request = { body, requestHash: hash, replacesGroupId: null };
-  const written = recordsOfPosting(authorOf(parts, actor), facts, posting, judged, request, null, stored);
+  const { judged, written } = await judgeBody(manager, parts, authorOf(parts, actor), facts, body, hash);
   const posted = await postRecords(manager, written.records, written.derived);
   return { isNew: true, value: outcomeOfAdded(written, posted, judged, facts) };
 }

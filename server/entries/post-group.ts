@@ -11,9 +11,9 @@ import { type JudgedPosting, judgePosting, type Posting, placesToReplay } from '
 import { findEarlierPosting, readOutcome } from './posting-answer.repository.ts';
 import type { PostingOutcome } from './posting-answer.ts';
 import type { PostingFacts, StoredGroup } from './posting-facts.ts';
-import type { Author } from './posting-records.ts';
-import { requestRefusals } from './posting-refusals.ts';
-import { loadTimelines } from './timeline.repository.ts';
+import { type Author, type PostingRecords, recordsOfPosting } from './posting-records.ts';
+import { reasonRefusals, requestRefusals } from './posting-refusals.ts';
+import { findGroup, loadTimelines } from './timeline.repository.ts';
 
 export type PostingParts = Pick<Parts, 'dataSource' | 'now' | 'newId' | 'reference'>;
 
@@ -38,6 +38,37 @@ export function enter(
     sequence: facts.firm.sequence + place,
     scaleOf: (toolId) => (toolId ? facts.scales.get(toolId) : undefined) ?? ASSUMED_SCALE,
   });
+}
+
+/** A body that was judged, and what is written down of it. */
+export interface JudgedBody {
+  judged: JudgedPosting;
+  written: PostingRecords;
+}
+
+/**
+ * Judges the body of a group that stands for itself and writes it down for posting.
+ * @param beforeReading what has to reach the log before anything is read from it
+ * @throws Problem 422
+ */
+export async function judgeBody(
+  manager: EntityManager,
+  parts: PostingParts,
+  author: Author,
+  facts: PostingFacts,
+  body: EntryGroupRequest,
+  requestHash: string,
+  beforeReading?: () => Promise<void>,
+): Promise<JudgedBody> {
+  if (body.closesGroupId) await beforeReading?.();
+  const opening = body.closesGroupId ? await findGroup(manager, body.closesGroupId) : null;
+  const added = enter(parts, facts, body, { at: '', opening, place: 1 });
+  const posting: Posting = { recordId: body.groupId, added };
+  if (placesToReplay(posting, facts).length > 0) await beforeReading?.();
+  const { judged, stored } = await judge(manager, posting, facts);
+  refuseWithoutReason(reasonRefusals(posting, judged, facts, body.reason));
+  const request = { body, requestHash, replacesGroupId: null };
+  return { judged, written: recordsOfPosting(author, facts, posting, judged, request, null, stored) };
 }
 
 export interface Judgement {

@@ -111,3 +111,18 @@ export async function findEarlierPosting(manager: EntityManager, groupId: string
   if (!row) return null;
   return { ...row, lastSequence: Number(row.lastSequence) };
 }
+
+/** Of the groups that exist, what they were posted with; of one that reverses or answers another nothing that a body has. */
+export async function findEarlierHashes(
+  manager: EntityManager,
+  groupIds: readonly string[],
+): Promise<Map<string, string>> {
+  if (groupIds.length === 0) return new Map();
+  const rows = await manager.query<{ id: string; hash: string }[]>(
+    `select g.id, case when coalesce(g.reverses_group_id, g.answers_group_id) is null
+        then encode(g.request_hash, 'hex') else '' end as hash
+      from entry_group g where g.id = any ($1::uuid[])`,
+    [groupIds],
+  );
+  return new Map(rows.map(({ id, hash }) => [id, hash]));
+}

@@ -57,13 +57,11 @@ export async function journalChange(
 ): Promise<void> {
   const texts: Texts = [];
   const id = author.newId();
-  const last = await findRecord(manager, row, version - 1);
-  const after = chained(author, row, id, { facts: before, chained: last?.after ?? {} }, texts);
-  await postRecords(
-    manager,
-    [{ ...authorship(author), id, ...subjectOf(row), version, before: last?.after ?? null, after }],
-    { texts },
-  );
+  const last = await findAfter(manager, row, version - 1);
+  const after = chained(author, row, id, { facts: before, chained: last ?? {} }, texts);
+  await postRecords(manager, [{ ...authorship(author), id, ...subjectOf(row), version, before: last, after }], {
+    texts,
+  });
 }
 
 const authorship = ({ now, personId }: Author) => ({
@@ -127,46 +125,80 @@ export function decimalOf(value: number): string {
   return text.includes('e') ? value.toFixed(20).replace(/0+$/, '') : text;
 }
 
-interface ChainedRow {
-  recordId: string;
-  after: Facts;
-}
-
-async function findRecord(
+async function findAfter(
   manager: EntityManager,
   { noun, subjectId }: Pick<RegisterRow, 'noun' | 'subjectId'>,
   version: number,
-): Promise<ChainedRow | null> {
-  const [row] = await manager.query<{ record_id: string; content: string }[]>(
-    'select record_id, content from journal_record where noun = $1 and subject_id = $2 and version = $3',
+): Promise<Facts | null> {
+  const [row] = await manager.query<{ content: string }[]>(
+    'select content from journal_record where noun = $1 and subject_id = $2 and version = $3',
     [noun, subjectId, version],
   );
-  return row ? { recordId: row.record_id, after: (JSON.parse(row.content) as RegisterRecord).after } : null;
+  return row ? (JSON.parse(row.content) as RegisterRecord).after : null;
 }
+
+/** True: it is new. False: an earlier try of the same request made it. A problem: it is refused, and the others are not. */
+export type NewOrRefused = boolean | Problem;
 
 /**
  * Was this row made already, by an earlier try of the same request? The head is locked already.
  * @throws Problem 409 `idReused` when the id was used with other content
  */
 export async function wasMade(manager: EntityManager, row: RegisterRow): Promise<boolean> {
-  const first = await findRecord(manager, row, 1);
-  if (!first) return false;
-  const salts = await manager.query<{ field: string; salt: Buffer }[]>(
-    'select field, salt from personal_text where record_id = $1',
-    [first.recordId],
+  return orThrow((await whichWereMade(manager, [row])).get(row));
+}
+
+/** As `wasMade` for many rows, with two questions for all of them. A problem stands where the id has other content. */
+export async function whichWereMade(
+  manager: EntityManager,
+  rows: readonly RegisterRow[],
+): Promise<Map<RegisterRow, boolean | Problem>> {
+  const firsts = await manager.query<{ noun: string; subject: string; recordId: string; content: string }[]>(
+    `select j.noun, j.subject_id as subject, j.record_id as "recordId", j.content
+      from unnest($1::text[], $2::uuid[]) w(noun, subject_id)
+      join journal_record j on j.noun = w.noun and j.subject_id = w.subject_id and j.version = 1`,
+    [rows.map(({ noun }) => noun), rows.map(({ subjectId }) => subjectId)],
   );
-  const { facts, personal = [] } = row;
+  const firstOf = new Map(firsts.map((first) => [`${first.noun} ${first.subject}`, first]));
+  const salts = new Map<string, Buffer>();
+  if (rows.some(({ personal = [] }) => personal.length > 0) && firsts.length > 0) {
+    const texts = await manager.query<{ recordId: string; field: string; salt: Buffer }[]>(
+      'select record_id as "recordId", field, salt from personal_text where record_id = any ($1::uuid[])',
+      [firsts.map(({ recordId }) => recordId)],
+    );
+    for (const { recordId, field, salt } of texts) salts.set(`${recordId} ${field}`, salt);
+  }
+  return new Map(
+    rows.map((row): [RegisterRow, boolean | Problem] => {
+      const first = firstOf.get(`${row.noun} ${row.subjectId}`);
+      if (!first) return [row, false];
+      const { after } = JSON.parse(first.content) as RegisterRecord;
+      const saltOf = (field: string) => salts.get(`${first.recordId} ${field}`);
+      return [row, saysTheSame(row, after, saltOf) || new Problem('idReused')];
+    }),
+  );
+}
+
+function saysTheSame(
+  { facts, personal = [] }: RegisterRow,
+  after: Facts,
+  saltOf: (field: string) => Buffer | undefined,
+): boolean {
   const plain = Object.fromEntries(Object.entries(facts).filter(([field]) => !personal.includes(field)));
-  const chainedPlain = Object.fromEntries(Object.entries(first.after).filter(([field]) => field in plain));
-  const samePlain = canonicalText(withoutNumbers(plain)) === canonicalText(chainedPlain);
+  const chainedPlain = Object.fromEntries(Object.entries(after).filter(([field]) => field in plain));
   const sameWords = personal.every((field) => {
     const words = wordsOf(facts[field]);
-    const hash = first.after[`${field}Hash`];
-    const salt = salts.find((text) => text.field === field)?.salt;
+    const hash = after[`${field}Hash`];
+    const salt = saltOf(field);
     if (words === null || hash === null || hash === undefined || !salt)
       return words === null && (hash ?? null) === null;
     return isSaltedText(words, { salt, hash: String(hash) });
   });
-  if (!samePlain || !sameWords) throw new Problem('idReused');
-  return true;
+  return sameWords && canonicalText(withoutNumbers(plain)) === canonicalText(chainedPlain);
+}
+
+/** What one of many came to, for who asked for it alone. @throws Problem that refused it */
+export function orThrow(outcome: boolean | Problem | undefined): boolean {
+  if (outcome instanceof Problem) throw outcome;
+  return outcome === true;
 }

@@ -3,6 +3,7 @@ import type { StoredChargeBasis } from '../../shared/charge-sheets/charge-sheet.
 import type { PageQuery } from '../../shared/lists/list.schema.ts';
 import type { LineSet, Unit } from '../../shared/unit-register/unit.schema.ts';
 import { Conditions, cursorScope, readPage, type Sort } from '../lists/list-query.ts';
+import { insertRows } from '../registers/insert-rows.ts';
 import { ChargeBasisEntity } from './charge-basis.entity.ts';
 import { LineSetEntity } from './line-set.entity.ts';
 import { FULL_CHARGE_JSON, type FullChargeJson, presentFullCharge } from './unit.repository.ts';
@@ -26,26 +27,21 @@ const newestFirst = (alias: string): Sort => ({
 /** What holds from a day on. Rows are only ever added. */
 export function unitHistoryRepository(manager: EntityManager) {
   return {
-    async addRefrigerant(row: UnitRefrigerantRow): Promise<void> {
-      await manager.getRepository(UnitRefrigerantEntity).insert(row);
-    },
-    async addSite(row: UnitSiteEntity): Promise<void> {
-      await manager.getRepository(UnitSiteEntity).insert(row);
-    },
-    async addFullCharge(row: FullChargeRow): Promise<void> {
-      await manager.getRepository(UnitFullChargeEntity).insert(row);
-    },
+    addRefrigerant: (...many: readonly UnitRefrigerantRow[]) => insertRows(manager, UnitRefrigerantEntity, many),
+    addSite: (...many: readonly UnitSiteEntity[]) => insertRows(manager, UnitSiteEntity, many),
+    addFullCharge: (...many: readonly FullChargeRow[]) => insertRows(manager, UnitFullChargeEntity, many),
     async addLineSet(row: LineSetRow): Promise<void> {
       await manager.getRepository(LineSetEntity).insert(row);
     },
     async addChargeBasis(row: ChargeBasisRow): Promise<void> {
       await manager.getRepository(ChargeBasisEntity).insert(row);
     },
-    async findSiteZone(siteId: string): Promise<string | null> {
-      const [row] = await manager.query<{ zone: string }[]>('select time_zone as zone from site where id = $1', [
-        siteId,
-      ]);
-      return row?.zone ?? null;
+    async findSiteZones(siteIds: readonly string[]): Promise<Map<string, string>> {
+      const rows = await manager.query<{ id: string; zone: string }[]>(
+        'select id, time_zone as zone from site where id = any ($1::uuid[])',
+        [[...new Set(siteIds)]],
+      );
+      return new Map(rows.map(({ id, zone }) => [id, zone]));
     },
     async refrigerantsOf(unitId: string): Promise<UnitRefrigerantRow[]> {
       const rows = await manager.getRepository(UnitRefrigerantEntity).findBy({ unitId });

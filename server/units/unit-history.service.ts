@@ -20,8 +20,9 @@ import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { journalChange, type RegisterRow, wasMade } from '../journal/register-journal.ts';
 import { type Made, makeOnce } from '../registers/register-rows.ts';
+import { datedFacts, refuseRefrigerant } from './make-units.ts';
 import { unitsRepository } from './unit.repository.ts';
-import { datedFacts, refuseRefrigerant, type UnitParts } from './unit.service.ts';
+import type { UnitParts } from './unit.service.ts';
 import { unitHistoryRepository } from './unit-history.repository.ts';
 
 const NOTE = ['note'];

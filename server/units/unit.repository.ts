@@ -4,6 +4,7 @@ import type { Unit, UnitListQuery } from '../../shared/unit-register/unit.schema
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import type { StoredMassUnit } from '../../shared/units/stored-mass.ts';
 import { Conditions, cursorScope, readPage, type SortColumn } from '../lists/list-query.ts';
+import { insertRows } from '../registers/insert-rows.ts';
 import { UnitEntity } from './unit.entity.ts';
 
 export type UnitRow = UnitEntity;
@@ -81,9 +82,7 @@ export function unitsRepository(manager: EntityManager) {
   const rows = manager.getRepository(UnitEntity);
   return {
     find: (id: string): Promise<UnitRow | null> => rows.findOneBy({ id }),
-    async insert(row: Omit<UnitRow, 'version'>): Promise<void> {
-      await rows.insert(row);
-    },
+    insert: (...many: readonly Omit<UnitRow, 'version'>[]): Promise<void> => insertRows(manager, UnitEntity, many),
     async update({ firmId, id, version: _version, ...facts }: UnitRow): Promise<void> {
       await rows.update({ firmId, id }, facts);
     },
@@ -105,21 +104,27 @@ export function unitsRepository(manager: EntityManager) {
       const list = { select: SELECT, from: FROM, conditions, sort, page: query, of: cursorScope('units', query) };
       return readPage<UnitViewRow, Item>(manager, list, present);
     },
-    /** What was made in the very transaction that made the unit: what its request asked for beside the unit. */
-    async findMadeWith(id: string): Promise<{ fullChargeIds: string[]; groupIds: string[] }> {
-      const [row] = await manager.query<{ fullChargeIds: string[]; groupIds: string[] }[]>(
-        `with made as (select recorded_at from journal_record
-            where noun = 'unit' and subject_id = $1 and version = 1)
-         select array(select j.subject_id from unit_full_charge fc
+    /** What was made in the very transaction that made each unit: what its request asked for beside the unit. */
+    async findMadeWith(ids: readonly string[]): Promise<Map<string, MadeWith>> {
+      if (ids.length === 0) return new Map();
+      const made = await manager.query<(MadeWith & { id: string })[]>(
+        `select made.subject_id as id,
+           array(select fc.id from unit_full_charge fc
              join journal_record j on j.noun = 'unitFullCharge' and j.subject_id = fc.id and j.version = 1
-             where fc.unit_id = $1 and j.recorded_at = (select recorded_at from made)) as "fullChargeIds",
-           array(select g.id from entry_group g where g.unit_id = $1 and g.kind in ('factoryCharge', 'opening')
-             and g.recorded_at = (select recorded_at from made)) as "groupIds"`,
-        [id],
+             where fc.unit_id = made.subject_id and j.recorded_at = made.recorded_at) as "fullChargeIds",
+           array(select g.id from entry_group g where g.unit_id = made.subject_id
+             and g.kind in ('factoryCharge', 'opening') and g.recorded_at = made.recorded_at) as "groupIds"
+         from journal_record made where made.noun = 'unit' and made.version = 1 and made.subject_id = any ($1::uuid[])`,
+        [ids],
       );
-      return row ?? { fullChargeIds: [], groupIds: [] };
+      return new Map(made.map(({ id, fullChargeIds, groupIds }) => [id, { fullChargeIds, groupIds }]));
     },
   };
+}
+
+export interface MadeWith {
+  fullChargeIds: string[];
+  groupIds: string[];
 }
 
 export function presentFullCharge(row: FullChargeJson): NonNullable<Unit['fullCharge']> {

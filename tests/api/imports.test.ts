@@ -3,14 +3,16 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { ZipFile } from 'yazl';
 import type { CheckImportRequest, ImportView } from '../../shared/imports/import.schema.ts';
 import type { ImportKind } from '../../shared/imports/import-fields.ts';
-import { startTestApp, type TestApp } from '../support/app.ts';
+import { startTestApp, TEST_START, type TestApp } from '../support/app.ts';
 import { type Ledger, startLedger } from '../support/ledger.ts';
 import type { Answered, TestClient } from '../support/test-client.ts';
 
 let app: TestApp;
 let ledger: Ledger;
+/** A clock that goes on while the server works, as every clock does. */
+let time = Date.parse(TEST_START);
 beforeAll(async () => {
-  app = await startTestApp();
+  app = await startTestApp({ parts: { now: () => new Date(++time) } });
 });
 afterAll(() => app.close());
 /** A firm of its own for each test: all of its rows come from the file. */
@@ -172,6 +174,16 @@ describe('A table of units', () => {
       { tag: 'U1', installedOn: '2024-06-15', fullCharge: { massG: 1200 }, book: { known: true, massG: 1200 } },
       { tag: 'U2', installedOn: null, fullCharge: null, book: { known: false } },
     ]);
+  });
+
+  it('changes nothing when it comes a second time, while the clock goes on', async () => {
+    await begin();
+    const table =
+      'Unit,Site,Refrigerant,Full charge,Content\nU1,Mill Lane,R-32,1.2,1.2\nU2,Mill Lane,R-32,,0.9\nU3,Mill Lane,R-32,,';
+    await bring('units', table);
+    const before = await headSequence();
+    const again = await bring('units', table);
+    expect([again.made, again.already, await headSequence()]).toEqual([0, 3, before]);
   });
 });
 
