@@ -29,14 +29,18 @@ export async function frameOf(
   stream: Writable,
 ): Promise<DocumentFrame> {
   const [row] = await manager.query<
-    (DocumentFrame['firm'] & { madeBy: string; mass: Preferences['mass'] | undefined })[]
+    (DocumentFrame['firm'] & { madeBy: string; mass?: Preferences['mass']; length?: Preferences['length'] })[]
   >(
     `select f.name, f.jurisdiction, f.time_zone as "timeZone", f.gwp_set as "gwpSet", p.name as "madeBy",
-       p.preferences ->> 'mass' as mass from firm f join person p on p.id = $1`,
+       p.preferences ->> 'mass' as mass, p.preferences ->> 'length' as length from firm f join person p on p.id = $1`,
     [actor.personId],
   );
   if (!row) throw new Error('a paper is made for somebody of the firm');
-  const words = wordsOf(actor.locale, row.mass ?? (actor.locale === 'en-US' ? 'lbOz' : 'g'));
+  const words = wordsOf(
+    actor.locale,
+    row.mass ?? (actor.locale === 'en-US' ? 'lbOz' : 'g'),
+    row.length ?? (actor.locale.endsWith('-US') ? 'ft' : 'm'),
+  );
   return {
     parts,
     manager,

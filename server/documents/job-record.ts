@@ -46,9 +46,7 @@ export async function jobRecord(frame: DocumentFrame, jobId: string): Promise<nu
         { head: words.say('col.arithmetic'), width: 40 },
         { head: words.say('col.gives'), width: 14, align: 'right' },
       ],
-      sheet.result.steps.map(({ label, expression, value, unit: of }) => ({
-        cells: [label, expression, `${words.number(value, of === 't' ? 3 : of === 'm' ? 2 : 1)} ${of}`.trim()],
-      })),
+      words.arithmetic(sheet.result.steps).map((cells) => ({ cells })),
     );
     paper.space(6);
     paper.facts([

@@ -47,7 +47,8 @@ export const ARROW_WIDTH = 0.95;
 export function wrapText(text: string, width: number, widthOf: (text: string) => number): string[] {
   const lines: string[] = [];
   let line = '';
-  for (const word of text.split(/\s+/).filter(Boolean)) {
+  // A no-break space keeps a figure with its unit.
+  for (const word of text.split(/[^\S\u00a0\u202f]+/).filter(Boolean)) {
     const longer = line === '' ? word : `${line} ${word}`;
     if (widthOf(longer) <= width) {
       line = longer;

@@ -1,8 +1,11 @@
+import type { ChargeResponse } from '../../shared/charge/charge.schema.ts';
+import { type LineUnits, type LineWriter, SI_LINES, writtenLines } from '../../shared/charge/written-line.ts';
 import type { EntryRow } from '../../shared/entries/entry.schema.ts';
 import logEn from '../../shared/messages/log-screen.en.json';
 import logEs from '../../shared/messages/log-screen.es.json';
 import type { Locale, Preferences } from '../../shared/session/session.schema.ts';
 import { fromBase } from '../../shared/units/quantities.ts';
+import { roundTo } from '../../shared/units/round.ts';
 import { type MessageValues, messageFor } from '../messages/translate.ts';
 
 /** Words, dates and masses of one paper: in the language and units of who asked for it. */
@@ -21,6 +24,11 @@ export interface Words {
   day(day: string): string;
   instant(at: string | Date, timeZone: string): string;
   month(month: string): string;
+  /**
+   * The arithmetic of a charge as this reader follows it, as rows of what, how and what it gives. A line in other units
+   * than m and g has the same in those below it.
+   */
+  arithmetic(steps: ChargeResponse['steps']): string[][];
 }
 
 const NAMED: ReadonlySet<string> = new Set([
@@ -39,7 +47,13 @@ const SHOWN = {
   lbOz: { unit: 'oz', decimals: 1 },
 } as const;
 
-export function wordsOf(locale: Locale, massPreference: Preferences['mass'] | undefined): Words {
+const MINUS = '\u2212';
+
+export function wordsOf(
+  locale: Locale,
+  massPreference: Preferences['mass'] | undefined,
+  lengthPreference?: Preferences['length'],
+): Words {
   const logWords: Readonly<Record<string, string>> = locale.startsWith('es') ? logEs : logEn;
   const shown = SHOWN[massPreference ?? 'g'];
   const number = (value: number, decimals: number) =>
@@ -66,6 +80,25 @@ export function wordsOf(locale: Locale, massPreference: Preferences['mass'] | un
       new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeZone: 'UTC' }).format(new Date(`${day}T12:00:00Z`)),
     instant: (at, timeZone) =>
       new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeStyle: 'short', timeZone }).format(new Date(at)),
+    arithmetic(steps) {
+      const mass = massPreference ?? 'g';
+      const isInOunces = mass === 'oz' || mass === 'lbOz';
+      const own: LineUnits = { length: lengthPreference ?? 'm', mass, rate: isInOunces ? 'oz/ft' : 'g/m' };
+      const writer: LineWriter = {
+        number: (value, most, least = 0) =>
+          new Intl.NumberFormat(locale, { maximumFractionDigits: most, minimumFractionDigits: least })
+            .format(roundTo(value, most))
+            .replace('-', MINUS),
+        say: (key, params) => messageFor(key, locale, params),
+      };
+      const si = writtenLines(steps, SI_LINES, writer);
+      const cells = (line: readonly string[]) => [line.slice(0, -1).join(' = '), line.at(-1) ?? ''];
+      return writtenLines(steps, own, writer).flatMap((line, index) => {
+        const [label, same] = [steps[index]?.label ?? '', si[index] ?? []];
+        const row = [label, ...cells(line)];
+        return line.join() === same.join() ? [row] : [row, ['', ...cells(same)]];
+      });
+    },
     month: (month) =>
       new Intl.DateTimeFormat(locale, { year: 'numeric', month: 'long', timeZone: 'UTC' }).format(
         new Date(`${month}-15T12:00:00Z`),

@@ -12,6 +12,7 @@ import { readQuantity } from '../../ui/quantity-draft.ts';
 import type { ChargeDraft } from './charge-draft.ts';
 import { Co2 } from './co2.tsx';
 import { labelOfField } from './field-labels.ts';
+import { inOwnUnits } from './in-own-units.ts';
 import { onScale } from './on-scale.ts';
 import { type ChargeAnswer, sayRefusal } from './use-charge.ts';
 
@@ -116,11 +117,12 @@ function WhatToDo({ draft, result }: { draft: ChargeDraft; result: Extract<Charg
 /** Why there is no figure: what is still needed, each leading to its field, or what the rules refuse. */
 function WhyNot({ answer }: { answer: Exclude<ChargeAnswer, { is: 'done' }> }) {
   const t = useMessages();
+  const preferences = usePreferences();
   if (answer.is === 'waiting') {
     return <p>{t(answer.failed ? 'chargeScreen.formulaFailed' : 'chargeScreen.formulaWaiting')}</p>;
   }
   if (answer.is === 'refused') {
-    const messages = [...new Set(answer.refusals.map((refusal) => sayRefusal(refusal, t)))];
+    const messages = [...new Set(answer.refusals.map((refusal) => inOwnUnits(sayRefusal(refusal, t), preferences)))];
     return (
       <div className="border-l-4 border-ink pl-3">
         <p className="font-[650]">{t('chargeScreen.noFigure')}</p>

@@ -59,7 +59,7 @@ describe('The charge screen', () => {
     expect(screen.getByText('weigh in 90 g')).toBeVisible();
     expect(screen.getByText(line('12.0 m − 7.5 m = 4.5 m'))).toBeInTheDocument();
     expect(screen.getByText(line('4.5 m × 20 g/m = 90 g'))).toBeInTheDocument();
-    expect(screen.getByText(line('1200 g + 90 g = 1,290 g'))).toBeInTheDocument();
+    expect(screen.getByText(line('1,200 g + 90 g = 1,290 g'))).toBeInTheDocument();
     const beam = screen.getByRole('img', { name: /factory 1,200\sg, extra 90\sg, total 1,290\sg/ });
     expect(within(beam).getByText(/no room check up to 1,842\sg/)).toBeInTheDocument();
   });
@@ -165,6 +165,23 @@ describe('The charge screen', () => {
     expect(
       screen.getByText(/Too much for this room: it takes 1,842\sg, the circuit would hold 2,050\sg/),
     ).toBeVisible();
+  });
+
+  it('works in feet and ounces for who types feet and ounces, and in m and g when asked', async () => {
+    changePreferences({ ...preferencesFor('en-US'), mass: 'lbOz' });
+    const person = await openCharge();
+    await person.selectOptions(screen.getByRole('combobox', { name: 'refrigerant' }), 'R-32');
+    await person.type(field('factory charge'), '2 lb 12 oz');
+    await person.selectOptions(screen.getByRole('combobox', { name: 'liquid pipe' }), '6.35');
+    await person.type(field('pipe run, one way'), '41');
+    await person.type(field('pre-charged by the factory'), '25');
+    await person.type(field('rate in the manual'), '0.21');
+    expect(screen.getByText(line('41 ft − 25 ft = 16 ft'))).toBeVisible();
+    expect(screen.getByText(line('16 ft × 0.21 oz/ft = 3.36 oz'))).toBeVisible();
+    expect(screen.getByText(line('3.36 oz = 95.25 g to the nearest 1 g = 95 g = 3.35 oz'))).toBeVisible();
+    await person.click(screen.getByRole('button', { name: 'The same in m and g' }));
+    expect(screen.getByText(line('12.5 m − 7.62 m = 4.88 m'))).toBeVisible();
+    expect(screen.queryByText(line('41 ft'))).toBeNull();
   });
 
   it('speaks Spanish with its decimals', async () => {

@@ -9,6 +9,7 @@ import { type Translate, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import type { ChargeDraft } from './charge-draft.ts';
 import { type Pointer, readDraft } from './draft-to-request.ts';
+import { inOwnUnits } from './in-own-units.ts';
 import { useFormulaCompiler, useReference } from './reference-tables.ts';
 
 export type ChargeAnswer =
@@ -27,7 +28,8 @@ export interface Charge {
 /** The charge of what stands on the screen, worked out at every keystroke by the code that the server runs too. */
 export function useCharge(draft: ChargeDraft): Charge {
   const t = useMessages();
-  const { locale } = usePreferences();
+  const preferences = usePreferences();
+  const { locale } = preferences;
   const { reference, settled } = useReference(draft.refrigerant);
   const { compileFormula, failed } = useFormulaCompiler(draft.rateKind === 'formula');
   return useMemo(() => {
@@ -41,7 +43,7 @@ export function useCharge(draft: ChargeDraft): Charge {
       const errors = new Map<Pointer, string>();
       for (const refusal of outcome.refusals) {
         const at = fieldOf(refusal.path, draft);
-        const message = sayRefusal(refusal, t);
+        const message = inOwnUnits(sayRefusal(refusal, t), preferences);
         errors.set(at, errors.has(at) ? `${errors.get(at)} ${message}` : message);
       }
       return { answer: { is: 'refused', refusals: outcome.refusals }, errorAt: (pointer) => errors.get(pointer) };
@@ -52,7 +54,7 @@ export function useCharge(draft: ChargeDraft): Charge {
     if (!settled) result.warnings = result.warnings.filter((warning) => warning.code !== 'plausibilityNotKnown');
     const noRoomCheckUpToG = findRefrigerantFacts(reference, draft.refrigerant)?.noRoomCheckUpToG ?? null;
     return { answer: { is: 'done', request, result, noRoomCheckUpToG }, errorAt: () => undefined };
-  }, [draft, locale, reference, settled, compileFormula, failed, t]);
+  }, [draft, preferences, locale, reference, settled, compileFormula, failed, t]);
 }
 
 /** A rounding that changes nothing is a line that nobody needs to check. The charge sheet keeps every step. */

@@ -1,14 +1,16 @@
 import { memo } from 'react';
 import type { ChargeRequest, ChargeResponse } from '../../../shared/charge/charge.schema.ts';
 import type { RoomLimitResponse } from '../../../shared/room-limit/room-limit.schema.ts';
-import { formatNumber, NBSP, useFormat } from '../../lib/format.ts';
+import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
+import { useWrittenLines } from '../../lib/written-lines.ts';
 import { Caution, type Signal, SignalWord } from '../../ui/caution.tsx';
 import { Notice } from '../../ui/notice.tsx';
 import type { ChargeDraft } from './charge-draft.ts';
 import { WithCo2 } from './co2.tsx';
-import { localExpression } from './local-expression.ts';
+import { inOwnUnits } from './in-own-units.ts';
+import { lineUnits } from './line-units.ts';
 import { pipeName } from './pipe-choices.ts';
 import { sizesOfPipe } from './reference-tables.ts';
 import { RoomVerdict } from './room-section.tsx';
@@ -23,6 +25,7 @@ interface Props {
 /** The arithmetic as lines that can be checked with a pencil, what is odd about them, and what is dangerous. */
 export const Working = memo(function Working({ draft, request, result, room }: Props) {
   const t = useMessages();
+  const preferences = usePreferences();
   return (
     <div className="flex flex-col gap-5 pt-4">
       <Arithmetic draft={draft} request={request} result={result} />
@@ -31,7 +34,7 @@ export const Working = memo(function Working({ draft, request, result, room }: P
           {result.warnings.map((warning) => (
             <li key={warning.code + warning.message}>
               <Notice>
-                <WithCo2 text={warning.message} />
+                <WithCo2 text={inOwnUnits(warning.message, preferences)} />
               </Notice>
             </li>
           ))}
@@ -45,7 +48,8 @@ export const Working = memo(function Working({ draft, request, result, room }: P
 
 function Arithmetic({ draft, request, result }: Omit<Props, 'room'>) {
   const t = useMessages();
-  const { locale } = usePreferences();
+  const preferences = usePreferences();
+  const { lines, hasOther, inSi, turn } = useWrittenLines(result.steps, lineUnits(draft, preferences.locale));
   const page = draft.page.trim();
   return (
     <section aria-label={t('chargeScreen.arithmetic')}>
@@ -58,14 +62,11 @@ function Arithmetic({ draft, request, result }: Omit<Props, 'room'>) {
           >
             <div>
               <p className="text-[1rem] leading-snug">
-                {localExpression(step.expression, locale)} ={' '}
-                <strong className="font-[680] whitespace-nowrap">
-                  {formatNumber(locale, step.value, 5)}
-                  {step.unit === '' ? '' : `${NBSP}${step.unit}`}
-                </strong>
+                {lines[index]?.slice(0, -1).map((part) => `${part} = `)}
+                <strong className="font-[680] whitespace-nowrap">{lines[index]?.at(-1)}</strong>
               </p>
               <p className="type-label text-[0.875rem] leading-tight text-ink-soft">
-                <WithCo2 text={step.label} />
+                <WithCo2 text={inOwnUnits(step.label, preferences)} />
               </p>
             </div>
             <p className="type-label max-w-32 text-right text-[0.875rem] leading-tight text-ink-soft desk:max-w-64">
@@ -78,6 +79,15 @@ function Arithmetic({ draft, request, result }: Omit<Props, 'room'>) {
         ))}
         <Plausibility draft={draft} request={request} result={result} />
       </ol>
+      {hasOther ? (
+        <button
+          type="button"
+          onClick={turn}
+          className="type-label inline-flex min-h-12 items-center text-rest underline underline-offset-[3px]"
+        >
+          {t(inSi ? 'line.inOwn' : 'line.inSi')}
+        </button>
+      ) : null}
     </section>
   );
 }
@@ -126,6 +136,7 @@ const ROOM_CODES = /^(noRoomCheck|roomCheckNeeded)/;
 /** Each signal word once, with its sentences; who governs stands last, without a panel. */
 function Cautions({ result, roomKnown }: { result: ChargeResponse; roomKnown: boolean }) {
   const t = useMessages();
+  const preferences = usePreferences();
   const shown = result.cautions.filter(({ code }) => code !== 'manualGoverns' && !(roomKnown && ROOM_CODES.test(code)));
   const governs = result.cautions.find(({ code }) => code === 'manualGoverns');
   const signals = [...new Set(shown.map((caution) => caution.signal))] as Signal[];
@@ -137,7 +148,7 @@ function Cautions({ result, roomKnown }: { result: ChargeResponse; roomKnown: bo
         if (sentences.length === 1 && only) {
           return (
             <Caution key={signal} signal={signal}>
-              {only.message}
+              {inOwnUnits(only.message, preferences)}
             </Caution>
           );
         }
@@ -149,7 +160,7 @@ function Cautions({ result, roomKnown }: { result: ChargeResponse; roomKnown: bo
             <SignalWord signal={signal} />
             <ul className="flex flex-col gap-1.5 pt-px">
               {sentences.map((caution) => (
-                <li key={caution.code}>{caution.message}</li>
+                <li key={caution.code}>{inOwnUnits(caution.message, preferences)}</li>
               ))}
             </ul>
           </div>

@@ -20,7 +20,7 @@ import { SheetSteps } from './sheet-steps.tsx';
 import './charge-sheet.css';
 
 export async function loader({ params, request }: LoaderFunctionArgs) {
-  await Promise.all([requireSession(request), loadMessages('units-screen')]);
+  await Promise.all([requireSession(request), loadMessages('units-screen', 'charge')]);
   const sheet = await queryClient.ensureQueryData(chargeSheetQueries.one(String(params.sheetId)));
   const unit = await queryClient.ensureQueryData(unitQueries.one(sheet.unitId));
   return { sheet, unit };

@@ -38,3 +38,7 @@ export function pipeSizeChoices({ locale, length }: Reads): Choice[] {
     };
   });
 }
+
+/** The label of a step, which names pipes by their size in mm, with the names that this person knows them by. */
+export const inPipeNames = (label: string, reads: Reads): string =>
+  label.replace(/(\d+(?:[.,]\d+)?)[ \u00a0]mm\b/g, (_, od: string) => pipeText(Number(od.replace(',', '.')), reads));
