@@ -19,6 +19,7 @@ import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { orThrow, wasMade } from '../journal/register-journal.ts';
 import { changeRow, type Made, taken } from '../registers/register-rows.ts';
+import { refuseFuture } from '../units/unit-history.service.ts';
 import { type CylinderRow, type CylinderViewRow, cylindersRepository, presentCylinder } from './cylinder.repository.ts';
 import {
   factsOf,
@@ -106,6 +107,7 @@ export function addTare(
       const outcome = await outcomeOfRevision(manager, revision, tareRegister(row));
       return { isNew: false, value: presentOutcome(outcome, actor.locale) };
     }
+    refuseFuture(parts, validFrom);
     await cylindersRepository(manager).addTare(row);
     const outcome = await journalAndJudgeAgain(manager, parts, actor, revision, tareRegister(row));
     return { isNew: true, value: presentOutcome(outcome, actor.locale) };
