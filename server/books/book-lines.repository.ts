@@ -2,6 +2,7 @@ import type { EntityManager } from 'typeorm';
 import type { BooksPageQuery, CylinderBook, JobBook } from '../../shared/books/books.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { Conditions, cursorScope, readPage, type SortColumn } from '../lists/list-query.ts';
+import { siteAt } from '../units/dated-site.ts';
 
 export interface Period {
   from: string;
@@ -249,7 +250,7 @@ export function listJobSums<Item>(manager: EntityManager, query: BooksPageQuery,
     select: JOB,
     from: `job j
       join unit u on u.firm_id = j.firm_id and u.id = j.unit_id
-      join site s on s.firm_id = u.firm_id and s.id = u.site_id
+      join site s on s.firm_id = u.firm_id and s.id = ${siteAt('u.id', 'j.opened_at', 'u.site_id')}
       left join customer k on k.firm_id = s.firm_id and k.id = s.customer_id`,
     conditions: ofPeriod(query).and(`exists (select from ${OF_JOB})`),
     sort: { columns: BY_OPENING, direction: 'desc' as const },

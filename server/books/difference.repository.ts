@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { DifferenceKind } from '../../shared/books/flows.ts';
+import { siteThen } from '../units/dated-site.ts';
 
 /** What statements have put into a difference, and what was made of it; one row a statement, place and refrigerant. */
 export interface DifferenceRow {
@@ -74,7 +75,7 @@ const ITEMS = `select d.group_id as "groupId", d.kind, d.subject_kind as "subjec
       where not $4::boolean or n.mass <> coalesce(t.mass, 0)) d
   join entry_group g on g.firm_id = d.firm_id and g.id = d.group_id
   join firm f on f.id = d.firm_id
-  left join site s on s.firm_id = g.firm_id and s.id = g.site_id
+  left join site s on s.firm_id = g.firm_id and s.id = ${siteThen('g')}
   left join person p on p.id = g.recorded_by
   left join cylinder c on c.firm_id = d.firm_id and c.id = d.subject_id
   left join unit u on u.firm_id = d.firm_id and u.id = d.subject_id

@@ -8,7 +8,9 @@ import { KeepPeriods1764720000010 } from './migrations/1764720000010-keep-period
 import { TellReversalsApart1764720000011 } from './migrations/1764720000011-tell-reversals-apart.ts';
 import { KeepExports1764806400020 } from './migrations/1764806400020-keep-exports.ts';
 import { RentCylinders1764806400030 } from './migrations/1764806400030-rent-cylinders.ts';
+import { JournalImports1764892800050 } from './migrations/1764892800050-journal-imports.ts';
 import { TieSettlementUndos1764892800060 } from './migrations/1764892800060-tie-settlement-undos.ts';
+import { FollowDatedSites1764892800061 } from './migrations/1764892800061-follow-dated-sites.ts';
 
 /** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
 export const MIGRATIONS = [
@@ -22,5 +24,7 @@ export const MIGRATIONS = [
   TellReversalsApart1764720000011,
   KeepExports1764806400020,
   RentCylinders1764806400030,
+  JournalImports1764892800050,
   TieSettlementUndos1764892800060,
+  FollowDatedSites1764892800061,
 ] as const;

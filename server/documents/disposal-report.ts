@@ -1,5 +1,6 @@
 import type { FiltersOf } from '../../shared/exports/export.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { siteThen } from '../units/dated-site.ts';
 import { type DocumentFrame, openPaper } from './document-frame.ts';
 
 const MICROGRAMS_A_POUND = 453_592_370n;
@@ -137,7 +138,7 @@ const readRecovered = ({ manager }: DocumentFrame, from: string, to: string): Pr
       join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
       join firm f on f.id = e.firm_id
       join unit u on u.firm_id = e.firm_id and u.id = e.from_id
-      left join site s on s.firm_id = e.firm_id and s.id = coalesce(e.site_id, u.site_id)
+      left join site s on s.firm_id = e.firm_id and s.id = coalesce(${siteThen('e')}, u.site_id)
       left join person p on p.id = e.recorded_by
       left join lateral (select mass_micrograms from unit_full_charge c where c.firm_id = u.firm_id and c.unit_id = u.id
         and c.refrigerant = e.refrigerant and c.valid_from <= e.occurred_at order by c.valid_from desc, c.id desc limit 1) fc on true

@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { AtmosphereKind } from '../../shared/ledger/place.ts';
+import { siteThen } from '../units/dated-site.ts';
 
 export interface EmissionRow {
   bookingMonth: string;
@@ -20,11 +21,11 @@ const EMISSIONS = `select a.booking_month as "bookingMonth", a.refrigerant, a.as
     select firm_id, booking_month, refrigerant, as_kind, site_id, sum(mass) as mass,
         coalesce(sum(mass) filter (where at_least), 0) as at_least
       from (
-        select firm_id, booking_month, refrigerant, at_least, site_id, to_as as as_kind, mass_micrograms as mass
-          from entry where to_place = 'atmosphere'
+        select firm_id, booking_month, refrigerant, at_least, ${siteThen('o')} as site_id, to_as as as_kind, mass_micrograms as mass
+          from entry o where to_place = 'atmosphere'
         union all
-        select firm_id, booking_month, refrigerant, at_least, site_id, from_as, -mass_micrograms
-          from entry where from_place = 'atmosphere') e
+        select firm_id, booking_month, refrigerant, at_least, ${siteThen('b')}, from_as, -mass_micrograms
+          from entry b where from_place = 'atmosphere') e
       where ($1::text is null or booking_month >= $1) and ($2::text is null or booking_month <= $2)
       group by 1, 2, 3, 4, 5) a
   left join site s on s.firm_id = a.firm_id and s.id = a.site_id

@@ -4,6 +4,7 @@ import type { AtmosphereKind, PlaceKind } from '../../shared/ledger/place.ts';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { Conditions, cursorScope, readPage, type Sort } from '../lists/list-query.ts';
+import { siteThen } from '../units/dated-site.ts';
 import { type Labels, placeView, readLabels } from './place-labels.ts';
 
 export interface EntryJson {
@@ -46,7 +47,7 @@ const SELECT = `e.id, e.sequence::text, e.group_id as "groupId", e.kind, e.refri
 
 const JOINED = `join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
   join firm f on f.id = e.firm_id
-  left join site s on s.firm_id = e.firm_id and s.id = e.site_id
+  left join site s on s.firm_id = e.firm_id and s.id = ${siteThen('e')}
   left join entry_group r on r.firm_id = e.firm_id and r.reverses_group_id = e.group_id
   left join person p on p.id = e.recorded_by`;
 

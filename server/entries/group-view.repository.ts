@@ -2,6 +2,7 @@ import type { EntityManager } from 'typeorm';
 import type { GroupView } from '../../shared/entries/entry.schema.ts';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { siteThen } from '../units/dated-site.ts';
 import { entryListRepository } from './entry-list.repository.ts';
 
 type GroupRow = Omit<GroupView, 'entries' | 'readings' | 'sequence' | 'occurredAt' | 'recordedAt'> & {
@@ -43,7 +44,7 @@ const GROUP = `select g.id, g.sequence::text, g.kind, g.occurred_at as "occurred
       from group_document d where d.firm_id = g.firm_id and d.group_id = g.id) as documents
   from entry_group g
   join firm f on f.id = g.firm_id
-  left join site s on s.firm_id = g.firm_id and s.id = g.site_id
+  left join site s on s.firm_id = g.firm_id and s.id = ${siteThen('g')}
   left join unit u on u.firm_id = g.firm_id and u.id = g.unit_id
   left join person p on p.id = g.recorded_by
   left join person v on v.id = g.supervised_by

@@ -98,7 +98,7 @@ const FACTS = `select json_build_object(
           'mass', r.mass_micrograms::text, 'from', r.valid_from, 'jobId', r.job_id)), '[]')
         from unit_full_charge r where r.unit_id = u.id),
       'sites', (select json_agg(json_build_object('siteId', p.site_id, 'timeZone', s.time_zone, 'from', p.valid_from)
-          order by p.valid_from)
+          order by p.valid_from, p.id)
         from unit_site p join site s on s.id = p.site_id where p.unit_id = u.id),
       'book', ${BOOK('unit', 'u.id')}, 'state', ${STATE('unit', 'u.id')})), '[]')
     from unit u where u.id = any ($2::uuid[])),

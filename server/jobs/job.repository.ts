@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { Job, JobListQuery } from '../../shared/jobs/jobs.schema.ts';
 import { Conditions, cursorScope, readPage, type SortColumn } from '../lists/list-query.ts';
+import { siteAt } from '../units/dated-site.ts';
 import { JobEntity } from './job.entity.ts';
 
 export type JobRow = JobEntity;
@@ -12,7 +13,7 @@ const BY_OPENING: readonly SortColumn[] = [
 ];
 const FROM = `job j
   join unit u on u.firm_id = j.firm_id and u.id = j.unit_id
-  join site s on s.firm_id = u.firm_id and s.id = u.site_id`;
+  join site s on s.firm_id = u.firm_id and s.id = ${siteAt('u.id', 'j.opened_at', 'u.site_id')}`;
 const SELECT = `j.id, j.unit_id as "unitId", u.name as "unitName", s.name as "siteName", j.kind, j.title,
   j.opened_at as "openedAt", j.closed_at as "closedAt", j.version`;
 

@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { ASSUMED_SCALE } from '../../shared/ledger/scale.ts';
 import { microgramsOfGrams } from '../../shared/units/mass.ts';
+import { siteAt, siteThen } from '../units/dated-site.ts';
 
 /** A cylinder that holds no more than one step of an ordinary scale is empty: no reading could say otherwise. */
 const LEAST_CONTENT = microgramsOfGrams(ASSUMED_SCALE.resolutionG);
@@ -68,7 +69,7 @@ export function openItemsRepository(manager: EntityManager) {
           join reading r on r.firm_id = g.firm_id and r.group_id = g.id
           join cylinder c on c.firm_id = r.firm_id and c.id = r.cylinder_id
           left join unit u on u.firm_id = g.firm_id and u.id = g.unit_id
-          left join site s on s.firm_id = g.firm_id and s.id = g.site_id
+          left join site s on s.firm_id = g.firm_id and s.id = ${siteThen('g')}
           left join person p on p.id = g.recorded_by
           where g.open_weigh_in and g.occurred_at < $1 and ${STANDS('g')}
             and not exists (select from entry_group k where k.firm_id = g.firm_id and k.closes_group_id = g.id
@@ -106,7 +107,7 @@ export function openItemsRepository(manager: EntityManager) {
             coalesce(k.name, '') as "customerName", j.opened_at as "openedAt", j.closed_at as "closedAt"
           from job j
           join unit u on u.firm_id = j.firm_id and u.id = j.unit_id
-          join site s on s.firm_id = u.firm_id and s.id = u.site_id
+          join site s on s.firm_id = u.firm_id and s.id = ${siteAt('u.id', 'j.opened_at', 'u.site_id')}
           left join customer k on k.firm_id = s.firm_id and k.id = s.customer_id
           where j.opened_at < $2 and (j.closed_at is null or j.closed_at >= $1)
             and not exists (select from entry_group g where g.firm_id = j.firm_id and g.job_id = j.id and ${STANDS('g')})

@@ -1,5 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import type { AtmosphereKind, PlaceKind } from '../../shared/ledger/place.ts';
+import { siteThen } from '../units/dated-site.ts';
 import type { ProofSubject } from './subject.repository.ts';
 
 export interface PackedRow {
@@ -12,15 +13,17 @@ export interface PackedRow {
 }
 
 /** `e` is an entry; $1 to $6 as `valuesOf` gives them. */
-const OWN_ENTRY = `(e.unit_id = any ($1::uuid[]) or e.site_id = any ($2::uuid[])
+/** Of a customer's units what happened at the customer's sites alone: before or after, they stood elsewhere. */
+const OWN_ENTRY = `((cardinality($2::uuid[]) = 0 and e.unit_id = any ($1::uuid[])) or ${siteThen('e')} = any ($2::uuid[])
   or e.from_id = any ($3::uuid[]) or e.to_id = any ($3::uuid[])
   or (e.occurred_at >= $5::timestamptz and e.occurred_at < $6::timestamptz))`;
 /** A group is told whole with the first of its entries, readings and statements that counts. */
-const OWN_GROUP = `(g.unit_id = any ($1::uuid[]) or g.site_id = any ($2::uuid[])
+const OWN_GROUP = `((cardinality($2::uuid[]) = 0 and g.unit_id = any ($1::uuid[])) or ${siteThen('g')} = any ($2::uuid[])
   or (g.occurred_at >= $5::timestamptz and g.occurred_at < $6::timestamptz)
   or exists (select from entry e where e.firm_id = g.firm_id and e.group_id = g.id and ${OWN_ENTRY})
   or exists (select from reading r where r.firm_id = g.firm_id and r.group_id = g.id and r.cylinder_id = any ($3::uuid[]))
-  or exists (select from statement t where t.firm_id = g.firm_id and t.group_id = g.id and t.unit_id = any ($1::uuid[])))`;
+  or exists (select from statement t where t.firm_id = g.firm_id and t.group_id = g.id
+    and cardinality($2::uuid[]) = 0 and t.unit_id = any ($1::uuid[])))`;
 const OWN_REGISTER = `(j.subject_id = any ($4::uuid[])
   or (j.recorded_at >= $5::timestamptz and j.recorded_at < $6::timestamptz)
   or (j.noun <> 'unit' and (cardinality($1::uuid[]) > 0 or cardinality($3::uuid[]) > 0) and (
@@ -113,7 +116,7 @@ export function readShownEntries(
          e.reverses_entry_id is not null or exists (select from entry r
            where r.firm_id = e.firm_id and r.reverses_entry_id = e.id) as "isReversed"
        from entry e join firm f on f.id = e.firm_id
-       left join site s on s.firm_id = e.firm_id and s.id = e.site_id
+       left join site s on s.firm_id = e.firm_id and s.id = ${siteThen('e')}
        where ${OWN_ENTRY} and cardinality($4::uuid[]) >= 0 and e.sequence <= $7 order by e.sequence limit $8`,
     [...valuesOf(subject), upTo, limit],
   );

@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { OpenWeighIn, Today } from '../../shared/today/today.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { siteThen } from '../units/dated-site.ts';
 
 type WeighInRow = Omit<OpenWeighIn, 'startedAt' | 'startGrossG' | 'hoseG'> & {
   startedAt: Date;
@@ -19,7 +20,7 @@ const OPEN_WEIGH_INS = `select g.id as "groupId", r.cylinder_id as "cylinderId",
   join reading r on r.firm_id = g.firm_id and r.group_id = g.id
   join cylinder c on c.firm_id = r.firm_id and c.id = r.cylinder_id
   left join unit u on u.firm_id = g.firm_id and u.id = g.unit_id
-  left join site s on s.firm_id = g.firm_id and s.id = g.site_id
+  left join site s on s.firm_id = g.firm_id and s.id = ${siteThen('g')}
   left join person p on p.id = g.recorded_by
   where g.open_weigh_in
     and not exists (select from entry_group x where x.firm_id = g.firm_id and x.reverses_group_id = g.id)

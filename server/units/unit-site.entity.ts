@@ -2,6 +2,7 @@ import { Column, Entity, ForeignKey, Index, PrimaryColumn } from 'typeorm';
 
 /** Where the unit stood from when. Only added to. */
 @Entity('unit_site')
+@Index('unit_site_moved_idx', ['firmId', 'unitId'], { where: 'id <> unit_id' })
 @Index('unit_site_unit_idx', ['firmId', 'unitId', 'validFrom'])
 @ForeignKey('site', ['firmId', 'siteId'], ['firmId', 'id'], { name: 'unit_site_site_fkey' })
 @ForeignKey('unit', ['firmId', 'unitId'], ['firmId', 'id'], { name: 'unit_site_unit_fkey' })

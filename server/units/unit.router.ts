@@ -9,6 +9,7 @@ import {
   addFullChargeRequest,
   addLineSetRequest,
   addUnitRefrigerantRequest,
+  addUnitSiteRequest,
   createUnitRequest,
   fullChargePage,
   lineSet,
@@ -16,6 +17,8 @@ import {
   unit,
   unitListQuery,
   unitPage,
+  unitSite,
+  unitSitePage,
   updateUnitRequest,
 } from '../../shared/unit-register/unit.schema.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
@@ -31,6 +34,7 @@ import {
   listFullCharges,
   listLineSets,
 } from './unit-history.service.ts';
+import { addSite, listSites } from './unit-site.service.ts';
 
 const JUDGED_AGAIN = `${REPEATABLE} What the unit's entries say is judged again by it; the answer holds what that added.`;
 
@@ -83,6 +87,26 @@ export function unitRoutes(parts: Parts): ApiRoutes {
       responses: { 201: entryGroupResponse, 200: entryGroupResponse },
     },
     async ({ actor, params, body }) => madeOrFound(await addRefrigerant(parts, actor, params.id, body)),
+  );
+  routes.add(
+    {
+      ...reads,
+      path: '/units/{id}/sites',
+      summary: 'Where the unit stood from when, newest first',
+      responses: { 200: unitSitePage },
+    },
+    async ({ actor, params, query }) => ok(await listSites(parts, actor, params.id, query)),
+  );
+  routes.add(
+    {
+      ...adds,
+      path: '/units/{id}/sites',
+      summary: 'Another site from a moment on: the unit was moved',
+      description: `${REPEATABLE} What was posted is read at the site where the unit stood at that time.`,
+      body: addUnitSiteRequest,
+      responses: { 201: unitSite, 200: unitSite },
+    },
+    async ({ actor, params, body }) => madeOrFound(await addSite(parts, actor, params.id, body)),
   );
   routes.add(
     {

@@ -82,6 +82,19 @@ export const addUnitRefrigerantRequest = z.strictObject({
   jobId: id.nullish(),
 });
 
+/** Where the unit stands from then on. What was posted before stays where it happened. */
+export const addUnitSiteRequest = z.strictObject({ id, siteId: id, validFrom: instant });
+export const unitSite = z.strictObject({
+  id,
+  unitId: id,
+  siteId: id,
+  siteName: z.string(),
+  customerId: id,
+  customerName: z.string(),
+  validFrom: instant,
+});
+export type UnitSite = z.output<typeof unitSite>;
+
 export const fullCharge = z.strictObject({
   id,
   refrigerant: z.string(),
@@ -166,4 +179,5 @@ export const unitListQuery = pageQuery.extend({
 export type UnitListQuery = z.output<typeof unitListQuery>;
 export const unitPage = pageOf(unit);
 export const lineSetPage = pageOf(lineSet);
+export const unitSitePage = pageOf(unitSite);
 export const fullChargePage = pageOf(fullCharge);

@@ -2,10 +2,12 @@ import { createHash } from 'node:crypto';
 import { mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
+import { v7 as uuid } from 'uuid';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { type History, NOTE, startHistory } from '../proof/history.ts';
 import { bench, download, FILES, runVerifier, unpack } from '../proof/packages.ts';
 import { startTestApp, type TestApp } from '../support/app.ts';
+import { groupOf, posted } from '../support/ledger.ts';
 
 const home = mkdtempSync(path.join(tmpdir(), 'tarewright-packages-'));
 let app: TestApp;
@@ -217,6 +219,31 @@ describe('Asking for a proof package', () => {
     expect(await history.ledger.sequence()).toBe(before);
     const { writeFileSync } = await import('node:fs');
     writeFileSync(file, held, { mode: 0o600 });
+  });
+
+  it('about a customer holds of a unit that came from another only what happened there since', async () => {
+    const { ledger, unit, otherCustomer, otherSite } = history;
+    const ofUnit = async () =>
+      (await packed(`customerId=${otherCustomer.id}`)).whole.filter(
+        ({ type, unitId }) => (type === 'entry' || type === 'group') && unitId === unit.id,
+      );
+    await posted(
+      ledger.client,
+      { id: uuid(), siteId: otherSite.id, validFrom: '2026-03-20T00:00:00Z' },
+      `/units/${unit.id}/sites`,
+    );
+    expect(await ofUnit()).toEqual([]);
+    const flat = groupOf('foundEmpty', '2026-03-21T10:00:00Z', {
+      unitId: unit.id,
+      statements: [{ about: 'unit', id: unit.id, is: 'empty', by: 'foundFlat' }],
+    });
+    await posted(ledger.client, { ...flat, kind: 'vacuum' });
+    expect((await ofUnit()).map(({ type }) => type).sort()).toEqual(['entry', 'group']);
+    const earlier = (await packed(`customerId=${ledger.customer.id}`)).whole;
+    expect(
+      earlier.some(({ type, kind, unitId }) => type === 'group' && kind === 'extraCharge' && unitId === unit.id),
+    ).toBe(true);
+    expect(JSON.stringify(earlier)).not.toContain(flat.groupId);
   });
 
   it('leaves the connections whole when downloads are broken off', async () => {

@@ -88,11 +88,13 @@ describe('The application, with plain SQL', () => {
       'firm_ids_of_person',
       'invitation_by_token_hash',
       'lock_head',
+      'moved_unit_ids',
       'password_reset_by_token_hash',
       'post_records',
       'reader_site_ids',
       'refuse',
       'sign_in_candidate',
+      'site_of_unit_at',
       'token_by_hash',
     ]);
   });

@@ -98,6 +98,7 @@ export async function startHistory(app: TestApp) {
     cylinder,
     unit,
     otherUnit,
+    otherSite,
     otherCustomer: other,
     notedGroupId: noted.groupId,
     seals: { first, second },
