@@ -28,6 +28,7 @@ export async function cylinderStatementPaper(
   paper.facts(
     [
       [words.say('statement.opening'), words.mass(statement.openingG)],
+      [words.say('statement.opened'), words.mass(statement.openedG)],
       [words.say('statement.cameIn'), words.mass(statement.cameInG)],
       [words.say('statement.wentOut'), words.mass(statement.wentOutG)],
       [words.say('statement.differences'), words.mass(statement.differencesG)],

@@ -63,7 +63,7 @@ export async function jobRecord(frame: DocumentFrame, jobId: string): Promise<nu
       entryColumns(words),
       entries.map((entry) => entryTableRow(words, entry)),
     );
-  readingsOf(frame, paper, groups);
+  readingsOf(frame, paper, groups, await readTimes(frame, groups));
   statementsOf(frame, paper, groups);
   paper.heading(words.say('jobRecord.signed'));
   paper.facts([
@@ -87,7 +87,21 @@ async function sheetsOf({ manager }: DocumentFrame, jobId: string) {
   return sheets;
 }
 
-function readingsOf({ words }: DocumentFrame, paper: Paper, groups: readonly GroupView[]): void {
+/** When each was read: a weigh-in that stayed open was read again hours later. */
+async function readTimes({ manager }: DocumentFrame, groups: readonly GroupView[]): Promise<Map<string, Date>> {
+  const rows = await manager.query<{ id: string; readAt: Date }[]>(
+    'select id, read_at as "readAt" from reading where group_id = any ($1)',
+    [groups.map(({ id }) => id)],
+  );
+  return new Map(rows.map(({ id, readAt }) => [id, readAt]));
+}
+
+function readingsOf(
+  { words }: DocumentFrame,
+  paper: Paper,
+  groups: readonly GroupView[],
+  times: ReadonlyMap<string, Date>,
+): void {
   const readings = groups.flatMap((group) => group.readings.map((reading) => ({ group, reading })));
   if (readings.length === 0) return;
   paper.heading(words.say('jobRecord.readings'));
@@ -103,7 +117,7 @@ function readingsOf({ words }: DocumentFrame, paper: Paper, groups: readonly Gro
     readings.map(({ group, reading }) => ({
       struck: group.reversedByGroupId !== null,
       cells: [
-        words.instant(group.occurredAt, group.timeZone),
+        words.instant(times.get(reading.id) ?? group.occurredAt, group.timeZone),
         reading.cylinderTag,
         words.say(`moment.${reading.moment}`),
         `${reading.value} ${reading.unit}`,

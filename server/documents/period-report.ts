@@ -8,8 +8,8 @@ import {
 } from '../../shared/books/flows.ts';
 import type { FiltersOf } from '../../shared/exports/export.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { getEmissions } from '../emissions/emission.service.ts';
 import { type DocumentFrame, openPaper } from './document-frame.ts';
-import { findGwp } from './unit-figures.ts';
 
 type Sum = MonthSum & { refrigerant: string; isBefore: boolean };
 
@@ -18,7 +18,8 @@ export async function periodReport(
   frame: DocumentFrame,
   { from, to }: FiltersOf<'periodReport'>,
 ): Promise<number | null> {
-  const { words, manager, parts, firm } = frame;
+  const { words, manager, parts, actor, firm } = frame;
+  const emissions = await getEmissions(parts, actor, { from, to, by: 'refrigerant' });
   const sums = await readSums(frame, to, from);
   const closed = await manager.query<{ month: string; closedAt: Date; name: string | null }[]>(
     `select p.month, p.closed_at as "closedAt", n.name from period p left join person n on n.id = p.closed_by
@@ -43,8 +44,10 @@ export async function periodReport(
     const own = sums.filter((sum) => sum.refrigerant === refrigerant);
     const flows = flowsOf(own.filter(({ isBefore }) => !isBefore));
     const [before, after] = [balancesOf(own.filter(({ isBefore }) => isBefore)), balancesOf(own)];
-    const gwp = findGwp(parts.reference, refrigerant, firm.gwpSet);
-    const emitted = gramsOf(flows.filter(toAir)) - gramsOf(flows.filter(fromAir));
+    const emitted = emissions.lines.find((line) => line.refrigerant === refrigerant);
+    const gwp = emitted?.gwp ?? null;
+    const tonnes = (co2eT: number | null | undefined) =>
+      gwp === null ? words.say('unit.noGwp') : `${words.number(co2eT ?? 0, 3)} t`;
     const unexplained =
       gramsOf(flows.filter(({ toKind }) => isDifference(toKind))) -
       gramsOf(flows.filter(({ fromKind }) => isDifference(fromKind)));
@@ -57,11 +60,17 @@ export async function periodReport(
         [words.say('period.cylindersAfter'), held(after, 'cylinder')],
         [words.say('period.unitsBefore'), held(before, 'unit')],
         [words.say('period.unitsAfter'), held(after, 'unit')],
-        [words.say('period.emitted'), words.mass(emitted)],
-        [
-          words.say('period.co2e', { set: firm.gwpSet }),
-          gwp === null ? words.say('unit.noGwp') : `${words.number((emitted * gwp) / 1e6, 3)} t`,
-        ],
+        [words.say('period.emitted'), words.mass(emitted?.totalG ?? 0)],
+        ...(emitted ? [[words.say('period.co2e', { set: firm.gwpSet }), tonnes(emitted.co2eT)] as const] : []),
+        ...(emitted?.atLeastG ? [[words.say('period.atLeast'), words.mass(emitted.atLeastG)] as const] : []),
+        ...(emitted?.beforeOurCareG
+          ? [
+              [
+                words.say('period.beforeOurCare'),
+                `${words.mass(emitted.beforeOurCareG)}, ${tonnes(emitted.beforeOurCareCo2eT)}`,
+              ] as const,
+            ]
+          : []),
         [words.say('period.unexplained'), words.mass(unexplained)],
       ],
       4,
@@ -115,8 +124,6 @@ async function readSums({ manager }: DocumentFrame, to: string, from: string): P
   }));
 }
 
-const toAir = ({ toKind }: Flow) => toKind.startsWith('atmosphere');
-const fromAir = ({ fromKind }: Flow) => fromKind.startsWith('atmosphere');
 /** What is looked at first. */
 const isOdd = ({ fromKind, toKind }: Flow) => isDifference(fromKind) || isDifference(toKind);
 const gramsOf = (flows: readonly Flow[]): number =>

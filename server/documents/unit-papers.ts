@@ -6,7 +6,7 @@ import { getUnit } from '../units/unit.service.ts';
 import { type DocumentFrame, openPaper } from './document-frame.ts';
 import { entryColumns, entryTableRow } from './entry-rows.ts';
 import type { Paper } from './paper.ts';
-import { findGwp, tonnesOfUnit } from './unit-figures.ts';
+import { factoryChargeG, findGwp, isFluorinatedGas, isGwpFromMemory, tonnesOfUnit } from './unit-figures.ts';
 
 const PAGE = 200;
 
@@ -113,8 +113,7 @@ export async function chargeLabel(frame: DocumentFrame, unitId: string): Promise
     ({ reversedByGroupId, reversesGroupId }) => !reversedByGroupId && !reversesGroupId,
   );
   const site = await siteOf(frame, unit.siteId);
-  const fromFactory = entries.filter(({ from, to }) => from.place === 'factory' && to.id === unitId);
-  const factoryG = fromFactory.length > 0 ? fromFactory.reduce((sum, { massG }) => sum + massG, 0) : null;
+  const factoryG = factoryChargeG(entries, unit);
   const totalG = unit.book.known ? unit.book.massG : null;
   const addedG = factoryG !== null && totalG !== null ? Math.max(0, totalG - factoryG) : null;
   const last = entries.findLast(({ to, addedByServer }) => to.id === unitId && !addedByServer);
@@ -127,7 +126,11 @@ export async function chargeLabel(frame: DocumentFrame, unitId: string): Promise
   const [top, inset] = [paper.y, 16];
   paper.y += inset;
   const at = (indent: number) => paper.left + inset + indent;
-  paper.line(words.say('label.contains'), at(0), paper.y, { face: 'strong', size: 13 });
+  const isFluorinated = isFluorinatedGas(parts.reference, unit.refrigerant);
+  paper.line(words.say(isFluorinated ? 'label.contains' : 'label.charged'), at(0), paper.y, {
+    face: 'strong',
+    size: 13,
+  });
   paper.y += 26;
   paper.line(unit.refrigerant, at(0), paper.y, { face: 'wide', size: 34 });
   paper.y += 54;
@@ -151,10 +154,11 @@ export async function chargeLabel(frame: DocumentFrame, unitId: string): Promise
   });
   paper.line(`CO₂e  ${tonnes ?? '________ t'}`, at(170), paper.y, { face: 'strong', size: 13 });
   paper.y += 24;
-  paper.line(words.say('label.gwpSet', { set: gwpSet }), at(0), paper.y, { size: 9 });
+  const gwpNote = isGwpFromMemory(parts.reference, unit.refrigerant, gwpSet) ? 'label.gwpFromMemory' : 'label.gwpSet';
+  paper.line(words.say(gwpNote, { set: gwpSet }), at(0), paper.y, { size: 9 });
   paper.y += 20;
   paper.line(
-    `${words.say('label.date')}  ${last ? words.day(last.occurredAt.slice(0, 10)) : '______________'}      ${words.say('label.by')}  ${last?.recordedByName || '______________'}`,
+    `${words.say('label.date')}  ${last ? words.instantDay(last.occurredAt, last.timeZone) : '______________'}      ${words.say('label.by')}  ${last?.recordedByName || '______________'}`,
     at(0),
     paper.y,
     { size: 11 },

@@ -23,6 +23,8 @@ export interface Words {
   massUnit: string;
   day(day: string): string;
   instant(at: string | Date, timeZone: string): string;
+  /** The day of an instant where it happened. */
+  instantDay(at: string | Date, timeZone: string): string;
   month(month: string): string;
   /**
    * The arithmetic of a charge as this reader follows it, as rows of what, how and what it gives. A line in other units
@@ -59,7 +61,10 @@ export function wordsOf(
   const number = (value: number, decimals: number) =>
     new Intl.NumberFormat(locale, { minimumFractionDigits: decimals, maximumFractionDigits: decimals }).format(value);
   const massFigure = (massG: number) => {
-    const figure = number(fromBase('mass', shown.unit, massG), shown.decimals);
+    const value = fromBase('mass', shown.unit, massG);
+    // A difference of 4.4 g against 4.1 g that the scales can tell must not read as 4 and 4.
+    const isPartOfGram = shown.unit === 'g' && Math.abs(value - Math.round(value)) >= 0.05;
+    const figure = number(value, isPartOfGram ? 1 : shown.decimals);
     return /^-[0.,]+$/.test(figure) ? figure.slice(1) : figure;
   };
   const log = (key: string) => logWords[`log.${key}`] ?? key;
@@ -78,6 +83,8 @@ export function wordsOf(
     massUnit: shown.unit,
     day: (day) =>
       new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeZone: 'UTC' }).format(new Date(`${day}T12:00:00Z`)),
+    instantDay: (at, timeZone) =>
+      new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeZone }).format(new Date(at)),
     instant: (at, timeZone) =>
       new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeStyle: 'short', timeZone }).format(new Date(at)),
     arithmetic(steps) {

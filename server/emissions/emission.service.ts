@@ -10,7 +10,7 @@ import type { EmissionsQuery, EmissionsResponse } from '../../shared/books/emiss
 import { asReturned } from '../../shared/calculations/decimals.ts';
 import { tonnesCo2e } from '../../shared/co2e/co2e.ts';
 import type { GwpSet } from '../../shared/reference/gwp.ts';
-import { type Gwp, gwpOfRefrigerant } from '../../shared/reference/gwp-of-blend.ts';
+import { citationOf, type Gwp, gwpOfRefrigerant } from '../../shared/reference/gwp-of-blend.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { csvGrams, csvText } from '../books/csv-table.ts';
 import { inFirm } from '../database/firm-scope.ts';
@@ -68,7 +68,7 @@ function present(
     },
     gwpSet: {
       name: set,
-      sources: [...gwps].flatMap(([refrigerant, gwp]) => (gwp ? [{ refrigerant, source: gwp.source }] : [])),
+      sources: [...gwps].flatMap(([refrigerant, gwp]) => (gwp ? [{ refrigerant, source: citationOf(gwp) }] : [])),
     },
   };
 }

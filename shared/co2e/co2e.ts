@@ -1,6 +1,6 @@
 import { asReturned } from '../calculations/decimals.ts';
 import { done, type Outcome } from '../problems/outcome.ts';
-import { gwpOfRefrigerant } from '../reference/gwp-of-blend.ts';
+import { citationOf, gwpOfRefrigerant } from '../reference/gwp-of-blend.ts';
 import type { ReferenceData } from '../reference/reference-data.ts';
 import type { Co2eRequest, Co2eResponse } from './co2e.schema.ts';
 
@@ -11,10 +11,10 @@ export const tonnesCo2e = (massG: number, gwp: number) => (massG * gwp) / 1e6;
 export function co2e(request: Co2eRequest, reference: ReferenceData): Outcome<Co2eResponse> {
   const found = gwpOfRefrigerant(reference, request.refrigerant, request.gwpSet);
   if (!found.ok) return found;
-  const { gwp, source, status } = found.value;
+  const { gwp } = found.value;
   return done({
     co2eT: asReturned(tonnesCo2e(request.massG, gwp), 't'),
     gwpValue: asReturned(gwp, 'GWP'),
-    source: status === 'memory' ? `${source} (a component value is from memory)` : source,
+    source: citationOf(found.value),
   });
 }

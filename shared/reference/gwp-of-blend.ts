@@ -25,6 +25,10 @@ const CITATION: Record<GwpSet, string> = {
   'EU-2024-573': 'Regulation (EU) 2024/573, Annexes I, II and VI',
 };
 
+/** Says beside the source that a component's value is from memory. */
+export const citationOf = ({ source, status }: Pick<Gwp, 'source' | 'status'>): string =>
+  status === 'memory' ? `${source} (a component value is from memory)` : source;
+
 /** IPCC reports give every component a value; the laws list some substances only, and count a blend by those. */
 const LEAVES_OUT: Record<GwpSet, boolean> = {
   AR4: false,

@@ -6,7 +6,17 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { writeDocument } from '../../server/documents/write-document.ts';
 import { type ExportWorker, startExportWorker } from '../../server/exports/export-worker.ts';
 import { startTestApp, type TestApp } from '../support/app.ts';
-import { type Ledger, startLedger, weighIn } from '../support/ledger.ts';
+import {
+  groupOf,
+  inCylinder,
+  inUnit,
+  type Ledger,
+  massOf,
+  posted,
+  readingOf,
+  startLedger,
+  weighIn,
+} from '../support/ledger.ts';
 import { readPdf } from '../support/read-pdf.ts';
 import type { TestClient } from '../support/test-client.ts';
 
@@ -167,7 +177,75 @@ describe('A charge label', () => {
   });
 });
 
+describe('A charge label of what is no fluorinated gas, or was not always this machine', () => {
+  it('does not call R-290 a fluorinated greenhouse gas', async () => {
+    const unit = await eu.unit('300', '300', { tag: '0290', refrigerant: 'R-290' }, 'factory');
+    const text = (await paper(eu.client, 'chargeLabel', { unitId: unit.id })).pages[0]?.text ?? '';
+    expect(text).toContain('Refrigerante de esta unidad');
+    expect(text).not.toContain('fluorados');
+  });
+
+  it('says the day as it was where the machine stands', async () => {
+    const ledger = await startLedger(app, { timeZone: 'America/New_York' });
+    const site = await ledger.made('/sites', {
+      ...ledger.site,
+      id: uuid(),
+      name: 'Quay Street',
+      timeZone: 'America/New_York',
+    });
+    const unit = await ledger.unit('1250', '1500', { siteId: site.id }, 'factory');
+    const { id } = await ledger.cylinder('9500');
+    const late = '2026-03-04T01:30:00Z';
+    await posted(
+      ledger.client,
+      weighIn(ledger, { cylinderId: id, unitId: unit.id, beforeG: 9500, afterG: 9410 }, {}, late),
+    );
+    const text = (await paper(ledger.client, 'chargeLabel', { unitId: unit.id })).pages[0]?.text ?? '';
+    expect(text).toMatch(/Charged on\s+Mar 3, 2026/);
+  });
+});
+
+describe('A period report', () => {
+  it('keeps what was lost before our care apart from emissions, as the page of emissions does', async () => {
+    const ledger = await startLedger(app, { gwpSet: 'AR4' });
+    const unit = await ledger.unit('0', '1290', {}, 'notKnown');
+    const { id: cylinderId } = await ledger.cylinder('9500');
+    // scenarios, S8 case 1: 300 g before our care, then 150 g inferred.
+    for (const [beforeG, afterG, at] of [
+      [9500, 9200, '2026-03-02T10:00:00Z'],
+      [9200, 9050, '2026-05-04T10:00:00Z'],
+    ] as const)
+      await posted(
+        ledger.client,
+        groupOf('refill', at, {
+          unitId: unit.id,
+          readings: [
+            readingOf(cylinderId, ledger.scale.id, 'before', beforeG),
+            readingOf(cylinderId, ledger.scale.id, 'after', afterG),
+          ],
+          entries: [massOf(String(beforeG - afterG), inCylinder(cylinderId), inUnit(unit.id))],
+          statements: [{ about: 'unit', id: unit.id, is: 'full' }],
+        }),
+      );
+    const emissions = (await ledger.client.get('/emissions?from=2026-01&to=2026-12&by=refrigerant')).body.lines[0];
+    expect(emissions).toMatchObject({ totalG: 150, beforeOurCareG: 300 });
+    const text = (await paper(ledger.client, 'periodReport', months)).pages[0]?.text ?? '';
+    // 150 g in ounces; AR4: R-410A 2087.5, 0.150 kg is 0.313 t; 300 g is 10.6 oz and 0.626 t
+    expect(text).toMatch(/To the atmosphere[\s\S]*?5\.3 oz/);
+    expect(text).not.toMatch(/15\.9 oz/);
+    expect(text).toMatch(/0\.313 t/);
+    expect(text).toMatch(/10\.6 oz, 0\.626 t/);
+  });
+});
+
 describe('A cylinder statement', () => {
+  it('adds up: opening, opened with, in, out, differences, closing', async () => {
+    const filters = { cylinderId: ids.eu.cylinder, from: '2026-01-01', to: '2026-11-30' };
+    const text = (await paper(eu.client, 'cylinderStatement', filters)).pages[0]?.text ?? '';
+    expect(text).toMatch(/Abierto con[\s\S]*?9500 g/);
+    expect(text).toMatch(/9410 g/);
+  });
+
   it('gives opening, closing and the verdict in the three words', async () => {
     const filters = { cylinderId: ids.us.cylinder, from: '2026-01-01', to: '2026-11-30' };
     const text = (await paper(us.client, 'cylinderStatement', filters)).pages[0]?.text ?? '';
@@ -184,6 +262,26 @@ describe('A job record', () => {
     expect(text).toMatch(/Łódź, 12 >= 11\s+fine/);
     expect(text).toMatch(/17200 g/);
     expect(text).toMatch(/17110 g/);
+  });
+
+  it('gives each reading its own time: a weigh-in that stayed open was read again hours later', async () => {
+    const ledger = await startLedger(app);
+    const unit = await ledger.unit('1250', '1500', {}, 'factory');
+    const { id: cylinderId } = await ledger.cylinder('9500');
+    const jobId = uuid();
+    await ledger.made('/jobs', {
+      id: jobId,
+      unitId: unit.id,
+      kind: 'install',
+      title: 'back bedroom',
+      openedAt: '2026-03-01T08:00:00Z',
+    });
+    const group = weighIn(ledger, { cylinderId, unitId: unit.id, beforeG: 9500, afterG: 9410 }, { jobId });
+    const [before, after] = group.readings;
+    await posted(ledger.client, { ...group, readings: [before, { ...after, at: '2026-03-02T18:30:00Z' }] });
+    const text = (await paper(ledger.client, 'jobRecord', { jobId })).pages[0]?.text ?? '';
+    expect(text).toMatch(/10:00\sAM[\s\S]*?17200 g/);
+    expect(text).toMatch(/6:30\sPM[\s\S]*?17110 g/);
   });
 });
 
