@@ -42,6 +42,14 @@ describe('A sentence cut at its placeholders', () => {
     expect(sayPieces(cut('{{a, number}} m'), 'es-ES', { a: '12,5x' })).toBe('12,5x m');
   });
 
+  it('ends with one full stop where a value brings its own', () => {
+    expect(sayPieces(cut('Visto el {{when}}. Fin.'), 'es-US', { when: '25 nov, 5:30 p.m.' })).toBe(
+      'Visto el 25 nov, 5:30 p.m. Fin.',
+    );
+    expect(sayPieces(cut('{{hash}} ...'), 'en-US', { hash: 'ab.' })).toBe('ab. ...');
+    expect(sayPieces(cut('{{hash}}...'), 'en-US', { hash: 'ab.' })).toBe('ab....');
+  });
+
   it('holds nothing else in braces and no other sentence', () => {
     expect(cutSentence('{{when, datetime}}')).toBeNull();
     expect(cutSentence('see $t(other)')).toBeNull();

@@ -31,7 +31,10 @@ export function numberFormatOf(locale: string): Intl.NumberFormat {
   return format;
 }
 
-/** Nothing in a value is read as a placeholder. A value that is missing leaves its place empty. */
+/**
+ * Nothing in a value is read as a placeholder. A value that is missing leaves its place empty. One that ends in a full stop
+ * (`5:30 p.m.`) ends the sentence with it.
+ */
 export function sayPieces(
   sentence: Sentence,
   locale: string,
@@ -40,7 +43,7 @@ export function sayPieces(
   let said = '';
   for (const piece of sentence) {
     if (typeof piece === 'string') {
-      said += piece;
+      said += said.endsWith('.') && /^\.(?!\.)/.test(piece) ? piece.slice(1) : piece;
       continue;
     }
     const value = values[piece.value];
