@@ -191,6 +191,12 @@ describe('The books', () => {
     expect(router.state.location.search).toBe('?from=2026-12&to=2026-12');
   });
 
+  it('tell a purchase by the clock of the firm, wherever it is read', async () => {
+    await openBooks('/books?table=purchases');
+    // 09:00 UTC in Madrid in November.
+    expect(await screen.findByText('5 Nov, 10:00')).toBeVisible();
+  });
+
   it('take a price as it is typed, say what it comes to, and send it exactly', async () => {
     const { user } = await openBooks('/books?table=purchases');
     await user.click(await screen.findByRole('button', { name: /^Give a price/ }));

@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
 import { cylinderQueries } from '../../api/cylinders.ts';
+import { useSession } from '../../api/session.ts';
 import { useFlagSentence } from '../../lib/flag-sentence.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -10,6 +11,7 @@ export function OpenFlags({ cylinderId }: { cylinderId: string }) {
   const t = useMessages();
   const format = useFormat();
   const sayFlag = useFlagSentence();
+  const zone = useSession()?.firm.timeZone;
   const flags = useQuery(cylinderQueries.openFlags(cylinderId));
   if (!flags.data || flags.data.length === 0) return null;
   return (
@@ -27,7 +29,7 @@ export function OpenFlags({ cylinderId }: { cylinderId: string }) {
               <span className="leading-snug underline decoration-edge decoration-1 underline-offset-[3px]">
                 {sayFlag(flag)}
               </span>
-              <span className="type-label text-ink-soft">{format.dateTime(flag.openedAt)}</span>
+              <span className="type-label text-ink-soft">{format.dateTime(flag.openedAt, zone)}</span>
             </Link>
           </li>
         ))}

@@ -1,5 +1,6 @@
 import { Link } from 'react-router-dom';
 import type { FlagRow } from '../../../shared/entries/entry.schema.ts';
+import { useSession } from '../../api/session.ts';
 import { useFlagSentence } from '../../lib/flag-sentence.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -13,6 +14,7 @@ export function Contradictions({ flags }: { flags: readonly FlagRow[] }) {
   const t = useMessages();
   const format = useFormat();
   const sayFlag = useFlagSentence();
+  const zone = useSession()?.firm.timeZone;
   const shown = [...flags].sort((a, b) => ORDER[a.level] - ORDER[b.level]);
   return (
     <Section title={t('today.contradicts')} count={flags.length > 0 ? format.number(flags.length) : undefined}>
@@ -32,7 +34,7 @@ export function Contradictions({ flags }: { flags: readonly FlagRow[] }) {
                 ) : null}
                 <span className="underline decoration-edge decoration-1 underline-offset-[3px]">{sayFlag(flag)}</span>
               </span>
-              <span className="type-label text-right text-ink-soft">{format.dateTime(flag.openedAt)}</span>
+              <span className="type-label text-right text-ink-soft">{format.dateTime(flag.openedAt, zone)}</span>
             </Link>
           </li>
         ))}

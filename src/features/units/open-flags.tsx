@@ -1,5 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { Link } from 'react-router-dom';
+import { useSession } from '../../api/session.ts';
 import { unitQueries } from '../../api/units.ts';
 import { useFlagSentence } from '../../lib/flag-sentence.ts';
 import { useFormat } from '../../lib/format.ts';
@@ -11,6 +12,7 @@ export function OpenFlags({ unitId }: { unitId: string }) {
   const t = useMessages();
   const format = useFormat();
   const sayFlag = useFlagSentence();
+  const zone = useSession()?.firm.timeZone;
   const flags = useQuery(unitQueries.openFlags(unitId));
   if (!flags.data || flags.data.length === 0) return null;
   return (
@@ -25,7 +27,7 @@ export function OpenFlags({ unitId }: { unitId: string }) {
               <span className="leading-snug underline decoration-edge decoration-1 underline-offset-[3px]">
                 {sayFlag(flag)}
               </span>
-              <span className="type-label text-ink-soft">{format.dateTime(flag.openedAt)}</span>
+              <span className="type-label text-ink-soft">{format.dateTime(flag.openedAt, zone)}</span>
             </Link>
           </li>
         ))}

@@ -5,7 +5,7 @@ import type { JobBook } from '../../../../shared/books/books.schema.ts';
 import { type BooksPeriod, bookQueries } from '../../../api/books.ts';
 import { exportPath } from '../../../api/exports.ts';
 import { rowsOf } from '../../../api/page.ts';
-import { usePermission } from '../../../api/session.ts';
+import { usePermission, useSession } from '../../../api/session.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import type { LedgerColumn } from '../../../ui/ledger-table.tsx';
@@ -18,6 +18,7 @@ export function JobTable({ period }: { period: BooksPeriod }) {
   const format = useFormat();
   const query = useInfiniteQuery(bookQueries.jobs(period));
   const takesOut = usePermission('exports:make');
+  const zone = useSession()?.firm.timeZone;
   const currency = query.data?.pages[0]?.currency;
   const columns = useMemo((): LedgerColumn<JobBook>[] => {
     const { massUnit: unit, massFigure, locale } = format;
@@ -45,7 +46,7 @@ export function JobTable({ period }: { period: BooksPeriod }) {
         figure: true,
         cell: (row) => (row.cost === null || !currency ? '' : money(locale, row.cost, currency)),
       },
-      { id: 'opened', head: t('books.col.opened'), cell: (row) => format.dateTime(row.openedAt), quiet: true },
+      { id: 'opened', head: t('books.col.opened'), cell: (row) => format.dateTime(row.openedAt, zone), quiet: true },
       ...(takesOut
         ? [
             {
@@ -62,7 +63,7 @@ export function JobTable({ period }: { period: BooksPeriod }) {
           ]
         : []),
     ];
-  }, [t, format, currency, takesOut]);
+  }, [t, format, currency, takesOut, zone]);
   return (
     <BookTable
       name="jobs"

@@ -3,7 +3,7 @@ import { useMemo, useState } from 'react';
 import type { PurchaseRow } from '../../../../shared/books/books.schema.ts';
 import { type BooksPeriod, bookQueries } from '../../../api/books.ts';
 import { rowsOf } from '../../../api/page.ts';
-import { usePermission } from '../../../api/session.ts';
+import { usePermission, useSession } from '../../../api/session.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { Button } from '../../../ui/button.tsx';
@@ -17,13 +17,14 @@ export function PurchaseTable({ period }: { period: BooksPeriod }) {
   const t = useMessages();
   const format = useFormat();
   const settles = usePermission('books:settle');
+  const zone = useSession()?.firm.timeZone;
   const query = useInfiniteQuery(bookQueries.purchases(period));
   const currency = query.data?.pages[0]?.currency;
   const [priced, setPriced] = useState<PurchaseRow | null>(null);
   const columns = useMemo((): LedgerColumn<PurchaseRow>[] => {
     const { massUnit: unit, massFigure, locale } = format;
     return [
-      { id: 'when', head: t('books.col.bought'), cell: (row) => format.dateTime(row.occurredAt) },
+      { id: 'when', head: t('books.col.bought'), cell: (row) => format.dateTime(row.occurredAt, zone) },
       { id: 'supplier', head: t('books.col.supplier'), cell: (row) => row.supplierName },
       { id: 'refrigerant', head: t('books.col.refrigerant'), cell: (row) => row.refrigerant },
       { id: 'mass', head: t('books.col.mass'), unit, figure: true, cell: (row) => massFigure(row.massG) },
@@ -62,7 +63,7 @@ export function PurchaseTable({ period }: { period: BooksPeriod }) {
           ]
         : []),
     ];
-  }, [t, format, currency, settles]);
+  }, [t, format, currency, settles, zone]);
   return (
     <>
       <BookTable
