@@ -23,7 +23,7 @@ export function Disclosure({
     >
       <summary className="relative flex min-h-14 items-center justify-between gap-4 pr-6 hover:bg-well">
         <span className="font-[600]">{title}</span>
-        {summary ? <span className="type-label min-w-0 truncate text-right text-ink-soft">{summary}</span> : null}
+        {summary ? <span className="type-label line-clamp-2 min-w-0 text-right text-ink-soft">{summary}</span> : null}
         <span className="transition-transform group-open:rotate-180 [&>svg]:static [&>svg]:translate-y-0 absolute right-1">
           <Chevron className="" />
         </span>

@@ -11,6 +11,7 @@ import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { FilterSelect } from '../../ui/filter-bar.tsx';
 import { Failed, RowsSkeleton } from '../../ui/notice.tsx';
 import { Page } from '../../ui/page.tsx';
+import { asTitle } from './book-words.ts';
 import { readPeriod, usualMonth, usualYear } from './books-period.ts';
 import { EmissionChart } from './emissions/emission-chart.tsx';
 import { EmissionTable } from './emissions/emission-table.tsx';
@@ -46,7 +47,7 @@ export function Component() {
 
 function Emissions({ periods, usual }: { periods: PeriodsResponse; usual: string }) {
   const t = useMessages();
-  const { locale } = useFormat();
+  const format = useFormat();
   const [search, setSearch] = useSearchParams();
   const { from, to } = readPeriod(search, usualYear(periods, usual));
   const by = EMISSIONS_BY.find((name) => name === search.get('by')) ?? 'refrigerant';
@@ -69,7 +70,8 @@ function Emissions({ periods, usual }: { periods: PeriodsResponse; usual: string
     );
   return (
     <Page
-      title={t('books.emissions.of', { period: periodWords(locale, { from, to }) })}
+      title={t('books.emissions')}
+      lead={asTitle(periodWords(format.locale, { from, to }))}
       actions={
         <Link to={`/books?from=${from}&to=${to}`} className="inline-flex min-h-12 items-center">
           {t('books.close.toBooks')}

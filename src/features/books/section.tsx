@@ -23,7 +23,11 @@ export function Section({
           {title}
         </h2>
         {csv ? (
-          <a href={csv} download className="type-label inline-flex min-h-12 items-end pb-1.5 desk:min-h-9">
+          <a
+            href={csv}
+            download
+            className="type-label inline-flex min-h-12 items-end pb-1.5 whitespace-nowrap desk:min-h-9"
+          >
             {t('books.csv')}
           </a>
         ) : null}

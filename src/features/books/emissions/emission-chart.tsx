@@ -4,7 +4,7 @@ import { MASS_FACTORS } from '../../../../shared/units/factors.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
-import { bookMass, longMonth } from '../book-words.ts';
+import { asTitle, bookMass, longMonth } from '../book-words.ts';
 import { type LaidBar, layOutBars, lossesByMonth, type MonthLoss } from './month-bars.ts';
 
 const HEIGHT = 190;
@@ -41,7 +41,7 @@ export function EmissionChart({ emissions, from, to }: { emissions: EmissionsRes
   const active = losses.find(({ month }) => month === (pointed ?? pinned)) ?? largest;
   const read = (loss: MonthLoss) =>
     t('books.emissions.month', {
-      month: longMonth(format.locale, loss.month),
+      month: asTitle(longMonth(format.locale, loss.month)),
       mass: bookMass(format, loss.totalG),
       co2e: loss.co2eT === null ? t('books.emissions.noFigure') : format.tonnes(loss.co2eT),
     });
