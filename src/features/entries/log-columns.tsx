@@ -55,10 +55,10 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            <span className="flex gap-1.5">
-              <Place t={t} place={row.from} /> <Arrow /> <Place t={t} place={row.to} />
+            <span className="block whitespace-normal">
+              {placeWords(t, row.from)} <Arrow /> {placeWords(t, row.to)}
             </span>
-            <span className="type-label block text-[0.875rem] text-ink-soft">
+            <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
               <When row={row} zone={zone} />, {row.refrigerant}
             </span>
           </>

@@ -40,11 +40,11 @@ export function CameIn({ rows }: { rows: readonly EntryRow[] }) {
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            <span className="block">
+            <span className={phone ? 'block whitespace-normal' : 'block'}>
               {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
             </span>
             {phone ? (
-              <span className="type-label block text-[0.875rem] text-ink-soft">
+              <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
                 {format.dateTime(row.occurredAt, row.timeZone)}, {reasonWords(t, row)}
               </span>
             ) : null}
