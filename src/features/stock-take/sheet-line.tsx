@@ -31,7 +31,7 @@ export function SheetLine({
   const { tag, refrigerant } = cylinder;
   const recorded = row?.result?.is === 'recorded';
   return (
-    <li className="grid gap-x-8 gap-y-1 border-b border-rule py-3 desk:grid-cols-[11rem_minmax(0,1fr)_minmax(0,1.2fr)] desk:items-start">
+    <li className="grid gap-x-8 gap-y-1 border-b border-rule py-3 desk:grid-cols-[11rem_minmax(0,1fr)] desk:items-start lg:grid-cols-[11rem_minmax(0,1fr)_minmax(0,1.2fr)]">
       <div className="flex items-baseline justify-between gap-4 desk:block">
         <Link
           to={`/cylinders/${cylinder.id}`}
@@ -60,7 +60,7 @@ export function SheetLine({
             disabled={recorded || row?.result?.is === 'unknown'}
             onChange={(gross) => onChange({ gross })}
           />
-          <div className="min-h-6 desk:pt-2" aria-live="polite">
+          <div className="min-h-6 desk:col-start-2 lg:col-start-3 lg:pt-2" aria-live="polite">
             {recorded ? (
               <Recorded result={row.result} />
             ) : reading.is === 'read' ? (

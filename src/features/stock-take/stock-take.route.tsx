@@ -139,7 +139,7 @@ function Sheet({
       }
     >
       <div className="page-gutter flex flex-col gap-4 pt-3">
-        <div className="grid gap-x-10 desk:max-w-4xl desk:grid-cols-2">
+        <div className="grid gap-x-10 desk:max-w-4xl lg:grid-cols-2">
           <HolderField holder={holder} disabled={busy} onHolder={onHolder} />
           <SelectField
             layout="row"
