@@ -74,7 +74,8 @@ function CylinderOnVan({ cylinder }: { cylinder: Cylinder }) {
         {words.length > 0 ? <span className="block text-[0.9375rem] font-[600]">{words.join(' ')}</span> : null}
         <Beam
           spec={cylinderBeam({ tare, contents, fillLimit: limit }, beamUnit)}
-          summary={`${[tare, contents, ...(limit ? [limit] : [])].map((part) => part.label).join(', ')}.`}
+          summary={limit?.label ?? ''}
+          inControl
         />
       </Link>
     </li>

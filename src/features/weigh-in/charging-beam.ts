@@ -4,10 +4,9 @@ import { type BeamUnit, weighInBeam } from '../../ui/beam/presets.ts';
 import type { Stop } from './leg-figures.ts';
 import type { ReadingUnit } from './scale-reading.ts';
 
-/** The ticks count what the scale counts; pounds and ounces are read in ounces. */
+/** The ticks count what the scale counts, pounds and ounces as it shows them. */
 export function beamUnitOf(unit: ReadingUnit): BeamUnit {
-  const name = unit === 'lbOz' ? 'oz' : unit;
-  return { gramsPer: MASS_FACTORS[name].perUnit.valueOf(), unit: name };
+  return { gramsPer: MASS_FACTORS[unit === 'lbOz' ? 'oz' : unit].perUnit.valueOf(), unit };
 }
 
 interface Charging {

@@ -5,7 +5,7 @@
 export interface BeamSpec {
   /** The ends of the scale. From a larger to a smaller figure where progress means less (a cylinder on the scale). */
   domain: readonly [from: number, to: number];
-  /** Unit of the ticks, shown once, at the last. */
+  /** Unit of the ticks, shown once, at the last. `lbOz`: they count ounces and read `21 lb 4 oz`. */
   unit: string;
   /** Lying on the beam. */
   segments: readonly BeamSegment[];

@@ -38,4 +38,43 @@ describe('The beam', () => {
     const { container } = render(<Beam spec={spec} summary="a" />);
     expect(container.querySelector('svg')?.getAttribute('class')).not.toContain('transition');
   });
+
+  it('inside a button says one short thing, or nothing, and never a list', () => {
+    const { rerender } = render(
+      <button type="button">
+        5012 <Beam spec={spec} summary="limit 9,620 g" inControl />
+      </button>,
+    );
+    expect(screen.getByRole('button')).toHaveAccessibleName('5012 limit 9,620 g');
+    rerender(
+      <button type="button">
+        5012 <Beam spec={spec} summary="" inControl />
+      </button>,
+    );
+    expect(screen.getByRole('button')).toHaveAccessibleName('5012');
+    expect(screen.queryByRole('term')).toBeNull();
+  });
+
+  it('that counts ounces is read in pounds and ounces, at ticks that are round in them', () => {
+    changePreferences({ ...preferencesFor('en-US'), mass: 'lbOz' });
+    // From 21 lb 8 oz down to 21 lb 2 oz and a little on: 344 to 337 oz.
+    const { container } = render(
+      <Beam
+        spec={{
+          domain: [344, 337],
+          unit: 'lbOz',
+          segments: [{ from: 344, to: 341, kind: 'move', label: '3 oz out' }],
+          marks: [{ at: 338, label: 'stop 21 lb 2 oz', kind: 'target' }],
+        }}
+        summary="charging"
+      />,
+    );
+    const plain = (text: string | null) => (text ?? '').replaceAll('\u00a0', ' ');
+    const texts = [...container.querySelectorAll('text')].map((text) => plain(text.textContent));
+    expect(texts).toEqual(expect.arrayContaining(['21 lb 8 oz', '21 lb 4 oz']));
+    expect(texts.filter((text) => /^[\d.,]+( oz)?$/.test(text))).toEqual([]);
+    const values = screen.getAllByRole('definition').map((value) => plain(value.textContent).trim());
+    expect(values).toEqual(['21 lb 8 oz - 21 lb 5 oz', '21 lb 2 oz']);
+    changePreferences(preferencesFor('en-GB'));
+  });
 });

@@ -1,8 +1,8 @@
 import { memo, useLayoutEffect, useMemo, useRef, useState } from 'react';
-import { formatNumber } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import type { BeamSegment, BeamSpec } from './beam-spec.ts';
+import { figureOf } from './figure-of.ts';
 import {
   BAR,
   type BeamLayout,
@@ -19,6 +19,8 @@ interface Props {
   /** The drawing in one sentence, with its figures. */
   summary: string;
   className?: string;
+  /** It stands inside a button or a link: their name takes no more than `summary`, and nothing at all if that is empty. */
+  inControl?: boolean;
 }
 
 /** Before the place has been measured, and where nothing can be (tests). */
@@ -28,19 +30,22 @@ const USUAL_WIDTH = 324;
  * The steelyard: a graduated beam, drawn to scale, on which every mass that matters is shown. The same figures stand
  * beside it as a list for those who do not see it. It moves only when a value changes.
  */
-export const Beam = memo(function Beam({ spec, summary, className = '' }: Props) {
+export const Beam = memo(function Beam({ spec, summary, className = '', inControl = false }: Props) {
   const t = useMessages();
   const { locale } = usePreferences();
   const { ref, width, moves } = useWidth();
   const layout = useMemo(
-    () => layOutBeam(spec, width, (value) => formatNumber(locale, value, 3)),
+    () => layOutBeam(spec, width, (value) => figureOf(value, spec.unit, locale)),
     [spec, width, locale],
   );
+  const said = (value: number) => figureOf(value, spec.unit, locale);
+  const unit = spec.unit === 'lbOz' ? '' : spec.unit;
   return (
     <figure className={className} ref={ref}>
       <svg
         role="img"
         aria-label={summary}
+        aria-hidden={summary === '' || undefined}
         width={layout.width}
         height={layout.height}
         viewBox={`0 0 ${layout.width} ${layout.height}`}
@@ -69,22 +74,21 @@ export const Beam = memo(function Beam({ spec, summary, className = '' }: Props)
         ) : null}
         <Texts layout={layout} />
       </svg>
-      <dl className="sr-only" aria-label={t('ui.beam.table')}>
-        {[...spec.segments, ...(spec.counter ?? []), ...(spec.marks ?? []), ...(spec.poise ? [spec.poise] : [])].map(
-          (part, index) => (
-            // biome-ignore lint/suspicious/noArrayIndexKey: labels may repeat, their order does not
-            <div key={index}>
-              <dt>{part.label}</dt>
-              <dd>
-                {'at' in part
-                  ? formatNumber(locale, part.at, 3)
-                  : `${formatNumber(locale, part.from, 3)} - ${formatNumber(locale, part.to, 3)}`}{' '}
-                {spec.unit}
-              </dd>
-            </div>
-          ),
-        )}
-      </dl>
+      {inControl ? null : (
+        <dl className="sr-only" aria-label={t('ui.beam.table')}>
+          {[...spec.segments, ...(spec.counter ?? []), ...(spec.marks ?? []), ...(spec.poise ? [spec.poise] : [])].map(
+            (part, index) => (
+              // biome-ignore lint/suspicious/noArrayIndexKey: labels may repeat, their order does not
+              <div key={index}>
+                <dt>{part.label}</dt>
+                <dd>
+                  {'at' in part ? said(part.at) : `${said(part.from)} - ${said(part.to)}`} {unit}
+                </dd>
+              </div>
+            ),
+          )}
+        </dl>
+      )}
     </figure>
   );
 });

@@ -152,16 +152,50 @@ function placeNames(segments: readonly LaidSegment[], width: number): PlacedName
 /** A figure's place in px. Linear only; d3-scale would bring 7 kB of colours and dates along for it. */
 type Scale = (value: number) => number;
 
+/** Round figures of pounds and ounces, in ounces, each with the parts that it may be cut into, most first. */
+const OUNCE_STEPS: readonly (readonly [step: number, parts: readonly number[]])[] = [
+  [0.1, [10, 5, 2]],
+  [0.2, [4, 2]],
+  [0.5, [5]],
+  [1, [10, 5, 2]],
+  [2, [4, 2]],
+  [4, [8, 4, 2]],
+  [8, [8, 4, 2]],
+  [16, [16, 8, 4, 2]],
+  [32, [8, 4, 2]],
+  [80, [5]],
+  [160, [10, 5, 2]],
+  [320, [4, 2]],
+  [800, [5]],
+];
+
+/** Values of the major ticks, in the order of the scale, and the parts that their step may be cut into. */
+function majorsOf(
+  { domain: [from, to], unit }: BeamSpec,
+  count: number,
+): { values: number[]; wanted: readonly number[] } {
+  if (unit === 'lbOz') {
+    const span = Math.abs(to - from);
+    const [step, wanted] = OUNCE_STEPS.find(([each]) => span / each <= count + 0.5) ?? [1600, [10, 5, 2]];
+    const values: number[] = [];
+    const most = Math.max(from, to) + step * 1e-9;
+    for (let i = Math.ceil(Math.min(from, to) / step - 1e-9); i * step <= most; i++) values.push(i * step);
+    return { values: from > to ? values.reverse() : values, wanted };
+  }
+  const values = roundValues(from, to, count);
+  const step = values.length > 1 ? Math.abs((values[1] as number) - (values[0] as number)) : 0;
+  const lead = step > 0 ? Math.round(step / 10 ** Math.floor(Math.log10(step) + 1e-9)) : 1;
+  // A step of 1 is ten parts, of 2 four, of 5 five: each minor tick is a round figure too.
+  return { values, wanted: lead === 2 ? [4, 2] : lead === 5 ? [5] : [10, 5, 2] };
+}
+
 function ticksOf(spec: BeamSpec, scale: Scale, length: number) {
   const count = Math.max(2, Math.min(10, Math.round(length / 105)));
-  const values = roundValues(spec.domain[0], spec.domain[1], count);
+  const { values, wanted } = majorsOf(spec, count);
   const majors = values.map((value) => ({ value, x: scale(value) }));
   const ticks: Tick[] = majors.map(({ x }) => ({ x, size: 'major' }));
   const step = values.length > 1 ? Math.abs((values[1] as number) - (values[0] as number)) : 0;
   if (step > 0) {
-    const lead = Math.round(step / 10 ** Math.floor(Math.log10(step) + 1e-9));
-    // A step of 1 is ten parts, of 2 four, of 5 five: each minor tick is a round figure too.
-    const wanted = lead === 2 ? [4, 2] : lead === 5 ? [5] : [10, 5, 2];
     const perPx = Math.abs(scale(step) - scale(0));
     const parts = wanted.find((n) => perPx / n >= 4.5) ?? 1;
     const [from, to] = [Math.min(...spec.domain), Math.max(...spec.domain)];
@@ -182,7 +216,7 @@ function figuresOf(
   format: (value: number) => string,
 ): BeamLayout['figures'] {
   const figures = majors.map(({ value, x }, index) => {
-    const text = index === majors.length - 1 ? `${format(value)}\u00a0${unit}` : format(value);
+    const text = index === majors.length - 1 && unit !== 'lbOz' ? `${format(value)}\u00a0${unit}` : format(value);
     const half = textWidth(text, FONT) / 2;
     const start = Math.min(Math.max(x - half, 0), width - half * 2);
     return { x, text, start, end: start + half * 2 };

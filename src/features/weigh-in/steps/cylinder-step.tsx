@@ -129,11 +129,7 @@ function CylinderRow({ one, chosen, onChoose }: { one: JudgedCylinder; chosen: b
       chosen={chosen}
       onChoose={onChoose}
     >
-      <Beam
-        spec={spec}
-        summary={`${[tare, contents, ...(limit ? [limit] : [])].map((part) => part.label).join(', ')}.`}
-        className="w-full"
-      />
+      <Beam spec={spec} summary={limit?.label ?? ''} className="w-full" inControl />
     </ChoiceRow>
   );
 }
