@@ -67,16 +67,21 @@ export function Component() {
           <Link to="/cylinders/stock-take" className="inline-flex min-h-12 items-center">
             {t('stockTake.links')}
           </Link>
-          <Link to="/cylinders/scan" className="inline-flex min-h-12 items-center">
-            {t('stockTake.scanLink')}
-          </Link>
-          <Link to="/tools" className="inline-flex min-h-12 items-center">
-            {t('cylinders.toTools')}
-          </Link>
-          <Link to="/parties" className="inline-flex min-h-12 items-center">
-            {t('cylinders.toParties')}
-          </Link>
-          <TakeOutLink to={takeOut} />
+          {/* On a phone these are in "more", and the tag is scanned by the wide button. */}
+          {desk ? (
+            <>
+              <Link to="/cylinders/scan" className="inline-flex min-h-12 items-center">
+                {t('stockTake.scanLink')}
+              </Link>
+              <Link to="/tools" className="inline-flex min-h-12 items-center">
+                {t('cylinders.toTools')}
+              </Link>
+              <Link to="/parties" className="inline-flex min-h-12 items-center">
+                {t('cylinders.toParties')}
+              </Link>
+              <TakeOutLink to={takeOut} />
+            </>
+          ) : null}
           {mayWrite && desk ? (
             <ButtonLink kind="act" to="/cylinders/new">
               {t('cylinders.register')}
@@ -85,11 +90,18 @@ export function Component() {
         </>
       }
       next={
-        mayWrite && !desk ? (
-          <ButtonLink kind="act" wide to="/cylinders/new">
-            {t('cylinders.register')}
-          </ButtonLink>
-        ) : undefined
+        desk ? undefined : (
+          <div className="flex gap-3">
+            <ButtonLink kind="act" wide to="/cylinders/scan">
+              {t('stockTake.scanLink')}
+            </ButtonLink>
+            {mayWrite ? (
+              <ButtonLink wide to="/cylinders/new">
+                {t('cylinders.register')}
+              </ButtonLink>
+            ) : null}
+          </div>
+        )
       }
     >
       <div className="desk:pt-4">

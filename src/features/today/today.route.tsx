@@ -1,9 +1,10 @@
 import { useQuery } from '@tanstack/react-query';
-import { Link, type LoaderFunctionArgs } from 'react-router-dom';
+import type { LoaderFunctionArgs } from 'react-router-dom';
 import { requireSession, usePermission, useSession } from '../../api/session.ts';
 import { todayQueries } from '../../api/today.ts';
 import { useFormat } from '../../lib/format.ts';
 import { deviceNow, toDayInput } from '../../lib/local-time.ts';
+import { useMedia } from '../../lib/media.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { ButtonLink } from '../../ui/button.tsx';
 import { Failed, RowsSkeleton } from '../../ui/notice.tsx';
@@ -29,6 +30,7 @@ export function Component() {
   const today = useQuery(todayQueries.today());
   const isOffice = usePermission('registers:correct');
   const mayPost = usePermission('entries:post');
+  const desk = useMedia('(width >= 48rem)');
   const { data } = today;
   const drives = !isOffice || (data !== undefined && data.onTheVan.length > 0);
   // The age of what waits is taken when the answer came: it is as fresh as the list.
@@ -39,18 +41,21 @@ export function Component() {
       title={t('today.title')}
       status={<span>{at > 0 ? format.day(toDayInput(new Date(at))) : ''}</span>}
       {...(session ? { lead: t(isOffice ? 'today.leadOffice' : 'today.lead', { firm: session.firm.name }) } : {})}
-      actions={
-        mayPost ? (
-          <Link to="/record" className="inline-flex min-h-12 items-center">
-            {t('recordLinks.record')}
-          </Link>
-        ) : undefined
-      }
+      actions={mayPost && desk ? <ButtonLink to="/record">{t('recordLinks.record')}</ButtonLink> : undefined}
       next={
-        mayPost && !isOffice ? (
-          <ButtonLink kind="act" wide to="/units?then=charge">
-            {t('today.chargeUnit')}
-          </ButtonLink>
+        mayPost && (!isOffice || !desk) ? (
+          <div className="flex gap-3">
+            {isOffice ? null : (
+              <ButtonLink kind="act" wide to="/units?then=charge">
+                {t('today.chargeUnit')}
+              </ButtonLink>
+            )}
+            {desk ? null : (
+              <ButtonLink wide to="/record">
+                {t('recordLinks.record')}
+              </ButtonLink>
+            )}
+          </div>
         ) : undefined
       }
     >
