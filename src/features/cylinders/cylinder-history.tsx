@@ -9,19 +9,26 @@ import { rowsOf } from '../../api/page.ts';
 import { useSession } from '../../api/session.ts';
 import { entryMarks, placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { type Formats, useFormat } from '../../lib/format.ts';
+import { useMedia } from '../../lib/media.ts';
 import { type Translate, useMessages } from '../../lib/messages.ts';
+import { ButtonLink } from '../../ui/button.tsx';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Failed } from '../../ui/notice.tsx';
 
-const PAGE = 25;
+/** The newest; the log has them all. */
+const SHOWN = 20;
 
 /** What went in and what went out, newest first by the time it happened. */
 export function CylinderEntries({ cylinder }: { cylinder: Cylinder }) {
   const t = useMessages();
   const format = useFormat();
-  const list = useInfiniteQuery(entryQueries.list({ cylinderId: cylinder.id, sort: '-occurredAt' }, PAGE));
+  const list = useInfiniteQuery(entryQueries.list({ cylinderId: cylinder.id, sort: '-occurredAt' }, SHOWN));
+  const phone = !useMedia('(width >= 48rem)');
   const rows = useMemo(() => rowsOf(list.data), [list.data]);
-  const columns = useMemo(() => entryColumns(t, format, cylinder.id, rows), [t, format, cylinder.id, rows]);
+  const columns = useMemo(
+    () => (phone ? shortEntryColumns : entryColumns)(t, format, cylinder.id, rows),
+    [phone, t, format, cylinder.id, rows],
+  );
   return (
     <section aria-labelledby="cylinder-entries">
       <div className="flex items-baseline justify-between gap-4">
@@ -45,19 +52,54 @@ export function CylinderEntries({ cylinder }: { cylinder: Cylinder }) {
           to={(row) => `/log/${row.groupId}?cylinderId=${cylinder.id}&entry=${row.sequence}`}
           struck={(row) => row.reversedByGroupId !== null}
           loading={list.isPending}
-          more={{ has: list.hasNextPage, loading: list.isFetchingNextPage, load: () => void list.fetchNextPage() }}
+          {...(phone ? { loadingRow: 'h-16' } : {})}
         />
       )}
+      {list.hasNextPage ? (
+        <p className="pt-3">
+          <ButtonLink to={`/log?cylinderId=${cylinder.id}`} className="not-desk:w-full">
+            {t('cylinders.allInTheLog')}
+          </ButtonLink>
+        </p>
+      ) : null}
     </section>
   );
 }
 
-function entryColumns(
-  t: Translate,
-  format: Formats,
-  cylinderId: string,
-  rows: readonly EntryRow[],
-): LedgerColumn<EntryRow>[] {
+type Columns = LedgerColumn<EntryRow>[];
+
+/** On a phone: what, and under it when, why and who, so that nothing has to be scrolled for. */
+function shortEntryColumns(t: Translate, format: Formats, cylinderId: string, rows: readonly EntryRow[]): Columns {
+  const [number, when, mass, other, why, who] = entryColumns(t, format, cylinderId, rows);
+  if (!number || !when || !mass || !other || !why || !who) return [];
+  return [
+    number,
+    mass,
+    {
+      ...other,
+      keep: true,
+      cell: (row) => (
+        <>
+          <span
+            className={`block whitespace-normal ${row.reversedByGroupId === null ? '' : 'line-through decoration-1'}`}
+          >
+            {otherPlace(t, row, cylinderId)}
+          </span>
+          <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
+            {when.cell(row)}, {why.cell(row)}, {who.cell(row)}
+          </span>
+        </>
+      ),
+    },
+  ];
+}
+
+const otherPlace = (t: Translate, row: EntryRow, cylinderId: string) =>
+  row.to.id === cylinderId
+    ? t('cylinders.in', { place: placeWords(t, row.from) })
+    : t('cylinders.out', { place: placeWords(t, row.to) });
+
+function entryColumns(t: Translate, format: Formats, cylinderId: string, rows: readonly EntryRow[]): Columns {
   return [
     { id: 'number', head: t('log.number'), quiet: true, cell: (row) => format.number(row.sequence) },
     { id: 'when', head: t('log.when'), cell: (row) => format.dateTime(row.occurredAt, row.timeZone) },
@@ -76,13 +118,7 @@ function entryColumns(
     {
       id: 'other',
       head: t('cylinders.fromOrTo'),
-      cell: (row) => (
-        <span className="block max-w-64 truncate">
-          {row.to.id === cylinderId
-            ? t('cylinders.in', { place: placeWords(t, row.from) })
-            : t('cylinders.out', { place: placeWords(t, row.to) })}
-        </span>
-      ),
+      cell: (row) => <span className="block max-w-64 truncate">{otherPlace(t, row, cylinderId)}</span>,
     },
     {
       id: 'why',
@@ -117,7 +153,11 @@ export function CylinderReadings({ cylinder }: { cylinder: Cylinder }) {
   const format = useFormat();
   const readings = useQuery(cylinderQueries.readings(cylinder.id));
   const zone = useSession()?.firm.timeZone;
-  const columns = useMemo(() => readingColumns(t, format, zone), [t, format, zone]);
+  const phone = !useMedia('(width >= 48rem)');
+  const columns = useMemo(() => {
+    const all = readingColumns(t, format, zone);
+    return phone ? shortReadingColumns(all) : all;
+  }, [phone, t, format, zone]);
   if (readings.isSuccess && readings.data.length === 0) return null;
   return (
     <section aria-labelledby="cylinder-readings">
@@ -130,7 +170,7 @@ export function CylinderReadings({ cylinder }: { cylinder: Cylinder }) {
         <LedgerTable
           caption={t('cylinders.readings')}
           columns={columns}
-          rows={readings.data ?? []}
+          rows={readings.data?.slice(0, SHOWN) ?? []}
           rowId={({ id }) => id}
           to={(row) => `/log/${row.groupId}?cylinderId=${cylinder.id}`}
           struck={({ reversed }) => reversed}
@@ -139,6 +179,26 @@ export function CylinderReadings({ cylinder }: { cylinder: Cylinder }) {
       )}
     </section>
   );
+}
+
+/** On a phone: when and with what, the figure, and under them the rest. */
+function shortReadingColumns([at, value, moment, tool, who]: LedgerColumn<ReadingRow>[]): LedgerColumn<ReadingRow>[] {
+  if (!at || !value || !moment || !tool || !who) return [];
+  return [
+    at,
+    value,
+    {
+      ...moment,
+      cell: (row) => (
+        <>
+          <span className="block whitespace-normal">{moment.cell(row)}</span>
+          <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
+            {tool.cell(row)}, {who.cell(row)}
+          </span>
+        </>
+      ),
+    },
+  ];
 }
 
 /** A reading belongs to a cylinder and not to a site: it is shown on the firm's clock. */
