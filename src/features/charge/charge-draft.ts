@@ -150,3 +150,21 @@ export function emptyDraft(units: FieldUnits, gwpSet: GwpSet): ChargeDraft {
     cylinderId: '',
   };
 }
+
+/** Nothing has been typed or chosen yet. */
+export function isUntouched(draft: ChargeDraft): boolean {
+  const { refrigerant, factoryCharge, prechargeLength, prechargeMass, rate, cylinderGross, roomArea, pipes } = draft;
+  const typed = [factoryCharge, prechargeLength, prechargeMass, rate, cylinderGross, roomArea];
+  const [first] = pipes;
+  return (
+    refrigerant === '' &&
+    draft.document === '' &&
+    draft.rateKind === 'flat' &&
+    draft.job === 'newInstall' &&
+    draft.previousPipes.length + draft.allowances.length + draft.roomTable.length === 0 &&
+    pipes.length === 1 &&
+    first?.length.text === '' &&
+    first.liquidOd === '' &&
+    typed.every(({ text }) => text === '')
+  );
+}

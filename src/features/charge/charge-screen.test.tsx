@@ -1,5 +1,5 @@
 import { QueryClientProvider } from '@tanstack/react-query';
-import { cleanup, render, screen, waitFor, within } from '@testing-library/react';
+import { act, cleanup, render, screen, waitFor, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { createMemoryRouter, RouterProvider } from 'react-router-dom';
 import { afterEach, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
@@ -182,6 +182,18 @@ describe('The charge screen', () => {
     await person.click(screen.getByRole('button', { name: 'The same in m and g' }));
     expect(screen.getByText(line('12.5 m − 7.62 m = 4.88 m'))).toBeVisible();
     expect(screen.queryByText(line('41 ft'))).toBeNull();
+  });
+
+  it('takes on the units of whoever signs in while nothing is typed, and leaves what was begun alone', async () => {
+    const person = await openCharge();
+    const unit = () => screen.getByRole('combobox', { name: 'Unit for: factory charge' });
+    expect(unit()).toHaveDisplayValue('g');
+    act(() => changePreferences({ ...preferencesFor('en-US'), mass: 'lbOz' }));
+    await waitFor(() => expect(unit()).toHaveDisplayValue('lb'));
+    await person.type(field('factory charge'), '2');
+    act(() => changePreferences(preferencesFor('en-GB')));
+    expect(unit()).toHaveDisplayValue('lb');
+    expect(field('factory charge')).toHaveValue('2');
   });
 
   it('speaks Spanish with its decimals', async () => {

@@ -5,7 +5,7 @@ import { useDraft } from '../../lib/draft.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { Button } from '../../ui/button.tsx';
-import { type ChargeDraft, emptyDraft, fieldUnits } from './charge-draft.ts';
+import { type ChargeDraft, emptyDraft, fieldUnits, isUntouched } from './charge-draft.ts';
 import { ChargePage } from './charge-page.tsx';
 import { exampleDraft } from './example-draft.ts';
 import { usualGwpSet } from './usual-gwp-set.ts';
@@ -14,6 +14,9 @@ export async function loader() {
   await loadMessages('charge-screen', 'charge');
   return null;
 }
+
+/** Rows have keys of their own, made anew each time. */
+const told = (draft: ChargeDraft) => JSON.stringify(draft, (name, value) => (name === 'key' ? undefined : value));
 
 /** The calculator: it needs no sign-in and stores nothing. */
 export function Component() {
@@ -24,10 +27,14 @@ export function Component() {
   const units = useMemo(() => fieldUnits(preferences), [preferences]);
   const initial = useCallback(() => emptyDraft(units, gwpSet), [units, gwpSet]);
   const [draft, setDraft, clear] = useDraft<ChargeDraft>('charge', initial);
-  // A session that arrives after the empty form brings its firm's GWP values; what was begun keeps its own.
+  // A session that arrives after the empty form brings its person's units and its firm's GWP values; what was begun
+  // keeps its own.
   useEffect(() => {
-    setDraft((now) => (now.refrigerant === '' && now.gwpSet !== gwpSet ? { ...now, gwpSet } : now));
-  }, [gwpSet, setDraft]);
+    setDraft((now) => {
+      const fresh = emptyDraft(units, gwpSet);
+      return isUntouched(now) && told(now) !== told(fresh) ? fresh : now;
+    });
+  }, [units, gwpSet, setDraft]);
   return (
     <ChargePage
       title={t('chargeScreen.title')}
