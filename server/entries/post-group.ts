@@ -98,6 +98,11 @@ export async function judge(manager: EntityManager, posting: Posting, facts: Pos
   });
   const stored = new Map(timelines.groups.map((group) => [group.id, group]));
   if (posting.reversed) stored.set(posting.reversed.id, posting.reversed);
+  // A settlement touches no place that is judged: the group whose difference it settled was not read with one.
+  for (const { groupId } of undone) {
+    const corrected = stored.has(groupId) ? null : await findGroup(manager, groupId);
+    if (corrected) stored.set(groupId, corrected);
+  }
   return { judged: { ...judged, changes: [...judged.changes, ...undone] }, stored };
 }
 

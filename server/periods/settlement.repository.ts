@@ -20,15 +20,16 @@ interface Row {
   settledToId: string | null;
   settledToAs: AtmosphereKind | null;
   refrigerant: string;
-  left: string;
+  mass: string;
 }
 
-/** What was settled and not undone or reversed since, in the order in which it was settled. */
-const STANDING = `select s.id, s.judged_group_id as "judgedGroupId", s.judged_place as "judgedPlace",
+const FIELDS = `s.id, s.judged_group_id as "judgedGroupId", s.judged_place as "judgedPlace",
     s.judged_place_id as "judgedPlaceId", s.difference, s.settled_to as "settledTo", s.settled_to_id as "settledToId",
-    s.settled_to_as as "settledToAs", s.refrigerant,
-    (s.mass_micrograms - coalesce((select sum(u.mass_micrograms) from settlement_undo u
-      where u.firm_id = s.firm_id and u.settlement_id = s.id), 0))::text as left
+    s.settled_to_as as "settledToAs", s.refrigerant`;
+
+/** What was settled and not undone or reversed since, in the order in which it was settled. */
+const STANDING = `select ${FIELDS}, (s.mass_micrograms - coalesce((select sum(u.mass_micrograms) from settlement_undo u
+      where u.firm_id = s.firm_id and u.settlement_id = s.id), 0))::text as mass
   from settlement s
   join entry e on e.firm_id = s.firm_id and e.id = s.entry_id
   where not exists (select from entry_group r where r.firm_id = e.firm_id and r.reverses_group_id = e.group_id)`;
@@ -41,12 +42,28 @@ export function settlementRepository(manager: EntityManager) {
     async massOf(id: string): Promise<bigint> {
       return (await manager.getRepository(SettlementEntity).findOneByOrFail({ id })).massMicrograms;
     },
-    /** Of differences that were judged in these cylinders and units, or in a reclaimer for this group. */
-    async standingIn(placeIds: readonly string[], certificateGroupId: string | null): Promise<StandingSettlement[]> {
+    /**
+     * Of differences that were judged in these cylinders and units, or in a reclaimer for the group that is being
+     * reversed. Not those that the reversed group made itself: they go back whole with it.
+     */
+    async standingIn(placeIds: readonly string[], reversedGroupId: string | null): Promise<StandingSettlement[]> {
       const rows = await manager.query<Row[]>(
-        `${STANDING} and ((s.judged_place <> 'reclaimer' and s.judged_place_id = any ($1::uuid[]))
-          or (s.judged_place = 'reclaimer' and s.judged_group_id = $2)) order by e.sequence`,
-        [placeIds, certificateGroupId],
+        `${STANDING} and e.group_id is distinct from $2
+          and ((s.judged_place <> 'reclaimer' and s.judged_place_id = any ($1::uuid[]))
+            or (s.judged_place = 'reclaimer' and s.judged_group_id = $2)) order by e.sequence`,
+        [placeIds, reversedGroupId],
+      );
+      return rows.map(settlementOf).filter(({ massMicrograms }) => massMicrograms !== 0n);
+    },
+    /** Settlements that a group made, each with the mass of it that was taken back before. */
+    async undoneOf(groupId: string): Promise<StandingSettlement[]> {
+      const rows = await manager.query<Row[]>(
+        `select ${FIELDS}, coalesce((select sum(u.mass_micrograms) from settlement_undo u
+              where u.firm_id = s.firm_id and u.settlement_id = s.id), 0)::text as mass
+          from settlement s
+          join entry e on e.firm_id = s.firm_id and e.id = s.entry_id
+          where e.group_id = $1 order by e.sequence`,
+        [groupId],
       );
       return rows.map(settlementOf).filter(({ massMicrograms }) => massMicrograms !== 0n);
     },
@@ -69,6 +86,6 @@ function settlementOf(row: Row): StandingSettlement {
     difference: toPlace({ place: row.difference }),
     settledTo: toPlace({ place: row.settledTo, id: row.settledToId, as: row.settledToAs }),
     refrigerant: row.refrigerant,
-    massMicrograms: BigInt(row.left),
+    massMicrograms: BigInt(row.mass),
   };
 }
