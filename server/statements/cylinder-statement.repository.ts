@@ -1,8 +1,8 @@
 import type { EntityManager } from 'typeorm';
+import type { StepReading } from '../../shared/ledger/cylinder-issues.ts';
 import type { GroupKind } from '../../shared/ledger/entry-group.schema.ts';
 import type { AtmosphereKind, PlaceKind } from '../../shared/ledger/place.ts';
 import type { Scale } from '../../shared/ledger/scale.ts';
-import type { StepReading } from '../../shared/statements/walk-cylinder.ts';
 
 export interface StatementEntryRow {
   id: string;

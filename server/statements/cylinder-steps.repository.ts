@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
+import type { StepReading } from '../../shared/ledger/cylinder-issues.ts';
 import type { Scale } from '../../shared/ledger/scale.ts';
-import type { CylinderStep, StepReading } from '../../shared/statements/walk-cylinder.ts';
+import type { CylinderStep } from '../../shared/statements/walk-cylinder.ts';
 
 /** How many groups before the period are looked through for what its book rests on. */
 const LOOK_BACK = 40;

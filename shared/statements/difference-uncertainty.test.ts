@@ -1,9 +1,10 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import type { Issue, ScaleReading } from '../ledger/book-basis.ts';
 import type { Scale } from '../ledger/scale.ts';
 import { requireValue } from '../reference/reference-data.fixture.ts';
 import { reconcile, verdictOf } from '../scale/reconcile.ts';
-import { differenceUncertainty, type Issue, type ScaleReading } from './difference-uncertainty.ts';
+import { differenceUncertainty } from './difference-uncertainty.ts';
 
 const FIVE: Scale = { resolutionG: 5, repeatabilityG: 0, spanErrorRelative: 0, offsetG: 0 };
 let keys = 0;

@@ -1,17 +1,11 @@
+import type { DifferenceUncertainty } from '../ledger/book-basis.ts';
+import { scaleReading } from '../ledger/cylinder-issues.ts';
 import { verdictOf } from '../scale/reconcile.ts';
-import {
-  type DifferenceUncertainty,
-  differenceUncertainty,
-  type Issue,
-  type ScaleReading,
-} from './difference-uncertainty.ts';
+import { differenceUncertainty } from './difference-uncertainty.ts';
 import {
   type CylinderStep,
-  issuesOf,
+  type CylinderWalk,
   type ReadingCheck,
-  type StepReading,
-  scaleReading,
-  standsBeforeMasses,
   type Verdict,
   walkCylinder,
 } from './walk-cylinder.ts';
@@ -37,9 +31,9 @@ export interface StatementFigures {
 
 /**
  * The readings of a period against the book, one by one and all together: D = (start - end) - sum of what was issued,
- * from the last reading before the period to the last one in it.
+ * from the reading that the opening book rests on to the last one in the period.
  *
- * @param steps groups that stand, in order, from shortly before the period to its end
+ * @param steps groups that stand, in order, from the reading that the opening book rests on to the end of the period
  * @param openingMicrograms the book at the start of the period, whatever came before
  * @param from milliseconds since 1970, UTC
  */
@@ -50,10 +44,10 @@ export function statementFigures(
 ): StatementFigures {
   const earlier = steps.filter(({ occurredAt }) => occurredAt < from);
   const before = earlier.reduce((book, step) => book - movedIn(step) - step.postedMicrograms, openingMicrograms);
-  const { checks: all } = walkCylinder(steps, before);
+  const walk = walkCylinder(steps, before);
   const inPeriod = new Set(steps.filter(({ occurredAt }) => occurredAt >= from).map(({ groupId }) => groupId));
-  const checks = all.filter(({ groupId }) => inPeriod.has(groupId));
-  return { checks, difference: periodDifference(steps, all, checks) };
+  const checks = walk.checks.filter(({ groupId }) => inPeriod.has(groupId));
+  return { checks, difference: periodDifference(steps, walk, checks) };
 }
 
 const movedIn = ({ masses }: CylinderStep): bigint =>
@@ -61,7 +55,7 @@ const movedIn = ({ masses }: CylinderStep): bigint =>
 
 function periodDifference(
   steps: readonly CylinderStep[],
-  all: readonly ReadingCheck[],
+  { issues }: CylinderWalk,
   checks: readonly ReadingCheck[],
 ): PeriodDifference | null {
   const last = checks.at(-1);
@@ -72,11 +66,17 @@ function periodDifference(
   const differenceMicrograms = counted
     .slice(0, -1)
     .reduce((sum, { postedMicrograms }) => sum + postedMicrograms, last.differenceMicrograms);
-  const first = counted[0] as ReadingCheck;
-  const start = all[all.indexOf(first) - 1] ?? null;
+  // What was posted within the period is counted in, so that the account begins where the first of it began: at the
+  // reading that the book rested on then. Without any, it is the difference of the last reading, word for word.
+  const { restsOn, issuesBefore } = counted.find(({ postedMicrograms }) => postedMicrograms !== 0n) ?? last;
+  const step = steps.find(({ groupId }) => groupId === last.groupId);
+  const end = step?.readings.find(({ id }) => id === last.readingId);
+  if (!end) throw new RangeError(`reading ${last.readingId} is in none of the steps`);
   const uncertainty = differenceUncertainty({
-    ...between(steps, start, last),
+    start: restsOn?.reading ?? null,
+    end: scaleReading(end),
     contentG: Number(last.contentMicrograms) / 1e6,
+    issues: issues.slice(issuesBefore.start, last.issuesBefore.end),
   });
   const sizeG = Math.abs(Number(differenceMicrograms)) / 1e6;
   return {
@@ -85,40 +85,6 @@ function periodDifference(
     differenceMicrograms,
     uncertainty,
     verdict: verdictOf(sizeG, uncertainty.standardG),
-    restsOnAt: start?.at ?? null,
+    restsOnAt: restsOn?.at ?? null,
   };
 }
-
-/** The two readings, and every mass between them with its own readings. */
-function between(
-  steps: readonly CylinderStep[],
-  start: ReadingCheck | null,
-  end: ReadingCheck,
-): { start: ScaleReading | null; end: ScaleReading; issues: Issue[] } {
-  const starts = new Map<string, ScaleReading>();
-  const issues: Issue[] = [];
-  let started = start === null;
-  for (const step of steps) {
-    const own = issuesOf(step, starts);
-    const opening = step.readings.find(({ mode, moment }) => mode === 'gross' && moment === 'before');
-    if (opening) starts.set(step.groupId, scaleReading(opening));
-    const startsHere = start?.groupId === step.groupId;
-    // The masses of the group that holds the start lie after it or before it; likewise those of the last group.
-    const isAfterStart = startsHere ? isBeforeMasses(step, start.readingId) : started;
-    const isBeforeEnd = end.groupId !== step.groupId || !isBeforeMasses(step, end.readingId);
-    if (isAfterStart && isBeforeEnd) issues.push(...own);
-    started ||= startsHere;
-    if (end.groupId === step.groupId) break;
-  }
-  const found = (id: string) => steps.flatMap(({ readings }) => readings).find((reading) => reading.id === id);
-  return {
-    start: start ? scaleReading(found(start.readingId) as StepReading) : null,
-    end: scaleReading(found(end.readingId) as StepReading),
-    issues,
-  };
-}
-
-const isBeforeMasses = (step: CylinderStep, readingId: string): boolean => {
-  const reading = step.readings.find(({ id }) => id === readingId);
-  return reading !== undefined && standsBeforeMasses(step, reading);
-};

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
+import type { StepReading } from '../ledger/cylinder-issues.ts';
 import { ASSUMED_SCALE, type Scale } from '../ledger/scale.ts';
-import { type CylinderStep, type StepReading, walkCylinder } from './walk-cylinder.ts';
+import { type CylinderStep, walkCylinder } from './walk-cylinder.ts';
 
 const g = (mass: number): bigint => BigInt(Math.round(mass * 1e6));
 const TARE_G = 7_700;
@@ -76,7 +77,7 @@ describe('The readings of a cylinder against its book', () => {
       verdict: 'notExplained',
       previousAt: 0,
     });
-    expect(checks[2]).toMatchObject({ differenceMicrograms: 0n, verdict: 'withinScales', restsOnAt: 10 });
+    expect(checks[2]).toMatchObject({ differenceMicrograms: 0n, verdict: 'withinScales', restsOn: { at: 10 } });
     expect(checks[2]?.uncertainty).toMatchObject({ independentReadings: 2, sharedReadings: 2 });
     expect(bookMicrograms).toBe(g(9_350));
   });
@@ -134,7 +135,7 @@ describe('The readings of a cylinder against its book', () => {
     expect(checks[0]).toMatchObject({
       differenceMicrograms: g(-140),
       verdict: 'notExplained',
-      restsOnAt: null,
+      restsOn: null,
       previousAt: null,
       uncertainty: { standardG: expect.closeTo(2.0412, 3), notWeighed: 1 },
     });

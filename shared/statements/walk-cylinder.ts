@@ -1,46 +1,24 @@
-import { ASSUMED_SCALE, grossVarianceG2, isBeyond, type Scale } from '../ledger/scale.ts';
-import { verdictOf } from '../scale/reconcile.ts';
 import {
+  type BookBasis,
+  basisOn,
   type DifferenceUncertainty,
-  differenceUncertainty,
   type Issue,
   type ScaleReading,
-} from './difference-uncertainty.ts';
+  setsBook,
+  uncertaintyOf,
+  withIssues,
+} from '../ledger/book-basis.ts';
+import { issuesOf, type StepReading, scaleReading, type WeighedGroup } from '../ledger/cylinder-issues.ts';
+import { ASSUMED_SCALE, grossVarianceG2, isBeyond } from '../ledger/scale.ts';
+import { verdictOf } from '../scale/reconcile.ts';
 
 export type Verdict = ReturnType<typeof verdictOf>;
 
-export interface StepReading {
-  readonly id: string;
-  /** Milliseconds since 1970, UTC. */
-  readonly at: number;
-  /** Null: nobody named the scale, and `ASSUMED_SCALE` stands for it. */
-  readonly toolId: string | null;
-  readonly scale: Scale | null;
-  readonly moment: 'before' | 'after' | 'only';
-  readonly mode: 'gross' | 'zeroed';
-  readonly grossMicrograms: bigint;
-  /** What the hose held, if it was full at this reading; else 0. */
-  readonly hoseMicrograms: bigint;
-}
-
-export interface StepMass {
-  /** Above zero: into the cylinder. */
-  readonly massMicrograms: bigint;
-  readonly weighed: boolean;
-  /** The scale of the cylinder at the other end, if that was weighed in the group. */
-  readonly otherScale: Scale | null;
-}
-
 /** One group as one cylinder sees it. */
-export interface CylinderStep {
-  readonly groupId: string;
-  /** The weigh-in that it closes: its start reading belongs to these masses. */
-  readonly closesGroupId: string | null;
+export interface CylinderStep extends WeighedGroup {
   readonly occurredAt: number;
   /** Tare of that day. */
   readonly tareMicrograms: bigint;
-  readonly readings: readonly StepReading[];
-  readonly masses: readonly StepMass[];
   /** What the judge has posted for this group, corrections included; above zero: into the cylinder. */
   readonly postedMicrograms: bigint;
   /** It was the first statement of what nothing explained: what was posted opens the book and is no difference. */
@@ -64,7 +42,16 @@ export interface ReadingCheck {
   /** The gross reading before it; null: none is known. The difference came about in between. */
   readonly previousAt: number | null;
   /** The reading that the book rested on; null: a paper. */
-  readonly restsOnAt: number | null;
+  readonly restsOn: { readonly reading: ScaleReading; readonly at: number } | null;
+  /** How many of the walk's issues came before that reading, and how many before this one. */
+  readonly issuesBefore: { readonly start: number; readonly end: number };
+}
+
+export interface CylinderWalk {
+  readonly checks: ReadingCheck[];
+  /** Every mass, in order, as it is known. */
+  readonly issues: readonly Issue[];
+  readonly bookMicrograms: bigint;
 }
 
 const gramsOf = (mass: bigint): number => Number(mass) / 1e6;
@@ -72,8 +59,9 @@ const sizeG = (mass: bigint): number => Math.abs(gramsOf(mass));
 
 /** What stands since the book was last set by a reading. */
 interface Standing {
-  start: { reading: ScaleReading; at: number } | null;
-  issues: Issue[];
+  readonly restsOn: ReadingCheck['restsOn'];
+  readonly basis: BookBasis;
+  readonly issuesBefore: number;
 }
 
 /**
@@ -83,14 +71,12 @@ interface Standing {
  * @param steps groups that stand (nothing reversed), in order
  * @param bookBeforeMicrograms the book before the first of them
  */
-export function walkCylinder(
-  steps: readonly CylinderStep[],
-  bookBeforeMicrograms: bigint,
-): { checks: ReadingCheck[]; bookMicrograms: bigint } {
+export function walkCylinder(steps: readonly CylinderStep[], bookBeforeMicrograms: bigint): CylinderWalk {
   const checks: ReadingCheck[] = [];
+  const issues: Issue[] = [];
   const starts = new Map<string, ScaleReading>();
   let book = bookBeforeMicrograms;
-  let standing: Standing = { start: null, issues: [] };
+  let standing: Standing = { restsOn: null, basis: basisOn(null), issuesBefore: 0 };
   let previousAt: number | null = null;
   for (const step of steps) {
     const gross = inOrder(step);
@@ -100,9 +86,8 @@ export function walkCylinder(
       const content = contentOf(step, reading);
       const end = scaleReading(reading);
       const difference = content - book;
-      const { start, issues } = standing;
-      const asked = { start: start?.reading ?? null, end, contentG: gramsOf(content), issues };
-      const uncertainty = differenceUncertainty(asked);
+      const { restsOn } = standing;
+      const uncertainty = uncertaintyOf(standing.basis, end, gramsOf(content));
       checks.push({
         readingId: reading.id,
         groupId: step.groupId,
@@ -114,10 +99,13 @@ export function walkCylinder(
         uncertainty,
         verdict: step.opens ? null : verdictOf(sizeG(difference), uncertainty.standardG),
         previousAt,
-        restsOnAt: start?.at ?? null,
+        restsOn,
+        issuesBefore: { start: standing.issuesBefore, end: issues.length },
       });
       book += postedMicrograms;
-      if (postedMicrograms !== 0n || !start) standing = { start: { reading: end, at: reading.at }, issues: [] };
+      if (setsBook(postedMicrograms, difference, restsOn === null)) {
+        standing = { restsOn: { reading: end, at: reading.at }, basis: basisOn(end), issuesBefore: issues.length };
+      }
       previousAt = reading.at;
     };
     for (const { reading } of earlier) {
@@ -126,8 +114,9 @@ export function walkCylinder(
       check(reading, posted);
     }
     for (const mass of step.masses) book += mass.massMicrograms;
-    const issues = issuesOf(step, starts);
-    standing = { ...standing, issues: [...standing.issues, ...issues] };
+    const own = issuesOf(step, starts);
+    issues.push(...own);
+    standing = { ...standing, basis: withIssues(standing.basis, own) };
     for (const { reading } of later) {
       check(reading, toPost);
       toPost = 0n;
@@ -137,7 +126,7 @@ export function walkCylinder(
     const before = gross.find(({ reading }) => reading.moment === 'before')?.reading;
     if (before) starts.set(step.groupId, scaleReading(before));
   }
-  return { checks, bookMicrograms: book };
+  return { checks, issues, bookMicrograms: book };
 }
 
 /** How much of what was posted for the group belongs to its first reading; the last one takes what is left. */
@@ -170,37 +159,4 @@ export function contentOf({ tareMicrograms }: Pick<CylinderStep, 'tareMicrograms
   const hose = reading.moment === 'after' ? 0n : reading.hoseMicrograms;
   const content = reading.grossMicrograms - tareMicrograms + hose;
   return content < 0n ? 0n : content;
-}
-
-export function scaleReading({ id, at, toolId, scale, grossMicrograms }: StepReading): ScaleReading {
-  return {
-    // One figure of one scale at one moment is one reading, also where two groups wrote it down.
-    key: toolId === null ? id : `${toolId} ${at} ${grossMicrograms}`,
-    scaleKey: toolId ?? 'not named',
-    scale: scale ?? ASSUMED_SCALE,
-    grossG: gramsOf(grossMicrograms),
-  };
-}
-
-/** How each mass of the group is known. */
-export function issuesOf(step: CylinderStep, starts: ReadonlyMap<string, ScaleReading>): Issue[] {
-  const gross = step.readings.filter(({ mode }) => mode === 'gross');
-  const own = gross.find(({ moment }) => moment === 'before');
-  const before = own ? scaleReading(own) : step.closesGroupId ? starts.get(step.closesGroupId) : undefined;
-  const after = gross.find(({ moment }) => moment === 'after');
-  const weighed = step.masses.filter((mass) => mass.weighed);
-  const notWeighed = step.masses.filter((mass) => !mass.weighed).map((): Issue => ({ weighed: 'no' }));
-  if (weighed.length === 0) return notWeighed;
-  if (before && after) return [{ weighed: 'here', before, after: scaleReading(after) }, ...notWeighed];
-  const zeroed = step.readings.find(({ mode }) => mode === 'zeroed')?.scale ?? gross[0]?.scale ?? null;
-  return [
-    ...weighed.map(
-      ({ otherScale, massMicrograms }): Issue => ({
-        weighed: 'elsewhere',
-        scale: zeroed ?? otherScale ?? ASSUMED_SCALE,
-        massG: sizeG(massMicrograms),
-      }),
-    ),
-    ...notWeighed,
-  ];
 }
