@@ -15,6 +15,8 @@ interface Recovered {
   mass: string;
   full: string | null;
   name: string | null;
+  /** Of a job that takes the unit out of service. */
+  disposed: boolean;
 }
 interface Shipped {
   at: Date;
@@ -32,6 +34,7 @@ const STANDING = `e.reverses_entry_id is null and not exists (select from entry_
 /**
  * What the contractor keeps of units that are taken out of service: 40 CFR 82.156(a)(3). Each unit with place, date and
  * type; each calendar month's quantity by type; each shipment's quantity by type, to whom, when. By the day at the site.
+ * That a unit is disposed of is said by the kind of its job; recoveries of no such job stand apart, so that none is missed.
  */
 export async function disposalReport(
   frame: DocumentFrame,
@@ -46,9 +49,9 @@ export async function disposalReport(
   const mass = { head: words.say('col.mass', { unit: words.massUnit }), width: 12, align: 'right' } as const;
   const figure = (micrograms: string | bigint) => words.massFigure(gramsOfMicrograms(BigInt(micrograms)));
 
-  paper.heading(words.say('disposal.units'));
-  if (recovered.length === 0) paper.paragraph(words.say('disposal.noUnits'));
-  else
+  const disposed = recovered.filter((row) => row.disposed);
+  const others = recovered.filter((row) => !row.disposed);
+  const list = (rows: readonly Recovered[]) =>
     paper.table(
       [
         { head: words.say('col.when'), width: 17 },
@@ -60,7 +63,7 @@ export async function disposalReport(
         { head: words.say('disposal.inScope'), width: 9 },
         { head: words.say('col.by'), width: 14 },
       ],
-      recovered.map((row) => ({
+      rows.map((row) => ({
         cells: [
           words.instant(row.at, row.timeZone),
           row.unit,
@@ -68,32 +71,29 @@ export async function disposalReport(
           row.refrigerant,
           row.full === null ? words.say('unit.notDetermined') : figure(row.full),
           figure(row.mass),
-          row.full === null ? '?' : words.say(isInScope(BigInt(row.full)) ? 'yes' : 'no'),
+          words.say(row.full === null ? 'disposal.ask' : isInScope(BigInt(row.full)) ? 'yes' : 'no'),
           row.name ?? '',
         ],
       })),
     );
+  paper.heading(words.say('disposal.units'));
+  if (disposed.length === 0) paper.paragraph(words.say('disposal.noUnits'));
+  else list(disposed);
 
   paper.heading(words.say('disposal.months'));
-  const months = new Map<string, bigint>();
-  for (const { month, refrigerant, mass: taken } of recovered) {
-    const key = `${month} ${refrigerant}`;
-    months.set(key, (months.get(key) ?? 0n) + BigInt(taken));
-  }
-  if (months.size === 0) paper.paragraph(words.say('disposal.noUnits'));
+  const months = sumsByMonth(recovered);
+  if (months.length === 0) paper.paragraph(words.say('disposal.nothing'));
   else
     paper.table(
       [
-        { head: words.say('col.month'), width: 30 },
-        { head: words.say('col.refrigerant'), width: 30 },
-        { ...mass, width: 20 },
+        { head: words.say('col.month'), width: 24 },
+        { head: words.say('col.refrigerant'), width: 20 },
+        { head: words.say('disposal.asked', { unit: words.massUnit }), width: 28, align: 'right' },
+        { head: words.say('disposal.rest', { unit: words.massUnit }), width: 28, align: 'right' },
       ],
-      [...months]
-        .sort(([a], [b]) => (a < b ? -1 : 1))
-        .map(([key, sum]) => {
-          const [month = '', refrigerant = ''] = key.split(' ');
-          return { cells: [words.month(month), refrigerant, figure(sum)] };
-        }),
+      months.map(({ month, refrigerant, asked, rest }) => ({
+        cells: [words.month(month), refrigerant, figure(asked), figure(rest)],
+      })),
     );
 
   paper.heading(words.say('disposal.shipments'));
@@ -119,6 +119,11 @@ export async function disposalReport(
         ],
       })),
     );
+  if (others.length > 0) {
+    paper.heading(words.say('disposal.others'));
+    paper.paragraph(words.say('disposal.othersLead'), { size: 8.5 });
+    list(others);
+  }
   paper.space(8);
   paper.paragraph(words.say('disposal.note'), { size: 8 });
   await paper.end();
@@ -128,21 +133,45 @@ export async function disposalReport(
 /** Above 5 and below 50 lb of full charge: 40 CFR 82.156(a)(3). */
 const isInScope = (full: bigint): boolean => full > 5n * MICROGRAMS_A_POUND && full < 50n * MICROGRAMS_A_POUND;
 
+/** The law asks for it, or may: where nobody determined the full charge, leaving it out could be wrong. */
+const isAsked = ({ disposed, full }: Recovered): boolean => disposed && (full === null || isInScope(BigInt(full)));
+
+interface MonthSum {
+  month: string;
+  refrigerant: string;
+  asked: bigint;
+  rest: bigint;
+}
+
+function sumsByMonth(recovered: readonly Recovered[]): MonthSum[] {
+  const sums = new Map<string, MonthSum>();
+  for (const row of recovered) {
+    const { month, refrigerant } = row;
+    const key = `${month} ${refrigerant}`;
+    const sum = sums.get(key) ?? { month, refrigerant, asked: 0n, rest: 0n };
+    sum[isAsked(row) ? 'asked' : 'rest'] += BigInt(row.mass);
+    sums.set(key, sum);
+  }
+  return [...sums].sort(([a], [b]) => (a < b ? -1 : 1)).map(([, sum]) => sum);
+}
+
 const readRecovered = ({ manager }: DocumentFrame, from: string, to: string): Promise<Recovered[]> =>
   manager.query<Recovered[]>(
     `select e.occurred_at as at, coalesce(s.time_zone, f.time_zone) as "timeZone",
         to_char(g.regulatory_day, 'YYYY-MM') as month, u.tag || ', ' || u.name as unit,
         concat_ws(', ', s.name, nullif(array_to_string(s.address_lines, ', '), '')) as place, e.refrigerant,
-        e.mass_micrograms::text as mass, fc.mass_micrograms::text as "full", p.name
+        e.mass_micrograms::text as mass, fc.mass_micrograms::text as "full", p.name,
+        coalesce(j.kind = 'decommission', false) as disposed
       from entry e
       join entry_group g on g.firm_id = e.firm_id and g.id = e.group_id
       join firm f on f.id = e.firm_id
       join unit u on u.firm_id = e.firm_id and u.id = e.from_id
+      left join job j on j.firm_id = g.firm_id and j.id = g.job_id
       left join site s on s.firm_id = e.firm_id and s.id = coalesce(${siteThen('e')}, u.site_id)
       left join person p on p.id = e.recorded_by
       left join lateral (select mass_micrograms from unit_full_charge c where c.firm_id = u.firm_id and c.unit_id = u.id
         and c.refrigerant = e.refrigerant and c.valid_from <= e.occurred_at order by c.valid_from desc, c.id desc limit 1) fc on true
-      where e.from_place = 'unit' and e.to_place = 'cylinder' and e.kind = 'recovery' and ${STANDING}
+      where e.from_place = 'unit' and e.to_place = 'cylinder' and (e.kind = 'recovery' or j.kind = 'decommission') and ${STANDING}
         and to_char(g.regulatory_day, 'YYYY-MM') between $1 and $2
       order by e.occurred_at, e.sequence`,
     [from, to],

@@ -288,9 +288,74 @@ describe('A job record', () => {
 describe('A disposal report', () => {
   it('lists units, months and shipments with its source, and says where there is nothing', async () => {
     const text = (await paper(us.client, 'disposalReport', months)).pages[0]?.text ?? '';
+    expect(text).toContain('No job of this period took a unit out of service.');
     expect(text).toContain('Nothing was recovered in this period.');
     expect(text).toContain('Nothing was sent in this period.');
     expect(text).toContain('40 CFR 82.156(a)(3)');
+  });
+
+  it('counts by month what came from units above 5 and below 50 lb whose job takes them out of service, and shows the rest apart', async () => {
+    const recovery = await us.cylinder('100', { tag: 'R-01', kind: 'recovery', contentState: 'recovered' });
+    let netG = 100;
+    const recover = async (tag: string, full: { value: string; unit: string } | null, kind: string, takenG: number) => {
+      const unit = await us.unit(
+        '30000',
+        null,
+        {
+          tag,
+          name: 'roof',
+          fullCharge: full && { id: uuid(), mass: full, method: 'manufacturer', validFrom: '2026-01-05T08:00:00Z' },
+        },
+        'opening',
+      );
+      const jobId = uuid();
+      await us.made('/jobs', { id: jobId, unitId: unit.id, kind, openedAt: '2026-05-04T08:00:00Z' });
+      const reading = (moment: string, net: number) => ({
+        id: uuid(),
+        cylinderId: recovery.id,
+        toolId: us.scale.id,
+        moment,
+        mode: 'gross',
+        value: String(net + 7700),
+        unit: 'g',
+      });
+      const answer = await us.post({
+        groupId: uuid(),
+        schema: 1,
+        kind: 'recovery',
+        occurredAt: '2026-05-04T10:00:00Z',
+        unitId: unit.id,
+        jobId,
+        readings: [reading('before', netG), reading('after', netG + takenG)],
+        entries: [
+          {
+            id: uuid(),
+            refrigerant: 'R-410A',
+            mass: { value: String(takenG), unit: 'g' },
+            from: { place: 'unit', id: unit.id },
+            to: { place: 'cylinder', id: recovery.id },
+            howKnown: 'weighed',
+          },
+        ],
+      });
+      if (answer.status !== 201) throw new Error(JSON.stringify(answer.body));
+      netG += takenG;
+    };
+    await recover('D5.0', { value: '5', unit: 'lb' }, 'decommission', 1000);
+    await recover('D5.1', { value: '5.1', unit: 'lb' }, 'decommission', 2000);
+    await recover('D49.9', { value: '49.9', unit: 'lb' }, 'decommission', 3000);
+    await recover('D50.0', { value: '50', unit: 'lb' }, 'decommission', 4000);
+    await recover('D-none', null, 'decommission', 500);
+    await recover('S10', { value: '10', unit: 'lb' }, 'serviceWithLeak', 600);
+
+    const { pages } = await paper(us.client, 'disposalReport', { from: '2026-05', to: '2026-05' });
+    const text = pages.map((each) => each.text).join('\n');
+    const [record = '', rest = ''] = text.split('Other recoveries');
+    for (const tag of ['D5.0', 'D5.1', 'D49.9', 'D50.0', 'D-none']) expect(record).toContain(tag);
+    expect(record).not.toContain('S10');
+    expect(rest).toContain('S10');
+    // 5.1 and 49.9 lb and the one not determined: 5,500 g. At 5.0 and at 50.0 lb the law asks nothing here: with the service 5,600 g.
+    expect(record).toMatch(/May 2026\s+R-410A\s+194\.0\s+197\.5/);
   });
 });
 
