@@ -94,20 +94,58 @@ export function exportsRepository(manager: EntityManager) {
            where id = $1 and state = 'running' and attempts = $2`,
         [id, attempt, reached.rows, reached.total, at],
       ),
-    /** Back into the queue: its server stops, or is gone. A stop of the server is no failed attempt. */
-    release: (id: string, at: Date, isAttempt: boolean): Promise<boolean> =>
+    /** Back into the queue: its server stops, which is no failed attempt. @returns whether it was still this attempt's */
+    release: (id: string, attempt: number, at: Date): Promise<boolean> =>
       changed(
         manager,
-        `update export set state = 'queued', touched_at = $2, attempts = greatest(attempts - $3::integer, 0)
-           where id = $1 and state in ('queued', 'running')`,
-        [id, at, isAttempt ? 0 : 1],
+        `update export set state = 'queued', touched_at = $3, attempts = attempts - 1
+           where id = $1 and attempts = $2 and state = 'running'`,
+        [id, attempt, at],
       ),
-    fail: (id: string, problem: string, at: Date): Promise<boolean> =>
+    /**
+     * Back into the queue: its server is gone, or its task was lost. Several servers may find that at the same time.
+     * @returns whether this one was the first
+     */
+    takeBack: (id: string, attempt: number, untouchedSince: Date, at: Date): Promise<boolean> =>
       changed(
         manager,
-        `update export set state = 'failed', problem = $2, finished_at = $3 where id = $1 and state in ('queued', 'running')`,
+        `update export set state = 'queued', touched_at = $4
+           where id = $1 and attempts = $2 and touched_at < $3 and state in ('queued', 'running')`,
+        [id, attempt, untouchedSince, at],
+      ),
+    /** @returns whether it was still this attempt's */
+    fail: (id: string, attempt: number, problem: string, at: Date): Promise<boolean> =>
+      changed(
+        manager,
+        `update export set state = 'failed', problem = $3, finished_at = $4
+           where id = $1 and attempts = $2 and state = 'running'`,
+        [id, attempt, problem, at],
+      ),
+    /** Taken back once too often: in the same transaction, nobody else can have begun it. */
+    giveUp: (id: string, problem: string, at: Date): Promise<boolean> =>
+      changed(
+        manager,
+        `update export set state = 'failed', problem = $2, finished_at = $3 where id = $1 and state = 'queued'`,
         [id, problem, at],
       ),
+    /** A task that no server has begun yet stands in the queue for it. */
+    async hasTask(id: string, queue: string): Promise<boolean> {
+      const [found] = await manager.query<{ has: boolean }[]>(
+        `select exists (select from pgboss.job
+           where name = $1 and state = 'created' and data ->> 'exportId' = $2) as has`,
+        [queue, id],
+      );
+      return found?.has === true;
+    },
+    /** Which of these attempts still have a right to their file: what works on it, or made what may be downloaded. */
+    async filesToKeep(ids: readonly string[], now: Date): Promise<Map<string, number>> {
+      const kept = await manager.query<{ id: string; attempts: number }[]>(
+        `select id, attempts from export where id = any ($1::uuid[])
+           and (state = 'running' or (state = 'done' and expires_at > $2))`,
+        [ids, now],
+      );
+      return new Map(kept.map(({ id, attempts }) => [id, attempts]));
+    },
     finish: (id: string, attempt: number, file: FinishedFile): Promise<boolean> =>
       changed(
         manager,

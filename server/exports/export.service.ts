@@ -109,11 +109,14 @@ const MEDIA_TYPES = {
  * @throws Problem 404 for somebody else's or another firm's, 409 while it is not finished, 410 when it is gone
  */
 export async function sendExportFile(parts: Parts, actor: Actor, id: string, res: Response): Promise<void> {
-  const view = await getExport(parts, actor, id);
-  if (view.requestedBy.id !== actor.personId) throw new Problem('notFound');
+  const { view, row } = await inFirm(parts.dataSource, actor, async (manager) => ({
+    view: await requireView(parts, actor, manager, id),
+    row: await exportsRepository(manager).find(id),
+  }));
+  if (!row || row.requestedBy !== actor.personId) throw new Problem('notFound');
   if (view.state === 'expired') throw new Problem('exportExpired');
   if (view.state !== 'done') throw new Problem('exportNotDone', { params: { state: view.state } });
-  const file = await exportFolder(parts.settings.home).read(actor.firmId, id);
+  const file = await exportFolder(parts.settings.home).read({ firmId: actor.firmId, id, attempt: row.attempts });
   if (!file) throw new Problem('exportExpired');
   res
     .status(200)

@@ -1,6 +1,7 @@
 import type { Writable } from 'node:stream';
 import type { DataSource, EntityManager } from 'typeorm';
 import { type CreateExportRequest, FILE_KEPT_HOURS, XLSX_LARGEST_ROWS } from '../../shared/exports/export.schema.ts';
+import { THE_PROGRAM } from '../../shared/proof/seal-record.schema.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
@@ -53,40 +54,53 @@ export async function runExport(
   writeDocument: WriteDocument,
   stopping: AbortSignal,
 ): Promise<'done' | 'cancelled' | 'failed' | 'released' | 'nothing'> {
-  const program = { firmId, personId: PROGRAM, siteIds: null };
+  const program = { firmId, personId: THE_PROGRAM, siteIds: null };
   const within = <T>(work: (exports: ReturnType<typeof exportsRepository>) => Promise<T>) =>
     inFirm(jobs, program, (manager) => work(exportsRepository(manager)));
-  if (stopping.aborted || !(await within((exports) => exports.claim(exportId, parts.now())))) return 'nothing';
-  const row = await within((exports) => exports.find(exportId));
+  if (stopping.aborted) return 'nothing';
+  const row = await within(async (exports) =>
+    (await exports.claim(exportId, parts.now())) ? exports.find(exportId) : null,
+  );
   if (!row) return 'nothing';
+  const attempt = row.attempts;
+  const own = { firmId, id: exportId, attempt };
   const watch = watchExport(parts, jobs, row, stopping);
   const folder = exportFolder(parts.settings.home);
   try {
     const actor = await requireActor(jobs, row);
-    const { file, value: rows } = await folder.write(firmId, exportId, (stream) =>
+    const { file, value: rows } = await folder.write(own, (stream) =>
       fill(parts, jobs, row, actor, writeDocument, stream, watch),
     );
     watch.throwIfEnded();
-    await finish(parts, jobs, row, rows, file);
+    await finishPatiently(watch, () => finish(parts, jobs, row, rows, file));
     return 'done';
   } catch (error) {
-    await folder.remove(firmId, exportId);
-    if (stopping.aborted) {
-      await within((exports) => exports.release(exportId, parts.now(), false));
-      return 'released';
-    }
+    await folder.remove(own);
+    if (stopping.aborted)
+      return (await within((exports) => exports.release(exportId, attempt, parts.now()))) ? 'released' : 'cancelled';
     if (error instanceof NotWanted || watch.ended()) return 'cancelled';
     const code = codeOf(error);
+    if (!(await within((exports) => exports.fail(exportId, attempt, code, parts.now())))) return 'cancelled';
     if (code === 'fault') parts.log.error({ err: error, firmId, exportId }, 'an export failed');
     if (code === 'folder') parts.log.error({ err: error, firmId, exportId }, 'the folder of the exports refuses');
-    await within((exports) => exports.fail(exportId, code, parts.now()));
     return 'failed';
   } finally {
     watch.stop();
   }
 }
 
-const PROGRAM = '00000000-0000-0000-0000-000000000000';
+/** Where somebody else holds the head of the log for long (an import): asks again for as long as the file is wanted. */
+async function finishPatiently(watch: Watch, finish: () => Promise<void>): Promise<void> {
+  for (;;) {
+    try {
+      return await finish();
+    } catch (error) {
+      if (!isLockTimeout(error)) throw error;
+      watch.throwIfEnded();
+    }
+  }
+}
+const isLockTimeout = (error: unknown): boolean => (error as { code?: unknown }).code === '55P03';
 
 const codeOf = (error: unknown): Failure => {
   if (error instanceof ExportRefusal) return error.code;
@@ -115,7 +129,7 @@ function watchExport(parts: ExportParts, jobs: DataSource, row: ExportRow, stopp
       );
       rows = Number(copied?.count ?? rows);
     }
-    const program = { firmId, personId: PROGRAM, siteIds: null };
+    const program = { firmId, personId: THE_PROGRAM, siteIds: null };
     const isWanted = await inFirm(jobs, program, (manager) =>
       exportsRepository(manager).touch(id, attempts, { rows, total }, parts.now()),
     );

@@ -8,10 +8,9 @@ import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
 import { writeDocument } from '../../server/documents/write-document.ts';
 import { enqueueExport } from '../../server/exports/export-queue.ts';
 import { type ExportWorker, startExportWorker } from '../../server/exports/export-worker.ts';
-import type { ExportView } from '../../shared/exports/export.schema.ts';
 import { startTestApp, type TestApp } from '../support/app.ts';
+import { exportRequests, until } from '../support/export-requests.ts';
 import { type Ledger, startLedger, weighIn } from '../support/ledger.ts';
-import type { TestClient } from '../support/test-client.ts';
 
 const home = mkdtempSync(path.join(tmpdir(), 'tarewright-exports-'));
 let app: TestApp;
@@ -42,26 +41,10 @@ const startWorker = async (): Promise<ExportWorker> => {
   worker = await startExportWorker(options);
   return worker;
 };
-const ask = (what: string, format = 'csv', filters: object = {}, client: TestClient = ledger.client) =>
-  client.post<ExportView>('/exports', { id: uuid(), what, format, filters });
-const asked = async (...parameters: Parameters<typeof ask>): Promise<ExportView> => {
-  const answer = await ask(...parameters);
-  if (answer.status !== 201) throw new Error(`${answer.status}: ${JSON.stringify(answer.body)}`);
-  return answer.body;
-};
-const ended = async (id: string, client: TestClient = ledger.client): Promise<ExportView> => {
-  for (;;) {
-    const { body } = await client.get<ExportView>(`/exports/${id}`);
-    if (body.state !== 'queued' && body.state !== 'running') return body;
-    await new Promise((resolve) => setTimeout(resolve, 50));
-  }
-};
-const download = async (id: string, client: TestClient = ledger.client): Promise<{ status: number; bytes: Buffer }> => {
-  const response = await fetch(`${app.url}/api/v1/exports/${id}/file`, { headers: { Cookie: String(client.cookie) } });
-  return { status: response.status, bytes: Buffer.from(await response.arrayBuffer()) };
-};
-const set = (id: string, change: string) =>
-  app.database.query('superuser', `update export set ${change} where id = $1`, [id]);
+const { ask, asked, ended, download, set } = exportRequests(
+  () => app,
+  () => ledger.client,
+);
 
 describe('An export that goes wrong', () => {
   it('is cancelled while it waits, and then never made', async () => {
@@ -87,8 +70,7 @@ describe('An export that goes wrong', () => {
       await startWorker();
       const running = `select pid from pg_stat_activity where datname = current_database()
         and application_name = 'tarewright exports' and query like '%copy (select%' and wait_event_type = 'Lock'`;
-      while ((await app.database.query('superuser', running)).length === 0)
-        await new Promise((resolve) => setTimeout(resolve, 50));
+      await until(async () => (await app.database.query('superuser', running)).length > 0);
       expect((await ledger.client.get(`/exports/${id}`)).body).toMatchObject({ state: 'running' });
 
       await ledger.client.post(`/exports/${id}/cancel`);
@@ -109,8 +91,7 @@ describe('An export that goes wrong', () => {
     await holder.query('begin; lock table site in access exclusive mode');
     const { id } = await asked('entries');
     const first = await startWorker();
-    while ((await ledger.client.get(`/exports/${id}`)).body.state !== 'running')
-      await new Promise((resolve) => setTimeout(resolve, 50));
+    await until(async () => (await ledger.client.get(`/exports/${id}`)).body.state === 'running');
     await first.stop();
     worker = null;
     await holder.end();
@@ -166,7 +147,7 @@ describe('An export that goes wrong', () => {
     expect((await ledger.client.get(`/exports/${id}`)).body).toMatchObject({ state: 'expired', mayDownload: false });
     expect((await download(id)).status).toBe(410);
     await taker.tend();
-    expect(existsSync(path.join(home, 'exports', ledger.firm.id, id))).toBe(false);
+    expect(existsSync(path.join(home, 'exports', ledger.firm.id, `${id}.1`))).toBe(false);
   });
 
   it('is refused before it begins: twice the id, too many at once, an unknown filter', async () => {
@@ -345,9 +326,10 @@ describe('A finished export', () => {
     const before = await ledger.sequence();
     await startWorker();
     await ended(id);
-    await new Promise((resolve) => setTimeout(resolve, 1_500));
+    const tasks = `select from pgboss.job where data ->> 'exportId' = $1 and state <> 'completed'`;
+    await until(async () => (await app.database.query('superuser', tasks, [id])).length === 0);
 
     expect(await ledger.sequence()).toBe(before + 1);
-    expect(readFileSync(path.join(home, 'exports', ledger.firm.id, id)).length).toBeGreaterThan(0);
+    expect(readFileSync(path.join(home, 'exports', ledger.firm.id, `${id}.1`)).length).toBeGreaterThan(0);
   });
 });
