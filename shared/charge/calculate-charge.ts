@@ -3,7 +3,7 @@ import type { ReferenceData } from '../reference/reference-data.ts';
 import { roundTo, roundToStep, snap12 } from '../units/round.ts';
 import { cautionsFor } from './cautions.ts';
 import type { ChargeBasis, ChargeRequest } from './charge.schema.ts';
-import type { ChargeResult, ChargeStep, ChargeWarning } from './charge-result.ts';
+import type { ChargeResult, ChargeStep, ChargeWarning, SourceCode } from './charge-result.ts';
 import type { CompileFormula } from './formula-contract.ts';
 import { checkHeights, checkLengths, checkTotalCharge } from './limits.ts';
 import { lineCharge } from './line-charge.ts';
@@ -178,13 +178,19 @@ function co2Equivalent(
     warnings.push({ code: 'gwpNotCovered', params: named });
     return null;
   }
-  const { gwp, source, leftOut, status } = found.value;
+  const { gwp, terms, leftOut, status } = found.value;
   if (leftOut.length > 0) warnings.push({ code: 'gwpPartly', params: { ...named, leftOut: leftOut.join(', ') } });
   if (status === 'memory') warnings.push({ code: 'gwpToBeConfirmed', params: named });
   const massKg = snap12(totalG / 1000);
   const tonnes = roundTo((massKg * gwp) / 1000, 5);
   const text = `${plain(massKg)} kg x ${plain(gwp)} / 1000`;
-  return note(trace, 'co2e', text, tonnes, 't', 'gwp', { gwpSet }, { citation: source });
+  const cited = { terms: terms || '0', leftOut: leftOut.join(', ') };
+  return note(trace, 'co2e', text, tonnes, 't', sourceOf(gwpSet, leftOut.length > 0), { gwpSet }, cited);
+}
+
+/** IPCC reports give every component a value: only the laws leave some out. */
+function sourceOf(set: ChargeRequest['gwpSet'], isPartly: boolean): SourceCode {
+  return isPartly && set !== 'AR4' && set !== 'AR5' && set !== 'AR6' ? `gwpPartly.${set}` : `gwp.${set}`;
 }
 
 /** The manual's "each branch" may or may not mean the pipe that several branches share: say how it was read. */

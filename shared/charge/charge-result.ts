@@ -42,8 +42,17 @@ export const SOURCE_CODES = [
   'rounding',
   'factoryCharge',
   'arithmetic',
-  'gwp',
   'tube',
+  // By the set of values; `gwpPartly` where it leaves out what it has no value for.
+  'gwp.AR4',
+  'gwp.AR5',
+  'gwp.AR6',
+  'gwp.US-AIM',
+  'gwp.US-84.64',
+  'gwp.EU-2024-573',
+  'gwpPartly.US-AIM',
+  'gwpPartly.US-84.64',
+  'gwpPartly.EU-2024-573',
 ] as const;
 export type SourceCode = (typeof SOURCE_CODES)[number];
 

@@ -10,6 +10,8 @@ export interface Gwp {
   set: GwpSet;
   /** The set's citation, then the sum that gave the value. */
   source: string;
+  /** That sum alone: `R-32 50 % x 675 + R-125 50 % x 3500`; empty where nothing of it is listed. */
+  terms: string;
   /** `memory` where a component's value that was used is marked so in the table. */
   status: 'yes' | 'memory';
   /** Components that the set has no value for and that its rule leaves out of the sum. */
@@ -99,6 +101,7 @@ export function gwpOfRefrigerant(
     gwp,
     set,
     source: `${CITATION[set]}: ${terms.join(' + ') || 'none of it is a listed HFC, 0'}${outside}`,
+    terms: terms.join(' + '),
     status,
     leftOut,
   });
