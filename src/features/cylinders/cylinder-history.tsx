@@ -17,6 +17,8 @@ import { Failed } from '../../ui/notice.tsx';
 
 /** The newest; the log has them all. */
 const SHOWN = 20;
+/** A reading is two lines high there. */
+const SHOWN_ON_PHONE = 10;
 
 /** What went in and what went out, newest first by the time it happened. */
 export function CylinderEntries({ cylinder }: { cylinder: Cylinder }) {
@@ -170,7 +172,7 @@ export function CylinderReadings({ cylinder }: { cylinder: Cylinder }) {
         <LedgerTable
           caption={t('cylinders.readings')}
           columns={columns}
-          rows={readings.data?.slice(0, SHOWN) ?? []}
+          rows={readings.data?.slice(0, phone ? SHOWN_ON_PHONE : SHOWN) ?? []}
           rowId={({ id }) => id}
           to={(row) => `/log/${row.groupId}?cylinderId=${cylinder.id}`}
           struck={({ reversed }) => reversed}
@@ -181,19 +183,18 @@ export function CylinderReadings({ cylinder }: { cylinder: Cylinder }) {
   );
 }
 
-/** On a phone: when and with what, the figure, and under them the rest. */
+/** On a phone: the figure, what it was, and under that when, with what and by whom. */
 function shortReadingColumns([at, value, moment, tool, who]: LedgerColumn<ReadingRow>[]): LedgerColumn<ReadingRow>[] {
   if (!at || !value || !moment || !tool || !who) return [];
   return [
-    at,
-    value,
+    { ...value, figure: false },
     {
       ...moment,
       cell: (row) => (
         <>
           <span className="block whitespace-normal">{moment.cell(row)}</span>
           <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
-            {tool.cell(row)}, {who.cell(row)}
+            {at.cell(row)}, {tool.cell(row)}, {who.cell(row)}
           </span>
         </>
       ),
