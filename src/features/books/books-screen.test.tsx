@@ -214,4 +214,17 @@ describe('The books', () => {
       currency: 'EUR',
     });
   });
+
+  it('ask of a price which one it is where a separator may mean two things', async () => {
+    const { user } = await openBooks('/books?table=purchases');
+    await user.click(await screen.findByRole('button', { name: /^Give a price/ }));
+    const dialog = await screen.findByRole('dialog');
+    await user.type(within(dialog).getByLabelText('price'), '1,250');
+    await user.click(within(dialog).getByRole('button', { name: 'Keep the price' }));
+    expect(sent).toEqual([]);
+    await user.click(within(dialog).getByRole('button', { name: '1250' }));
+    await user.click(within(dialog).getByRole('button', { name: /^Keep the price: €12,500/ }));
+    await waitFor(() => expect(sent).toHaveLength(1));
+    expect(sent[0]?.body).toMatchObject({ price: { value: '1250' } });
+  });
 });

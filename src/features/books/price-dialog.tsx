@@ -1,17 +1,16 @@
 import { useState } from 'react';
 import { addPriceRequest, type PurchaseRow } from '../../../shared/books/books.schema.ts';
 import { MASS_FACTORS } from '../../../shared/units/factors.ts';
-import { readNumber } from '../../../shared/units/read-number.ts';
 import { useAddPrice } from '../../api/books.ts';
 import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../api/form-errors.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { newId } from '../../lib/new-id.ts';
 import { usePreferences } from '../../lib/preferences.ts';
+import { AmountInput, amountDraft, readAmount } from '../../ui/amount-input.tsx';
 import { Button } from '../../ui/button.tsx';
 import { Dialog } from '../../ui/dialog.tsx';
 import { ChoiceField, FieldError, TextField } from '../../ui/field.tsx';
-import { decimalSeparatorOf } from '../../ui/quantity-draft.ts';
 import { money } from './book-words.ts';
 import { useOpens } from './use-opens.ts';
 
@@ -33,11 +32,11 @@ export function PriceDialog({
   const add = useAddPrice();
   const opens = useOpens();
   const [id] = useState(newId);
-  const [text, setText] = useState(() => shownPrice(purchase, locale));
+  const [draft, setDraft] = useState(() => amountDraft(purchase.price?.value, locale));
   const [per, setPer] = useState<'kg' | 'lb'>(purchase.price?.per ?? (mass === 'lbOz' || mass === 'oz' ? 'lb' : 'kg'));
   const [currencyText, setCurrencyText] = useState(currency);
   const [errors, setErrors] = useState<FormError[]>([]);
-  const value = readPrice(text, locale);
+  const value = readAmount(draft) || null;
   const massOf = purchase.massG / MASS_FACTORS[per].perUnit.valueOf();
   const send = () => {
     const body = {
@@ -84,13 +83,11 @@ export function PriceDialog({
             paper: purchase.documentNumber ?? t('books.price.noPaper'),
           })}
         </p>
-        <TextField
+        <AmountInput
           label={t('books.price.value')}
-          inputMode="decimal"
-          autoComplete="off"
-          value={text}
+          draft={draft}
           error={errorAt(errors, '/price/value') ? t('books.price.valueNeeded') : undefined}
-          onChange={({ target }) => setText(target.value)}
+          onChange={setDraft}
         />
         <ChoiceField
           label={t('books.price.per')}
@@ -122,17 +119,3 @@ export function PriceDialog({
 /** While a currency is being typed the one before stands in. */
 const currencyOf = (text: string, before: string): string =>
   /^[A-Za-z]{3}$/.test(text.trim()) ? text.trim().toUpperCase() : before;
-
-const shownPrice = ({ price }: PurchaseRow, locale: string): string =>
-  price ? price.value.replace('.', decimalSeparatorOf(locale)) : '';
-
-/** A price as the wire has it; null: it cannot be read. A single separator of three digits is the locale's. */
-function readPrice(text: string, locale: string): string | null {
-  if (text.trim() === '') return null;
-  const first = readNumber(text.trim());
-  const read = first.is === 'ambiguous' ? readNumber(text.trim(), meaningIn(text, locale)) : first;
-  return read.is === 'number' ? read.value : null;
-}
-
-const meaningIn = (text: string, locale: string) =>
-  text.includes(decimalSeparatorOf(locale)) ? ('decimal' as const) : ('grouping' as const);

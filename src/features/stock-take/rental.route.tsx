@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Link, type LoaderFunctionArgs, useLoaderData } from 'react-router-dom';
 import { addRentalTermsRequest, type RentalView } from '../../../shared/rental-terms/rental-terms.schema.ts';
+import type { SeparatorMeaning } from '../../../shared/units/read-number.ts';
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../api/form-errors.ts';
 import { queryClient } from '../../api/query-client.ts';
@@ -12,6 +13,8 @@ import { useFormat } from '../../lib/format.ts';
 import { deviceNow, toDayInput } from '../../lib/local-time.ts';
 import { loadMessages, useMessages } from '../../lib/messages.ts';
 import { newId } from '../../lib/new-id.ts';
+import { usePreferences } from '../../lib/preferences.ts';
+import { AmountInput, amountDraft, readAmount } from '../../ui/amount-input.tsx';
 import { Button } from '../../ui/button.tsx';
 import { ChoiceField, FieldError, TextField } from '../../ui/field.tsx';
 import { Done, Failed, Notice, RowsSkeleton } from '../../ui/notice.tsx';
@@ -119,7 +122,9 @@ interface Draft {
   what: 'terms' | 'back';
   since: string;
   deposit: string;
+  depositMeans?: SeparatorMeaning | undefined;
   dailyRate: string;
+  dailyRateMeans?: SeparatorMeaning | undefined;
   currency: string;
 }
 
@@ -130,28 +135,31 @@ function TermsForm({ cylinderId, view, onDone }: { cylinderId: string; view: Ren
   const firm = useSession()?.firm;
   const add = useAddRentalTerms(cylinderId);
   const [errors, setErrors] = useState<FormError[]>([]);
+  const { locale } = usePreferences();
   const before = view.rental?.conditions;
+  const [deposit, dailyRate] = [amountDraft(before?.deposit, locale), amountDraft(before?.dailyRate, locale)];
   const [draft, setDraft, clear] = useDraft<Draft>(`cylinder.${cylinderId}.rental`, () => ({
     id: newId(),
     what: 'terms',
     since: toDayInput(deviceNow()),
-    deposit: before?.deposit ?? '',
-    dailyRate: before?.dailyRate ?? '',
+    deposit: deposit.text,
+    depositMeans: deposit.means,
+    dailyRate: dailyRate.text,
+    dailyRateMeans: dailyRate.means,
     currency: before?.currency ?? (firm?.jurisdiction === 'EU' ? 'EUR' : 'USD'),
   }));
   const set = (change: Partial<Draft>) => setDraft((now) => ({ ...now, ...change }));
   const back = view.rental !== null && draft.what === 'back';
   const said = (pointer: string, message: string) => (errorAt(errors, pointer) ? t(message) : undefined);
   const send = () => {
-    const amount = (text: string) => (text.trim() === '' ? null : text.trim().replace(',', '.'));
     const body = {
       id: draft.id,
       since: draft.since,
       conditions: back
         ? null
         : {
-            deposit: amount(draft.deposit),
-            dailyRate: amount(draft.dailyRate),
+            deposit: readAmount({ text: draft.deposit, means: draft.depositMeans }),
+            dailyRate: readAmount({ text: draft.dailyRate, means: draft.dailyRateMeans }),
             currency: draft.currency.trim().toUpperCase(),
           },
     };
@@ -199,21 +207,19 @@ function TermsForm({ cylinderId, view, onDone }: { cylinderId: string; view: Ren
       />
       {back ? null : (
         <>
-          <TextField
+          <AmountInput
             layout="row"
-            inputMode="decimal"
             label={t('rental.deposit')}
-            value={draft.deposit}
+            draft={{ text: draft.deposit, means: draft.depositMeans }}
             error={said('/conditions/deposit', 'rental.amountWrong')}
-            onChange={(event) => set({ deposit: event.target.value })}
+            onChange={({ text, means }) => set({ deposit: text, depositMeans: means })}
           />
-          <TextField
+          <AmountInput
             layout="row"
-            inputMode="decimal"
             label={t('rental.dailyRate')}
-            value={draft.dailyRate}
+            draft={{ text: draft.dailyRate, means: draft.dailyRateMeans }}
             error={said('/conditions/dailyRate', 'rental.amountWrong')}
-            onChange={(event) => set({ dailyRate: event.target.value })}
+            onChange={({ text, means }) => set({ dailyRate: text, dailyRateMeans: means })}
           />
           <TextField
             layout="row"
