@@ -22,6 +22,7 @@ export const subsector = z.enum(SUBSECTORS);
 /** How a full charge was determined (40 CFR 82.152 "Full charge", methods 1 to 4). */
 export const FULL_CHARGE_METHODS = ['manufacturer', 'calculation', 'measured', 'establishedRange'] as const;
 export const fullChargeMethod = z.enum(FULL_CHARGE_METHODS);
+export type FullChargeMethod = z.output<typeof fullChargeMethod>;
 
 export const serialNumber = z.strictObject({
   part: z.enum(['outdoor', 'indoor', 'module', 'other']),

@@ -93,6 +93,24 @@ export function useUpdateUnit({ id, version }: { id: string; version: number }) 
   });
 }
 
+const CHANGE_PATHS = { site: 'sites', refrigerant: 'refrigerants', fullCharge: 'full-charges' } as const;
+
+/**
+ * What holds of the unit from a moment on; the same change again records nothing twice. What is on the screen is read
+ * again by `useRefreshUnits`, once all changes of a form are recorded: until then a second try has to look the same.
+ */
+export function useChangeUnit(unitId: string) {
+  return useMutation({
+    mutationFn: ({ is, body }: { is: keyof typeof CHANGE_PATHS; body: object }) =>
+      http.post<object>(`/units/${unitId}/${CHANGE_PATHS[is]}`, body),
+  });
+}
+
+export function useRefreshUnits(): () => Promise<unknown> {
+  const client = useQueryClient();
+  return () => Promise.all([refreshBooks(client), client.invalidateQueries({ queryKey: ['sites'] })]);
+}
+
 /** A change of the line set is a new dated one; earlier ones stay. */
 export function useAddLineSet(unitId: string) {
   const client = useQueryClient();

@@ -4,7 +4,7 @@ import { v7 as uuid } from 'uuid';
 import { afterAll, afterEach, beforeAll, describe, expect, inject, it } from 'vitest';
 import { startTestApp, type TestApp, type TestPerson } from '../support/app.ts';
 import { startBrowser, type TestBrowser } from '../support/browser.ts';
-import { type Ledger, startLedger } from '../support/ledger.ts';
+import { groupOf, inCylinder, inUnit, type Ledger, massOf, siteOf, startLedger } from '../support/ledger.ts';
 
 let app: TestApp;
 let browser: TestBrowser;
@@ -48,6 +48,12 @@ async function looksWell(page: Page): Promise<void> {
     .analyze();
   expect(violations.map(({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html).join(' ')}`)).toEqual([]);
 }
+
+const BUSY = {
+  status: 503,
+  contentType: 'application/problem+json',
+  body: JSON.stringify({ status: 503, code: 'busy', title: 'Busy', detail: 'Somebody else is posting.', errors: [] }),
+};
 
 describe('On a phone', () => {
   /** Source: the masses of case S13.2; the level by 40 CFR 82.156(a) Table 1 for R-410A below 200 lb: 0 in Hg. */
@@ -174,6 +180,84 @@ describe('On a desk', () => {
     await post(page);
     await page.getByText('Posted. It stands in the log.').waitFor();
     expect([await ledger.bookG(unit.id), await ledger.contentG(cylinder.id)]).toEqual([1290, 9200]);
+  });
+
+  /** Source: case S16.1: the charge travels behind its valves, no mass moves, the site is dated. */
+  it('a relocation shows site, customer and beam before and after, and the unit stands there once it is posted', async () => {
+    const unit = await ledger.unit('1340', '1340');
+    const bakery = await ledger.made('/customers', { id: uuid(), name: 'Harbour Bakery' });
+    const quay = await ledger.made('/sites', { ...siteOf(bakery.id), name: 'Quay 4', jurisdiction: 'EU' });
+    const { page, expectRefusal } = await browser.desk({ as: technician, locale: 'en-GB' });
+    await page.goto(`${app.url}/record/relocation?unit=${unit.id}`);
+    await page.getByText('It stands at Mill Lane, Wexcombe Mill.').waitFor();
+    await post(page);
+    await page.getByText('Choose the site.').waitFor();
+    await page.getByRole('radio', { name: /^Recovered first/ }).check();
+    await page.getByText('record the recovery first, then the move').waitFor();
+    await page.getByRole('radio', { name: /^Behind the service valves/ }).check();
+    await page.getByLabel('New site').selectOption({ label: 'Quay 4, Harbour Bakery' });
+    await page.getByLabel('Number').fill('W 12');
+    const review = page.getByRole('region', { name: 'What will be posted' });
+    const register = review.getByRole('region', { name: 'In the register' });
+    await register.getByText('Quay 4').waitFor();
+    expect(await register.getByRole('definition').allTextContents()).toEqual([
+      'Mill Lane →to Quay 4',
+      'Wexcombe Mill →to Harbour Bakery',
+    ]);
+    await review.getByText('Other rules hold at the new site: EU.').waitFor();
+    await review.getByText('1,340 g before, 1,340 g after').waitFor();
+    await review.getByText('No mass moves.').waitFor();
+    await looksWell(page);
+    expect((await ledger.client.get(`/units/${unit.id}`)).body.siteId).toBe(ledger.site.id);
+
+    // The group is refused after the site was recorded: the next try records nothing twice.
+    expectRefusal(503, '/entry-groups');
+    await page.route('**/api/v1/entry-groups', (route) => route.fulfill(BUSY), { times: 1 });
+    await post(page);
+    await page.getByText('Somebody else is posting.').waitFor();
+    await post(page);
+    await page.getByText('Posted. It stands in the log.').waitFor();
+    const { body } = await ledger.client.get(`/units/${unit.id}`);
+    expect(body).toMatchObject({ siteId: quay.id, version: 2, book: { massG: 1340 } });
+    expect((await ledger.client.get(`/units/${unit.id}/sites`)).body.items).toHaveLength(2);
+    await page.getByRole('link', { name: 'Enter the new line set' }).waitFor();
+  });
+
+  /** Source: 40 CFR 82.152 "Retrofit"; case S16.2: R-22 recovered, then R-407C with a full charge of 1,400 g. */
+  it('a retrofit waits until the old refrigerant is out, then dates the new one with its full charge', async () => {
+    const unit = await ledger.unit('1450', '1450', { refrigerant: 'R-22' });
+    const recovery = await ledger.cylinder(null, { kind: 'recovery', refrigerant: 'R-22' });
+    const { page } = await browser.desk({ as: technician, locale: 'en-GB' });
+    await page.goto(`${app.url}/record/retrofit?unit=${unit.id}`);
+    await page.getByText('Its book does not say that R-22 is out').waitFor();
+    await page.getByLabel('New refrigerant', { exact: true }).selectOption('R-407C');
+    await page.getByRole('textbox', { name: 'Full charge of the new refrigerant' }).fill('1400');
+    await page.getByRole('button', { name: 'Record it' }).click();
+    await page.getByText('Its book is not empty').waitFor();
+    await looksWell(page);
+    await ledger.post({
+      ...groupOf('recovery', '2026-11-30T09:00:00Z', {
+        unitId: unit.id,
+        entries: [massOf('1450', inUnit(unit.id), inCylinder(recovery.id), { refrigerant: 'R-22' })],
+        statements: [{ about: 'unit', id: unit.id, is: 'empty', by: 'recovery' }],
+      }),
+    });
+    await page.reload();
+    await page.getByText('its book holds no R-22 any more').waitFor();
+    const register = page.getByRole('region', { name: 'In the register' });
+    await register.getByText('R-407C').waitFor();
+    await register.getByText('1,400 g').waitFor();
+    await looksWell(page);
+    expect((await ledger.client.get(`/units/${unit.id}`)).body.refrigerant).toBe('R-22');
+    await page.getByRole('button', { name: 'Record it' }).click();
+    await page.getByText('Recorded. The unit shows it from now on.').waitFor();
+    expect((await ledger.client.get(`/units/${unit.id}`)).body).toMatchObject({
+      refrigerant: 'R-407C',
+      fullCharge: { massG: 1400, refrigerant: 'R-407C', reason: 'Retrofit from R-22 to R-407C' },
+      book: { known: true, massG: 0 },
+    });
+    await page.getByRole('link', { name: 'Weigh in the full charge' }).click();
+    await page.waitForURL(`**/units/${unit.id}/weigh-in**`);
   });
 
   /** Source: case S19.3: label 11,340 g, invoice 11,260 g. */

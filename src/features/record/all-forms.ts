@@ -4,6 +4,7 @@ import { foundEmpty, vacuum } from './forms/empty-unit.ts';
 import { invoice } from './forms/invoice.ts';
 import { found, handOver, loss, relocation, warrantyReplacement } from './forms/life.ts';
 import { overchargeRemoved, partialRecovery, recovery } from './forms/recovery.ts';
+import { retrofit } from './forms/retrofit.ts';
 import { certificate, destruction, lend, reclaim, returned } from './forms/sent.ts';
 import { heelRemoved, transfer } from './forms/transfer.ts';
 
@@ -21,6 +22,7 @@ export const FORMS: readonly RecordForm[] = [
   otherContractor,
   warrantyReplacement,
   relocation,
+  retrofit,
   handOver,
   transfer,
   heelRemoved,

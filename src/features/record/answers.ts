@@ -1,7 +1,7 @@
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import type { UnitCondition } from '../../../shared/ledger/entry-group.schema.ts';
 import type { EvacuationException } from '../../../shared/reference/evacuation-level.ts';
-import type { Unit } from '../../../shared/unit-register/unit.schema.ts';
+import type { FullChargeMethod, Unit } from '../../../shared/unit-register/unit.schema.ts';
 import type { TypedMass } from '../../../shared/units/mass.ts';
 import { emptyQuantity, type QuantityDraft, readQuantity } from '../../ui/quantity-draft.ts';
 
@@ -40,7 +40,15 @@ export type FullAnswer = Exclude<UnitCondition, 'empty'>;
  * made once, when the form opens, so that a second try cannot post twice.
  */
 export interface Answers {
-  ids: { group: string; entry: string; entry2: string; reading: string; reversal: string };
+  ids: {
+    group: string;
+    entry: string;
+    entry2: string;
+    reading: string;
+    reversal: string;
+    change: string;
+    change2: string;
+  };
   unitId: string;
   jobId: string;
   rows: WeighedRow[];
@@ -48,6 +56,11 @@ export interface Answers {
   choice: string;
   mass: MassDraft;
   partyId: string;
+  /** Where the unit goes. */
+  siteId: string;
+  /** What comes into the unit instead. */
+  refrigerant: string;
+  method: FullChargeMethod;
   documentNumber: string;
   documentDate: string;
   certified: CertifiedRow[];
@@ -99,13 +112,24 @@ export const emptyCertified = (newId: () => string, unit: MassUnit, refrigerant 
 /** @param rows how many cylinders the form begins with */
 export function emptyAnswers({ newId, unit, now, unitId = '', cylinderId = '' }: Beginning, rows: number): Answers {
   return {
-    ids: { group: newId(), entry: newId(), entry2: newId(), reading: newId(), reversal: newId() },
+    ids: {
+      group: newId(),
+      entry: newId(),
+      entry2: newId(),
+      reading: newId(),
+      reversal: newId(),
+      change: newId(),
+      change2: newId(),
+    },
     unitId,
     jobId: '',
     rows: Array.from({ length: rows }, (_, index) => emptyRow(newId, unit, index === 0 ? cylinderId : '')),
     choice: '',
     mass: emptyQuantity(unit),
     partyId: '',
+    siteId: '',
+    refrigerant: '',
+    method: 'manufacturer',
     documentNumber: '',
     documentDate: now.day,
     certified: [emptyCertified(newId, unit)],
@@ -125,7 +149,10 @@ export function emptyAnswers({ newId, unit, now, unitId = '', cylinderId = '' }:
 /** What the forms know besides what was typed. */
 export interface FormContext {
   locale: string;
-  unit: Pick<Unit, 'id' | 'tag' | 'refrigerant' | 'customerId' | 'book' | 'fullCharge'> | null;
+  unit: Pick<
+    Unit,
+    'id' | 'tag' | 'refrigerant' | 'siteId' | 'siteName' | 'customerId' | 'customerName' | 'book' | 'fullCharge'
+  > | null;
   cylinder: (id: string) => KnownCylinder | undefined;
   /** A law's level is asked where that law holds. */
   jurisdiction: string | null;

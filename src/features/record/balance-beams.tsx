@@ -36,7 +36,7 @@ function BalanceBeam({ balance, context }: { balance: PreviewedBalance; context:
     if (beforeG < 0 || afterG < 0) return null;
     const { gramsPer } = unit;
     const [low, high] = [Math.min(beforeG, afterG), Math.max(beforeG, afterG)];
-    const mark = limitG !== null && limitG <= Math.max(high, 1) * 8 ? limitG : null;
+    const mark = limitG !== null && (high === 0 || limitG <= high * 8) ? limitG : null;
     const marks: BeamMark[] =
       mark === null
         ? []

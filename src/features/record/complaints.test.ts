@@ -1,10 +1,13 @@
 import { describe, expect, it } from 'vitest';
 import { complaintsOf } from './complaints.ts';
 import type { Question } from './form.ts';
+import { relocation } from './forms/life.ts';
 import { recovery } from './forms/recovery.ts';
+import { retrofit } from './forms/retrofit.ts';
 import { transfer } from './forms/transfer.ts';
 import { answersOf, contextOf, grams, weighed } from './record.fixture.ts';
 import { rowDangers } from './row-dangers.ts';
+import { becomesFlammable } from './safety-class.ts';
 
 const rowsOf = (form: typeof recovery): Question =>
   form.questions(answersOf({}), contextOf('S13.1')).find(({ is }) => is === 'rows') as Question;
@@ -71,6 +74,49 @@ describe('What must not be done', () => {
     expect(
       rowDangers(rowsOf(recovery), answersOf({ rows: [weighed('R1', 0, 500)] }), weak).map(({ is }) => is),
     ).toEqual(['pressure']);
+  });
+});
+
+describe('A unit that is moved or retrofitted', () => {
+  const asked = (form: typeof recovery, over: Parameters<typeof answersOf>[0], id: string, emptied = false) => {
+    const context = contextOf(id);
+    const book = { known: true, massG: 0, byRefrigerant: [{ refrigerant: 'R-22', massG: 0 }] };
+    const then = emptied ? { ...context, unit: context.unit && { ...context.unit, book } } : context;
+    return form
+      .questions(answersOf(over), then)
+      .flatMap((question) => complaintsOf(question, answersOf(over), then))
+      .map(({ key }) => key);
+  };
+
+  it('did not travel recovered while its book still holds refrigerant', () => {
+    const over = { siteId: 'quay', documentNumber: 'W 12', documentDate: '2026-03-02', at: '2026-03-02T10:00' };
+    expect(asked(relocation, { ...over, choice: 'recovered' }, 'S16.1')).toEqual(['record.wrong.recoverFirst']);
+    expect(asked(relocation, { ...over, choice: 'recovered' }, 'S16.1', true)).toEqual([]);
+    expect(asked(relocation, { ...over, choice: 'behindValves' }, 'S16.1')).toEqual([]);
+    expect(asked(relocation, { ...over, choice: 'behindValves', siteId: '' }, 'S16.1')).toEqual(['record.need.site']);
+  });
+
+  it('takes another refrigerant once the old one is out, and not the same one', () => {
+    const over = { refrigerant: 'R-407C', mass: grams('1400'), at: '2026-03-02T10:00' };
+    expect(asked(retrofit, over, 'S16.2')).toEqual(['record.wrong.notEmpty']);
+    expect(asked(retrofit, over, 'S16.2', true)).toEqual([]);
+    expect(asked(retrofit, { ...over, refrigerant: 'R-22' }, 'S16.2', true)).toEqual(['record.wrong.sameRefrigerant']);
+    expect(asked(retrofit, { at: over.at }, 'S16.2', true)).toEqual(['record.need.refrigerant', 'record.need.mass']);
+  });
+
+  it('is warned of where what comes burns, or burns more readily than what was in it (ISO 817 classes)', () => {
+    expect(becomesFlammable('A1', 'A2L')).toBe(true);
+    expect(becomesFlammable('A1', 'A3')).toBe(true);
+    expect(becomesFlammable('A2L', 'A3')).toBe(true);
+    expect(becomesFlammable('A1', 'B2L')).toBe(true);
+    for (const [before, after] of [
+      ['A1', 'A1'],
+      ['A1', 'B1'],
+      ['A2L', 'A2L'],
+      ['A3', 'A1'],
+      ['A3', 'A2L'],
+    ] as const)
+      expect(becomesFlammable(before, after), `${before} ${after}`).toBe(false);
   });
 });
 

@@ -1,4 +1,5 @@
 import { type Answers, type FormContext, type MassDraft, typedOf, type WeighedRow } from './answers.ts';
+import { isEmptied } from './emptied.ts';
 import type { Question } from './form.ts';
 import { fallsShort, levelAsked, levelOf } from './level.ts';
 import { rowDangers } from './row-dangers.ts';
@@ -20,7 +21,19 @@ export function complaintsOf(question: Question, answers: Answers, context: Form
     case 'unit':
       return answers.unitId ? [] : [need('unitId', 'unit')];
     case 'choice':
-      return question.options.includes(answers.choice) ? [] : [need('choice', 'choice')];
+      if (!question.options.includes(answers.choice)) return [need('choice', 'choice')];
+      return question.wrong ? [question.wrong] : [];
+    case 'site':
+      return answers.siteId ? [] : [need('siteId', 'site')];
+    case 'emptied':
+      return !context.unit || isEmptied(context.unit) ? [] : [{ field: 'emptied', key: 'record.wrong.notEmpty' }];
+    case 'refrigerant':
+      if (!answers.refrigerant) return [need('refrigerant', 'refrigerant')];
+      return answers.refrigerant === context.unit?.refrigerant
+        ? [{ field: 'refrigerant', key: 'record.wrong.sameRefrigerant' }]
+        : [];
+    case 'fullCharge':
+      return massComplaints('mass', answers.mass, 'mass', context);
     case 'rows':
       return [...rowComplaints(question, answers, context), ...dangerComplaints(question, answers, context)];
     case 'mass':

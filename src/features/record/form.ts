@@ -1,6 +1,8 @@
 import type { Signal } from '../../ui/caution.tsx';
 import type { Answers, FormContext } from './answers.ts';
+import type { Complaint } from './complaints.ts';
 import type { BuiltGroup } from './group-draft.ts';
+import type { UnitChange } from './unit-change.ts';
 
 /** A hazard, said at the question where it is met. */
 export interface SaidCaution {
@@ -19,7 +21,11 @@ export type RowDirection = 'into' | 'outOf' | 'transfer' | 'once';
 
 export type Question =
   | (Asked & { is: 'unit' })
-  | (Asked & { is: 'choice'; options: readonly string[] })
+  | (Asked & { is: 'choice'; options: readonly string[]; wrong?: Complaint | undefined })
+  | (Asked & { is: 'site' })
+  | (Asked & { is: 'emptied' })
+  | (Asked & { is: 'refrigerant' })
+  | (Asked & { is: 'fullCharge' })
   | (Asked & { is: 'rows'; direction: RowDirection; many: boolean; hose: boolean; byBook?: boolean })
   | (Asked & { is: 'mass' })
   | (Asked & { is: 'party'; of: 'supplier' | 'reclaimer' | 'otherContractor' | 'customer' })
@@ -53,6 +59,7 @@ export const FORM_KINDS = [
   'invoice',
   'warrantyReplacement',
   'relocation',
+  'retrofit',
   'handOver',
   'loss',
   'found',
@@ -69,6 +76,10 @@ export interface RecordForm {
   permission: 'entries:post' | 'registers:correct';
   questions: (answers: Answers, context: FormContext) => readonly Question[];
   build: (answers: Answers, context: FormContext) => BuiltGroup;
+  /** What holds of the unit from then on, in this order and before the group. */
+  changes?: (answers: Answers, context: FormContext) => readonly UnitChange[];
+  /** It is told by the register alone: no group is posted, nothing stands in the log. */
+  onlyRegister?: true;
   /** What has happened is true but moves no mass and states nothing: the key of the sentence that says so. */
   nothingToPost?: (answers: Answers, context: FormContext) => string | null;
 }

@@ -22,18 +22,20 @@ export function Posted({
   return (
     <Page field title={t(`record.form.${kind}`)}>
       <div className="page-gutter flex max-w-xl flex-col gap-4 pt-6">
-        <Done>{t('record.posted')}</Done>
+        <Done>{t(groupId ? 'record.posted' : 'record.posted.register')}</Done>
         <ButtonLink kind="act" wide to={unitId ? `/units/${unitId}` : cylinderId ? `/cylinders/${cylinderId}` : '/'}>
           {t(unitId ? 'record.posted.toUnit' : cylinderId ? 'record.posted.toCylinder' : 'record.posted.toToday')}
         </ButtonLink>
         <div className="flex flex-wrap gap-x-6">
-          <Link to={`/log/${groupId}`} className="inline-flex min-h-12 items-center">
-            {t('record.posted.toLog')}
-          </Link>
+          {groupId ? <Onward to={`/log/${groupId}`} words="record.posted.toLog" /> : null}
           {kind === 'relocation' && unitId ? (
-            <Link to={`/units/${unitId}/line-set`} className="inline-flex min-h-12 items-center">
-              {t('record.posted.lineSet')}
-            </Link>
+            <Onward to={`/units/${unitId}/line-set`} words="record.posted.lineSet" />
+          ) : null}
+          {kind === 'retrofit' && unitId ? (
+            <>
+              <Onward to={`/units/${unitId}/weigh-in`} words="record.posted.weighIn" />
+              <Onward to={`/units/${unitId}/charge-basis`} words="record.posted.chargeBasis" />
+            </>
           ) : null}
           <Button kind="quiet" onClick={onAgain}>
             {t('record.posted.again')}
@@ -41,5 +43,14 @@ export function Posted({
         </div>
       </div>
     </Page>
+  );
+}
+
+function Onward({ to, words }: { to: string; words: string }) {
+  const t = useMessages();
+  return (
+    <Link to={to} className="inline-flex min-h-12 items-center">
+      {t(words)}
+    </Link>
   );
 }

@@ -15,6 +15,12 @@ import {
   TextQuestion,
 } from './questions/plain-questions.tsx';
 import { RowsQuestion } from './questions/rows-question.tsx';
+import {
+  EmptiedQuestion,
+  FullChargeQuestion,
+  RefrigerantQuestion,
+  SiteQuestion,
+} from './questions/unit-change-questions.tsx';
 import { UnitQuestion } from './questions/unit-question.tsx';
 
 /** One question with the hazards that are met there, under its own heading. */
@@ -43,6 +49,14 @@ function blanks({ question, ...rest }: QuestionProps): ReactNode {
       return <UnitQuestion question={question} {...rest} />;
     case 'choice':
       return <ChoiceQuestion question={question} {...rest} />;
+    case 'site':
+      return <SiteQuestion question={question} {...rest} />;
+    case 'emptied':
+      return <EmptiedQuestion question={question} {...rest} />;
+    case 'refrigerant':
+      return <RefrigerantQuestion question={question} {...rest} />;
+    case 'fullCharge':
+      return <FullChargeQuestion question={question} {...rest} />;
     case 'rows':
       return <RowsQuestion question={question} {...rest} />;
     case 'mass':

@@ -11,6 +11,7 @@ import { Steps } from '../../ui/steps.tsx';
 import type { RecordForm } from './form.ts';
 import { PreviewPanel } from './preview-panel.tsx';
 import { QuestionView } from './question-view.tsx';
+import { UnitChanges } from './unit-changes.tsx';
 import { type RecordState, useRecord } from './use-record.ts';
 
 interface Props {
@@ -25,9 +26,9 @@ export function RecordSheet({ form, begin, onPosted }: Props) {
   const record = useRecord(form, begin);
   const post = () => {
     const { answers, built } = record;
-    record.send(() =>
+    void record.send(() =>
       onPosted({
-        groupId: built.reverses?.reversalId ?? built.body.groupId,
+        groupId: form.onlyRegister ? '' : (built.reverses?.reversalId ?? built.body.groupId),
         unitId: form.about === 'unit' ? answers.unitId : '',
         cylinderId: form.about === 'cylinder' ? (answers.rows[0]?.cylinderId ?? '') : '',
       }),
@@ -54,7 +55,7 @@ function OneSheet({ form, record, post }: Parts) {
   const go = () => {
     setTried((times) => times + 1);
     if (!record.isWhole || !hasReason(record)) setFirst([{}]);
-    else if (record.preview?.data) post();
+    else if (record.isShown) post();
   };
   return (
     <Page title={t(`record.form.${form.kind}`)} lead={t(`record.form.${form.kind}.lead`)}>
@@ -82,7 +83,7 @@ function OneSheet({ form, record, post }: Parts) {
           <Review form={form} record={record} tried={tried > 0} />
           {record.nothing ? null : (
             <Button kind="act" wide type="submit" busy={record.isSending || record.isWaiting}>
-              {t('record.post')}
+              {t(form.onlyRegister ? 'record.enter' : 'record.post')}
             </Button>
           )}
           <Governs />
@@ -118,7 +119,7 @@ function OneByOne({ form, record, post }: Parts) {
     const open = complaints.findIndex((found) => found.length > 0);
     if (open >= 0) move(open);
     else if (!hasReason(record)) setFirst([{}]);
-    else if (record.preview?.data) post();
+    else if (record.isShown) post();
   };
   const isReview = question === undefined;
   return (
@@ -133,7 +134,7 @@ function OneByOne({ form, record, post }: Parts) {
       next={
         isReview && record.nothing ? undefined : (
           <Button kind="act" wide onClick={next} busy={isReview && (record.isSending || record.isWaiting)}>
-            {t(isReview ? 'record.post' : 'record.next')}
+            {t(isReview ? (form.onlyRegister ? 'record.enter' : 'record.post') : 'record.next')}
           </Button>
         )
       }
@@ -159,7 +160,9 @@ function OneByOne({ form, record, post }: Parts) {
           />
         ) : (
           <>
-            <h2 className="text-[1.1875rem] font-[650]">{t('record.preview.title')}</h2>
+            <h2 className="text-[1.1875rem] font-[650]">
+              {t(form.onlyRegister ? 'record.changes.title' : 'record.preview.title')}
+            </h2>
             <Review form={form} record={record} tried={tried} />
             <Governs />
           </>
@@ -180,11 +183,20 @@ function Review({ form, record, tried }: { form: RecordForm; record: RecordState
   const { preview, nothing, isWhole } = record;
   const elsewhere = record.errorsElsewhere;
   return (
-    <section aria-label={t('record.preview.title')} aria-live="polite" className="flex flex-col gap-4">
-      <h2 className="hidden text-[1.1875rem] font-[650] lg:block">{t('record.preview.title')}</h2>
+    <section
+      aria-label={t(form.onlyRegister ? 'record.changes.title' : 'record.preview.title')}
+      aria-live="polite"
+      className="flex flex-col gap-4"
+    >
+      <h2 className="hidden text-[1.1875rem] font-[650] lg:block">
+        {t(form.onlyRegister ? 'record.changes.title' : 'record.preview.title')}
+      </h2>
       {nothing ? <Notice title={t('record.nothing')}>{t(nothing)}</Notice> : null}
       {!isWhole && !nothing ? <p className="text-ink-soft">{t('record.preview.notYet')}</p> : null}
       {record.isWaiting && !preview?.data ? <RowsSkeleton rows={4} /> : null}
+      {isWhole && record.changes.length > 0 ? (
+        <UnitChanges changes={record.changes} answers={record.answers} context={record.context} />
+      ) : null}
       {preview?.data ? (
         <PreviewPanel
           preview={preview.data}

@@ -3,6 +3,7 @@ import { useCallback, useEffect, useMemo, useState } from 'react';
 import { usePostGroup, useReverseGroup } from '../../api/entries.ts';
 import { previewQueries, type ToPreview } from '../../api/entry-previews.ts';
 import { answerErrors, type FormError } from '../../api/form-errors.ts';
+import { useChangeUnit, useRefreshUnits } from '../../api/units.ts';
 import { useDraft } from '../../lib/draft.ts';
 import { deviceNow, toDayInput, toLocalInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -12,10 +13,17 @@ import { type Answers, emptyAnswers, type MassUnit } from './answers.ts';
 import { type Complaint, complaintsOf } from './complaints.ts';
 import type { RecordForm } from './form.ts';
 import type { BuiltGroup } from './group-draft.ts';
+import { blankOfChange } from './unit-change.ts';
 import { isReady, useFormContext } from './use-form-context.ts';
 
 /** Long enough that a figure is typed to its end before it is judged. */
 const SETTLES_MS = 350;
+
+/** A sentence of the server, and the blank that it is about. */
+interface Refused {
+  field: string | undefined;
+  message: string;
+}
 
 /** The state of one form: what was typed, what is wrong with it, what it would post, and posting it. */
 export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId: string }) {
@@ -37,9 +45,12 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
   const isWhole = isReady(answers, context) && complaints.every((found) => found.length === 0);
   const nothing = form.nothingToPost?.(answers, context) ?? null;
   const built = useMemo(() => form.build(answers, context), [form, answers, context]);
-  const asked = useSettled(useMemo(() => (isWhole && !nothing ? toPreview(built) : null), [isWhole, nothing, built]));
+  const changes = useMemo(() => form.changes?.(answers, context) ?? [], [form, answers, context]);
+  const { onlyRegister = false } = form;
+  const toAsk = isWhole && !nothing && !onlyRegister;
+  const asked = useSettled(useMemo(() => (toAsk ? toPreview(built) : null), [toAsk, built]));
   const preview = useQuery(previewQueries.of(asked));
-  const [refused, setRefused] = useState<FormError[]>([]);
+  const [refused, setRefused] = useState<Refused[]>([]);
   const change = useCallback(
     (part: Partial<Answers>) => {
       setRefused([]);
@@ -55,21 +66,37 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
   }, [staleAnswer, setAnswers]);
   const post = usePostGroup();
   const reverse = useReverseGroup(built.reverses?.groupId ?? '');
-  const send = (onDone: () => void) => {
-    const deviceSentAt = deviceNow().toISOString();
-    const settled = {
-      onSuccess: () => {
-        clear();
-        onDone();
-      },
-      onError: (error: unknown) => setRefused(answerErrors(error)),
-    };
-    if (built.reverses) reverse.mutate({ ...reversalOf(built), deviceSentAt }, settled);
-    else post.mutate({ ...built.body, deviceSentAt }, settled);
-  };
-  const serverErrors = refused.length > 0 ? refused : preview.isError ? answerErrors(preview.error) : [];
+  const changeUnit = useChangeUnit(answers.unitId);
+  const refreshUnits = useRefreshUnits();
   const fieldOf = (pointer: string) =>
     built.places.find(([place]) => pointer === place || pointer.startsWith(`${place}/`))?.[1];
+  const inBlanks = (errors: readonly FormError[]): Refused[] =>
+    errors.map(({ pointer, message }) => ({ field: fieldOf(pointer), message }));
+  /** One after the other: what went through is not recorded again by the next try, and the group comes last. */
+  const send = async (onDone: () => void): Promise<void> => {
+    for (const change of changes) {
+      try {
+        await changeUnit.mutateAsync(change);
+      } catch (error) {
+        const errors = answerErrors(error);
+        setRefused(errors.map(({ pointer, message }) => ({ field: blankOfChange(change.is, pointer), message })));
+        return;
+      }
+    }
+    const deviceSentAt = deviceNow().toISOString();
+    try {
+      if (built.reverses) await reverse.mutateAsync({ ...reversalOf(built), deviceSentAt });
+      else if (!onlyRegister) await post.mutateAsync({ ...built.body, deviceSentAt });
+    } catch (error) {
+      setRefused(inBlanks(answerErrors(error)));
+      return;
+    }
+    if (changes.length > 0) await refreshUnits();
+    clear();
+    onDone();
+  };
+  const serverErrors = refused.length > 0 ? refused : preview.isError ? inBlanks(answerErrors(preview.error)) : [];
+  const isPreviewed = asked !== null && sameBody(asked, built);
   return {
     answers,
     change,
@@ -80,17 +107,16 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
     nothing,
     built,
     /** Of what is on the screen now; a moment after a keystroke there is none. */
-    preview: asked !== null && sameBody(asked, built) ? preview : null,
-    isWaiting: isWhole && nothing === null && (preview.isFetching || asked === null || !sameBody(asked, built)),
+    preview: isPreviewed ? preview : null,
+    changes,
+    isWaiting: toAsk && (preview.isFetching || !isPreviewed),
+    /** Everything that will be recorded is on the screen. */
+    isShown: onlyRegister ? isWhole : isPreviewed && preview.data !== undefined,
     send,
-    isSending: post.isPending || reverse.isPending,
+    isSending: changeUnit.isPending || post.isPending || reverse.isPending,
     startOver: clear,
-    errorAt: (field: string): string | undefined =>
-      serverErrors.find(({ pointer }) => fieldOf(pointer) === field)?.message,
-    errorsElsewhere: [
-      ...new Set(serverErrors.filter(({ pointer }) => !fieldOf(pointer)).map(({ message }) => message)),
-    ],
-    refused,
+    errorAt: (field: string): string | undefined => serverErrors.find((refusal) => refusal.field === field)?.message,
+    errorsElsewhere: [...new Set(serverErrors.filter(({ field }) => !field).map(({ message }) => message))],
     words: ({ key, params }: Complaint): string => (key ? t(key, params) : ''),
   };
 }

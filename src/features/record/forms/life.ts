@@ -31,25 +31,30 @@ export const warrantyReplacement: RecordForm = {
       .built(),
 };
 
-/** S16.1: the charge travels behind its valves and no mass moves; the papers say that and where to. */
+/** S16.1: the charge travels behind its valves and no mass moves; the unit stands at its new site from then on. */
 export const relocation: RecordForm = {
   kind: 'relocation',
   about: 'unit',
   rows: 0,
   permission: 'entries:post',
-  questions: () => [
+  questions: ({ choice }, { unit }) => [
     { is: 'unit', id: 'unit' },
     {
       is: 'choice',
       id: 'chargeTravels',
       options: ['behindValves', 'recovered'],
+      wrong:
+        choice === 'recovered' && unit && unit.book.byRefrigerant.some(({ massG }) => massG > 0)
+          ? { field: 'choice', key: 'record.wrong.recoverFirst' }
+          : undefined,
       cautions: [
         { signal: 'danger', key: 'record.caution.noPumpDown' },
         { signal: 'warning', key: 'record.caution.stopCompressor' },
       ],
     },
+    { is: 'site', id: 'movedTo' },
     { is: 'document', id: 'workOrder', required: true, dated: true },
-    { is: 'text', id: 'movedTo', required: true },
+    { is: 'text', id: 'movedNote', required: false },
     { is: 'moment', id: 'movedAt' },
   ],
   build: (answers, context) => {
@@ -57,6 +62,9 @@ export const relocation: RecordForm = {
     if (answers.choice) draft.note(context.say(`record.note.${answers.choice}`));
     return draft.built();
   },
+  changes: ({ ids, siteId, at }, { instant }) => [
+    { is: 'site', body: { id: ids.change, siteId, validFrom: instant(at) } },
+  ],
 };
 
 /** A known book goes with the unit to its customer; one that is not known is handed over by the register alone. */

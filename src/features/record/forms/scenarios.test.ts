@@ -11,6 +11,7 @@ import { foundEmpty, vacuum } from './empty-unit.ts';
 import { invoice } from './invoice.ts';
 import { found, handOver, loss, relocation, warrantyReplacement } from './life.ts';
 import { overchargeRemoved, partialRecovery, recovery } from './recovery.ts';
+import { retrofit } from './retrofit.ts';
 import { certificate, destruction, lend, reclaim, returned } from './sent.ts';
 import { heelRemoved, transfer } from './transfer.ts';
 
@@ -253,6 +254,38 @@ describe('What no case works through', () => {
     expect(body.entries).toEqual([]);
     expect(body.documents).toEqual([{ kind: 'other', number: 'W 12', date: '2026-03-02' }]);
     expect(body.note).toContain('2 Mill Lane');
+  });
+
+  it('S16.1: the unit stands at its new site from the moment of the move', () => {
+    const answers = answersOf({ siteId: 'quay', at: '2026-03-10T12:00:00Z' });
+    expect(relocation.changes?.(answers, contextOf('S16.1'))).toEqual([
+      { is: 'site', body: { id: answers.ids.change, siteId: 'quay', validFrom: '2026-03-10T12:00:00Z' } },
+    ]);
+  });
+
+  it('S16.2: a retrofit dates the new refrigerant and its full charge, in this order, and posts nothing', () => {
+    const answers = answersOf({
+      refrigerant: 'R-407C',
+      mass: grams('1400'),
+      method: 'manufacturer',
+      at: '2026-03-10T12:00:00Z',
+      jobId: 'J1',
+    });
+    const from = { validFrom: '2026-03-10T12:00:00Z', jobId: 'J1' };
+    expect(retrofit.onlyRegister).toBe(true);
+    expect(retrofit.changes?.(answers, contextOf('S16.2'))).toEqual([
+      { is: 'refrigerant', body: { id: answers.ids.change, refrigerant: 'R-407C', ...from } },
+      {
+        is: 'fullCharge',
+        body: {
+          id: answers.ids.change2,
+          mass: { value: '1400', unit: 'g' },
+          method: 'manufacturer',
+          reason: 'record.note.retrofit from=R-22 to=R-407C',
+          ...from,
+        },
+      },
+    ]);
   });
 
   it('a hand-over takes the known book along, and nothing where the book is not known', () => {
