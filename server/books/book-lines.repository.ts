@@ -130,7 +130,6 @@ export async function readPersonSums(manager: EntityManager, { from, to, refrige
        join person p on p.id = m.person_id
        left join recorded r on r.person_id = m.person_id
        left join held h on h.person_id = m.person_id
-       where r.person_id is not null or h.person_id is not null
        order by p.name, m.person_id`,
     [from, to, refrigerant ?? null],
   );

@@ -1,14 +1,13 @@
 import type { z } from 'zod';
-import {
-  type BooksPageQuery,
-  type BooksQuery,
-  type CylinderBook,
-  type JobBook,
-  MOST_DIFFERENCES,
-  type PersonBook,
-  type PurchaseRow,
-  type purchasePage,
-  type SupplierBook,
+import type {
+  BooksPageQuery,
+  BooksQuery,
+  CylinderBook,
+  JobBook,
+  PersonBook,
+  PurchaseRow,
+  purchasePage,
+  SupplierBook,
 } from '../../shared/books/books.schema.ts';
 import { averageIn, worthOf } from '../../shared/books/cost.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
@@ -33,29 +32,38 @@ export function listCylinders(parts: BooksParts, actor: Actor, query: BooksPageQ
   return inFirm(parts.dataSource, actor, (manager) => listCylinderBooks(manager, query));
 }
 
-/** Who moved what, who holds what, and what differed while it was in their hands. */
+/**
+ * Who moved what, who holds what, and what differed while it was in their hands. What was in several hands is charged to
+ * none of them: no reading says in whose it went, and charged to each, the sum would be more than is missing.
+ */
 export function listPeople(parts: BooksParts, actor: Actor, query: BooksQuery): Promise<{ items: PersonBook[] }> {
   return inFirm(parts.dataSource, actor, async (manager) => {
     const people = await readPersonSums(manager, query);
-    const { items } = await readDifferences(manager, { ...query, standingOnly: true, most: MOST_DIFFERENCES });
-    const ofCylinders = items.filter(({ subject }) => subject.kind === 'cylinder');
+    const { items } = await readDifferences(manager, { ...query, standingOnly: true });
+    const ofCylinders = items
+      .filter(({ subject }) => subject.kind === 'cylinder')
+      .map((item) => ({ ...item, hands: new Set(item.heldBetween.flatMap(({ personId }) => personId ?? [])) }));
     return {
-      items: people.map((person) => {
-        const charged = ofCylinders.filter(({ heldBetween }) =>
-          heldBetween.some(({ personId }) => personId === person.personId),
-        );
+      items: people.flatMap((person) => {
+        const held = ofCylinders.filter(({ hands }) => hands.has(person.personId));
+        const alone = held.filter(({ hands }) => hands.size === 1);
+        if (person.entryCount === 0 && person.holdsCylinders === 0 && held.length === 0) return [];
         return {
           ...person,
-          chargedG: roundTo(
-            charged.reduce((sum, { standsG }) => sum + standsG, 0),
-            6,
-          ),
-          chargedBeyondCount: charged.filter(({ verdict }) => verdict !== 'withinScales').length,
+          chargedG: standing(alone),
+          chargedBeyondCount: alone.filter(({ verdict }) => verdict !== 'withinScales').length,
+          sharedG: standing(held.filter(({ hands }) => hands.size > 1)),
         };
       }),
     };
   });
 }
+
+const standing = (items: readonly { standsG: number }[]): number =>
+  roundTo(
+    items.reduce((sum, { standsG }) => sum + standsG, 0),
+    6,
+  );
 
 export function listSuppliers(
   parts: BooksParts,

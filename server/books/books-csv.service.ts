@@ -43,6 +43,7 @@ const COLUMNS: Record<BooksCsvQuery['table'], readonly string[]> = {
     'holdsCylinders',
     'chargedG',
     'chargedBeyondCount',
+    'sharedG',
     'personId',
   ],
   suppliers: ['name', 'boughtG', 'purchaseCount', 'returnedG', 'shortFillG', 'withoutPriceG', 'paid', 'supplierId'],

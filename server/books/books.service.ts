@@ -16,7 +16,7 @@ import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { readFirmMonths } from '../periods/firm-months.repository.ts';
-import { findDifferences } from './difference.repository.ts';
+import { type DifferenceSearch, findDifferences } from './difference.repository.ts';
 import { type Averages, judgeDifferences } from './judge-differences.ts';
 import { readPeriodSums } from './month-sum.repository.ts';
 import { monthStocks, priceRepository, readStockFlows } from './price.repository.ts';
@@ -73,31 +73,34 @@ interface Counted {
 
 export function getDifferences(parts: BooksParts, actor: Actor, query: BooksQuery): Promise<DifferencesResponse> {
   return inFirm(parts.dataSource, actor, async (manager) => {
-    const search = { ...query, standingOnly: false, most: MOST_DIFFERENCES };
-    return readDifferences(manager, search);
+    return readDifferences(manager, { ...query, standingOnly: false }, MOST_DIFFERENCES);
   });
 }
 
-/** What is beyond the scales first. */
+/**
+ * What is beyond the scales first.
+ * @param most how many are listed; the sums are of all
+ */
 export async function readDifferences(
   manager: EntityManager,
-  search: Parameters<typeof findDifferences>[1],
+  search: DifferenceSearch,
+  most: number = Number.POSITIVE_INFINITY,
 ): Promise<DifferencesResponse> {
-  const { rows, itemCount, sizeMicrograms } = await findDifferences(manager, search);
+  const rows = await findDifferences(manager, search);
   const averages = await readAverages(manager, search.refrigerant);
-  const items = (await judgeDifferences(manager, rows, averages)).sort(byVerdict);
-  const size = (wanted: DifferenceItem['verdict']) =>
-    sum(items.filter(({ verdict }) => verdict === wanted).map(({ standsG }) => Math.abs(standsG)));
-  const listedG = sum(items.map(({ standsG }) => Math.abs(standsG)));
+  const all = (await judgeDifferences(manager, rows, averages)).sort(byVerdict);
+  const sizeOf = (items: readonly DifferenceItem[]) => sum(items.map(({ standsG }) => Math.abs(standsG)));
+  const size = (wanted: DifferenceItem['verdict']) => sizeOf(all.filter(({ verdict }) => verdict === wanted));
+  const notListed = all.slice(most);
   return {
-    items,
-    notListed: { count: itemCount - items.length, massG: exact(gramsOfMicrograms(sizeMicrograms) - listedG) },
+    items: all.slice(0, most),
+    notListed: { count: notListed.length, massG: sizeOf(notListed) },
     totals: {
       notExplainedG: size('notExplained'),
       lookAgainG: size('lookAgain'),
       withinScalesG: size('withinScales'),
       byCertificateG: size(null),
-      settledG: sum(items.map(({ settledG }) => Math.abs(settledG))),
+      settledG: sum(all.map(({ settledG }) => Math.abs(settledG))),
     },
     currency: await readCurrency(manager),
   };

@@ -29,7 +29,6 @@ export interface DifferenceSearch {
   refrigerant?: string | undefined;
   /** Leave out what was settled whole. */
   standingOnly: boolean;
-  most: number;
 }
 
 const KINDS = `array['cylinderDifference', 'unitDifference', 'supplierShortFill', 'reclaimerDifference']`;
@@ -62,8 +61,7 @@ const ITEMS = `select d.group_id as "groupId", d.kind, d.subject_kind as "subjec
     coalesce(s.time_zone, f.time_zone) as "timeZone", g.recorded_by as "recordedBy",
     coalesce(p.name, '') as "recordedByName",
     exists (select from flag x where x.firm_id = d.firm_id and x.subject_id = d.subject_id and x.group_id = d.group_id
-      and x.closed_at is null and x.code in ('moreCameOutThanWentIn', 'moreThanFullChargeCameOut')) as flagged,
-    count(*) over ()::integer as "itemCount", sum(abs(d.mass - d.settled)) over ()::text as "sizeOfAll"
+      and x.closed_at is null and x.code in ('moreCameOutThanWentIn', 'moreThanFullChargeCameOut')) as flagged
   from (
     select n.firm_id, n.group_id, n.kind, n.subject_kind, n.subject_id, n.refrigerant, n.booking_month, n.mass,
         coalesce(t.mass, 0) as settled
@@ -80,24 +78,10 @@ const ITEMS = `select d.group_id as "groupId", d.kind, d.subject_kind as "subjec
   left join cylinder c on c.firm_id = d.firm_id and c.id = d.subject_id
   left join unit u on u.firm_id = d.firm_id and u.id = d.subject_id
   left join party y on y.firm_id = d.firm_id and y.id = d.subject_id
-  order by abs(d.mass - d.settled) desc, abs(d.mass) desc, d.group_id limit $5`;
+  order by abs(d.mass - d.settled) desc, abs(d.mass) desc, d.group_id`;
 
-export interface FoundDifferences {
-  rows: DifferenceRow[];
-  /** Of all, listed or not: how many, and the sizes of what stands added up. */
-  itemCount: number;
-  sizeMicrograms: bigint;
-}
-
-/** Differences by the statement that shows them, the largest that stand first. */
-export async function findDifferences(manager: EntityManager, search: DifferenceSearch): Promise<FoundDifferences> {
-  const { from, to, refrigerant, standingOnly, most } = search;
-  const rows = await manager.query<(DifferenceRow & { itemCount: number; sizeOfAll: string })[]>(ITEMS, [
-    from,
-    to,
-    refrigerant ?? null,
-    standingOnly,
-    most,
-  ]);
-  return { rows, itemCount: rows[0]?.itemCount ?? 0, sizeMicrograms: BigInt(rows[0]?.sizeOfAll ?? 0) };
+/** Every difference by the statement that shows it: which of them count most is known once each is judged. */
+export function findDifferences(manager: EntityManager, search: DifferenceSearch): Promise<DifferenceRow[]> {
+  const { from, to, refrigerant, standingOnly } = search;
+  return manager.query(ITEMS, [from, to, refrigerant ?? null, standingOnly]);
 }

@@ -7,8 +7,8 @@ import { problemOfRefusals } from '../http/problem.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { journalNewRows, type RegisterRow, wasMade } from '../journal/register-journal.ts';
 import type { Made } from '../registers/register-rows.ts';
-import { readOpenItems } from './checklist.service.ts';
 import { readFirmMonths } from './firm-months.repository.ts';
+import { readOpenItems } from './open-items.service.ts';
 import { requireOpenMonth } from './open-month.ts';
 import { type CarriedItemRow, periodRepository } from './period.repository.ts';
 
@@ -36,7 +36,7 @@ export function carryItems(
       if (!(await periods.isActiveMember(carriedBy))) {
         throw problemOfRefusals([{ code: 'notKnownHere', path: '/carriedBy', given: carriedBy }]);
       }
-      const open = new Set((await readOpenItems(manager, month, firm.timeZone)).items.map(({ key }) => key));
+      const open = new Set((await readOpenItems(manager, month, firm.timeZone)).map(({ key }) => key));
       const refusals = missing
         .filter(({ itemKey }) => !open.has(itemKey))
         .map(({ id, itemKey }) => ({

@@ -1,22 +1,17 @@
 import type { EntityManager } from 'typeorm';
-import { differenceKey, openItemKey } from '../../shared/periods/item-key.ts';
-import { endOfMonth, type Month, monthsBetween, startOfMonth } from '../../shared/periods/month.ts';
-import type { Carried, Checklist, OpenItem, PeriodRow, PeriodsResponse } from '../../shared/periods/periods.schema.ts';
+import { type Month, monthsBetween } from '../../shared/periods/month.ts';
+import type { Checklist, PeriodRow, PeriodsResponse } from '../../shared/periods/periods.schema.ts';
 import type { Locale } from '../../shared/session/session.schema.ts';
 import { monthInZone } from '../../shared/units/calendar.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
-import { readBooks, readDifferences } from '../books/books.service.ts';
+import { readBooks } from '../books/books.service.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import { placeView } from '../entries/place-labels.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
-import { canonicalText, sha256Hex } from '../journal/canonical-text.ts';
 import { type FirmMonths, readFirmMonths } from './firm-months.repository.ts';
-import { type CarriedRow, type MonthSpan, openItemsRepository } from './open-items.repository.ts';
-import { type ClosedPeriod, periodRepository, type SettledSumRow } from './period.repository.ts';
-
-/** The most differences that one month's list holds. */
-const MOST = 2_000;
+import { hashToSign, listedOf, readOpenItems, undecided } from './open-items.service.ts';
+import { periodRepository, type SettledSumRow } from './period.repository.ts';
 
 export function listPeriods(parts: Pick<Parts, 'dataSource' | 'now'>, actor: Actor): Promise<PeriodsResponse> {
   return inFirm(parts.dataSource, actor, async (manager) => {
@@ -62,95 +57,24 @@ export function getChecklist(parts: Pick<Parts, 'dataSource' | 'now'>, actor: Ac
     const firm = await readFirmMonths(manager);
     const state = stateOf(month, firm, monthInZone(parts.now().getTime(), firm.timeZone));
     const periods = periodRepository(manager);
-    const open = state === 'closed' ? { items: [], notListed: 0 } : await readOpenItems(manager, month, firm.timeZone);
-    const closed = state === 'closed' ? await periods.find(month) : null;
+    const open = state === 'closed' ? [] : await readOpenItems(manager, month, firm.timeZone);
+    const { items, notListed } = listedOf(open);
+    const closed = state === 'closed' ? await signedOffOf(manager, month) : null;
     const { equation } = await readBooks(manager, { from: month, to: month });
     return {
       month,
       state,
       timeZone: firm.timeZone,
-      ...open,
+      items,
+      notListed,
       settled: (await periods.settledIn(month)).flatMap((row) => settledRowOf(row, actor.locale)),
-      undecided: undecided(open.items).length,
-      sumsHash: await hashSums(manager, month),
+      undecided: undecided(open).length,
+      carried: open.filter(({ carried }) => carried !== null).length,
+      sumsHash: closed?.sumsHash ?? (await hashToSign(manager, month, open)),
       equation,
-      signedOff: closed ? await signedOffOf(manager, closed) : null,
+      signedOff: closed?.signedOff ?? null,
     };
   });
-}
-
-export const undecided = (items: readonly OpenItem[]): OpenItem[] =>
-  items.filter(({ needsDecision, carried }) => needsDecision && carried === null);
-
-/** Of which sums a sign-off speaks. */
-export async function hashSums(manager: EntityManager, month: Month): Promise<string> {
-  return sha256Hex(canonicalText(await periodRepository(manager).readSums(month)));
-}
-
-/** Everything that is open at the end of a month, with whoever carries it. */
-export async function readOpenItems(
-  manager: EntityManager,
-  month: Month,
-  timeZone: string,
-): Promise<{ items: OpenItem[]; notListed: number }> {
-  const open = openItemsRepository(manager);
-  const span: MonthSpan = {
-    month,
-    start: new Date(startOfMonth(month, timeZone)),
-    end: new Date(endOfMonth(month, timeZone) + 1),
-  };
-  const decisions = carriedOf(await open.carried(month), month);
-  const differences = await readDifferences(manager, { from: null, to: month, standingOnly: true, most: MOST });
-  const items: OpenItem[] = [
-    ...differences.items.map((difference): OpenItem => {
-      const { verdict, subject, groupId, kind, refrigerant } = difference;
-      const key = differenceKey({ groupId, subjectId: subject.id, kind, refrigerant });
-      const needsDecision = verdict === 'notExplained' || verdict === 'lookAgain';
-      return { kind: 'difference', needsDecision, ...decisions(key), difference };
-    }),
-    ...(await open.weighIns(span)).map(({ startedAt, ...row }): OpenItem => {
-      const key = openItemKey('weighIn', row.groupId);
-      return {
-        kind: 'weighIn',
-        needsDecision: true,
-        ...decisions(key),
-        ...row,
-        startedAt: startedAt.toISOString(),
-      };
-    }),
-    ...(await open.unweighed(span)).map(({ content, lastWeighedAt, ...row }): OpenItem => {
-      return {
-        kind: 'cylinder',
-        needsDecision: true,
-        ...decisions(openItemKey('cylinder', row.cylinderId)),
-        ...row,
-        contentG: gramsOfMicrograms(BigInt(content)),
-        lastWeighedAt: lastWeighedAt?.toISOString() ?? null,
-      };
-    }),
-    ...(await open.jobsWithoutPosting(span)).map(({ openedAt, closedAt, ...row }): OpenItem => {
-      return {
-        kind: 'job',
-        needsDecision: true,
-        ...decisions(openItemKey('job', row.jobId)),
-        ...row,
-        openedAt: openedAt.toISOString(),
-        closedAt: closedAt?.toISOString() ?? null,
-      };
-    }),
-  ];
-  return { items, notListed: differences.notListed.count };
-}
-
-function carriedOf(rows: readonly CarriedRow[], month: Month) {
-  const latest = new Map<string, Carried>();
-  const now = new Map<string, Carried>();
-  for (const { decidedAt, key, id: _id, ...row } of rows) {
-    const decision = { ...row, decidedAt: decidedAt.toISOString() };
-    if (row.month === month) now.set(key, decision);
-    else latest.set(key, decision);
-  }
-  return (key: string) => ({ key, carried: now.get(key) ?? null, carriedBefore: latest.get(key) ?? null });
 }
 
 function settledRowOf(row: SettledSumRow, locale: Locale): Checklist['settled'] {
@@ -177,22 +101,31 @@ function settledRowOf(row: SettledSumRow, locale: Locale): Checklist['settled'] 
   ];
 }
 
-async function signedOffOf(manager: EntityManager, period: ClosedPeriod): Promise<Checklist['signedOff']> {
+/** As the record of the sign-off says it, with the hash that was signed. */
+async function signedOffOf(
+  manager: EntityManager,
+  month: Month,
+): Promise<{ sumsHash: string; signedOff: NonNullable<Checklist['signedOff']> } | null> {
   const periods = periodRepository(manager);
-  const signed = await periods.readSignedOff(period.id);
-  const carried = signed?.carried ?? [];
+  const period = await periods.find(month);
+  const signed = period && (await periods.readSignedOff(period.id));
+  if (!period || !signed) return null;
+  const { carried, sumsHash, note } = signed;
   const names = await periods.nameOf(carried.map(({ carriedBy }) => carriedBy));
   const reasons = await periods.reasonsOf(carried.map(({ carriedItemId }) => carriedItemId));
   return {
-    at: period.closedAt.toISOString(),
-    byName: period.closedByName,
-    note: signed?.note ?? null,
-    carried: carried.map(({ key, label, carriedBy, carriedItemId }) => ({
-      key,
-      label,
-      personId: carriedBy,
-      name: names.get(carriedBy) ?? '',
-      reason: reasons.get(carriedItemId) ?? '',
-    })),
+    sumsHash,
+    signedOff: {
+      at: period.closedAt.toISOString(),
+      byName: period.closedByName,
+      note,
+      carried: carried.map(({ key, label, carriedBy, carriedItemId }) => ({
+        key,
+        label,
+        personId: carriedBy,
+        name: names.get(carriedBy) ?? '',
+        reason: reasons.get(carriedItemId) ?? '',
+      })),
+    },
   };
 }

@@ -7,9 +7,9 @@ import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { lockHead, postRecords } from '../journal/post-records.ts';
 import { newRowRecords, type RegisterRow, wasMade } from '../journal/register-journal.ts';
 import type { Made } from '../registers/register-rows.ts';
-import { hashSums, readOpenItems, undecided } from './checklist.service.ts';
 import { readFirmMonths } from './firm-months.repository.ts';
 import { openItemsRepository } from './open-items.repository.ts';
+import { hashToSign, readOpenItems, undecided } from './open-items.service.ts';
 import { requireNextMonth } from './open-month.ts';
 import { periodRepository } from './period.repository.ts';
 import { sealAfterClose } from './seal-after-close.ts';
@@ -17,7 +17,7 @@ import { sealAfterClose } from './seal-after-close.ts';
 /**
  * The owner signs a month off: everything open is settled or carried by name, the sums and the names are chained, and
  * from then on the month takes nothing more. Then the chain is sealed.
- * @throws Problem 409 for other content under the same id, 412 when the sums are not those that were seen, 422
+ * @throws Problem 409 for other content under the same id, 412 when sums or names are not those that were seen, 422
  */
 export async function closeMonth(parts: Parts, actor: Actor, request: CloseRequest): Promise<Made<CloseResponse>> {
   const isNew = await inFirm(parts.dataSource, actor, async (manager) => {
@@ -37,10 +37,10 @@ async function closeWithin(parts: Parts, manager: EntityManager, actor: Actor, r
   const { month } = request;
   const firm = await readFirmMonths(manager);
   requireNextMonth(month, firm, parts.now());
-  if ((await hashSums(manager, month)) !== request.sumsHash) {
+  const items = await readOpenItems(manager, month, firm.timeZone);
+  if ((await hashToSign(manager, month, items)) !== request.sumsHash) {
     throw new Problem('seenChanged', { errors: [{ code: 'seenChanged', path: '/sumsHash' }] });
   }
-  const { items } = await readOpenItems(manager, month, firm.timeZone);
   const open = undecided(items);
   if (open.length > 0) {
     const errors = open.map((item) => ({ code: 'itemOpen', path: `/items/${item.key}`, given: labelOf(item) }));

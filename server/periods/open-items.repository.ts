@@ -74,7 +74,7 @@ export function openItemsRepository(manager: EntityManager) {
           where g.open_weigh_in and g.occurred_at < $1 and ${STANDS('g')}
             and not exists (select from entry_group k where k.firm_id = g.firm_id and k.closes_group_id = g.id
               and ${STANDS('k')})
-          order by g.occurred_at, g.sequence limit 500`,
+          order by g.occurred_at, g.sequence`,
         [end],
       ),
     /** Cylinders with content at the end of the month that nobody has weighed since it began. */
@@ -97,7 +97,7 @@ export function openItemsRepository(manager: EntityManager) {
             where r.firm_id = c.firm_id and r.cylinder_id = c.id and r.mode = 'gross' and r.read_at >= $1
               and not exists (select from entry_group x
                 where x.firm_id = r.firm_id and x.reverses_group_id = r.group_id))
-          order by c.tag, c.id limit 2000`,
+          order by c.tag, c.id`,
         [start, end, LEAST_CONTENT.toString()],
       ),
     /** Jobs of the month that moved nothing: begun by its end, and not ended before it began. */
@@ -111,7 +111,7 @@ export function openItemsRepository(manager: EntityManager) {
           left join customer k on k.firm_id = s.firm_id and k.id = s.customer_id
           where j.opened_at < $2 and (j.closed_at is null or j.closed_at >= $1)
             and not exists (select from entry_group g where g.firm_id = j.firm_id and g.job_id = j.id and ${STANDS('g')})
-          order by j.opened_at, j.id limit 1000`,
+          order by j.opened_at, j.id`,
         [start, end],
       ),
     /** What is carried for this month, and what was for earlier ones; the last decision of each item and month. */

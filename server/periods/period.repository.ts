@@ -9,6 +9,7 @@ export type CarriedItemRow = CarriedItemEntity;
 
 /** What was chained of a period when it was signed off. */
 export interface SignedOff {
+  sumsHash: string;
   /** Beside the chain, which holds its hash. */
   note: string | null;
   carried: { key: string; label: string; carriedBy: string; carriedItemId: string }[];
@@ -53,8 +54,8 @@ export function periodRepository(manager: EntityManager) {
         [periodId],
       );
       if (!row) return null;
-      const { after } = JSON.parse(row.content) as { after: Pick<SignedOff, 'carried'> };
-      return { note: row.note, carried: after.carried };
+      const { after } = JSON.parse(row.content) as { after: Pick<SignedOff, 'carried' | 'sumsHash'> };
+      return { note: row.note, carried: after.carried, sumsHash: after.sumsHash };
     },
     async reasonsOf(carriedItemIds: readonly string[]): Promise<Map<string, string>> {
       const rows = await manager.query<{ id: string; reason: string }[]>(

@@ -14,8 +14,8 @@ import { problemOfRefusals } from '../http/problem.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { journalNewRows, type RegisterRow, wasMade } from '../journal/register-journal.ts';
 import type { Made } from '../registers/register-rows.ts';
-import { readOpenItems } from './checklist.service.ts';
 import { readFirmMonths } from './firm-months.repository.ts';
+import { readOpenItems } from './open-items.service.ts';
 import { requireOpenMonth } from './open-month.ts';
 import { periodRepository } from './period.repository.ts';
 import { type SettlementRow, settlementRepository } from './settlement.repository.ts';
@@ -60,7 +60,7 @@ async function requireDifference(
   { key, month }: SettleRequest,
   timeZone: string,
 ): Promise<DifferenceItem> {
-  const { items } = await readOpenItems(manager, month, timeZone);
+  const items = await readOpenItems(manager, month, timeZone);
   const item = items.find((each) => each.key === key);
   if (item?.kind !== 'difference') {
     throw problemOfRefusals([{ code: 'notOpenItem', path: '/key', given: key, allowed: month }]);

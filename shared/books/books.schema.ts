@@ -85,7 +85,7 @@ export type BooksResponse = z.output<typeof booksResponse>;
 
 /** What a difference was judged in. */
 export const DIFFERENCE_SUBJECTS = ['cylinder', 'unit', 'reclaimer'] as const;
-/** The most differences of one list: the largest; the rest is counted. */
+/** The most differences of one list: beyond the scales first, then the largest; the rest is counted. */
 export const MOST_DIFFERENCES = 200;
 
 /** What one statement (a reading, an empty unit, a certificate) shows against the book. */
@@ -125,7 +125,7 @@ export type DifferenceItem = z.output<typeof differenceItem>;
 export const differencesResponse = z.strictObject({
   /** Beyond the scales first, the largest first. */
   items: z.array(differenceItem),
-  /** Smaller ones that were left out of the list. */
+  /** Those that were left out of the list; they are in the totals. */
   notListed: z.strictObject({ count: z.int(), massG: z.number() }),
   /** Sizes added up, of what stands, by verdict. */
   totals: z.strictObject({
@@ -171,9 +171,11 @@ export const personBook = z.strictObject({
   /** In cylinders that this person holds now. */
   holdsG: z.number(),
   holdsCylinders: z.int(),
-  /** Differences of the listed cylinders that were in these hands, alone or with others, between the two readings. */
+  /** Differences of cylinders that were in these hands alone between the two readings. */
   chargedG: z.number(),
   chargedBeyondCount: z.int(),
+  /** Of cylinders that others held too between the two readings: told of each of them, and no sum over people. */
+  sharedG: z.number(),
 });
 export const peopleBooks = z.strictObject({ items: z.array(personBook) });
 export type PersonBook = z.output<typeof personBook>;

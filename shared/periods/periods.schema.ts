@@ -105,12 +105,13 @@ export const checklist = z.strictObject({
   state: periodRow.shape.state,
   timeZone: z.string(),
   items: z.array(openItem),
-  /** Differences too many to be listed. */
+  /** Items beyond what one list holds; those that wait for a decision are listed first. */
   notListed: z.int(),
   settled: z.array(settledRow),
-  /** Items that need a decision and have none. */
+  /** Of all items, listed or not: those that need a decision and have none, and those that somebody carries. */
   undecided: z.int(),
-  /** Says of which sums the sign-off speaks: it is asked back. */
+  carried: z.int(),
+  /** Says of which sums and names the sign-off speaks: it is asked back. Of a closed month, as it was signed. */
   sumsHash: z.string().regex(/^[0-9a-f]{64}$/),
   equation: booksResponse.shape.equation,
   /** Of a closed month: who signed off, and what was carried. */

@@ -123,6 +123,7 @@ export const checklist: Checklist = {
   notListed: 0,
   settled: [],
   undecided: 2,
+  carried: 0,
   sumsHash: SUMS_HASH,
   equation,
   signedOff: null,

@@ -21,7 +21,7 @@ export function SignOff({ checklist, onClosed }: { checklist: Checklist; onClose
   const close = useCloseMonth();
   const [draft, setDraft, clear] = useDraft(`close.${checklist.month}`, () => ({ id: newId(), note: '' }));
   const [errors, setErrors] = useState<FormError[]>([]);
-  const { month, sumsHash, undecided, equation, settled, items } = checklist;
+  const { month, sumsHash, undecided, carried, equation, settled } = checklist;
   const name = longMonth(format.locale, month);
   const partOf = (part: string) => equation.wentOut.find((each) => each.part === part)?.massG ?? 0;
   const send = () => {
@@ -57,7 +57,7 @@ export function SignOff({ checklist, onClosed }: { checklist: Checklist; onClose
           })}{' '}
           {t('books.signOff.decided', {
             settled: settled.length,
-            carried: items.filter(({ carried }) => carried !== null).length,
+            carried,
           })}
         </p>
         {undecided > 0 ? <Notice title={t('books.signOff.open', { count: undecided })} /> : null}

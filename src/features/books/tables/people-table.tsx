@@ -31,6 +31,7 @@ export function PeopleTable({ period }: { period: BooksPeriod }) {
         figure: true,
         cell: (row) => (row.chargedBeyondCount === 0 ? '' : number(row.chargedBeyondCount)),
       },
+      { id: 'shared', head: t('books.col.shared'), unit, figure: true, cell: (row) => some(row.sharedG) },
       { id: 'into', head: t('books.col.intoUnits'), unit, figure: true, cell: (row) => some(row.intoUnitsG) },
       {
         id: 'recovered',
