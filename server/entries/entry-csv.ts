@@ -4,11 +4,19 @@ import pg from 'pg';
 import copyStreams from 'pg-copy-streams';
 import type { EntityManager } from 'typeorm';
 import type { EntryExportQuery } from '../../shared/entries/entry.schema.ts';
+import type { Locale } from '../../shared/session/session.schema.ts';
 import type { Conditions } from '../lists/list-query.ts';
+import { columnHead, yesOrNo } from '../messages/column-heads.ts';
 import { ENTRY_SORT, entriesFrom, entryConditions } from './entry-list.repository.ts';
 
 /** A cell that a spreadsheet would run as a formula is made plain text by an apostrophe before it. */
 export const plain = (sql: string): string => `case when ${sql} ~ '^[=+@\\t\\r-]' then '''' || ${sql} else ${sql} end`;
+
+/** Yes or no in words; what is not known stays empty. */
+export function inWords(sql: string, locale: Locale): string {
+  const { yes, no } = yesOrNo(locale);
+  return `case when ${sql} then ${pg.escapeLiteral(yes)} when not (${sql}) then ${pg.escapeLiteral(no)} end`;
+}
 
 const place = (end: 'from' | 'to'): string =>
   `coalesce(${plain(`${end}_label.label`)}, e.${end}_place || coalesce(' (' || e.${end}_as || ')', ''))`;
@@ -20,7 +28,7 @@ const label = (end: 'from' | 'to'): string => `left join lateral (
     union all select name from customer m where m.firm_id = e.firm_id and m.id = e.${end}_id
     limit 1) ${end}_label on true`;
 
-/** Column names are words of the log, the same in every language: files are read by programs too. */
+/** Names of the columns, whose words are `column.<name>` of the catalogue. */
 export const ENTRY_COLUMNS: readonly (readonly [name: string, sql: string])[] = [
   ['sequence', 'e.sequence'],
   ['occurredAt', `to_char(e.occurred_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`],
@@ -58,11 +66,15 @@ export const withValues = ({ sql, values }: Pick<Conditions, 'sql' | 'values'>):
 export const ENTRIES_WITH_LABELS = `${entriesFrom('entry e')} ${label('from')} ${label('to')}
     left join unit un on un.firm_id = e.firm_id and un.id = e.unit_id`;
 
-function statement(query: EntryExportQuery): string {
+const YES_OR_NO: ReadonlySet<string> = new Set(['late', 'addedByServer', 'atLeast']);
+
+function statement(query: EntryExportQuery, locale: Locale): string {
   const where = withValues(entryConditions(query));
   const { columns, direction } = ENTRY_SORT[query.sort];
   const order = columns.map(({ sql }) => `${sql} ${direction}`).join(', ');
-  const select = ENTRY_COLUMNS.map(([name, sql]) => `${sql} as "${name}"`).join(', ');
+  const select = ENTRY_COLUMNS.map(
+    ([name, sql]) => `${YES_OR_NO.has(name) ? inWords(sql, locale) : sql} as "${columnHead(name, locale)}"`,
+  ).join(', ');
   return `copy (select ${select} from ${ENTRIES_WITH_LABELS} where ${where} order by ${order}) to stdout with (format csv, header)`;
 }
 
@@ -70,11 +82,12 @@ function statement(query: EntryExportQuery): string {
 export async function sendEntriesCsv(
   manager: EntityManager,
   query: EntryExportQuery,
+  locale: Locale,
   res: Response,
   fileName: string,
 ): Promise<void> {
   const client = (await manager.queryRunner?.connect()) as pg.PoolClient;
-  const rows = client.query(copyStreams.to(statement(query)));
+  const rows = client.query(copyStreams.to(statement(query, locale)));
   res.type('text/csv; charset=utf-8').attachment(fileName);
   await pipeline(rows, res);
 }

@@ -50,7 +50,12 @@ export function exportEntries(parts: Parts, actor: Actor, query: EntryExportQuer
     });
   }
   const fileName = `log-${parts.now().toISOString().slice(0, 10)}.csv`;
-  return inFirm(parts.dataSource, actor, (manager) => sendEntriesCsv(manager, query, res, fileName), 'REPEATABLE READ');
+  return inFirm(
+    parts.dataSource,
+    actor,
+    (manager) => sendEntriesCsv(manager, query, actor.locale, res, fileName),
+    'REPEATABLE READ',
+  );
 }
 
 /** What counts for the leak rate of a unit, by the judge's own rule over its whole timeline. */

@@ -10,10 +10,9 @@ const FORM: Readonly<Partial<Record<CellKind, string>>> = { instant: 'yyyy-mm-dd
 // biome-ignore lint/suspicious/noControlCharactersInRegex: these are the ones
 const NOT_IN_XML = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]/g;
 
-function cellOf(value: unknown, kind: CellKind): string | number | boolean | Date | null {
+function cellOf(value: unknown, kind: CellKind): string | number | Date | null {
   if (value === null || value === undefined) return null;
   if (kind === 'number') return Number(value);
-  if (kind === 'boolean') return Boolean(value);
   if (kind === 'instant') return new Date(String(value));
   if (kind === 'day') return new Date(`${String(value).slice(0, 10)}T00:00:00Z`);
   return String(value).replaceAll(NOT_IN_XML, '');

@@ -1,5 +1,6 @@
 import calculations from './calculations.en.json';
 import charge from './charge.en.json';
+import columns from './columns.en.json';
 import documents from './documents.en.json';
 import exports from './exports.en.json';
 import flags from './flags.en.json';
@@ -17,6 +18,7 @@ import stockTake from './stock-take.en.json';
 export const catalogueEn: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
+  ...columns,
   ...documents,
   ...exports,
   ...imports,

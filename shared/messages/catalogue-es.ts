@@ -1,5 +1,6 @@
 import calculations from './calculations.es.json';
 import charge from './charge.es.json';
+import columns from './columns.es.json';
 import documents from './documents.es.json';
 import exports from './exports.es.json';
 import flags from './flags.es.json';
@@ -14,6 +15,7 @@ import stockTake from './stock-take.es.json';
 export const catalogueEs: Readonly<Record<string, string>> = {
   ...calculations,
   ...charge,
+  ...columns,
   ...documents,
   ...exports,
   ...imports,

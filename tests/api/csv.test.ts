@@ -2,6 +2,7 @@ import { v7 as uuid } from 'uuid';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { startTestApp, type TestApp } from '../support/app.ts';
 import { inCylinder, inUnit, type Ledger, massOf, posted, startLedger, weighIn } from '../support/ledger.ts';
+import { linesByName, readCsv } from '../support/read-csv.ts';
 
 let app: TestApp;
 let ledger: Ledger;
@@ -25,29 +26,7 @@ beforeAll(async () => {
 });
 afterAll(() => app.close());
 
-/** RFC 4180, as a spreadsheet reads it. */
-function parseCsv(text: string): string[][] {
-  const rows: string[][] = [[]];
-  let cell = '';
-  let quoted = false;
-  for (let index = 0; index < text.length; index++) {
-    const sign = text[index];
-    if (quoted && sign === '"' && text[index + 1] === '"') {
-      cell += '"';
-      index += 1;
-    } else if (sign === '"') quoted = !quoted;
-    else if (!quoted && (sign === ',' || sign === '\n')) {
-      rows.at(-1)?.push(cell);
-      cell = '';
-      if (sign === '\n') rows.push([]);
-    } else cell += sign;
-  }
-  return rows.slice(0, -1);
-}
-const asObjects = (text: string) => {
-  const [head = [], ...lines] = parseCsv(text);
-  return lines.map((line) => Object.fromEntries(head.map((name, column) => [name, line[column]])));
-};
+const asObjects = linesByName;
 
 describe('The log as CSV', () => {
   it('holds the same entries as the list, in its order, as filtered', async () => {
@@ -75,10 +54,23 @@ describe('The log as CSV', () => {
     });
   });
 
+  it('has heads in the words of who takes it out, with their unit, and says yes and no', async () => {
+    const { head, lines } = readCsv((await ledger.client.get('/entries.csv?kind=extraCharge')).body);
+    expect(head).toEqual(expect.arrayContaining(['no.', 'when (UTC)', 'mass (g)', 'recorded by', 'at least']));
+    expect(lines.map((line) => [line.late, line['at least'], line['worked out by the program']])).toEqual([
+      ['no', 'no', 'no'],
+      ['no', 'no', 'no'],
+    ]);
+    const spanish = await app.signIn(await app.addPerson(['complianceManager'], { firmId: ledger.firm.id }));
+    const { version } = (await spanish.get('/me')).body;
+    await spanish.patch('/me', version, { preferences: { locale: 'es-ES' } });
+    const inSpanish = readCsv((await spanish.get('/entries.csv?kind=extraCharge')).body);
+    expect(inSpanish.head).toEqual(expect.arrayContaining(['n.º', 'cuándo (UTC)', 'masa (g)', 'registrado por']));
+    expect(inSpanish.lines[0]).toMatchObject({ tardío: 'no', 'masa (g)': '90.718474' });
+  });
+
   it('defuses every cell that a spreadsheet would run as a formula', async () => {
-    const cells = parseCsv((await ledger.client.get('/entries.csv')).body)
-      .slice(1)
-      .flat();
+    const cells = readCsv((await ledger.client.get('/entries.csv')).body).lines.flatMap((line) => Object.values(line));
     expect(cells.filter((cell) => /^[=+@\t\r-]/.test(cell))).toEqual([]);
     expect(cells).toEqual(expect.arrayContaining([`'=HYPERLINK("http://example.test")`, `'@unit, "quoted"`, `'+1+1`]));
   });

@@ -11,6 +11,7 @@ import { type ExportWorker, startExportWorker } from '../../server/exports/expor
 import { startTestApp, type TestApp } from '../support/app.ts';
 import { exportRequests, until } from '../support/export-requests.ts';
 import { type Ledger, startLedger, weighIn } from '../support/ledger.ts';
+import { readCsv } from '../support/read-csv.ts';
 
 const home = mkdtempSync(path.join(tmpdir(), 'tarewright-exports-'));
 let app: TestApp;
@@ -270,7 +271,9 @@ describe('A finished export', () => {
       await book.xlsx.load((await download(xlsx.id)).bytes as unknown as ArrayBuffer);
       const rows = (book.worksheets[0]?.getSheetValues() ?? []).slice(1) as unknown[][];
 
-      expect(rows[0]?.slice(1)).toEqual(text.split('\n')[0]?.split(','));
+      const { head, lines } = readCsv(text);
+      expect(rows[0]?.slice(1)).toEqual(head);
+      expect(lines.flatMap((line) => Object.values(line)).filter((cell) => cell === 't' || cell === 'f')).toEqual([]);
       expect(rows.length - 1).toBe(views[0]?.rowsDone);
       expect(views[1]?.rowsDone).toBe(views[0]?.rowsDone);
       const cells = rows.flatMap((row) => row.slice(1)).filter((cell) => typeof cell === 'string');

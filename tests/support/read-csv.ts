@@ -1,3 +1,20 @@
+import { readFileSync } from 'node:fs';
+
+const names = new Map<string, string>();
+for (const language of ['en', 'es']) {
+  const file = JSON.parse(readFileSync(`shared/messages/columns.${language}.json`, 'utf8')) as Record<string, string>;
+  for (const [key, head] of Object.entries(file)) {
+    if (!names.has(head)) names.set(head, key.slice('column.'.length));
+  }
+}
+
+/** The lines of a CSV by the names that their columns have in the API, whatever language their heads are in. */
+export function linesByName(text: string): Record<string, string>[] {
+  return readCsv(text).lines.map((line) =>
+    Object.fromEntries(Object.entries(line).map(([head, cell]) => [names.get(head) ?? head, cell])),
+  );
+}
+
 /** RFC 4180, as a spreadsheet reads it: each line by the names of the head. */
 export function readCsv(text: string): { head: string[]; lines: Record<string, string>[] } {
   const rows: string[][] = [[]];

@@ -1,13 +1,15 @@
 import type { CreateExportRequest, ExportTable } from '../../../shared/exports/export.schema.ts';
-import { plain, withValues } from '../../entries/entry-csv.ts';
+import type { Locale } from '../../../shared/session/session.schema.ts';
+import { inWords, plain, withValues } from '../../entries/entry-csv.ts';
 import type { Conditions } from '../../lists/list-query.ts';
+import { columnHead } from '../../messages/column-heads.ts';
 
 /** How a spreadsheet takes a cell; CSV takes the text as it is. */
 export type CellKind = 'text' | 'number' | 'boolean' | 'instant' | 'day';
 /** `sql` of a text that a person may have typed goes through `typed`. */
 export type Column = readonly [name: string, sql: string, kind?: CellKind];
 
-/** The rows of one table as filtered. Column names are the same in every language: files are read by programs too. */
+/** The rows of one table as filtered. */
 export interface TableRows {
   columns: readonly Column[];
   from: string;
@@ -32,6 +34,14 @@ export const grams = (name: string, sql: string): Column => [name, `trim_scale($
 /** `-tag` is `tag desc`: `columns` are what the name stands for. */
 export function orderOf(sort: string, columns: readonly string[]): string {
   return columns.map((column) => `${column} ${sort.startsWith('-') ? 'desc' : 'asc'}`).join(', ');
+}
+
+/** As who takes it out reads it in a spreadsheet: heads in words with their unit, yes and no instead of true and false. */
+export function inWordsOf(rows: TableRows, locale: Locale): TableRows {
+  const columns = rows.columns.map(
+    ([name, sql, kind]): Column => [columnHead(name, locale), kind === 'boolean' ? inWords(sql, locale) : sql, kind],
+  );
+  return { ...rows, columns };
 }
 
 export function selectOf({ columns, from, conditions, order }: TableRows): string {
