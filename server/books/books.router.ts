@@ -13,6 +13,7 @@ import {
   purchasePage,
   supplierBooks,
 } from '../../shared/books/books.schema.ts';
+import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { madeOrFound, REPEATABLE } from '../registers/register-routes.ts';
@@ -20,7 +21,7 @@ import { listCylinders, listJobs, listPeople, listPurchases, listSuppliers } fro
 import { getBooks, getDifferences } from './books.service.ts';
 import { booksCsv } from './books-csv.service.ts';
 import { getCost } from './cost.service.ts';
-import { CSV_ANSWER, sendCsv } from './csv-table.ts';
+import { CSV_ANSWER } from './csv-table.ts';
 import { addPrice } from './price.service.ts';
 
 export function bookRoutes(parts: Parts): ApiRoutes {
@@ -127,10 +128,15 @@ export function bookRoutes(parts: Parts): ApiRoutes {
       path: '/books.csv',
       summary: 'One table of the books as CSV',
       query: booksCsvQuery,
+      description: JOURNALLED,
       responses: { 200: CSV_ANSWER },
+      problems: JOURNALLED_GET_PROBLEMS,
     },
-    async ({ actor, query, res }) => {
-      sendCsv(res, `books-${query.table}-${query.from}-${query.to}.csv`, await booksCsv(parts, actor, query));
+    async ({ req, actor, query, res }) => {
+      refuseUnasked(req);
+      const text = await booksCsv(parts, actor, query);
+      const fileName = `books-${query.table}-${query.from}-${query.to}.csv`;
+      await sendJournalledCsv(parts, actor, res, { document: 'books', filters: query, fileName, text });
       return undefined;
     },
   );

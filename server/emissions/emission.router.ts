@@ -1,5 +1,6 @@
 import { emissionsQuery, emissionsResponse } from '../../shared/books/emissions.schema.ts';
-import { CSV_ANSWER, sendCsv } from '../books/csv-table.ts';
+import { CSV_ANSWER } from '../books/csv-table.ts';
+import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { emissionsCsv, getEmissions } from './emission.service.ts';
@@ -20,10 +21,19 @@ export function emissionRoutes(parts: Parts): ApiRoutes {
     async ({ actor, query }) => ok(await getEmissions(parts, actor, query)),
   );
   routes.add(
-    { ...reads, path: '/emissions.csv', summary: 'Emissions as CSV', responses: { 200: CSV_ANSWER } },
-    async ({ actor, query, res }) => {
-      const emissions = await getEmissions(parts, actor, query);
-      sendCsv(res, `emissions-by-${query.by}.csv`, emissionsCsv(emissions));
+    {
+      ...reads,
+      path: '/emissions.csv',
+      summary: 'Emissions as CSV',
+      description: JOURNALLED,
+      responses: { 200: CSV_ANSWER },
+      problems: JOURNALLED_GET_PROBLEMS,
+    },
+    async ({ req, actor, query, res }) => {
+      refuseUnasked(req);
+      const text = emissionsCsv(await getEmissions(parts, actor, query));
+      const fileName = `emissions-by-${query.by}.csv`;
+      await sendJournalledCsv(parts, actor, res, { document: 'emissions', filters: query, fileName, text });
       return undefined;
     },
   );

@@ -8,6 +8,7 @@ import {
   readingListQuery,
   readingPage,
 } from '../../shared/entries/entry.schema.ts';
+import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { exportEntries, getCountedAdditions, getGroup, getOnHand, listEntries, listReadings } from './entry.service.ts';
@@ -35,11 +36,13 @@ export function entryRoutes(parts: Parts): ApiRoutes {
       summary: 'The log as CSV, as filtered',
       description:
         'Masses in grams, times in UTC. Cells that a spreadsheet would run as a formula begin with an apostrophe. ' +
-        'Managers take out everything, readers what they see, technicians their own (personId).',
+        `Managers take out everything, readers what they see, technicians their own (personId). ${JOURNALLED}`,
       query: entryExportQuery,
       responses: { 200: { mediaType: 'text/csv', description: 'One line an entry, with a head line' } },
+      problems: JOURNALLED_GET_PROBLEMS,
     },
-    async ({ actor, query, res }) => {
+    async ({ req, actor, query, res }) => {
+      refuseUnasked(req);
       await exportEntries(parts, actor, query, res);
       return undefined;
     },

@@ -10,7 +10,9 @@ import { countedAdditions, fullChargeRises } from '../../shared/ledger/counted-a
 import { dayInZone } from '../../shared/units/calendar.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { inFirm } from '../database/firm-scope.ts';
-import { type Actor, mayActor } from '../http/actor.ts';
+import { mayExport } from '../exports/export-rights.ts';
+import { journalCsv } from '../exports/send-csv.ts';
+import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem } from '../http/problem.ts';
 import { sendEntriesCsv } from './entry-csv.ts';
@@ -42,20 +44,15 @@ export function listReadings(parts: Parts, actor: Actor, query: ReadingListQuery
  * The log as a file. Who makes exports takes out everything; a reader what a reader sees; a technician their own.
  * @throws Problem 403
  */
-export function exportEntries(parts: Parts, actor: Actor, query: EntryExportQuery, res: Response): Promise<void> {
-  const isReader = actor.roles.includes('reader');
-  if (!mayActor(actor, 'exports:make') && !isReader && query.personId !== actor.personId) {
+export async function exportEntries(parts: Parts, actor: Actor, query: EntryExportQuery, res: Response): Promise<void> {
+  if (!mayExport(actor, { what: 'entries', filters: query })) {
     throw new Problem('notPermitted', {
       errors: [{ code: 'ownEntriesOnly', path: '/personId', given: query.personId ?? null, allowed: actor.personId }],
     });
   }
   const fileName = `log-${parts.now().toISOString().slice(0, 10)}.csv`;
-  return inFirm(
-    parts.dataSource,
-    actor,
-    (manager) => sendEntriesCsv(manager, query, actor.locale, res, fileName),
-    'REPEATABLE READ',
-  );
+  await journalCsv(parts, actor, { document: 'entries', filters: query }, null);
+  await inFirm(parts.dataSource, actor, (manager) => sendEntriesCsv(manager, query, res, fileName), 'REPEATABLE READ');
 }
 
 /** What counts for the leak rate of a unit, by the judge's own rule over its whole timeline. */

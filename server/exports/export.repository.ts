@@ -1,11 +1,12 @@
 import type { EntityManager } from 'typeorm';
-import type { ExportView, ExportWhat } from '../../shared/exports/export.schema.ts';
+import type { CreateExportRequest, ExportView, ExportWhat } from '../../shared/exports/export.schema.ts';
 import type { PageQuery } from '../../shared/lists/list.schema.ts';
 import type { Role } from '../../shared/permissions/roles.ts';
-import type { Locale } from '../../shared/session/session.schema.ts';
+import type { Actor } from '../http/actor.ts';
 import { Conditions, readPage, type Sort } from '../lists/list-query.ts';
 import { messageFor } from '../messages/translate.ts';
 import { ExportEntity } from './export.entity.ts';
+import { mayExport } from './export-rights.ts';
 
 export type ExportRow = ExportEntity;
 type ExportJson = Omit<
@@ -34,8 +35,7 @@ const NEWEST_FIRST: Sort = {
 };
 
 export interface Viewer {
-  personId: string;
-  locale: Locale;
+  actor: Actor;
   now: Date;
 }
 
@@ -183,7 +183,7 @@ async function changed(manager: EntityManager, sql: string, values: unknown[]): 
   return count > 0;
 }
 
-function present(row: ExportJson, { personId, locale, now }: Viewer): ExportView {
+function present(row: ExportJson, { actor, now }: Viewer): ExportView {
   const isExpired = row.state === 'done' && row.expiresAt !== null && row.expiresAt <= now;
   return {
     id: row.id,
@@ -202,7 +202,13 @@ function present(row: ExportJson, { personId, locale, now }: Viewer): ExportView
     sha256: row.sha256,
     record: row.recordSequence === null ? null : Number(row.recordSequence),
     problem:
-      row.problem === null ? null : { code: row.problem, message: messageFor(`export.problem.${row.problem}`, locale) },
-    mayDownload: row.state === 'done' && !isExpired && row.requestedBy === personId,
+      row.problem === null
+        ? null
+        : { code: row.problem, message: messageFor(`export.problem.${row.problem}`, actor.locale) },
+    mayDownload:
+      row.state === 'done' &&
+      !isExpired &&
+      row.requestedBy === actor.personId &&
+      mayExport(actor, row as CreateExportRequest),
   };
 }

@@ -20,7 +20,7 @@ import { mayExport } from './export-rights.ts';
 import { countOf } from './tables/table.ts';
 import { isTable, tableRows } from './tables/tables.ts';
 
-const viewerOf = (parts: Parts, { personId, locale }: Actor) => ({ personId, locale, now: parts.now() });
+const viewerOf = (parts: Parts, actor: Actor) => ({ actor, now: parts.now() });
 
 /**
  * Puts an export into the queue, once: the same request again answers with what became of it.
@@ -105,8 +105,8 @@ const MEDIA_TYPES = {
 } as const;
 
 /**
- * Sends the file to who asked for it.
- * @throws Problem 404 for somebody else's or another firm's, 409 while it is not finished, 410 when it is gone
+ * Sends the file to who asked for it, and may still take it out.
+ * @throws Problem 403 where the right to it was lost meanwhile, 404 for somebody else's or another firm's, 409 while it is not finished, 410 when it is gone
  */
 export async function sendExportFile(parts: Parts, actor: Actor, id: string, res: Response): Promise<void> {
   const { view, row } = await inFirm(parts.dataSource, actor, async (manager) => ({
@@ -114,6 +114,8 @@ export async function sendExportFile(parts: Parts, actor: Actor, id: string, res
     row: await exportsRepository(manager).find(id),
   }));
   if (!row || row.requestedBy !== actor.personId) throw new Problem('notFound');
+  if (!mayExport(actor, row as CreateExportRequest))
+    throw new Problem('notPermitted', { params: { permission: 'exports:make' } });
   if (view.state === 'expired') throw new Problem('exportExpired');
   if (view.state !== 'done') throw new Problem('exportNotDone', { params: { state: view.state } });
   const file = await exportFolder(parts.settings.home).read({ firmId: actor.firmId, id, attempt: row.attempts });

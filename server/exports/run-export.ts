@@ -5,13 +5,13 @@ import { THE_PROGRAM } from '../../shared/proof/seal-record.schema.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
-import { lockHead, postRecords } from '../journal/post-records.ts';
+import { journalExport } from '../journal/journal-export.ts';
 import type { ExportRow, FinishedFile } from './export.repository.ts';
 import { exportsRepository } from './export.repository.ts';
 import { exportFolder, FolderRefusal, type WrittenFile } from './export-folder.ts';
 import type { ExportTask } from './export-queue.ts';
 import { mayExport } from './export-rights.ts';
-import { countOf, inWordsOf } from './tables/table.ts';
+import { countOf } from './tables/table.ts';
 import { isTable, type TableRequest, tableRows } from './tables/tables.ts';
 import { writeCsv } from './write-csv.ts';
 import { writeXlsx } from './write-xlsx.ts';
@@ -195,7 +195,7 @@ async function fill(
       if (lines === null) throw new ExportRefusal('noSubject');
       return lines;
     }
-    const rows = inWordsOf(tableRows(request), actor.locale);
+    const rows = tableRows(request);
     const [counted] = await manager.query<{ count: string }[]>(countOf(rows));
     const total = Number(counted?.count);
     if (request.format === 'xlsx' && total > XLSX_LARGEST_ROWS) throw new ExportRefusal('tooManyRows');
@@ -216,23 +216,13 @@ function finish(parts: ExportParts, jobs: DataSource, row: ExportRow, rows: numb
   const at = parts.now();
   const fileName = `${FILE_NAMES[what] ?? what}-${at.toISOString().slice(0, 10)}.${format}`;
   return inFirm(jobs, { firmId, personId, siteIds: null }, async (manager) => {
-    await lockHead(manager);
-    const [posted] = await postRecords(manager, [
-      {
-        type: 'export',
-        id: parts.newId(),
-        recordedAt: at.toISOString(),
-        recordedBy: personId,
-        document: what,
-        format,
-        about: { exportId: id, filters, rows: String(rows), sha256: file.sha256, sizeBytes: String(file.sizeBytes) },
-      },
-    ]);
+    const about = { exportId: id, filters, rows: String(rows), sha256: file.sha256, sizeBytes: String(file.sizeBytes) };
+    const record = await journalExport(parts, manager, { personId }, { document: what, format, about });
     const finished: FinishedFile = {
       rows,
       fileName,
       ...file,
-      record: Number(posted?.sequence),
+      record,
       at,
       expiresAt: new Date(at.getTime() + FILE_KEPT_HOURS * 3600 * 1000),
     };

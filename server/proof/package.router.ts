@@ -1,7 +1,7 @@
 import { proofPackageQuery } from '../../shared/proof/proof.schema.ts';
+import { JOURNALLED_GET_PROBLEMS, refuseUnasked } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import { Problem } from '../http/problem.ts';
 import { sendProofPackage } from './package.service.ts';
 
 export function proofPackageRoutes(parts: Parts): ApiRoutes {
@@ -18,13 +18,10 @@ export function proofPackageRoutes(parts: Parts): ApiRoutes {
       access: 'exports:make',
       query: proofPackageQuery,
       responses: { 200: { mediaType: 'application/zip', description: 'The package' } },
-      problems: ['sealKeyLost', 'busy', 'otherOrigin', 'methodNotAllowed'],
+      problems: ['sealKeyLost', ...JOURNALLED_GET_PROBLEMS],
     },
     async ({ req, actor, query, res }) => {
-      // It writes a record, so that neither a preview nor another site's link may set it off.
-      if (req.method !== 'GET')
-        throw new Problem('methodNotAllowed', { params: { method: req.method }, headers: { Allow: 'GET' } });
-      if (req.get('sec-fetch-site') === 'cross-site') throw new Problem('otherOrigin');
+      refuseUnasked(req);
       await sendProofPackage(parts, actor, query, res);
       return undefined;
     },

@@ -11,9 +11,10 @@ import { inFirm } from '../database/firm-scope.ts';
 import { placeView, readLabels } from '../entries/place-labels.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
+import { journalExport } from '../journal/journal-export.ts';
 import { messageFor } from '../messages/translate.ts';
 import { readVerifier } from '../seals/seal.service.ts';
-import { journalExport, sealChain } from '../seals/seal-chain.ts';
+import { sealChain } from '../seals/seal-chain.ts';
 import {
   type PackedWords,
   readFirm,

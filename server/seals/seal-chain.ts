@@ -1,11 +1,5 @@
 import type { EntityManager } from 'typeorm';
-import type {
-  ExportRecord,
-  KeyStatement,
-  SealKeyRecord,
-  SealRecord,
-  SealStatement,
-} from '../../shared/proof/seal-record.schema.ts';
+import type { KeyStatement, SealKeyRecord, SealRecord, SealStatement } from '../../shared/proof/seal-record.schema.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem } from '../http/problem.ts';
 import { postRecords } from '../journal/post-records.ts';
@@ -104,19 +98,6 @@ async function addKey(
   };
   await postRecords(manager, [record]);
   return key;
-}
-
-/** Chains who took out what, and gives the number of that record; to be called before the first byte of it leaves. */
-export async function journalExport(
-  parts: Pick<Parts, 'now' | 'newId'>,
-  manager: EntityManager,
-  exporter: Sealer,
-  what: Pick<ExportRecord, 'document' | 'format' | 'about'>,
-): Promise<number> {
-  await lockHeadToSeal(manager);
-  const at = parts.now().toISOString();
-  const [posted] = await postRecords(manager, [{ type: 'export', ...authorship(parts, exporter, at), ...what }]);
-  return Number(posted?.sequence);
 }
 
 const authorship = ({ newId }: Pick<Parts, 'newId'>, { personId }: Sealer, at: string) => ({

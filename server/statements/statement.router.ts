@@ -1,5 +1,6 @@
 import { cylinderStatement, statementQuery } from '../../shared/statements/cylinder-statement.schema.ts';
-import { CSV_ANSWER, sendCsv } from '../books/csv-table.ts';
+import { CSV_ANSWER } from '../books/csv-table.ts';
+import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
 import { getStatement, statementCsv } from './cylinder-statement.service.ts';
@@ -26,12 +27,21 @@ export function statementRoutes(parts: Parts): ApiRoutes {
       path: '/cylinders/{id}/statement.csv',
       summary: 'The lines of a statement as CSV',
       access: 'records:read',
+      description: JOURNALLED,
       query: statementQuery,
       responses: { 200: CSV_ANSWER },
+      problems: JOURNALLED_GET_PROBLEMS,
     },
-    async ({ actor, params, query, res }) => {
+    async ({ req, actor, params, query, res }) => {
+      refuseUnasked(req);
       const statement = await getStatement(parts, actor, params.id, query);
-      sendCsv(res, `statement-${statement.from}-${statement.to}.csv`, statementCsv(statement));
+      const { from, to } = statement;
+      await sendJournalledCsv(parts, actor, res, {
+        document: 'cylinderStatement',
+        filters: { cylinderId: params.id, from, to },
+        fileName: `statement-${from}-${to}.csv`,
+        text: statementCsv(statement),
+      });
       return undefined;
     },
   );

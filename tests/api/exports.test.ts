@@ -218,6 +218,44 @@ describe('Who may take out what', () => {
   });
 });
 
+describe('The right to a file', () => {
+  it('is asked once more at the download: who may no longer take it out gets nothing', async () => {
+    await startWorker();
+    const manager = await app.addPerson(['complianceManager'], { firmId: ledger.firm.id });
+    const client = await app.signIn(manager);
+    const { id } = await asked('people', 'csv', {}, client);
+    expect(await ended(id, client)).toMatchObject({ state: 'done', mayDownload: true });
+    const { body } = await ledger.client.get(`/people/${manager.id}`);
+    const demoted = await ledger.client.patch(`/people/${manager.id}`, body.version, { roles: ['technician'] });
+    expect(demoted.status).toBe(200);
+
+    expect((await download(id, client)).status).toBe(403);
+    expect((await client.get(`/exports/${id}`)).body).toMatchObject({ state: 'done', mayDownload: false });
+  });
+
+  it('is narrowed by the scopes of a token', async () => {
+    await startWorker();
+    const { id } = await asked('people');
+    await ended(id);
+    const { body } = await ledger.client.post('/tokens', {
+      id: uuid(),
+      name: 'reads',
+      scopes: ['read'],
+      expiresOn: '2026-12-31',
+    });
+    const headers = { Authorization: `Bearer ${body.secret}` };
+    expect((await fetch(`${app.url}/api/v1/exports/${id}/file`, { headers })).status).toBe(403);
+    expect((await download(id)).status).toBe(200);
+  });
+
+  it('is the technician’s for who both reads and works: not the whole log', async () => {
+    const both = await app.signIn(await app.addPerson(['reader', 'technician'], { firmId: ledger.firm.id }));
+    expect((await ask('entries', 'csv', {}, both)).status).toBe(403);
+    expect((await both.get('/entries.csv')).status).toBe(403);
+    expect((await ask('unitLog', 'pdf', { unitId }, both)).status).toBe(201);
+  });
+});
+
 describe('A finished export', () => {
   it('is a record of the journal: who, what, which filters, how many rows, the SHA-256 of the very file', async () => {
     await startWorker();
