@@ -54,9 +54,9 @@ export async function disposalReport(
   const list = (rows: readonly Recovered[]) =>
     paper.table(
       [
-        { head: words.say('col.when'), width: 17 },
-        { head: words.say('unit.tag'), width: 13 },
-        { head: words.say('unit.site'), width: 30 },
+        { head: words.say('col.when'), width: 23 },
+        { head: words.say('unit.tag'), width: 19 },
+        { head: words.say('unit.site'), width: 24 },
         { head: words.say('col.refrigerant'), width: 11 },
         { head: words.say('disposal.full', { unit: words.massUnit }), width: 13, align: 'right' },
         mass,

@@ -4,8 +4,8 @@ import type { Words } from './words.ts';
 
 /** Columns of a list of entries; what was typed stands beside the mass, because prints show it. */
 export const entryColumns = (words: Words): TableColumn[] => [
-  { head: words.say('col.no'), width: 5, align: 'right' },
-  { head: words.say('col.when'), width: 20 },
+  { head: words.say('col.no'), width: 7, align: 'right' },
+  { head: words.say('col.when'), width: 21 },
   { head: words.say('col.what'), width: 14 },
   { head: words.say('col.fromTo'), width: 21 },
   { head: words.say('col.refrigerant'), width: 10 },

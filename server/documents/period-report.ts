@@ -78,6 +78,8 @@ export async function periodReport(
     const bySize = [...flows].sort(
       (a, b) => Number(isOdd(b)) - Number(isOdd(a)) || (a.massMicrograms < b.massMicrograms ? 1 : -1),
     );
+    // Only stood there: nothing of it moved.
+    if (flows.length === 0) continue;
     paper.table(
       [
         { head: words.say('col.from'), width: 28 },

@@ -6,6 +6,7 @@ import logEs from '../../shared/messages/log-screen.es.json';
 import type { Locale, Preferences } from '../../shared/session/session.schema.ts';
 import { fromBase } from '../../shared/units/quantities.ts';
 import { roundTo } from '../../shared/units/round.ts';
+import { scaleStepIn } from '../../shared/units/scale-step.ts';
 import { type MessageValues, messageFor } from '../messages/translate.ts';
 
 /** Words, dates and masses of one paper: in the language and units of who asked for it. */
@@ -21,6 +22,8 @@ export interface Words {
   /** Without it, for columns whose head says it. */
   massFigure(massG: number): string;
   massUnit: string;
+  /** A step of a scale's display, as the scale was made. */
+  scaleStep(stepG: number): string;
   day(day: string): string;
   instant(at: string | Date, timeZone: string): string;
   /** The day of an instant where it happened. */
@@ -59,13 +62,15 @@ export function wordsOf(
   const logWords: Readonly<Record<string, string>> = locale.startsWith('es') ? logEs : logEn;
   const shown = SHOWN[massPreference ?? 'g'];
   const number = (value: number, decimals: number) =>
-    new Intl.NumberFormat(locale, { minimumFractionDigits: decimals, maximumFractionDigits: decimals }).format(value);
+    new Intl.NumberFormat(locale, { minimumFractionDigits: decimals, maximumFractionDigits: decimals })
+      .format(value)
+      .replace('-', MINUS);
   const massFigure = (massG: number) => {
     const value = fromBase('mass', shown.unit, massG);
     // A difference of 4.4 g against 4.1 g that the scales can tell must not read as 4 and 4.
     const isPartOfGram = shown.unit === 'g' && Math.abs(value - Math.round(value)) >= 0.05;
     const figure = number(value, isPartOfGram ? 1 : shown.decimals);
-    return /^-[0.,]+$/.test(figure) ? figure.slice(1) : figure;
+    return /^\u2212[0.,]+$/.test(figure) ? figure.slice(1) : figure;
   };
   const log = (key: string) => logWords[`log.${key}`] ?? key;
   return {
@@ -81,6 +86,10 @@ export function wordsOf(
     massFigure,
     mass: (massG) => (massG === null ? null : `${massFigure(massG)} ${shown.unit}`),
     massUnit: shown.unit,
+    scaleStep(stepG) {
+      const { value, unit } = scaleStepIn(stepG);
+      return `${new Intl.NumberFormat(locale, { maximumFractionDigits: 3 }).format(value)} ${unit}`;
+    },
     day: (day) =>
       new Intl.DateTimeFormat(locale, { dateStyle: 'medium', timeZone: 'UTC' }).format(new Date(`${day}T12:00:00Z`)),
     instantDay: (at, timeZone) =>

@@ -8,6 +8,7 @@ import {
   type MassPerLengthUnit,
 } from '../../shared/units/factors.ts';
 import { roundTo } from '../../shared/units/round.ts';
+import { scaleStepIn } from '../../shared/units/scale-step.ts';
 import { usePreferences } from './preferences.ts';
 
 /** U+00A0: a figure and its unit stay on one line. */
@@ -118,15 +119,9 @@ const aboutGrams = (massG: number) => roundTo(massG, Math.abs(massG) >= 10 ? 0 :
 
 const totalGrams = (massG: number) => roundTo(massG, Math.abs(massG) >= 1000 ? 0 : 1);
 
-/** Steps that scales of this trade have (common practice); 0.01 lb and 0.1 oz are 4.536 g and 2.835 g. */
-const STEPS = { oz: [0.05, 0.1, 0.2, 0.25, 0.5, 1], lb: [0.01, 0.02, 0.05, 0.1, 0.2, 0.5] } as const;
-
 function scaleStep(locale: Locale, stepG: number): string {
-  for (const unit of ['oz', 'lb'] as const) {
-    const step = STEPS[unit].find((known) => Math.abs(known * gramsPer(unit) - stepG) < 0.001);
-    if (step !== undefined) return `${formatNumber(locale, step, 2)}${NBSP}${unit}`;
-  }
-  return `${formatNumber(locale, stepG, 3)}${NBSP}g`;
+  const { value, unit } = scaleStepIn(stepG);
+  return `${formatNumber(locale, value, unit === 'g' ? 3 : 2)}${NBSP}${unit}`;
 }
 
 const joined = ({ value, unit }: Quantity) => `${value}${NBSP}${unit}`;
