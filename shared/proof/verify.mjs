@@ -629,9 +629,26 @@ async function main(words) {
   }
 }
 
-if (globalThis.process?.argv?.[1]?.endsWith('verify.mjs') && import.meta.url.endsWith('verify.mjs')) {
-  void main(process.argv.slice(2)).then(({ lines, status }) => {
-    for (const line of lines) console.log(line);
-    process.exitCode = status;
-  });
+/** Whatever this file is called, and through whatever link: started by itself, and not imported by another program. */
+async function isStarted() {
+  const started = globalThis.process?.argv?.[1];
+  if (!started) return false;
+  const [{ readFileSync, realpathSync }, { fileURLToPath }] = await Promise.all([load('fs'), load('url')]);
+  try {
+    const file = realpathSync(started);
+    // A program that this file was packed into lies in one file with it, and does not begin as it does.
+    return (
+      file === realpathSync(fileURLToPath(import.meta.url)) &&
+      /^#!.*\r?\n\/\*\*\r?\n \* Checks a Tarewright proof package/.test(readFileSync(file, 'utf8'))
+    );
+  } catch {
+    return false;
+  }
 }
+
+void isStarted().then(async (isProgram) => {
+  if (!isProgram) return;
+  const { lines, status } = await main(process.argv.slice(2));
+  for (const line of lines) console.log(line);
+  process.exitCode = status;
+});
