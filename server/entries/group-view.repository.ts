@@ -26,9 +26,10 @@ const GROUP = `select g.id, g.sequence::text, g.kind, g.occurred_at as "occurred
       limit 1) as note,
     encode(j.hash, 'hex') as hash, encode(b.hash, 'hex') as "previousHash",
     (select coalesce(json_agg(json_build_object('id', r.id, 'cylinderId', r.cylinder_id, 'cylinderTag', coalesce(c.tag, ''),
-        'toolName', t.name, 'moment', r.moment, 'mode', r.mode, 'value', r.typed_value, 'unit', r.typed_unit,
+        'toolId', r.tool_id, 'toolName', t.name, 'moment', r.moment, 'mode', r.mode, 'value', r.typed_value, 'unit', r.typed_unit,
         'mass', r.mass_micrograms::text, 'hoseFull', coalesce(r.hose_full, false), 'hose', r.hose_micrograms::text,
-        'resolutionG', r.resolution_g) order by r.cylinder_id, r.moment = 'after', r.id), '[]')
+        'resolutionG', r.resolution_g, 'repeatabilityG', r.repeatability_g,
+        'spanErrorRelative', r.span_error_relative, 'offsetG', r.offset_g) order by r.cylinder_id, r.moment = 'after', r.id), '[]')
       from reading r
       left join cylinder c on c.firm_id = r.firm_id and c.id = r.cylinder_id
       left join tool t on t.firm_id = r.firm_id and t.id = r.tool_id

@@ -91,6 +91,7 @@ export const groupView = z.strictObject({
       id,
       cylinderId: id,
       cylinderTag: z.string(),
+      toolId: id.nullable(),
       toolName: z.string().nullable(),
       moment: z.string(),
       mode: z.string(),
@@ -101,6 +102,9 @@ export const groupView = z.strictObject({
       hoseG: z.number().nullable(),
       /** Of the very scale on that day; null where none was named. */
       resolutionG: z.number().nullable(),
+      repeatabilityG: z.number().nullable(),
+      spanErrorRelative: z.number().nullable(),
+      offsetG: z.number().nullable(),
     }),
   ),
   statements: z.array(z.strictObject({ about: z.string(), id, is: z.string(), by: z.string().nullable() })),

@@ -202,7 +202,17 @@ describe('A group', () => {
       reason: 'alarm',
       note: 'roof hatch sticks',
       readings: [
-        { moment: 'before', massG: 17000, cylinderTag: 'C0001', toolName: 'Scale 1', resolutionG: 5 },
+        {
+          moment: 'before',
+          massG: 17000,
+          cylinderTag: 'C0001',
+          toolId: ledger.scale.id,
+          toolName: 'Scale 1',
+          resolutionG: 5,
+          repeatabilityG: 0,
+          spanErrorRelative: 0,
+          offsetG: 0,
+        },
         { moment: 'after', massG: 16950 },
       ],
       statements: [{ about: 'unit', id: otherUnitId, is: 'full', by: null }],

@@ -46,6 +46,7 @@ export function groupView(change: Partial<GroupView> = {}): GroupView {
     id: `reading-${moment}`,
     cylinderId: idOf('cylinder', '7741'),
     cylinderTag: '7741',
+    toolId: 'tool-1',
     toolName: 'Van 1 scale',
     moment,
     mode: 'gross',
@@ -55,6 +56,9 @@ export function groupView(change: Partial<GroupView> = {}): GroupView {
     hoseFull: false,
     hoseG: null,
     resolutionG: 5,
+    repeatabilityG: 0,
+    spanErrorRelative: 0,
+    offsetG: 0,
   });
   return {
     id,

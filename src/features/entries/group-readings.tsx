@@ -1,7 +1,7 @@
 import { Link } from 'react-router-dom';
 import type { EntryRow, GroupView } from '../../../shared/entries/entry.schema.ts';
-import { ASSUMED_SCALE } from '../../../shared/ledger/scale.ts';
-import { netMassUncertaintyG } from '../../../shared/scale/scale-uncertainty.ts';
+import { basisOn, type ScaleReading, uncertaintyOf } from '../../../shared/ledger/book-basis.ts';
+import { ASSUMED_SCALE, type Scale } from '../../../shared/ledger/scale.ts';
 import { type Formats, useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Fact } from '../../ui/facts.tsx';
@@ -41,9 +41,8 @@ function OfOneCylinder({ readings }: { readings: readonly Reading[] }) {
   const [any] = readings;
   if (!any) return null;
   const hose = readings.find(({ hoseFull, hoseG }) => hoseFull && hoseG !== null);
-  const resolutionG = any.resolutionG ?? ASSUMED_SCALE.resolutionG;
-  const uncertainty =
-    before && after ? 2 * netMassUncertaintyG({ resolutionG }, Math.abs(before.massG - after.massG)) : null;
+  const { resolutionG } = scaleOf(any);
+  const uncertainty = before && after ? twoUOf(before, after) : null;
   return (
     <>
       <span className="block font-[600]">
@@ -72,6 +71,28 @@ function OfOneCylinder({ readings }: { readings: readonly Reading[] }) {
     </>
   );
 }
+
+/**
+ * Twice the uncertainty of the mass between two readings, by everything that is known of the very scale. Its zero cancels
+ * on one and the same scale, and enters twice where two were read.
+ */
+function twoUOf(before: Reading, after: Reading): number {
+  const of = (reading: Reading): ScaleReading => {
+    const { id, toolId, massG } = reading;
+    return { key: id, scaleKey: toolId ?? 'not named', scale: scaleOf(reading), grossG: massG };
+  };
+  return 2 * uncertaintyOf(basisOn(of(before)), of(after), 0).standardG;
+}
+
+const scaleOf = ({ resolutionG, repeatabilityG, spanErrorRelative, offsetG }: Reading): Scale =>
+  resolutionG === null
+    ? ASSUMED_SCALE
+    : {
+        resolutionG,
+        repeatabilityG: repeatabilityG ?? 0,
+        spanErrorRelative: spanErrorRelative ?? 0,
+        offsetG: offsetG ?? 0,
+      };
 
 /** As the scale showed it: the value and unit that were typed, not a converted one. */
 function shownValue(format: Formats, { value, unit }: Reading, withUnit = true): string {
