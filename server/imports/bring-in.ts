@@ -4,7 +4,7 @@ import type { PostingParts } from '../entries/post-group.ts';
 import type { Actor } from '../http/actor.ts';
 import { Problem } from '../http/problem.ts';
 import { lockHead } from '../journal/post-records.ts';
-import type { RowFaults, RowPlan } from './plan-rows.ts';
+import type { PlannedTable, RowFaults, RowPlan } from './plan-rows.ts';
 
 /** Ends the transaction without keeping anything. */
 class NothingKept extends Error {}
@@ -15,100 +15,102 @@ export interface BroughtIn {
   faults: RowFaults[];
 }
 
-/** Rows behind one savepoint. Each savepoint makes every later look at the head of the log slower. */
+/** Rows that reach the log together, and between which others get in while independent rows are rehearsed. */
 const AT_ONCE = 250;
 
 /**
- * Brings rows in, all or nothing, in one transaction. A row that is refused does not hide what is wrong with the others:
- * the rows around it are taken one by one, and one refusal keeps the whole from being kept.
+ * Brings rows in, all or nothing, in one transaction, many of them at a time. A row that is refused does not hide what
+ * is wrong with the others, and one refusal keeps the whole from being kept.
  * @param rehearsal everything is judged as it will be, and nothing kept
  * @param independent no row rests on another: a rehearsal then holds the firm's log for a part of the rows at a time
+ * @param beforeRows called between parts with how many are done; what it throws ends it, and nothing is kept
+ * @param beforeKeeping in the transaction, when every row is in
  */
 export async function bringIn(
   parts: PostingParts,
   actor: Actor,
-  plans: readonly RowPlan[],
-  { rehearsal, independent, onRow }: { rehearsal: boolean; independent: boolean; onRow: () => void },
+  table: PlannedTable,
+  { rehearsal, independent, beforeRows, beforeKeeping }: BringingIn,
 ): Promise<BroughtIn> {
   const outcome: BroughtIn = { made: 0, already: 0, faults: [] };
-  const inTime = plans.toSorted((a, b) => (a.at < b.at ? -1 : a.at > b.at ? 1 : a.number - b.number));
+  const inTime = table.plans.toSorted((a, b) => (a.at < b.at ? -1 : a.at > b.at ? 1 : a.number - b.number));
   const together = rehearsal && independent ? AT_ONCE : Math.max(1, inTime.length);
   for (let at = 0; at < inTime.length; at += together) {
     const some = inTime.slice(at, at + together);
-    await inTransaction(
-      parts,
-      actor,
-      () => rehearsal || outcome.faults.length > 0,
-      async (manager) => {
-        for (let from = 0; from < some.length; from += AT_ONCE) {
-          const few = some.slice(from, from + AT_ONCE);
-          if (await bringInTogether(manager, few, outcome, onRow)) continue;
-          for (const plan of few) await bringInOne(manager, plan, outcome);
-        }
-      },
-    );
+    await inTransaction(parts, actor, async (manager) => {
+      for (let from = 0; from < some.length; from += AT_ONCE) {
+        beforeRows(at + from);
+        await bringMany(manager, table, some.slice(from, from + AT_ONCE), outcome);
+      }
+      beforeRows(at + some.length);
+      if (rehearsal || outcome.faults.length > 0) throw new NothingKept();
+      await beforeKeeping(manager, outcome);
+    });
   }
   outcome.faults.sort((a, b) => a.number - b.number);
   return outcome;
 }
 
+export interface BringingIn {
+  rehearsal: boolean;
+  independent: boolean;
+  beforeRows(done: number): void;
+  beforeKeeping(manager: EntityManager, outcome: BroughtIn): Promise<void>;
+}
+
 async function inTransaction(
   parts: PostingParts,
   actor: Actor,
-  keepsNothing: () => boolean,
   work: (manager: EntityManager) => Promise<void>,
 ): Promise<void> {
   try {
     await inFirm(parts.dataSource, actor, async (manager) => {
       await lockHead(manager);
       await work(manager);
-      if (keepsNothing()) throw new NothingKept();
     });
   } catch (error) {
     if (!(error instanceof NothingKept)) throw error;
   }
 }
 
-/** False: one of them was refused, and none of them is there. */
-async function bringInTogether(
+/**
+ * What the database refuses of many says not which: they are brought in again in halves, down to the one. The database
+ * also looks at the sum of what comes at once, so that alone the same rows may well be taken.
+ */
+async function bringMany(
   manager: EntityManager,
+  table: PlannedTable,
   plans: readonly RowPlan[],
   outcome: BroughtIn,
-  onRow: () => void,
-): Promise<boolean> {
+): Promise<void> {
   await manager.query('savepoint import_rows');
-  let made = 0;
-  let refused = false;
-  for (const plan of plans) {
-    try {
-      if (!refused && (await plan.bringIn(manager))) made += 1;
-    } catch (error) {
+  try {
+    const tried = await table.bring(manager, plans);
+    await manager.query('release savepoint import_rows');
+    for (const [index, plan] of plans.entries()) count(plan, tried[index] ?? false, outcome);
+  } catch (error) {
+    await manager.query('rollback to savepoint import_rows; release savepoint import_rows');
+    const [plan] = plans;
+    if (plan && plans.length === 1) {
       if (!(error instanceof Problem) || error.status >= 500) throw error;
-      refused = true;
+      return count(plan, error, outcome);
     }
-    onRow();
+    const half = Math.ceil(plans.length / 2);
+    await bringMany(manager, table, plans.slice(0, half), outcome);
+    await bringMany(manager, table, plans.slice(half), outcome);
   }
-  await manager.query(`${refused ? 'rollback to' : 'release'} savepoint import_rows`);
-  if (refused) return false;
-  outcome.made += made;
-  outcome.already += plans.length - made;
-  return true;
 }
 
-async function bringInOne(manager: EntityManager, plan: RowPlan, outcome: BroughtIn): Promise<void> {
-  await manager.query('savepoint import_row');
-  try {
-    const isNew = await plan.bringIn(manager);
-    await manager.query('release savepoint import_row');
-    if (isNew) outcome.made += 1;
-    else outcome.already += 1;
-  } catch (error) {
-    if (!(error instanceof Problem) || error.status >= 500) throw error;
-    await manager.query('rollback to savepoint import_row');
-    const refusals = error.errors.length > 0 ? error.errors : [{ code: error.code, path: '', params: error.params }];
-    outcome.faults.push({
-      number: plan.number,
-      faults: refusals.map((refusal) => ({ field: plan.fieldOf(refusal), refusal })),
-    });
+function count(plan: RowPlan, tried: boolean | Problem, outcome: BroughtIn): void {
+  if (tried === true) {
+    outcome.made += 1;
+  } else if (tried === false) {
+    outcome.already += 1;
+  } else {
+    // The id of a row follows from its cells: what differs is how they were read.
+    const code = tried.code === 'idReused' ? 'importReadOtherwise' : tried.code;
+    const refusals = tried.errors.length > 0 ? tried.errors : [{ code, path: '', params: tried.params }];
+    const faults = refusals.map((refusal) => ({ field: plan.fieldOf(refusal), refusal }));
+    outcome.faults.push({ number: plan.number, cells: plan.cells, faults });
   }
 }

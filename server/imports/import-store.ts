@@ -1,4 +1,4 @@
-import type { CheckImportRequest, ImportView } from '../../shared/imports/import.schema.ts';
+import { type CheckImportRequest, IMPORT_LIMITS, type ImportView } from '../../shared/imports/import.schema.ts';
 import type { ImportKind } from '../../shared/imports/import-fields.ts';
 import type { RowFaults } from './plan-rows.ts';
 import type { Table } from './table.ts';
@@ -10,14 +10,23 @@ export interface StoredImport {
   personId: string;
   kind: ImportKind;
   fileName: string;
+  sizeBytes: number;
+  sha256: string;
   table: Table;
+  /** What every answer says of the columns. */
+  shown: Pick<ImportView, 'columns' | 'fields'>;
   uploadedAt: number;
   state: ImportView['state'];
   request: CheckImportRequest | null;
   rowsDone: number;
-  faults: RowFaults[];
+  faults: readonly RowFaults[];
   made: number;
   already: number;
+  recordSequence: number | null;
+  /** Code of what broke it off. */
+  problem: string | null;
+  /** Somebody asked for it to end; between two parts of the rows it does. */
+  isCancelled: boolean;
 }
 
 const KEPT_MS = 2 * 60 * 60_000;
@@ -25,6 +34,12 @@ const KEPT_MS = 2 * 60 * 60_000;
 const EACH = 3;
 /** In the whole process, so that files cannot fill its memory. */
 const MOST = 30;
+
+/** Characters of all tables that are held: what a file may come to in memory, some ten times over. */
+const MOST_CHARACTERS = 10 * IMPORT_LIMITS.unpackedBytes;
+
+const charactersOf = ({ table }: StoredImport): number =>
+  table.rows.reduce((sum, { cells }) => sum + cells.reduce((row, cell) => row + cell.length, cells.length), 0);
 
 const isBusy = ({ state }: StoredImport): boolean => state === 'checking' || state === 'running';
 
@@ -42,9 +57,14 @@ export function importStore() {
       for (const each of idle()) if (each.uploadedAt < stored.uploadedAt - KEPT_MS) held.delete(each.id);
       const own = idle().filter(({ personId }) => personId === stored.personId);
       for (const each of own.slice(0, Math.max(0, own.length - EACH + 1))) held.delete(each.id);
-      const oldest = held.size >= MOST ? idle()[0] : undefined;
-      if (oldest) held.delete(oldest.id);
-      if (held.size >= MOST) return false;
+      const room = charactersOf(stored);
+      const isFull = () =>
+        held.size >= MOST || [...held.values()].reduce((sum, each) => sum + charactersOf(each), room) > MOST_CHARACTERS;
+      while (isFull()) {
+        const [oldest] = idle();
+        if (!oldest) return false;
+        held.delete(oldest.id);
+      }
       held.set(stored.id, stored);
       return true;
     },

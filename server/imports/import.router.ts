@@ -2,7 +2,7 @@ import { checkImportRequest, IMPORT_LIMITS, importView } from '../../shared/impo
 import { CSV_ANSWER, csvText, sendCsv } from '../books/csv-table.ts';
 import { type ApiRoutes, apiRoutes, created, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import { checkImport, getImport, importErrors, runImport, takeUpload } from './import.service.ts';
+import { cancelImport, checkImport, getImport, importErrors, runImport, takeUpload } from './import.service.ts';
 import { importStore } from './import-store.ts';
 
 export function importRoutes(parts: Parts): ApiRoutes {
@@ -21,7 +21,7 @@ export function importRoutes(parts: Parts): ApiRoutes {
         'A file that was read is forgotten after two hours and when the server starts again.',
       access,
       responses: { 201: importView },
-      problems: ['unsupportedMediaType', 'bodyTooLarge', 'malformedRequest', 'busy'],
+      problems: ['unsupportedMediaType', 'importTooLarge', 'malformedRequest', 'busy'],
     },
     async ({ actor, req }) => created(await takeUpload(own, actor, req)),
   );
@@ -47,11 +47,22 @@ export function importRoutes(parts: Parts): ApiRoutes {
       path: '/imports/{id}/run',
       summary: 'Brings in a table that was checked without an error: all of it or nothing',
       description:
-        'The ids of what it makes follow from the content of its rows, so that the same file again changes nothing.',
+        'The ids of what it makes follow from the content of its rows, so that the same file again changes nothing. ' +
+        'That it was brought in is a record of the journal, with the SHA-256 of the file.',
       access,
       responses: { 200: importView },
     },
     ({ actor, params }) => ok(runImport(own, actor, params.id)),
+  );
+  routes.add(
+    {
+      method: 'post',
+      path: '/imports/{id}/cancel',
+      summary: 'Ends a check, or the bringing in before anything is kept; what has ended stays',
+      access,
+      responses: { 200: importView },
+    },
+    ({ actor, params }) => ok(cancelImport(own, actor, params.id)),
   );
   routes.add(
     {
@@ -62,8 +73,13 @@ export function importRoutes(parts: Parts): ApiRoutes {
       responses: { 200: CSV_ANSWER },
     },
     ({ actor, params, res }) => {
-      const { rows } = importErrors(own, actor, params.id);
-      const lines = rows.map(({ row, column, given, code, message }) => [row, column, given, code, message]);
+      const lines = importErrors(own, actor, params.id).map(({ row, column, given, code, message }) => [
+        row,
+        column,
+        given,
+        code,
+        message,
+      ]);
       sendCsv(res, 'import-errors.csv', csvText(['row', 'column', 'given', 'code', 'message'], lines));
       return undefined;
     },

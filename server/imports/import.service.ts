@@ -1,26 +1,13 @@
 import type { Request } from 'express';
-import {
-  type CheckImportRequest,
-  IMPORT_LIMITS,
-  type ImportError,
-  type ImportView,
-} from '../../shared/imports/import.schema.ts';
-import { guessColumns, IMPORT_FIELDS } from '../../shared/imports/import-fields.ts';
-import type { Locale } from '../../shared/session/session.schema.ts';
-import { inFirm } from '../database/firm-scope.ts';
+import type { CheckImportRequest, ImportView } from '../../shared/imports/import.schema.ts';
+import { IMPORT_FIELDS } from '../../shared/imports/import-fields.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
-import { messageFor } from '../messages/translate.ts';
-import { bringIn } from './bring-in.ts';
-import { readNames } from './import.repository.ts';
 import type { ImportStore, StoredImport } from './import-store.ts';
-import { planRows, type RowPlan } from './plan-rows.ts';
+import { errorsOf, shownOf, viewOf } from './import-view.ts';
 import { readUpload } from './read-upload.ts';
-
-/** Errors in an answer; the CSV file holds all. */
-const SHOWN_ERRORS = 100;
-const SAMPLES = 3;
+import { workOn } from './work-on.ts';
 
 export interface ImportParts {
   parts: Parts;
@@ -28,25 +15,31 @@ export interface ImportParts {
 }
 
 export async function takeUpload({ parts, store }: ImportParts, actor: Actor, req: Request): Promise<ImportView> {
-  const { kind, fileName, table } = await readUpload(req);
+  const upload = await readUpload(req);
   const stored: StoredImport = {
+    ...upload,
     id: parts.newId(),
     firmId: actor.firmId,
     personId: actor.personId,
-    kind,
-    fileName,
-    table,
+    shown: shownOf(upload.kind, upload.table),
     uploadedAt: parts.now().getTime(),
     state: 'read',
     request: null,
-    rowsDone: 0,
-    faults: [],
-    made: 0,
-    already: 0,
+    ...NOTHING_DONE,
   };
   if (!store.add(stored)) throw new Problem('busy');
   return viewOf(stored, actor.locale);
 }
+
+const NOTHING_DONE = {
+  rowsDone: 0,
+  faults: [],
+  made: 0,
+  already: 0,
+  recordSequence: null,
+  problem: null,
+  isCancelled: false,
+} satisfies Partial<StoredImport>;
 
 export function getImport({ store }: ImportParts, actor: Actor, id: string): ImportView {
   return viewOf(require(store, actor, id), actor.locale);
@@ -58,54 +51,32 @@ export function checkImport(own: ImportParts, actor: Actor, id: string, request:
   refuseMapping(stored, request);
   begin(own.store, stored, 'checking');
   stored.request = request;
-  work(own, actor, stored, request, true);
+  workOn(own.parts, actor, stored, request);
   return viewOf(stored, actor.locale);
 }
 
 /** Brings the rows in, all or nothing. */
 export function runImport(own: ImportParts, actor: Actor, id: string): ImportView {
   const stored = require(own.store, actor, id);
-  if (stored.state === 'done') return viewOf(stored, actor.locale);
+  if (stored.state === 'done' || stored.state === 'running') return viewOf(stored, actor.locale);
   if (stored.state !== 'checked' || stored.faults.length > 0 || !stored.request) {
     throw problemOfRefusals([{ code: 'importNotChecked', path: '' }]);
   }
   begin(own.store, stored, 'running');
-  work(own, actor, stored, stored.request, false);
+  workOn(own.parts, actor, stored, stored.request);
   return viewOf(stored, actor.locale);
 }
 
-function work(
-  { parts }: ImportParts,
-  actor: Actor,
-  stored: StoredImport,
-  request: CheckImportRequest,
-  rehearsal: boolean,
-): void {
-  parts.background.run('import', async () => {
-    try {
-      const names = await inFirm(parts.dataSource, actor, readNames);
-      const planned = planRows(parts, actor, { kind: stored.kind, table: stored.table, request, names });
-      const plans = planned.filter((row): row is RowPlan => 'bringIn' in row);
-      stored.faults = planned.filter((row) => 'faults' in row);
-      stored.rowsDone = stored.faults.length;
-      // What can be read is judged only when all of it can: half a table would be judged on books that lack the rest.
-      if (stored.faults.length === 0) {
-        const onRow = () => {
-          stored.rowsDone += 1;
-        };
-        const { made, already, faults } = await bringIn(parts, actor, plans, {
-          rehearsal,
-          independent: stored.kind !== 'entries',
-          onRow,
-        });
-        Object.assign(stored, { made, already, faults });
-      }
-      stored.state = rehearsal || stored.faults.length > 0 ? 'checked' : 'done';
-    } catch (error) {
-      stored.state = 'failed';
-      throw error; // to the log
-    }
-  });
+/** Ends a check, or the bringing in before anything of it is kept. What has ended stays as it is. */
+export function cancelImport({ store }: ImportParts, actor: Actor, id: string): ImportView {
+  const stored = require(store, actor, id);
+  if (stored.state === 'checking' || stored.state === 'running') stored.isCancelled = true;
+  return viewOf(stored, actor.locale);
+}
+
+/** Every error as a table. */
+export function importErrors({ store }: ImportParts, actor: Actor, id: string) {
+  return [...errorsOf(require(store, actor, id), actor.locale)];
 }
 
 function require(store: ImportStore, actor: Actor, id: string): StoredImport {
@@ -117,7 +88,7 @@ function require(store: ImportStore, actor: Actor, id: string): StoredImport {
 function begin(store: ImportStore, stored: StoredImport, state: 'checking' | 'running'): void {
   if (store.isFirmBusy(stored.firmId)) throw problemOfRefusals([{ code: 'importBusy', path: '' }]);
   if (stored.state === 'done') throw problemOfRefusals([{ code: 'importDone', path: '' }]);
-  Object.assign(stored, { state, rowsDone: 0, faults: [], made: 0, already: 0 });
+  Object.assign(stored, { ...NOTHING_DONE, state });
 }
 
 function refuseMapping({ kind, table }: StoredImport, { columns }: CheckImportRequest): void {
@@ -134,62 +105,4 @@ function refuseMapping({ kind, table }: StoredImport, { columns }: CheckImportRe
       .map(({ name }) => ({ code: 'importColumnNeeded', path: `/columns/${name}` })),
   ];
   if (refusals.length > 0) throw problemOfRefusals(refusals);
-}
-
-export function* errorsOf(stored: StoredImport, locale: Locale): Generator<ImportError> {
-  const cellsOf = new Map(stored.table.rows.map(({ number, cells }) => [number, cells]));
-  for (const { number, faults } of stored.faults) {
-    for (const { field, refusal } of faults) {
-      const column = field === null ? undefined : stored.request?.columns[field];
-      const values = { given: refusal.given, allowed: refusal.allowed, ...refusal.params };
-      yield {
-        row: number,
-        column: column === undefined ? null : (stored.table.heads[column] ?? null),
-        given: column === undefined ? null : (cellsOf.get(number)?.[column] ?? null),
-        code: refusal.code,
-        message: messageFor(`problem.${refusal.code}`, locale, {
-          ...values,
-          field: refusal.path.split('/').at(-1) ?? '',
-        }),
-      };
-    }
-  }
-}
-
-/** Every error as a table. */
-export function importErrors({ store }: ImportParts, actor: Actor, id: string) {
-  const stored = require(store, actor, id);
-  return { stored, rows: [...errorsOf(stored, actor.locale)] };
-}
-
-function viewOf(stored: StoredImport, locale: Locale): ImportView {
-  const { table, kind } = stored;
-  const guess = guessColumns(kind, table.heads);
-  const errors: ImportError[] = [];
-  for (const error of errorsOf(stored, locale)) {
-    errors.push(error);
-    if (errors.length === SHOWN_ERRORS) break;
-  }
-  return {
-    id: stored.id,
-    kind,
-    fileName: stored.fileName,
-    read: table.read,
-    columns: table.heads.map((head, column) => ({
-      head,
-      samples: table.rows
-        .map(({ cells }) => cells[column] ?? '')
-        .filter((cell) => cell !== '')
-        .slice(0, SAMPLES)
-        .map((cell) => cell.slice(0, 60)),
-    })),
-    fields: IMPORT_FIELDS[kind].map(({ name, required }) => ({ name, required, guess: guess[name] ?? null })),
-    state: stored.state,
-    rowsDone: Math.min(stored.rowsDone, IMPORT_LIMITS.rows),
-    wrongRows: stored.faults.length,
-    errorCount: stored.faults.reduce((sum, { faults }) => sum + faults.length, 0),
-    errors,
-    made: stored.made,
-    already: stored.already,
-  };
 }

@@ -8,6 +8,10 @@ const DELIMITERS = [',', ';', '\t', '|'] as const;
 export function readCsv(bytes: Buffer): Table {
   const { text, encoding } = decode(bytes);
   const delimiter = delimiterOf(text);
+  const filled = countFilledLines(text, delimiter);
+  if (filled > IMPORT_LIMITS.rows + 1) {
+    throw refusedFile('importTooManyRows', { given: filled - 1, allowed: IMPORT_LIMITS.rows });
+  }
   let records: string[][];
   try {
     records = parse(text, {
@@ -16,7 +20,6 @@ export function readCsv(bytes: Buffer): Table {
       relax_column_count: true,
       relax_quotes: false,
       max_record_size: IMPORT_LIMITS.cellCharacters * IMPORT_LIMITS.columns,
-      to: IMPORT_LIMITS.rows + 2,
     });
   } catch (error) {
     throw refusedFile('importNotCsv', { line: (error as { lines?: number }).lines ?? 1 });
@@ -44,4 +47,20 @@ function delimiterOf(text: string): (typeof DELIMITERS)[number] {
   const heads = (text.split(/\r?\n/, 1)[0] ?? '').replace(/"[^"]*"/g, '');
   const count = (delimiter: string) => heads.split(delimiter).length - 1;
   return DELIMITERS.reduce((best, delimiter) => (count(delimiter) > count(best) ? delimiter : best));
+}
+
+/** Records that hold something, without taking them apart: a file of millions of lines is refused before they fill memory. */
+function countFilledLines(text: string, delimiter: string): number {
+  let filled = 0;
+  let isQuoted = false;
+  let isFilled = false;
+  for (let at = 0; at <= text.length; at += 1) {
+    const character = at === text.length ? '\n' : (text[at] as string);
+    if (character === '"') isQuoted = !isQuoted;
+    else if (!isQuoted && (character === '\n' || character === '\r')) {
+      if (isFilled) filled += 1;
+      isFilled = false;
+    } else if (!isFilled && character > ' ' && character !== delimiter) isFilled = true;
+  }
+  return filled;
 }

@@ -1,6 +1,7 @@
+import { createHash } from 'node:crypto';
 import busboy from 'busboy';
 import type { Request } from 'express';
-import { IMPORT_LIMITS, importKind } from '../../shared/imports/import.schema.ts';
+import { IMPORT_LIMITS, importKind, sizesInMegabytes } from '../../shared/imports/import.schema.ts';
 import type { ImportKind } from '../../shared/imports/import-fields.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { readCsv } from './read-csv.ts';
@@ -10,6 +11,9 @@ import { refusedFile, type Table } from './table.ts';
 export interface Upload {
   kind: ImportKind;
   fileName: string;
+  sizeBytes: number;
+  /** Of the file as it came, in hex. */
+  sha256: string;
   table: Table;
 }
 
@@ -21,7 +25,9 @@ export async function readUpload(req: Request): Promise<Upload> {
   if (bytes === null) throw problemOfRefusals([{ code: 'required', path: '/file' }]);
   if (bytes.length === 0) throw refusedFile('importEmpty');
   const isZip = bytes.subarray(0, 4).equals(Buffer.from([0x50, 0x4b, 0x03, 0x04]));
-  return { kind: parsed.data, fileName, table: isZip ? await readXlsx(bytes) : readCsv(bytes) };
+  const table = isZip ? await readXlsx(bytes) : readCsv(bytes);
+  const sha256 = createHash('sha256').update(bytes).digest('hex');
+  return { kind: parsed.data, fileName, sizeBytes: bytes.length, sha256, table };
 }
 
 interface Parts {
@@ -34,7 +40,11 @@ function readParts(req: Request): Promise<Parts> {
   if (!req.is('multipart/form-data')) throw new Problem('unsupportedMediaType');
   return new Promise((resolve, reject) => {
     const found: Parts = { kind: null, fileName: '', bytes: null };
-    let refusal: Problem | null = null;
+    let isTooLarge = false;
+    let received = 0;
+    req.on('data', (chunk: Buffer) => {
+      received += chunk.length;
+    });
     const form = busboy({
       headers: req.headers,
       defParamCharset: 'utf8',
@@ -50,7 +60,7 @@ function readParts(req: Request): Promise<Parts> {
         .slice(0, 200);
       stream.on('data', (chunk: Buffer) => chunks.push(chunk));
       stream.on('limit', () => {
-        refusal = new Problem('bodyTooLarge');
+        isTooLarge = true;
         chunks.length = 0;
       });
       stream.on('end', () => {
@@ -58,8 +68,17 @@ function readParts(req: Request): Promise<Parts> {
       });
     });
     form.on('error', () => reject(new Problem('malformedRequest')));
-    form.on('close', () => (refusal ? reject(refusal) : resolve(found)));
+    form.on('close', () => (isTooLarge ? reject(tooLarge(received)) : resolve(found)));
     req.on('aborted', () => reject(new Problem('malformedRequest')));
     req.pipe(form);
+  });
+}
+
+/** The whole request is a little larger than its file. */
+function tooLarge(bytes: number): Problem {
+  const params = sizesInMegabytes(bytes);
+  return new Problem('importTooLarge', {
+    params,
+    errors: [{ code: 'importTooLarge', path: '/file', ...params, params }],
   });
 }

@@ -25,8 +25,10 @@ export async function readXlsx(bytes: Buffer): Promise<Table> {
   if (!sheet) throw refusedFile('importEmpty');
   let formulas = 0;
   const grid: { number: number; cells: string[] }[] = [];
+  if (sheet.actualRowCount > IMPORT_LIMITS.rows + 1) {
+    throw refusedFile('importTooManyRows', { given: sheet.actualRowCount - 1, allowed: IMPORT_LIMITS.rows });
+  }
   sheet.eachRow((row, number) => {
-    if (grid.length > IMPORT_LIMITS.rows + 1) return;
     const cells: string[] = [];
     row.eachCell((cell, column) => {
       if (column > IMPORT_LIMITS.columns + 1) return;
@@ -51,6 +53,9 @@ function textOf(value: CellValue): string {
   if ('richText' in value) return value.richText.map(({ text }) => text).join('');
   if ('result' in value && value.result !== undefined) return textOf(value.result as CellValue);
   if ('formula' in value && value.formula) return `=${value.formula}`;
+  if ('sharedFormula' in value) return `=${value.sharedFormula}`;
+  // Left empty, what could not be worked out would pass for what nobody filled in.
+  if ('error' in value) return String(value.error);
   if ('text' in value) return textOf(value.text as CellValue);
   return '';
 }
@@ -65,6 +70,9 @@ function dateText(date: Date): string {
 const plainDecimal = (value: number): string =>
   String(value).includes('e') ? value.toFixed(12).replace(/\.?0+$/, '') : String(value);
 
+const tooLarge = () =>
+  refusedFile('importTooLargeUnpacked', { allowed: IMPORT_LIMITS.unpackedBytes / 1024 / 1024, parts: MOST_PARTS });
+
 /** Unpacks every part once and counts, before anything keeps it: the sizes that a file says of itself may be lies. */
 function refuseBombs(bytes: Buffer): Promise<void> {
   return new Promise((resolve, reject) => {
@@ -78,7 +86,7 @@ function refuseBombs(bytes: Buffer): Promise<void> {
       zip.on('entry', (entry: yauzl.Entry) => {
         if (entry.fileName === 'xl/workbook.xml') hasBook = true;
         if (zip.entryCount > MOST_PARTS || unpacked + entry.uncompressedSize > IMPORT_LIMITS.unpackedBytes) {
-          return refuse('importTooLargeUnpacked');
+          return reject(tooLarge());
         }
         if (entry.fileName.endsWith('/')) return zip.readEntry();
         zip.openReadStream(entry, (broken, stream) => {
@@ -87,7 +95,7 @@ function refuseBombs(bytes: Buffer): Promise<void> {
             unpacked += chunk.length;
             if (unpacked <= IMPORT_LIMITS.unpackedBytes) return;
             stream.destroy();
-            refuse('importTooLargeUnpacked');
+            reject(tooLarge());
           });
           stream.on('error', () => refuse('importNotATable'));
           stream.on('end', () => zip.readEntry());

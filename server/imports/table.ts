@@ -47,10 +47,20 @@ export function tableOf(
     cells: Array.from({ length: width }, (_, column) => cells[column] ?? ''),
   }));
   return {
-    heads: first.cells.slice(0, width).map((head, column) => head || `#${column + 1}`),
+    heads: toldApart(first.cells.slice(0, width).map((head, column) => head || `#${column + 1}`)),
     rows,
     read: { ...read, rows: rows.length, decimal: decimalOf(rows, read.delimiter) },
   };
+}
+
+/** Heads that repeat get their number, so that a choice and an error name one column: `Tag`, `Tag (2)`. */
+function toldApart(heads: readonly string[]): string[] {
+  const seen = new Map<string, number>();
+  return heads.map((head) => {
+    const count = (seen.get(head.toLowerCase()) ?? 0) + 1;
+    seen.set(head.toLowerCase(), count);
+    return count === 1 ? head : `${head} (${count})`;
+  });
 }
 
 /** What separates decimals: only what cannot group digits says so (7,5 or 11.34); without it, as the delimiter suggests. */

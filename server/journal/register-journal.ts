@@ -3,7 +3,7 @@ import type { DerivedRows, RegisterNoun, RegisterRecord } from '../../shared/jou
 import type { Parts } from '../http/parts.ts';
 import { Problem } from '../http/problem.ts';
 import { canonicalText, isSaltedText, saltText } from './canonical-text.ts';
-import { postRecords } from './post-records.ts';
+import { type PostedRecord, postRecords } from './post-records.ts';
 
 /** What a register row says, by name. Numbers may be numbers: they are written as decimal strings. */
 export type Facts = Readonly<Record<string, unknown>>;
@@ -38,9 +38,9 @@ export async function journalNewRows(
   author: Author,
   manager: EntityManager,
   rows: readonly RegisterRow[],
-): Promise<void> {
+): Promise<PostedRecord[]> {
   const { records, texts } = newRowRecords(author, rows);
-  await postRecords(manager, records, { texts });
+  return postRecords(manager, records, { texts });
 }
 
 /**

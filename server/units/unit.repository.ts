@@ -108,13 +108,17 @@ export function unitsRepository(manager: EntityManager) {
     async findMadeWith(ids: readonly string[]): Promise<Map<string, MadeWith>> {
       if (ids.length === 0) return new Map();
       const made = await manager.query<(MadeWith & { id: string })[]>(
-        `select made.subject_id as id,
-           array(select fc.id from unit_full_charge fc
-             join journal_record j on j.noun = 'unitFullCharge' and j.subject_id = fc.id and j.version = 1
-             where fc.unit_id = made.subject_id and j.recorded_at = made.recorded_at) as "fullChargeIds",
-           array(select g.id from entry_group g where g.unit_id = made.subject_id
-             and g.kind in ('factoryCharge', 'opening') and g.recorded_at = made.recorded_at) as "groupIds"
-         from journal_record made where made.noun = 'unit' and made.version = 1 and made.subject_id = any ($1::uuid[])`,
+        // Look-ups by key, one unit after the other: `offset 0` keeps the planner from meeting the whole log for it.
+        `select w.id, array(select fc.id from (select x.id from unit_full_charge x where x.unit_id = w.id offset 0) fc
+             cross join lateral (select j.recorded_at from journal_record j where j.noun = 'unitFullCharge'
+               and j.subject_id = fc.id and j.version = 1 offset 0) j
+             where j.recorded_at = made.recorded_at order by fc.id) as "fullChargeIds",
+           array(select g.id from (select x.id, x.kind, x.recorded_at from entry_group x
+               where x.unit_id = w.id offset 0) g
+             where g.kind in ('factoryCharge', 'opening') and g.recorded_at = made.recorded_at) as "groupIds"
+         from unnest($1::uuid[]) w(id)
+         cross join lateral (select j.recorded_at from journal_record j
+           where j.noun = 'unit' and j.subject_id = w.id and j.version = 1 offset 0) made`,
         [ids],
       );
       return new Map(made.map(({ id, fullChargeIds, groupIds }) => [id, { fullChargeIds, groupIds }]));

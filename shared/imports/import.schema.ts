@@ -15,6 +15,12 @@ export const IMPORT_LIMITS = {
   cellCharacters: 4_000,
 } as const;
 
+/** How large a file is and how large it may be, in MB: rounded up, so that what is too large never reads as allowed. */
+export const sizesInMegabytes = (bytes: number) => ({
+  given: Math.ceil((bytes / 1024 / 1024) * 10) / 10,
+  allowed: IMPORT_LIMITS.fileBytes / 1024 / 1024,
+});
+
 export const DATE_ORDERS = ['dmy', 'mdy'] as const;
 export const DECIMALS = ['point', 'comma'] as const;
 
@@ -37,8 +43,8 @@ export const checkImportRequest = z.strictObject({
 });
 export type CheckImportRequest = z.output<typeof checkImportRequest>;
 
-/** `read`: columns can be mapped. `checked` without errors: it can be brought in. */
-export const IMPORT_STATES = ['read', 'checking', 'checked', 'running', 'done', 'failed'] as const;
+/** `read`: columns can be mapped. `checked` without errors: it can be brought in. Ended otherwise, nothing was kept. */
+export const IMPORT_STATES = ['read', 'checking', 'checked', 'running', 'done', 'cancelled', 'failed'] as const;
 
 export const importError = z.strictObject({
   /** Of the file: the heads are row 1. */
@@ -55,6 +61,8 @@ export const importView = z.strictObject({
   id,
   kind: importKind,
   fileName: z.string(),
+  /** Of the file; its record in the log names it too. */
+  sha256: z.string(),
   /** What the file was understood as. */
   read: z.strictObject({
     format: z.enum(['csv', 'xlsx']),
@@ -77,5 +85,9 @@ export const importView = z.strictObject({
   /** Rows that were new, and rows that an earlier import had brought in. */
   made: z.int(),
   already: z.int(),
+  /** The record of the log that says that it was brought in. Null: nothing was new, or it was not brought in. */
+  recordSequence: z.int().nullable(),
+  /** Why it broke off. */
+  problem: z.string().nullable(),
 });
 export type ImportView = z.output<typeof importView>;

@@ -33,7 +33,9 @@ export function readWhen(
   { dateOrder }: CellOptions,
   path: string,
 ): Outcome<{ day: string; time: string | null }> {
-  const wrong = refused({ code: 'importDate', path, given: text, params: { given: text } });
+  // What a spreadsheet counts days by: from 1900 or from 1904, which the number does not say.
+  const code = /^\d{5}(?:[.,]\d+)?$/.test(text) ? 'importDateSerial' : 'importDate';
+  const wrong = refused({ code, path, given: text, params: { given: text } });
   const iso = ISO.exec(text);
   const local = iso ? null : LOCAL.exec(text);
   const found = iso ?? local;

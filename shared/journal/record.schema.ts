@@ -162,6 +162,7 @@ export const REGISTER_NOUNS = [
   'carriedItem',
   'purchasePrice',
   'rentalTerms',
+  'import',
 ] as const;
 export type RegisterNoun = (typeof REGISTER_NOUNS)[number];
 

@@ -23,6 +23,7 @@ export const PROBLEM_STATUS = {
   stale: 412,
   seenChanged: 412,
   bodyTooLarge: 413,
+  importTooLarge: 413,
   unsupportedMediaType: 415,
   requestNotValid: 422,
   versionRequired: 428,

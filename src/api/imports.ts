@@ -49,6 +49,14 @@ export function useRunImport(id: string) {
   });
 }
 
+export function useCancelImport(id: string) {
+  const client = useQueryClient();
+  return useMutation({
+    mutationFn: () => http.post<ImportView>(`/imports/${id}/cancel`),
+    onSuccess: (view) => client.setQueryData(importQueries.one(id).queryKey, view),
+  });
+}
+
 /** What was brought in shows everywhere. */
 export function useRefreshAfterImport() {
   const client = useQueryClient();

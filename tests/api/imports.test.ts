@@ -1,8 +1,10 @@
+import { createHash } from 'node:crypto';
 import exceljs from 'exceljs';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { ZipFile } from 'yazl';
 import type { CheckImportRequest, ImportView } from '../../shared/imports/import.schema.ts';
 import type { ImportKind } from '../../shared/imports/import-fields.ts';
+import { registerRecord } from '../../shared/journal/record.schema.ts';
 import { startTestApp, TEST_START, type TestApp } from '../support/app.ts';
 import { type Ledger, startLedger } from '../support/ledger.ts';
 import type { Answered, TestClient } from '../support/test-client.ts';
@@ -33,7 +35,7 @@ async function upload(kind: string, file: string | Uint8Array, name = 'table.csv
 const guessed = ({ fields }: ImportView): Record<string, number> =>
   Object.fromEntries(fields.flatMap(({ name, guess }) => (guess === null ? [] : [[name, guess]])));
 
-async function after(answer: Answered<ImportView>): Promise<ImportView> {
+async function ended(answer: Answered<ImportView>): Promise<ImportView> {
   if (answer.status !== 200) throw new Error(JSON.stringify(answer.body));
   await app.parts.background.settled();
   return (await ledger.client.get<ImportView>(`/imports/${answer.body.id}`)).body;
@@ -51,9 +53,9 @@ async function check(kind: ImportKind, file: string | Uint8Array, change: Partia
     since: '2025-01-01',
     ...change,
   };
-  return after(await ledger.client.post(`/imports/${read.body.id}/check`, request));
+  return ended(await ledger.client.post(`/imports/${read.body.id}/check`, request));
 }
-const run = async ({ id }: ImportView) => after(await ledger.client.post(`/imports/${id}/run`));
+const run = async ({ id }: ImportView) => ended(await ledger.client.post(`/imports/${id}/run`));
 async function bring(kind: ImportKind, file: string | Uint8Array, change: Partial<CheckImportRequest> = {}) {
   const checked = await check(kind, file, change);
   expect([checked.state, checked.errors]).toEqual(['checked', []]);
@@ -72,6 +74,12 @@ const CYLINDERS = [
   'A1,refillable,R-32,,7.6,11.34,2028-05-01,',
   'A2,disposable,r-410a,Fallow Gas,"25 lb 4 oz",,,',
 ].join('\r\n');
+
+const cylinderTable = (rows: number): string =>
+  [
+    'Tag,Kind,Refrigerant,Tare,Content',
+    ...Array.from({ length: rows }, (_, row) => `C${row},refillable,R-32,7.6,${5 + (row % 7)}`),
+  ].join('\n');
 
 describe('A table of cylinders', () => {
   it('comes in with tares, owners and what was in them', async () => {
@@ -229,6 +237,40 @@ describe('A table of past entries', () => {
     expect(await headSequence()).toBe(before);
   });
 
+  it('is judged row by row: what one row may with its reason, another without is not taken for', async () => {
+    await begin();
+    await ledger.cylinder(null, {
+      tag: 'A1',
+      refrigerant: 'R-32',
+      tare: tareFrom2024(),
+      stampedLimit: { value: '10', unit: 'kg' },
+    });
+    // The first two stay below the limit; the third passes it, and says why.
+    const table = [
+      'Date,What,Cylinder,Supplier,Mass,Note',
+      '2026-02-01,bought,A1,Fallow Gas,4,',
+      '2026-02-02,bought,A1,Fallow Gas,5,',
+      '2026-02-03,bought,A1,Fallow Gas,3,cooled below the limit',
+    ];
+    expect((await bring('entries', table.join('\n'))).made).toBe(3);
+    const without = [...table, '2026-02-04,bought,A1,Fallow Gas,1,'].join('\n');
+    expect(errorsOf(await check('entries', without))).toEqual([[5, 'Note', 'reasonForPastLimit']]);
+  });
+
+  it('may come in late and out of order: each row is judged where it belongs in time', async () => {
+    await begin();
+    const { cylinder } = await places();
+    await bring('entries', ENTRIES);
+    const late = [
+      'Date,What,Unit,Cylinder,Supplier,Mass,Note',
+      '2026-02-02 08:00,refill,U1,A1,,100 g,late',
+      '2026-02-01 08:00,bought,,A1,Fallow Gas,1 kg,later still',
+    ].join('\n');
+    expect((await bring('entries', late)).made).toBe(2);
+    // The weighing of 2 February at noon settles what came before it: 12.3 kg, then two of 0.4.
+    expect((await ledger.client.get(`/cylinders/${cylinder.id}`)).body.contentG).toBe(11_500);
+  });
+
   it('is refused whole where the log refuses one row, and nothing of it stays', async () => {
     await begin();
     await places();
@@ -316,7 +358,46 @@ describe('A file', () => {
       422,
       'importTooManyColumns',
     ]);
-    expect(await refused(Buffer.alloc(8 * 1024 * 1024 + 1, 'a'))).toEqual([413, 'bodyTooLarge']);
+    expect(await refused(Buffer.alloc(20 * 1024 * 1024, 'a'))).toEqual([413, 'importTooLarge']);
+  });
+
+  it('that is refused says its own size and the limit, in words', async () => {
+    await begin();
+    const sentence = async (file: string | Uint8Array) => {
+      const { body } = await upload('cylinders', file);
+      return (body as unknown as { errors: { message: string }[] }).errors[0]?.message;
+    };
+    const book = new exceljs.Workbook();
+    const sheet = book.addWorksheet('stock');
+    for (let row = 0; row < 10_051; row += 1) sheet.addRow([row === 0 ? 'Tag' : row]);
+    const tooLong = new Uint8Array(await book.xlsx.writeBuffer());
+    const rowsSaid = 'The file holds 10,050 rows; 10,000 are possible at a time. Cut it into several.';
+    expect(await sentence(`Tag\n${'\n,\nx'.repeat(10_050)}`)).toBe(rowsSaid);
+    expect(await sentence(tooLong)).toBe(rowsSaid);
+    expect(await sentence(Buffer.alloc(20 * 1024 * 1024, 'a'))).toBe(
+      'The file holds 20.1 MB; 8 MB are possible. Cut it into several.',
+    );
+  });
+
+  it('with a head twice keeps the columns apart by name', async () => {
+    await begin();
+    const { body } = await upload('cylinders', 'Tag,Kind,Tag,Refrigerant,Tare\nB1,recovery,other,R-32,9');
+    expect(body.columns.map(({ head }) => head)).toEqual(['Tag', 'Kind', 'Tag (2)', 'Refrigerant', 'Tare']);
+    expect(guessed(body).tag).toBe(0);
+  });
+
+  it('with a spreadsheet’s number for a day, or a cell that could not be worked out, is told so', async () => {
+    await begin();
+    const book = new exceljs.Workbook();
+    const sheet = book.addWorksheet('stock');
+    sheet.addRow(['Tag', 'Kind', 'Refrigerant', 'Tare', 'Re-test']);
+    sheet.addRow(['B1', 'recovery', 'R-32', 9, 46_508]);
+    sheet.addRow(['B2', 'recovery', 'R-32', { formula: '1/0', result: { error: '#DIV/0!' } }, null]);
+    const checked = await check('cylinders', new Uint8Array(await book.xlsx.writeBuffer()));
+    expect(errorsOf(checked)).toEqual([
+      [2, 'Re-test', 'importDateSerial'],
+      [3, 'Tare', 'notANumber'],
+    ]);
   });
 
   it('is taken as multipart/form-data with a kind that is known', async () => {
@@ -369,5 +450,109 @@ describe('An import', () => {
         })
       ).body.code,
     ).toBe('importDone');
+  });
+
+  it('is a record of the log with the file’s SHA-256, in the transaction of its rows; bringing in nothing is none', async () => {
+    await begin();
+    const done = await bring('cylinders', CYLINDERS);
+    expect(done.sha256).toBe(createHash('sha256').update(CYLINDERS).digest('hex'));
+    const records = () =>
+      app.database.query<{ sequence: string; content: string; words: string }>(
+        'superuser',
+        `select j.sequence, j.content, t.content as words from journal_record j
+          join personal_text t on t.firm_id = j.firm_id and t.record_id = j.record_id
+          where j.firm_id = $1 and j.noun = 'import'`,
+        [ledger.firm.id],
+      );
+    const [record, ...others] = await records();
+    expect(others).toEqual([]);
+    expect(record).toMatchObject({ sequence: String(done.recordSequence), words: 'table.csv' });
+    expect(record?.content).not.toContain('table.csv');
+    expect(registerRecord.parse(JSON.parse(String(record?.content)))).toMatchObject({
+      noun: 'import',
+      subjectId: done.id,
+      recordedBy: ledger.owner.id,
+      after: {
+        kind: 'cylinders',
+        sha256: done.sha256,
+        rows: '2',
+        made: '2',
+        already: '0',
+        readAs: { massUnit: 'kg', dateOrder: 'dmy', columns: { tag: 'Tag', tare: 'Tare' } },
+      },
+    });
+    expect((await bring('cylinders', CYLINDERS)).recordSequence).toBeNull();
+    expect(await records()).toHaveLength(1);
+  });
+
+  it('is told that a row which is here was read otherwise then', async () => {
+    await begin();
+    await bring('cylinders', CYLINDERS);
+    const checked = await check('cylinders', CYLINDERS, { massUnit: 'lb' });
+    expect(errorsOf(checked)).toEqual([[2, null, 'importReadOtherwise']]);
+  });
+
+  it('is stopped between two parts of its rows, and keeps nothing', async () => {
+    await begin();
+    const before = await headSequence();
+    const table = cylinderTable(600);
+    const read = await upload('cylinders', table);
+    const request = {
+      columns: guessed(read.body),
+      massUnit: 'kg',
+      decimal: 'point',
+      dateOrder: 'dmy',
+      since: '2025-01-01',
+    };
+    const checking = await ledger.client.post<ImportView>(`/imports/${read.body.id}/check`, request);
+    expect(checking.body.state).toBe('checking');
+    const stopped = await ended(await ledger.client.post(`/imports/${read.body.id}/cancel`));
+    expect([stopped.state, stopped.made]).toEqual(['cancelled', 0]);
+    expect((await ledger.client.post(`/imports/${read.body.id}/run`)).body.code).toBe('importNotChecked');
+
+    const checked = await ended(await ledger.client.post(`/imports/${read.body.id}/check`, request));
+    expect([checked.state, checked.made]).toEqual(['checked', 600]);
+    await ledger.client.post(`/imports/${read.body.id}/run`);
+    const unkept = await ended(await ledger.client.post(`/imports/${read.body.id}/cancel`));
+    expect([unkept.state, await headSequence()]).toEqual(['cancelled', before]);
+  });
+
+  it('of ten thousand rows is checked and brought in whole, with progress that rises', {
+    timeout: 300_000,
+  }, async () => {
+    await begin();
+    const read = await upload('cylinders', cylinderTable(10_000));
+    const request = {
+      columns: guessed(read.body),
+      massUnit: 'kg',
+      decimal: 'point',
+      dateOrder: 'dmy',
+      since: '2025-01-01',
+    };
+    const path = `/imports/${read.body.id}`;
+    const follow = async () => {
+      const seen: number[] = [];
+      for (;;) {
+        const { body } = await ledger.client.get<ImportView>(path);
+        if (body.state !== 'checking' && body.state !== 'running') return { body, seen };
+        if (seen.at(-1) !== body.rowsDone) seen.push(body.rowsDone);
+        await new Promise((resolve) => setTimeout(resolve, 50));
+      }
+    };
+    await ledger.client.post(`${path}/check`, request);
+    const checked = await follow();
+    expect([checked.body.state, checked.body.made, checked.body.errors]).toEqual(['checked', 10_000, []]);
+    expect(checked.seen).toEqual(checked.seen.toSorted((a, b) => a - b));
+    expect(checked.seen.filter((rows) => rows > 0 && rows < 10_000).length).toBeGreaterThan(2);
+    await ledger.client.post(`${path}/run`);
+    const done = await follow();
+    expect([done.body.state, done.body.made]).toEqual(['done', 10_000]);
+    const [counted] = await app.database.query<{ cylinders: number; openings: number }>(
+      'superuser',
+      `select (select count(*)::int from cylinder where firm_id = $1) as cylinders,
+        (select count(*)::int from entry where firm_id = $1 and from_place = 'opening') as openings`,
+      [ledger.firm.id],
+    );
+    expect(counted).toEqual({ cylinders: 10_000, openings: 10_000 });
   });
 });

@@ -1,5 +1,5 @@
 import { useId, useState } from 'react';
-import type { ImportView } from '../../../shared/imports/import.schema.ts';
+import { IMPORT_LIMITS, type ImportView, sizesInMegabytes } from '../../../shared/imports/import.schema.ts';
 import { IMPORT_KINDS, type ImportKind } from '../../../shared/imports/import-fields.ts';
 import { answerErrors } from '../../api/form-errors.ts';
 import { useReadFile } from '../../api/imports.ts';
@@ -15,6 +15,8 @@ export function ChooseFile({ onRead }: { onRead: (view: ImportView) => void }) {
   const [kind, setKind] = useState<ImportKind>('units');
   const [file, setFile] = useState<File | null>(null);
   const [missing, setMissing] = useState(false);
+  // Said before it has travelled, and by the server again.
+  const tooLarge = file !== null && file.size > IMPORT_LIMITS.fileBytes;
   const errors = read.isError ? answerErrors(read.error) : [];
   return (
     <form
@@ -23,7 +25,7 @@ export function ChooseFile({ onRead }: { onRead: (view: ImportView) => void }) {
       onSubmit={(event) => {
         event.preventDefault();
         setMissing(file === null);
-        if (file) read.mutate({ kind, file }, { onSuccess: onRead });
+        if (file && !tooLarge) read.mutate({ kind, file }, { onSuccess: onRead });
       }}
     >
       <ChoiceField
@@ -53,6 +55,7 @@ export function ChooseFile({ onRead }: { onRead: (view: ImportView) => void }) {
           {t('imports.fileHint')}
         </p>
         {missing ? <FieldError>{t('imports.fileNeeded')}</FieldError> : null}
+        {tooLarge ? <FieldError>{t('problem.importTooLarge', sizesInMegabytes(file.size))}</FieldError> : null}
         {errors.map(({ message }) => (
           <FieldError key={message}>{message}</FieldError>
         ))}

@@ -32,7 +32,11 @@ export function Component() {
     >
       <div className="page-gutter flex flex-col gap-6 pt-4">
         {may ? null : <Notice title={t('imports.notAllowed')} />}
-        {may && isGone ? <Notice role="alert" title={t('imports.gone')} /> : null}
+        {may && isGone ? (
+          <Notice role="alert" title={t('imports.gone')}>
+            {t('imports.goneText')}
+          </Notice>
+        ) : null}
         {may && (id === '' || isGone) ? (
           <ChooseFile onRead={(view) => setSearch({ file: view.id }, { replace: true })} />
         ) : null}

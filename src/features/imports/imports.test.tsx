@@ -15,6 +15,7 @@ const view = (change: Partial<ImportView> = {}): ImportView => ({
   id: ID,
   kind: 'cylinders',
   fileName: 'stock.csv',
+  sha256: 'ab'.repeat(32),
   read: {
     format: 'csv',
     encoding: 'windows-1252',
@@ -44,6 +45,8 @@ const view = (change: Partial<ImportView> = {}): ImportView => ({
   errors: [],
   made: 0,
   already: 0,
+  recordSequence: null,
+  problem: null,
   ...change,
 });
 
@@ -74,7 +77,10 @@ beforeEach(() => {
         permissions,
       });
     if (options.method !== 'POST') return json(stands);
-    sent.push({ path, body: options.body instanceof FormData ? options.body : JSON.parse(String(options.body)) });
+    sent.push({
+      path,
+      body: options.body instanceof FormData ? options.body : JSON.parse(String(options.body ?? 'null')),
+    });
     if (path.endsWith('/check')) stands = afterCheck;
     if (path.endsWith('/run')) stands = view({ state: 'done', made: 2 });
     return json(stands, path === '/imports' ? 201 : 200);
@@ -153,6 +159,45 @@ describe('Bringing in a table', () => {
       `/api/v1/imports/${ID}/errors.csv`,
     );
     expect(screen.queryByRole('button', { name: /Bring in/ })).not.toBeInTheDocument();
+  });
+
+  it('does not send a file that is larger than is taken, and says by how much', async () => {
+    const user = await open();
+    const file = new File([new Uint8Array(8 * 1024 * 1024 + 1)], 'large.csv', { type: 'text/csv' });
+    await user.upload(await screen.findByLabelText('file'), file);
+    expect(screen.getByText('The file holds 8.1 MB; 8 MB are possible. Cut it into several.')).toBeVisible();
+    await user.click(screen.getByRole('button', { name: 'Read the file' }));
+    expect(sent).toEqual([]);
+  });
+
+  it('can be stopped while it checks, and says that nothing was kept', async () => {
+    stands = view({ state: 'checking', rowsDone: 1 });
+    const user = await open(`/imports?file=${ID}`);
+    expect(await screen.findByText('1 of 2 rows')).toBeVisible();
+    stands = view({ state: 'cancelled' });
+    await user.click(screen.getByRole('button', { name: 'Stop' }));
+    expect(sent[0]).toMatchObject({ path: `/imports/${ID}/cancel` });
+    expect(await screen.findByText('Stopped. Nothing was kept.')).toBeVisible();
+    expect(screen.getByRole('button', { name: 'Check again' })).toBeVisible();
+  });
+
+  it('says why it broke off', async () => {
+    stands = view({ state: 'failed', problem: 'The log is busy.' });
+    await open(`/imports?file=${ID}`);
+    expect(await screen.findByText('It broke off, and nothing was kept.')).toBeVisible();
+    expect(screen.getByText('The log is busy.')).toBeVisible();
+  });
+
+  it('says that a file is no longer held, that nothing is half done, and takes it again', async () => {
+    vi.stubGlobal('fetch', async (url: string) =>
+      url.includes('/imports/')
+        ? new Response(JSON.stringify({ code: 'notFound', title: 'Not found', status: 404 }), { status: 404 })
+        : new Response(JSON.stringify({ person: { preferences: preferencesFor('en-GB') }, firms: [], permissions })),
+    );
+    await open(`/imports?file=${ID}`);
+    expect(await screen.findByText('The server no longer holds this file.')).toBeVisible();
+    expect(screen.getByText(/Nothing is half done: all rows came in or none/)).toBeVisible();
+    expect(screen.getByLabelText('file')).toBeVisible();
   });
 
   it('is not offered to who may not do it', async () => {

@@ -1,7 +1,7 @@
 import { useEffect, useRef } from 'react';
 import type { ImportError, ImportView } from '../../../shared/imports/import.schema.ts';
 import { answerErrors } from '../../api/form-errors.ts';
-import { importErrorsHref, isAtWork, useRefreshAfterImport, useRunImport } from '../../api/imports.ts';
+import { importErrorsHref, isAtWork, useCancelImport, useRefreshAfterImport, useRunImport } from '../../api/imports.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { Button } from '../../ui/button.tsx';
 import { FieldError } from '../../ui/field.tsx';
@@ -21,12 +21,24 @@ export function Outcome({ file }: { file: ImportView }) {
   }, [file.state, refresh]);
   if (file.state === 'read') return null;
   if (isAtWork(file)) return <Progress file={file} />;
-  if (file.state === 'failed') return <Notice role="alert" title={t('imports.failed')} />;
+  if (file.state === 'failed' || file.state === 'cancelled') {
+    return (
+      <Notice role="alert" title={t(`imports.${file.state}`)}>
+        {file.problem ? <p>{file.problem}</p> : null}
+        <p>{t('imports.checkOnceMore')}</p>
+      </Notice>
+    );
+  }
   if (file.state === 'done') {
     return (
       <div className="flex flex-col gap-3">
         <Done>{file.made === 0 ? t('imports.doneNothing') : t('imports.done', { count: file.made })}</Done>
         {file.already > 0 ? <p>{t('imports.already', { count: file.already })}</p> : null}
+        {file.recordSequence === null ? null : (
+          <p className="max-w-prose break-all text-ink-soft">
+            {t('imports.recorded', { number: file.recordSequence, sha256: file.sha256 })}
+          </p>
+        )}
       </div>
     );
   }
@@ -51,6 +63,7 @@ export function Outcome({ file }: { file: ImportView }) {
 
 function Progress({ file }: { file: ImportView }) {
   const t = useMessages();
+  const cancel = useCancelImport(file.id);
   const words = t('imports.progress', { done: file.rowsDone, rows: file.read.rows });
   return (
     <div className="flex max-w-xl flex-col gap-2" aria-live="polite">
@@ -62,6 +75,13 @@ function Progress({ file }: { file: ImportView }) {
         aria-label={t(`imports.${file.state}`)}
       />
       <p className="text-ink-soft">{words}</p>
+      {cancel.isSuccess ? (
+        <p>{t('imports.cancelling')}</p>
+      ) : (
+        <Button className="self-start" busy={cancel.isPending} onClick={() => cancel.mutate()}>
+          {t('imports.cancel')}
+        </Button>
+      )}
     </div>
   );
 }
