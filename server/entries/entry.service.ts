@@ -52,7 +52,12 @@ export async function exportEntries(parts: Parts, actor: Actor, query: EntryExpo
   }
   const fileName = `log-${parts.now().toISOString().slice(0, 10)}.csv`;
   await journalCsv(parts, actor, { document: 'entries', filters: query }, null);
-  await inFirm(parts.dataSource, actor, (manager) => sendEntriesCsv(manager, query, res, fileName), 'REPEATABLE READ');
+  await inFirm(
+    parts.dataSource,
+    actor,
+    (manager) => sendEntriesCsv(manager, query, actor.locale, res, fileName),
+    'REPEATABLE READ',
+  );
 }
 
 /** What counts for the leak rate of a unit, by the judge's own rule over its whole timeline. */

@@ -11,7 +11,7 @@ import { exportsRepository } from './export.repository.ts';
 import { exportFolder, FolderRefusal, type WrittenFile } from './export-folder.ts';
 import type { ExportTask } from './export-queue.ts';
 import { mayExport } from './export-rights.ts';
-import { countOf } from './tables/table.ts';
+import { countOf, inWordsOf } from './tables/table.ts';
 import { isTable, type TableRequest, tableRows } from './tables/tables.ts';
 import { writeCsv } from './write-csv.ts';
 import { writeXlsx } from './write-xlsx.ts';
@@ -195,7 +195,7 @@ async function fill(
       if (lines === null) throw new ExportRefusal('noSubject');
       return lines;
     }
-    const rows = tableRows(request);
+    const rows = inWordsOf(tableRows(request), actor.locale);
     const [counted] = await manager.query<{ count: string }[]>(countOf(rows));
     const total = Number(counted?.count);
     if (request.format === 'xlsx' && total > XLSX_LARGEST_ROWS) throw new ExportRefusal('tooManyRows');

@@ -112,6 +112,22 @@ async function textOf(name: string, bytes: Buffer): Promise<string> {
   return pages.map(({ text }) => text).join('\n');
 }
 
+/** What the page of the books says of November, in the order in which the report says it. */
+async function balancesAsReported(refrigerant: string): Promise<RegExp> {
+  const { body } = await world.ledger.client.get(`/books?from=2026-11&to=2026-11&refrigerant=${refrigerant}`);
+  const held = (kind: string, end: 'startG' | 'endG') => {
+    const place = body.places.find((each: { kind: string }) => each.kind === kind);
+    return `${Number(place?.[end] ?? 0).toLocaleString('en-GB')}\\sg`;
+  };
+  const facts = [
+    ['In cylinders before', held('cylinder', 'startG')],
+    ['In cylinders after', held('cylinder', 'endG')],
+    ['In units before', held('unit', 'startG')],
+    ['In units after', held('unit', 'endG')],
+  ];
+  return new RegExp([refrigerant, ...facts.flat()].join('\\s+'));
+}
+
 describe('The compliance manager', () => {
   it('goes from what contradicts to its entry, and sees a correction tied to what it corrects', async () => {
     const { page, atRest } = await browser.desk({ as: world.manager });
@@ -194,6 +210,7 @@ describe('The compliance manager', () => {
     const report = await textOf('period', await makeFile(page));
     expect(report).toMatch(/November 2026/);
     expect(report).toMatch(/cylinder difference\s+130/);
+    for (const refrigerant of ['R-32', 'R-410A']) expect(report).toMatch(await balancesAsReported(refrigerant));
 
     await page.goto(`${app.url}/books?from=2026-11&to=2026-11`);
     await page.getByRole('link', { name: 'Disposal report' }).click();
