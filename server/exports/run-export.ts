@@ -5,6 +5,7 @@ import { THE_PROGRAM } from '../../shared/proof/seal-record.schema.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
+import { Problem } from '../http/problem.ts';
 import { journalExport } from '../journal/journal-export.ts';
 import type { ExportRow, FinishedFile } from './export.repository.ts';
 import { exportsRepository } from './export.repository.ts';
@@ -27,7 +28,7 @@ export type WriteDocument = (
   stream: Writable,
 ) => Promise<number | null>;
 
-type Failure = 'noRights' | 'noSubject' | 'tooManyRows' | 'folder' | 'interrupted' | 'fault';
+type Failure = 'noRights' | 'noSubject' | 'tooManyRows' | 'statementTooLong' | 'folder' | 'interrupted' | 'fault';
 
 /** A reason to give up that is no fault of the server: the code of its sentence, `export.problem.<code>`. */
 export class ExportRefusal extends Error {
@@ -104,6 +105,8 @@ const isLockTimeout = (error: unknown): boolean => (error as { code?: unknown })
 
 const codeOf = (error: unknown): Failure => {
   if (error instanceof ExportRefusal) return error.code;
+  if (error instanceof Problem && error.errors.some(({ code }) => code === 'statementTooLong'))
+    return 'statementTooLong';
   return error instanceof FolderRefusal ? 'folder' : 'fault';
 };
 

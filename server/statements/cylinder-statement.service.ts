@@ -92,7 +92,7 @@ function periodOf({ from, to }: StatementQuery, today: string, timeZone: string)
   const first = from ?? `${last.slice(0, 7)}-01`;
   const [start, end] = [startOfDay(first, timeZone), startOfDay(dayAfter(last), timeZone)];
   if (end - start > STATEMENT_LIMITS.days * 24 * 60 * 60_000) {
-    throw problemOfRefusals([{ code: 'statementTooLong', path: '/from', allowed: STATEMENT_LIMITS.entries }]);
+    throw problemOfRefusals([{ code: 'statementPeriodTooLong', path: '/from', allowed: STATEMENT_LIMITS.days }]);
   }
   return { from: first, to: last, start, end };
 }

@@ -6,6 +6,7 @@ import { day, id, instant, month, pageOf, pageQuery } from '../lists/list.schema
 import { partyListQuery } from '../parties/parties.schema.ts';
 import { listPeopleQuery } from '../people/people.schema.ts';
 import { siteListQuery } from '../sites/sites.schema.ts';
+import { STATEMENT_LIMITS } from '../statements/cylinder-statement.schema.ts';
 import { toolListQuery } from '../tools/tools.schema.ts';
 import { unitListQuery } from '../unit-register/unit.schema.ts';
 
@@ -40,6 +41,7 @@ export const FILE_KEPT_HOURS = 24;
 /** Exports of one person that wait or run at a time. */
 export const UNFINISHED_A_PERSON = 5;
 
+const DAY_MS = 24 * 60 * 60_000;
 const TABLE_FORMATS = ['csv', 'xlsx'] as const;
 const months = z
   .strictObject({ from: month, to: month })
@@ -48,7 +50,11 @@ const months = z
 /** First and last day, both included, in the firm's zone. */
 const days = z
   .strictObject({ cylinderId: id, from: day, to: day })
-  .refine(({ from, to }) => from <= to, { path: ['to'], params: { code: 'endBeforeStart' } });
+  .refine(({ from, to }) => from <= to, { path: ['to'], params: { code: 'endBeforeStart' } })
+  .refine(({ from, to }) => Date.parse(to) - Date.parse(from) < STATEMENT_LIMITS.days * DAY_MS, {
+    path: ['from'],
+    params: { code: 'statementPeriodTooLong', allowed: STATEMENT_LIMITS.days },
+  });
 
 const withoutPages = { cursor: true, limit: true } as const;
 const table = <W extends ExportTable, F extends z.ZodType>(what: W, filters: F) =>

@@ -9,6 +9,7 @@ import { inFirm } from '../../server/database/firm-scope.ts';
 import { enqueueExport } from '../../server/exports/export-queue.ts';
 import { type ExportWorker, startExportWorker } from '../../server/exports/export-worker.ts';
 import type { WriteDocument } from '../../server/exports/run-export.ts';
+import { problemOfRefusals } from '../../server/http/problem.ts';
 import { startTestApp, type TestApp } from '../support/app.ts';
 import { exportRequests, until } from '../support/export-requests.ts';
 import { type Ledger, startLedger } from '../support/ledger.ts';
@@ -189,6 +190,29 @@ describe('An export that was taken over', () => {
 
     expect(await rowOf(id)).toEqual({ state: 'running', attempts: 2 });
     await requests.set(id, `state = 'cancelled'`);
+  });
+});
+
+describe('A statement of a cylinder as a paper', () => {
+  const statement = (from: string, to: string) =>
+    requests.ask('cylinderStatement', 'pdf', { cylinderId: uuid(), from, to });
+
+  it('over more days than a statement covers is refused when it is asked for', async () => {
+    const refused = await statement('2020-01-01', '2026-03-01');
+    expect(refused.status).toBe(422);
+    expect((refused.body as unknown as { errors: object[] }).errors).toEqual([
+      expect.objectContaining({ code: 'statementPeriodTooLong', path: '/filters/from', allowed: 1_100 }),
+    ]);
+  });
+
+  it('over more entries than a statement holds says so', async () => {
+    const { status, body } = await statement('2026-01-01', '2026-03-01');
+    expect(status).toBe(201);
+    await start(() => Promise.reject(problemOfRefusals([{ code: 'statementTooLong', path: '/from', allowed: 2_000 }])));
+    expect(await requests.ended(body.id)).toMatchObject({
+      state: 'failed',
+      problem: { code: 'statementTooLong', message: expect.stringContaining('2,000') },
+    });
   });
 });
 

@@ -56,7 +56,10 @@ describe('A statement is refused', () => {
     const ask = async (query: string) => (await ledger.client.get(`/cylinders/${id}/statement?${query}`)).body;
     expect(await ask('from=2026-03-02&to=2026-03-01')).toMatchObject({ code: 'periodBackwards', status: 422 });
     expect(await ask('from=2026-02-30')).toMatchObject({ code: 'notDay' });
-    expect(await ask('from=2020-01-01&to=2026-03-01')).toMatchObject({ code: 'statementTooLong' });
+    expect(await ask('from=2020-01-01&to=2026-03-01')).toMatchObject({
+      code: 'statementPeriodTooLong',
+      errors: [{ allowed: 1100, message: expect.stringContaining('1,100 days') }],
+    });
     expect(await ask('month=2026-03')).toMatchObject({ status: 422 });
   });
 });
@@ -183,6 +186,27 @@ describe('The difference of a period', () => {
     [20, 'notExplained'],
   ])('of %i g is beyond: %s', async (missingG, verdict) => {
     expect((await eightIssues(missingG)).difference).toMatchObject({ differenceG: -missingG, verdict });
+  });
+
+  it('of a month never contradicts the line of its reading, however many weighings its opening rests on', async () => {
+    const ledger = await startLedger(app);
+    const cylinder = await ledger.cylinder(null);
+    const unit = await ledger.unit('500', '9000');
+    await weigh(ledger, cylinder.id, 9_500, '2026-03-01T08:00:00Z');
+    for (let issue = 0; issue < 60; issue++) {
+      const at = new Date(Date.UTC(2026, 2, 2 + Math.floor(issue / 3), 9 + 2 * (issue % 3))).toISOString();
+      await charge(ledger, cylinder.id, unit.id, 9_500 - issue * 100, 9_400 - issue * 100, at);
+    }
+    await weigh(ledger, cylinder.id, 3_472, '2026-05-04T08:00:00Z');
+    // 2 sqrt(122) x 1.4434 g: 60 issues, each with its own pair of readings, between two more.
+    const figures = { differenceG: -28, twoUG: 31.885, verdict: 'withinScales' };
+    const may = await statementOf(ledger, cylinder.id, '2026-05-01', '2026-05-31');
+    expect(may.difference).toMatchObject({ ...figures, independentReadings: 122 });
+    expect(may.lines).toMatchObject([figures, {}]);
+    const all = await statementOf(ledger, cylinder.id, '2026-03-01', '2026-05-31');
+    expect(all.difference).toMatchObject(figures);
+    const books = await ledger.client.get('/books/differences?from=2026-05&to=2026-05');
+    expect(books.body.items).toMatchObject([figures]);
   });
 
   it('leaves a reading out that ends one weighing and starts the next', async () => {
@@ -355,7 +379,7 @@ describe('A statement as CSV', () => {
     expect(headers.get('content-type')).toContain('text/csv');
     const lines = String(body).trim().split('\r\n');
     expect(lines).toHaveLength(3);
-    expect(lines[0]).toContain('massG,balanceG,counterPlace,counter');
+    expect(lines[0]).toContain('mass (g),balance (g),other place: kind,other place');
     expect(lines[1]).toContain(`,500.5,10000.5,supplier,"'=HYPERLINK(""x"")",invoice,`);
     expect(lines[2]).toContain(',17700,10000,-0.5,4.082,withinScales,');
   });
