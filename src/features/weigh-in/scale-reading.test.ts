@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { onScale, press, readTyped, shown, typedOf } from './scale-reading.ts';
+import { onScale, press, readTyped, shown, typedOf, usualUnit } from './scale-reading.ts';
 import { keyed } from './weigh-in.fixture.ts';
 
 describe('The number pad', () => {
@@ -47,5 +47,19 @@ describe('The window', () => {
     expect(onScale(8415, 'kg', 5, 'es-ES')).toBe('8,415\u00a0kg');
     // 8,415 g are 296.83 oz: 18 lb 8.8 oz (1 oz = 28.349523125 g, exact).
     expect(onScale(8415, 'lbOz', 5, 'en-US')).toBe('18\u00a0lb 8.8\u00a0oz');
+  });
+});
+
+describe('A scale that is new here', () => {
+  it('is read in what it was made to show: ounces, pounds or grams', () => {
+    expect(usualUnit(2.8349523125, 'lbOz')).toBe('lbOz');
+    expect(usualUnit(2.8349523125, 'g')).toBe('oz');
+    expect(usualUnit(4.5359237, 'lbOz')).toBe('lb');
+    expect(usualUnit(5, 'lbOz')).toBe('g');
+  });
+
+  it('is read as this person reads masses when nobody knows its steps', () => {
+    expect(usualUnit(null, 'lbOz')).toBe('lbOz');
+    expect(usualUnit(null, 'g')).toBe('g');
   });
 });

@@ -1,5 +1,7 @@
 import type { TypedMass as PostedMass } from '../../../shared/ledger/entry-group.schema.ts';
+import type { Preferences } from '../../../shared/session/session.schema.ts';
 import { microgramsOfTyped } from '../../../shared/units/mass.ts';
+import { scaleStepIn } from '../../../shared/units/scale-step.ts';
 import { formatNumber, NBSP } from '../../lib/format.ts';
 
 /** How a scale of this trade shows a mass; `lbOz` is pounds and ounces side by side. */
@@ -13,6 +15,13 @@ export type ReadingUnit = (typeof READING_UNITS)[number];
 export interface KeyedReading {
   text: string;
   unit: ReadingUnit;
+}
+
+/** What a scale of these steps shows, until somebody says otherwise; without its steps what this person reads masses in. */
+export function usualUnit(resolutionG: number | null, mass: Preferences['mass']): ReadingUnit {
+  if (resolutionG === null) return mass;
+  const { unit } = scaleStepIn(resolutionG);
+  return unit === 'oz' && mass === 'lbOz' ? 'lbOz' : unit;
 }
 
 export const emptyReading = (unit: ReadingUnit): KeyedReading => ({ text: '', unit });

@@ -2,11 +2,12 @@ import { ASSUMED_SCALE } from '../../../../shared/ledger/scale.ts';
 import type { Tool } from '../../../../shared/tools/tools.schema.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
+import { usePreferences } from '../../../lib/preferences.ts';
 import { Button } from '../../../ui/button.tsx';
 import { ChoiceField } from '../../../ui/field.tsx';
 import { Failed, RowsSkeleton } from '../../../ui/notice.tsx';
 import { keepHabits } from '../habits.ts';
-import { READING_UNITS, type ReadingUnit } from '../scale-reading.ts';
+import { READING_UNITS, type ReadingUnit, usualUnit } from '../scale-reading.ts';
 import { StepPage } from '../step-page.tsx';
 import { type StepProps, useStepDraft } from '../use-weigh-in.ts';
 import { useWeighInData } from '../weigh-in-data.ts';
@@ -23,7 +24,12 @@ export function WeighingStep({ weighIn, dispatch }: StepProps) {
   const [chosen, setToolId] = useStepDraft<string | null>(weighIn, 'tool', () => leg?.toolId ?? OWN);
   const toolId = chosen === OWN ? (scales?.find(({ heldBy }) => heldBy === myId)?.id ?? null) : chosen;
   const [mode, setMode] = useStepDraft<Mode>(weighIn, 'mode', () => leg?.mode ?? 'gross');
-  const [unit, setUnit] = useStepDraft<ReadingUnit>(weighIn, 'unit', () => leg?.unit ?? 'g');
+  const { mass } = usePreferences();
+  // What was chosen for this scale the last time stands; a scale that is new here shows what it was made to show.
+  const [said, setUnit] = useStepDraft<ReadingUnit | null>(weighIn, 'unit', () =>
+    leg && (leg.toolId !== null || leg.unit !== 'g') ? leg.unit : null,
+  );
+  const unit = said ?? usualUnit(scales?.find((scale) => scale.id === toolId)?.scale?.resolutionG ?? null, mass);
   const goOn = () => {
     const known = scales?.some((scale) => scale.id === toolId) ? toolId : null;
     keepHabits({ toolId: known, mode, unit });
@@ -44,7 +50,14 @@ export function WeighingStep({ weighIn, dispatch }: StepProps) {
       {scales === null && !failed ? (
         <RowsSkeleton rows={3} rowClass="h-14" />
       ) : (
-        <ScaleChoice scales={scales ?? []} toolId={toolId} onChange={setToolId} />
+        <ScaleChoice
+          scales={scales ?? []}
+          toolId={toolId}
+          onChange={(id) => {
+            setToolId(id);
+            setUnit(null);
+          }}
+        />
       )}
       <div className="pt-1">
         <ChoiceField
