@@ -46,7 +46,7 @@ export function Outcome({ file }: { file: ImportView }) {
   return (
     <div className="flex max-w-xl flex-col gap-3">
       <p role="status" className="type-title text-[1.5rem]">
-        {t('imports.right', { count: file.made })}
+        {file.made === 0 ? t('imports.nothingNew') : t('imports.right', { count: file.made })}
       </p>
       {file.already > 0 ? <p>{t('imports.already', { count: file.already })}</p> : null}
       {run.isError
