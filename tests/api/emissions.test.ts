@@ -206,7 +206,8 @@ describe('Emissions', () => {
     expect([status, headers.get('content-type')]).toEqual([200, 'text/csv; charset=utf-8']);
     const lines = String(body).trim().split('\r\n');
     expect(lines[0]).toBe(
-      'customer,label,refrigerant,measuredG,inferredG,hoseG,totalG,atLeastG,beforeOurCareG,gwp,co2eT,beforeOurCareCo2eT,gwpSet',
+      'customer,name,refrigerant,measured (g),inferred (g),in the hose (g),to the atmosphere (g),of it at least (g),' +
+        'before our care (g),GWP,CO2 equivalent (t),CO2 equivalent before our care (t),GWP values',
     );
     expect(lines[1]).toMatch(/,Wexcombe Mill,R-410A,0,300,0,300,0,0,2087.5,0.62625,0,AR4$/);
   });
