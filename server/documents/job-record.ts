@@ -122,7 +122,7 @@ function readingsOf(
         words.say(`moment.${reading.moment}`),
         `${reading.value} ${reading.unit}`,
         reading.toolName ?? words.say('noScale'),
-        reading.scale === null ? '' : words.scaleStep(reading.scale.resolutionG),
+        reading.resolutionG === null ? '' : words.scaleStep(reading.resolutionG),
       ],
     })),
   );

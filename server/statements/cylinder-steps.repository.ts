@@ -3,9 +3,6 @@ import type { StepReading } from '../../shared/ledger/cylinder-issues.ts';
 import type { Scale } from '../../shared/ledger/scale.ts';
 import type { CylinderStep } from '../../shared/statements/walk-cylinder.ts';
 
-/** How many groups before the period are looked through for what its book rests on. */
-const LOOK_BACK = 40;
-
 interface StepRow {
   cylinderId: string;
   groupId: string;
@@ -34,11 +31,21 @@ const SCALE = (alias: string) => `case when ${alias}.resolution_g is not null th
 const SIGNED = (cylinder: string) =>
   `case when e.to_id = ${cylinder} then e.mass_micrograms else -e.mass_micrograms end`;
 
-const ENTERED = (end: 'from' | 'to', when: string, rest = '') => `(select e.group_id from entry e
-  where e.firm_id = a.firm_id and e.${end}_id = a.id and not e.added_by_server and e.reverses_entry_id is null
-    and ${when} ${rest})`;
+const ENTERED = (end: 'from' | 'to') => `(select coalesce(e.corrects_group_id, e.group_id) from entry e
+  where e.firm_id = a.firm_id and e.${end}_id = a.id and e.reverses_entry_id is null and e.occurred_at >= a.first_at and e.occurred_at < a.until)`;
 
-const NEWEST_FIRST = `order by e.occurred_at desc, e.sequence desc limit ${LOOK_BACK}`;
+const ADDED = (end: 'from' | 'to') => `select coalesce(e.corrects_group_id, e.group_id) as group_id, e.occurred_at,
+    ${SIGNED('c.id')} as mass
+  from entry e
+  where e.firm_id = c.firm_id and e.${end}_id = c.id and e.added_by_server and e.occurred_at < x.since`;
+
+/**
+ * When a reading last set the book before the span: what judging added for it stands, with its corrections (they carry
+ * the time of what they correct). Nothing that happened before it has a part in a later difference.
+ */
+const RESTS_ON = `select coalesce(max(s.at), '-infinity') as first_at
+  from (select max(e.occurred_at) as at from (${ADDED('to')} union all ${ADDED('from')}) e
+    group by e.group_id having sum(e.mass) <> 0) s`;
 
 /**
  * A cylinder at a time, by its id. A plain join is taken for one row on either side, so that the whole register may be
@@ -46,19 +53,16 @@ const NEWEST_FIRST = `order by e.occurred_at desc, e.sequence desc limit ${LOOK_
  */
 const ONE_CYLINDER = '(select c.id, c.firm_id from cylinder c where c.id = x.id offset 0)';
 
-/** Groups of a period that touch some cylinders, and those shortly before it; nothing that was reversed. */
-const STEPS = `with asked as materialized (select c.id, c.firm_id, x.since, x.until
-    from unnest($1::uuid[], $2::timestamptz[], $3::timestamptz[]) x(id, since, until) cross join lateral ${ONE_CYLINDER} c),
+/** Groups that touch some cylinders, of a period and back to the reading that its book rests on; nothing that was reversed. */
+const STEPS = `with asked as materialized (select c.id, c.firm_id, x.until, k.first_at
+    from unnest($1::uuid[], $2::timestamptz[], $3::timestamptz[]) x(id, since, until)
+    cross join lateral ${ONE_CYLINDER} c cross join lateral (${RESTS_ON}) k),
   touching as materialized (
     select a.id as cylinder_id, a.until, t.group_id from asked a cross join lateral (
       (select r.group_id from reading r where r.firm_id = a.firm_id and r.cylinder_id = a.id
-        and r.read_at >= a.since and r.read_at < a.until)
-      union ${ENTERED('to', 'e.occurred_at >= a.since and e.occurred_at < a.until')}
-      union ${ENTERED('from', 'e.occurred_at >= a.since and e.occurred_at < a.until')}
-      union (select r.group_id from reading r where r.firm_id = a.firm_id and r.cylinder_id = a.id and r.read_at < a.since
-        order by r.read_at desc, r.sequence desc limit ${LOOK_BACK})
-      union ${ENTERED('to', 'e.occurred_at < a.since', NEWEST_FIRST)}
-      union ${ENTERED('from', 'e.occurred_at < a.since', NEWEST_FIRST)}) t)
+        and r.read_at >= a.first_at and r.read_at < a.until)
+      union ${ENTERED('to')}
+      union ${ENTERED('from')}) t)
   select t.cylinder_id as "cylinderId", g.id as "groupId", g.closes_group_id as "closesGroupId",
     g.occurred_at as "occurredAt", w.tare::text, coalesce(n.readings, '[]') as readings,
     coalesce(m.masses, '[]') as masses, p.posted::text, p.opened::text
@@ -96,7 +100,7 @@ export interface CylinderSpan {
   to: Date;
 }
 
-/** The timeline of some cylinders, each around its span: from shortly before `from` to before `to`. */
+/** The timeline of some cylinders, each from the reading that its book rests on at `from`, to before `to`. */
 export async function readCylinderSteps(
   manager: EntityManager,
   spans: readonly CylinderSpan[],
