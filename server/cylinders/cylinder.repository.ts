@@ -1,4 +1,6 @@
 import type { EntityManager } from 'typeorm';
+import { cylinderLimit, heldOrMeant, pressureRatingHolds } from '../../shared/cylinder-fill/cylinder-limits.ts';
+import type { FillJurisdiction } from '../../shared/cylinder-fill/filling-table.ts';
 import type { Cylinder, CylinderListQuery } from '../../shared/cylinders/cylinder.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import type { StoredMassUnit } from '../../shared/units/stored-mass.ts';
@@ -10,7 +12,7 @@ import { CylinderTareEntity } from './cylinder-tare.entity.ts';
 export type CylinderRow = CylinderEntity;
 export type CylinderTareRow = CylinderTareEntity;
 
-/** What the database says of a cylinder; whether its rating holds comes from the reference tables. */
+/** What the database says of a cylinder; its limit and whether its rating holds follow from what is in it. */
 export interface CylinderViewRow {
   id: string;
   tag: string;
@@ -21,7 +23,7 @@ export interface CylinderViewRow {
   ownerId: string | null;
   tare: { mass: string; value: string; unit: StoredMassUnit };
   waterCapacity: string | null;
-  limit: string | null;
+  stampedLimit: string | null;
   servicePressureKPaGauge: number | null;
   retestDue: string | null;
   heldBy: string | null;
@@ -30,6 +32,8 @@ export interface CylinderViewRow {
   book: Record<string, string> | null;
   lastReading: { at: string; mass: string } | null;
   openWeighInGroupId: string | null;
+  /** Whose rule its pressure is judged by. */
+  jurisdiction: FillJurisdiction;
   version: number;
 }
 
@@ -39,9 +43,9 @@ const SELECT = `c.id, c.tag, c.kind, c.refrigerant, c.content_state as "contentS
   (select json_build_object('mass', t.mass_micrograms::text, 'value', t.typed_value, 'unit', t.typed_unit)
     from cylinder_tare t where t.firm_id = c.firm_id and t.cylinder_id = c.id
     order by t.valid_from desc, t.id desc limit 1) as tare,
-  c.water_capacity_micrograms::text as "waterCapacity", c.limit_micrograms::text as "limit",
+  c.water_capacity_micrograms::text as "waterCapacity", c.stamped_limit_micrograms::text as "stampedLimit",
   c.service_pressure_kpa_gauge as "servicePressureKPaGauge", c.retest_due::text as "retestDue", c.held_by as "heldBy",
-  h.name as "heldByName", c.batch, c.version,
+  h.name as "heldByName", c.batch, c.version, (select f.jurisdiction from firm f where f.id = c.firm_id) as jurisdiction,
   (select json_object_agg(b.refrigerant, b.mass_micrograms::text) from balance b
     where b.firm_id = c.firm_id and b.place = 'cylinder' and b.place_id = c.id and b.mass_micrograms <> 0) as book,
   (select json_build_object('at', r.read_at, 'mass', r.mass_micrograms::text) from reading r
@@ -87,11 +91,20 @@ export function cylindersRepository(manager: EntityManager) {
   };
 }
 
-/** @param ratingHolds whether the service pressure bears the refrigerant at 55 °C */
-export function presentCylinder(row: CylinderViewRow, ratingHolds: boolean | null): Cylinder {
+export function presentCylinder(row: CylinderViewRow): Cylinder {
   const byRefrigerant = Object.entries(row.book ?? {})
     .map(([refrigerant, mass]) => ({ refrigerant, massG: gramsOfMicrograms(BigInt(mass)) }))
     .sort((a, b) => (a.refrigerant < b.refrigerant ? -1 : 1));
+  const held = byRefrigerant.filter(({ massG }) => massG > 0).map(({ refrigerant }) => refrigerant);
+  const bigintOf = (text: string | null) => (text === null ? null : BigInt(text));
+  const limit = cylinderLimit(
+    {
+      ...row,
+      stampedLimitMicrograms: bigintOf(row.stampedLimit),
+      waterCapacityMicrograms: bigintOf(row.waterCapacity),
+    },
+    held,
+  );
   const content = Object.values(row.book ?? {}).reduce((sum, mass) => sum + BigInt(mass), 0n);
   return {
     id: row.id,
@@ -103,9 +116,14 @@ export function presentCylinder(row: CylinderViewRow, ratingHolds: boolean | nul
     tareG: gramsOfMicrograms(BigInt(row.tare.mass)),
     tareTyped: { value: row.tare.value, unit: row.tare.unit },
     waterCapacityG: row.waterCapacity === null ? null : gramsOfMicrograms(BigInt(row.waterCapacity)),
-    limitG: row.limit === null ? null : gramsOfMicrograms(BigInt(row.limit)),
+    limitG: limit === null ? null : gramsOfMicrograms(limit),
+    stampedLimitG: row.stampedLimit === null ? null : gramsOfMicrograms(BigInt(row.stampedLimit)),
     servicePressureKPaGauge: row.servicePressureKPaGauge,
-    pressureRatingHolds: ratingHolds,
+    pressureRatingHolds: pressureRatingHolds(
+      row.servicePressureKPaGauge,
+      heldOrMeant(row.refrigerant, held),
+      row.jurisdiction,
+    ),
     retestDue: row.retestDue,
     heldBy: row.heldBy,
     heldByName: row.heldByName,

@@ -1,6 +1,5 @@
 import type { EntityManager } from 'typeorm';
 import type { z } from 'zod';
-import { pressureRatingHolds } from '../../shared/cylinder-fill/cylinder-limits.ts';
 import type {
   addTareRequest,
   CreateCylinderRequest,
@@ -20,7 +19,7 @@ import { lockHead } from '../journal/post-records.ts';
 import { orThrow, wasMade } from '../journal/register-journal.ts';
 import { changeRow, type Made, taken } from '../registers/register-rows.ts';
 import { refuseFuture } from '../units/unit-history.service.ts';
-import { type CylinderRow, type CylinderViewRow, cylindersRepository, presentCylinder } from './cylinder.repository.ts';
+import { type CylinderRow, cylindersRepository, presentCylinder } from './cylinder.repository.ts';
 import {
   factsOf,
   makeCylinders,
@@ -33,13 +32,11 @@ import {
 } from './make-cylinders.ts';
 
 export function listCylinders(parts: PostingParts, actor: Actor, query: CylinderListQuery) {
-  return inFirm(parts.dataSource, actor, (manager) =>
-    cylindersRepository(manager).list(query, (row) => present(parts, row)),
-  );
+  return inFirm(parts.dataSource, actor, (manager) => cylindersRepository(manager).list(query, presentCylinder));
 }
 
 export function getCylinder(parts: PostingParts, actor: Actor, id: string) {
-  return inFirm(parts.dataSource, actor, (manager) => requireView(parts, manager, id));
+  return inFirm(parts.dataSource, actor, (manager) => requireView(manager, id));
 }
 
 export function createCylinder(
@@ -50,7 +47,7 @@ export function createCylinder(
   return inFirm(parts.dataSource, actor, async (manager) => {
     await lockHead(manager);
     const [made] = await makeCylinders(manager, parts, actor, [request]);
-    return { isNew: orThrow(made), value: await requireView(parts, manager, request.id) };
+    return { isNew: orThrow(made), value: await requireView(manager, request.id) };
   });
 }
 
@@ -72,7 +69,7 @@ export function updateCylinder(
       find: (manager) => cylindersRepository(manager).find(id),
       factsOf,
       changed: (row) =>
-        withLimit(parts, {
+        withLimit({
           ...row,
           tag: taken(request.tag, row.tag),
           contentState: taken(request.contentState, row.contentState),
@@ -85,7 +82,7 @@ export function updateCylinder(
         }),
       update: (manager, row) => cylindersRepository(manager).update(row),
     },
-    (manager) => requireView(parts, manager, id),
+    (manager) => requireView(manager, id),
   );
 }
 
@@ -114,11 +111,8 @@ export function addTare(
   });
 }
 
-async function requireView(parts: PostingParts, manager: EntityManager, id: string): Promise<Cylinder> {
+async function requireView(manager: EntityManager, id: string): Promise<Cylinder> {
   const found = await cylindersRepository(manager).findView(id);
   if (!found) throw new Problem('notFound');
-  return present(parts, found);
+  return presentCylinder(found);
 }
-
-export const present = ({ reference }: Pick<PostingParts, 'reference'>, row: CylinderViewRow): Cylinder =>
-  presentCylinder(row, pressureRatingHolds(row.servicePressureKPaGauge, row.refrigerant, reference));

@@ -67,7 +67,7 @@ function planOf(parts: PostingParts, firmId: string, request: CreateCylinderRequ
     const given = { given: refrigerant, params: { given: refrigerant } };
     return problemOfRefusals([{ code: 'unknownRefrigerant', path: '/refrigerant', ...given }]);
   }
-  const row = newRow(parts, firmId, request);
+  const row = newRow(firmId, request);
   const tareRow = tareRowOf(firmId, id, { ...tare, reason: null });
   const registers: CylinderPlan['registers'] = [
     { noun: 'cylinder', subjectId: id, facts: factsOf(row) },
@@ -76,9 +76,9 @@ function planOf(parts: PostingParts, firmId: string, request: CreateCylinderRequ
   return { row, tare: tareRow, registers };
 }
 
-function newRow(parts: PostingParts, firmId: string, request: CreateCylinderRequest): NewRow {
+function newRow(firmId: string, request: CreateCylinderRequest): NewRow {
   const { owner } = request;
-  return withLimit(parts, {
+  return withLimit({
     firmId,
     id: request.id,
     tag: request.tag,
@@ -98,9 +98,9 @@ function newRow(parts: PostingParts, firmId: string, request: CreateCylinderRequ
   });
 }
 
-export const withLimit = <Row extends NewRow>({ reference }: PostingParts, row: Row): Row => ({
+export const withLimit = <Row extends NewRow>(row: Row): Row => ({
   ...row,
-  limitMicrograms: cylinderLimit(row, reference),
+  limitMicrograms: cylinderLimit(row),
 });
 
 export const waterCapacity = (mass: TypedMass | null) => ({

@@ -11,6 +11,8 @@ import { RentCylinders1764806400030 } from './migrations/1764806400030-rent-cyli
 import { JournalImports1764892800050 } from './migrations/1764892800050-journal-imports.ts';
 import { TieSettlementUndos1764892800060 } from './migrations/1764892800060-tie-settlement-undos.ts';
 import { FollowDatedSites1764892800061 } from './migrations/1764892800061-follow-dated-sites.ts';
+import { LimitByContents1764892800070 } from './migrations/1764892800070-limit-by-contents.ts';
+import { ExportProofPackages1764892800090 } from './migrations/1764892800090-export-proof-packages.ts';
 
 /** In order. Named one by one, because a bundled server has no folder to search. Merged ones are never edited. */
 export const MIGRATIONS = [
@@ -27,4 +29,6 @@ export const MIGRATIONS = [
   JournalImports1764892800050,
   TieSettlementUndos1764892800060,
   FollowDatedSites1764892800061,
+  LimitByContents1764892800070,
+  ExportProofPackages1764892800090,
 ] as const;

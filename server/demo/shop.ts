@@ -1,5 +1,5 @@
 import { cylinderLimit } from '../../shared/cylinder-fill/cylinder-limits.ts';
-import type { ReferenceData } from '../../shared/reference/reference-data.ts';
+import { isRetestOverdue } from '../../shared/cylinders/retest.ts';
 import { gramsOfMicrograms, microgramsOfTyped } from '../../shared/units/mass.ts';
 import {
   type PurchaseOptions,
@@ -38,7 +38,7 @@ export class Shop {
       id: facts.diary.id(idsFrom),
       tareG: gramsOf(plan.tare),
       contentG: 0,
-      limitG: limitOf(plan, facts.reference),
+      limitG: limitOf(plan),
       heldBy: null,
       state: 'planned',
       busyUntil: 0,
@@ -118,6 +118,10 @@ export class Shop {
   private withRoom({ at }: Moment, refrigerant: string, needG: number): StockCylinder[] {
     return this.holding(refrigerant, 'recovery')
       .filter(({ busyUntil }) => busyUntil <= at.getTime())
+      .filter(
+        ({ retestInDays }) =>
+          retestInDays === undefined || !isRetestOverdue(this.facts.dayIn(retestInDays), at.toISOString().slice(0, 10)),
+      )
       .filter(({ limitG, contentG }) => limitG === null || contentG + needG <= CAREFUL_SHARE * limitG);
   }
 
@@ -212,8 +216,8 @@ function taken(cylinder: StockCylinder, { at }: Moment): StockCylinder {
   return cylinder;
 }
 
-function limitOf(plan: CylinderPlan, reference: ReferenceData): number | null {
+function limitOf(plan: CylinderPlan): number | null {
   const waterCapacityMicrograms = plan.waterCapacity ? microgramsOfTyped(plan.waterCapacity) : null;
-  const limit = cylinderLimit({ ...plan, stampedLimitMicrograms: null, waterCapacityMicrograms }, reference);
+  const limit = cylinderLimit({ ...plan, stampedLimitMicrograms: null, waterCapacityMicrograms });
   return limit === null ? null : gramsOfMicrograms(limit);
 }

@@ -1,4 +1,6 @@
 import type { EntityManager } from 'typeorm';
+import type { FillJurisdiction } from '../../shared/cylinder-fill/filling-table.ts';
+import { retestOverdueFrom } from '../../shared/cylinders/retest.ts';
 import { emptyCylinderState } from '../../shared/ledger/cylinder-state.ts';
 import type { LedgerFlag } from '../../shared/ledger/flag.ts';
 import type { MassByRefrigerant } from '../../shared/ledger/mass-by-refrigerant.ts';
@@ -6,6 +8,7 @@ import type { Place } from '../../shared/ledger/place.ts';
 import type { Scale } from '../../shared/ledger/scale.ts';
 import { cylinderFromSnapshot, type Snapshot, unitFromSnapshot } from '../../shared/ledger/snapshot.ts';
 import { emptyUnitState } from '../../shared/ledger/unit-state.ts';
+import { startOfDay } from '../../shared/periods/month.ts';
 import { plannedQuery } from '../journal/planned-query.ts';
 import type { CylinderFacts, PostingFacts, StoredFlag, UnitFacts } from './posting-facts.ts';
 
@@ -23,14 +26,17 @@ export interface NamedIds {
 }
 
 interface FactRows {
-  firm: { timeZone: string; sequence: string; firstOpenMonth: string | null };
+  firm: { timeZone: string; jurisdiction: FillJurisdiction; sequence: string; firstOpenMonth: string | null };
   earlier: string[];
   cylinders: {
     id: string;
     tag: string;
     kind: string;
     refrigerant: string;
-    limit: string | null;
+    stampedLimit: string | null;
+    waterCapacity: string | null;
+    servicePressure: number | null;
+    retestDue: string | null;
     tares: { from: string; mass: string }[];
     book: Record<string, string> | null;
     state: Snapshot | null;
@@ -81,12 +87,14 @@ export const FLAG_FIELDS = `json_build_object('id', f.id, 'code', f.code, 'subje
 
 /** One statement, because a posting waits for it with the head locked. Masses come as text: JSON numbers are doubles. */
 const FACTS = `select json_build_object(
-  'firm', (select json_build_object('timeZone', f.time_zone, 'sequence', h.sequence::text,
+  'firm', (select json_build_object('timeZone', f.time_zone, 'jurisdiction', f.jurisdiction, 'sequence', h.sequence::text,
       'firstOpenMonth', h.first_open_month)
     from firm f join firm_head h on h.firm_id = f.id where f.id = current_firm_id()),
   'earlier', (select coalesce(json_agg(g.id), '[]') from entry_group g where g.id = any ($8::uuid[])),
   'cylinders', (select coalesce(json_agg(json_build_object('id', c.id, 'tag', c.tag, 'kind', c.kind,
-      'refrigerant', c.refrigerant, 'limit', c.limit_micrograms::text,
+      'refrigerant', c.refrigerant, 'stampedLimit', c.stamped_limit_micrograms::text,
+      'waterCapacity', c.water_capacity_micrograms::text, 'servicePressure', c.service_pressure_kpa_gauge,
+      'retestDue', c.retest_due,
       'tares', (select json_agg(json_build_object('from', t.valid_from, 'mass', t.mass_micrograms::text))
         from cylinder_tare t where t.cylinder_id = c.id),
       'book', ${BOOK('cylinder', 'c.id')}, 'state', ${STATE('cylinder', 'c.id')})), '[]')
@@ -133,7 +141,7 @@ export async function loadPostingFacts(manager: EntityManager, named: NamedIds):
   return {
     firm: { ...firm, sequence: Number(firm.sequence) },
     earlierGroupIds: new Set(earlier),
-    cylinders: new Map(cylinders.map((cylinder) => [cylinder.id, cylinderFacts(cylinder)])),
+    cylinders: new Map(cylinders.map((cylinder) => [cylinder.id, cylinderFacts(cylinder, firm)])),
     units: new Map(units.map((unit) => [unit.id, unitFacts(unit)])),
     scales: new Map(tools.map(({ id, ...scale }) => [id, scale])),
     standingFlags: flags.map(storedFlag),
@@ -144,19 +152,35 @@ export async function loadPostingFacts(manager: EntityManager, named: NamedIds):
   };
 }
 
-function cylinderFacts(row: FactRows['cylinders'][number]): CylinderFacts {
+function cylinderFacts(row: FactRows['cylinders'][number], firm: FactRows['firm']): CylinderFacts {
+  const bigintOf = (text: string | null) => (text === null ? null : BigInt(text));
   return {
     register: {
       cylinderId: row.id,
       refrigerant: row.refrigerant,
       nonRefillable: row.kind === 'nonRefillable',
-      limitMicrograms: row.limit === null ? null : BigInt(row.limit),
+      collar: {
+        stampedLimitMicrograms: bigintOf(row.stampedLimit),
+        waterCapacityMicrograms: bigintOf(row.waterCapacity),
+        servicePressureKPaGauge: row.servicePressure,
+        jurisdiction: firm.jurisdiction,
+        retestOverdueFrom: row.retestDue === null ? null : startOfOverdue(row.retestDue, firm.timeZone),
+      },
       tares: row.tares.map(({ from, mass }) => ({ validFrom: Date.parse(from), tareMicrograms: BigInt(mass) })),
     },
     tag: row.tag,
     book: bookOf(row.book),
     state: row.state === null ? emptyCylinderState : cylinderFromSnapshot(row.state),
   };
+}
+
+/** Each is searched once: a posting waits for its facts with the head locked. */
+const overdueFrom = new Map<string, number>();
+function startOfOverdue(retestDue: string, timeZone: string): number {
+  const day = retestOverdueFrom(retestDue);
+  const at = overdueFrom.get(`${day} ${timeZone}`) ?? startOfDay(day, timeZone);
+  overdueFrom.set(`${day} ${timeZone}`, at);
+  return at;
 }
 
 function unitFacts(row: FactRows['units'][number]): UnitFacts {

@@ -1,5 +1,8 @@
+import { pressureRatingHolds } from '../../shared/cylinder-fill/cylinder-limits.ts';
+import { heldIn, limitOf } from '../../shared/ledger/cylinder-state.ts';
 import type { EntryGroupRequest, GroupKind } from '../../shared/ledger/entry-group.schema.ts';
 import { gramsText } from '../../shared/ledger/grams-text.ts';
+import { fillsAgain, isFill } from '../../shared/ledger/judge-cylinder.ts';
 import type { JudgedGroup } from '../../shared/ledger/judged-group.ts';
 import { type MassByRefrigerant, massOf, refrigerantsOf, totalOf } from '../../shared/ledger/mass-by-refrigerant.ts';
 import { cylinderPlace, type PlaceFields, type PlaceKind, samePlace } from '../../shared/ledger/place.ts';
@@ -201,8 +204,8 @@ function closingRefusals({ body, at, opening }: Asked): Refusal[] {
 }
 
 /**
- * What may happen but needs its reason: a second refrigerant in a cylinder, contents past its limit, a non-refillable
- * cylinder refilled. Asked of the group that brings it about; a correction of an earlier one is not asked.
+ * What may happen but needs its reason: a second refrigerant in a cylinder, contents past its limit or of more pressure
+ * than it bears, a non-refillable cylinder refilled, one filled past its re-test. Asked of the group that brings it about; a correction of an earlier one is not asked.
  */
 export function reasonRefusals(
   posting: Posting,
@@ -226,20 +229,32 @@ export function reasonRefusals(
       const held = refrigerantsOf(after).filter((refrigerant) => refrigerant !== second);
       refusals.push({ code: 'reasonForSecondRefrigerant', path, given: second, allowed: held.join(', '), params: tag });
     }
-    const { limitMicrograms, nonRefillable } = cylinder.register;
+    const { collar, nonRefillable } = cylinder.register;
+    const limitMicrograms = limitOf(cylinder.register, heldIn(after));
     const content = totalOf(after);
     if (limitMicrograms !== null && content > limitMicrograms && content > totalOf(before) && arriving.length > 0) {
       const figures = { given: gramsText(content), allowed: gramsText(limitMicrograms) };
       refusals.push({ code: 'reasonForPastLimit', path, ...figures, params: tag });
     }
-    const refilled = group.masses.some(({ from, to }) => samePlace(to, place) && !FIRST_FILLS.has(from.place));
-    if (nonRefillable && refilled) refusals.push({ code: 'reasonForRefill', path, params: tag });
+    const fills = group.masses.filter(({ to }) => samePlace(to, place));
+    const isFilled = fills.some(({ from }) => isFill(from.place));
+    if (nonRefillable && isFilled) refusals.push({ code: 'reasonForRefill', path, params: tag });
+    const { servicePressureKPaGauge, jurisdiction, retestOverdueFrom } = collar;
+    // What is put in each time, and what a reading shows for the first time.
+    const pressing = arriving.filter(
+      (refrigerant) => massOf(before, refrigerant) <= 0n || fills.some((mass) => mass.refrigerant === refrigerant),
+    );
+    for (const refrigerant of new Set(pressing)) {
+      if (pressureRatingHolds(servicePressureKPaGauge, [refrigerant], jurisdiction) !== false) continue;
+      refusals.push({ code: 'reasonForPressure', path, given: refrigerant, params: tag });
+    }
+    const isFilledAgain = fills.some(({ from }) => fillsAgain(from.place, cylinder.state?.opened ?? true));
+    if (isFilledAgain && retestOverdueFrom !== null && group.occurredAt >= retestOverdueFrom) {
+      refusals.push({ code: 'reasonForRetest', path, params: tag });
+    }
     return refusals;
   });
 }
-
-/** What fills a non-refillable cylinder for the first time, or finds it again. */
-const FIRST_FILLS: ReadonlySet<PlaceKind> = new Set(['supplier', 'opening', 'missing']);
 
 /** Refrigerants that the group itself brings into the cylinder, in the order of their entries. */
 function arrivalsAt(cylinderId: string, group: JudgedGroup, judged: JudgedPosting): string[] {

@@ -1,4 +1,5 @@
 import type { EntityManager } from 'typeorm';
+import { isRetestOverdue } from '../../shared/cylinders/retest.ts';
 import type { OpenWeighIn, Today } from '../../shared/today/today.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { siteThen } from '../units/dated-site.ts';
@@ -43,12 +44,13 @@ export async function readDue(
   manager: EntityManager,
   { today, until }: { today: string; until: string },
 ): Promise<Today['due']> {
-  return manager.query<Today['due']>(
-    `select kind, id, label, day::text as "on", day < $1::date as overdue from (
+  const due = await manager.query<Omit<Today['due'][number], 'overdue'>[]>(
+    `select kind, id, label, day::text as "on" from (
        select 'retest' as kind, id, tag as label, retest_due as day from cylinder where retest_due is not null
        union all select 'invitationExpires', id, email, expires_at::date from invitation where accepted_at is null
          and expires_at >= $1::date
      ) d where day <= $2::date order by day, label limit 100`,
     [today, until],
   );
+  return due.map((each) => ({ ...each, overdue: each.kind === 'retest' && isRetestOverdue(each.on, today) }));
 }

@@ -1,8 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import type { Today } from '../../shared/today/today.schema.ts';
 import { dayInZone } from '../../shared/units/calendar.ts';
-import { cylindersRepository } from '../cylinders/cylinder.repository.ts';
-import { present } from '../cylinders/cylinder.service.ts';
+import { cylindersRepository, presentCylinder } from '../cylinders/cylinder.repository.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import { entryListRepository } from '../entries/entry-list.repository.ts';
 import { readOnHand } from '../entries/on-hand.repository.ts';
@@ -23,7 +22,7 @@ export function getToday(parts: Parts, actor: Actor): Promise<Today> {
     const days = { today: dayInZone(now, zone), until: dayInZone(now + DUE_WITHIN_DAYS * A_DAY_MS, zone) };
     const weighIns = await readOpenWeighIns(manager);
     const own = { heldBy: actor.personId, sort: 'tag' as const, limit: 200 };
-    const { items: onTheVan } = await cylindersRepository(manager).list(own, (row) => present(parts, row));
+    const { items: onTheVan } = await cylindersRepository(manager).list(own, presentCylinder);
     const entries = entryListRepository(manager, actor.locale);
     const cameIn = isOffice ? (await entries.list({ sort: '-sequence', limit: 50 })).items : [];
     const since = now - A_DAY_MS;

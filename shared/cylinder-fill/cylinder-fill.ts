@@ -16,7 +16,7 @@ export const FILL_FACTOR = 0.8;
 /** For flammables: common practice, no source. */
 export const FLAMMABLE_FILL_FACTOR = 0.7;
 /** Basis of the specific gravity; 1,000 kg/m3 is the cautious choice (water at 25 °C has 997.05). */
-const WATER_KG_M3 = 1000;
+export const WATER_KG_M3 = 1000;
 const FILL_TEMP_C = 25;
 
 /**

@@ -55,10 +55,14 @@ export const cylinder = z.strictObject({
   tareG: z.number(),
   tareTyped: typedMass,
   waterCapacityG: z.number().nullable(),
-  /** Largest net content: the stamped limit, else 0.8 x water capacity x liquid density at 25 C; null: not known or none. */
+  /**
+   * Largest net content: the stamped limit, else 0.8 x water capacity x liquid density at 25 C of the lightest that is
+   * in it (while it is empty: of what it is meant for); null: not known or none.
+   */
   limitG: z.number().nullable(),
+  stampedLimitG: z.number().nullable(),
   servicePressureKPaGauge: z.number().nullable(),
-  /** Must bear the refrigerant's pressure at 55 C; null: no figure. */
+  /** Must bear the pressure at 55 C of all that is in it (while it is empty: of what it is meant for); null: no figure. */
   pressureRatingHolds: z.boolean().nullable(),
   retestDue: day.nullable(),
   heldBy: id.nullable(),

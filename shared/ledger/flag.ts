@@ -12,6 +12,8 @@ export const FLAG_LEVELS = {
   cylinderMixed: 'danger',
   nonRefillableRefilled: 'danger',
   cylinderOverLimit: 'danger',
+  cylinderPressureTooHigh: 'danger',
+  cylinderFilledPastRetest: 'danger',
   cylinderMissing: 'look',
   lateBeforeOpening: 'look',
   bookAboveFullCharge: 'look',

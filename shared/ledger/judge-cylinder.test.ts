@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { emptyCylinderState } from './cylinder-state.ts';
+import { BLANK_COLLAR, emptyCylinderState } from './cylinder-state.ts';
 import { cylinderBookBeforeMasses, replayCylinder } from './judge-cylinder.ts';
 import { cylinderRegister, day, FIVE_GRAM_SCALE, filledWith, g, group, moved, read } from './judged-group-builder.ts';
 import { placeKey } from './place.ts';
@@ -142,11 +142,56 @@ describe('a mixed cylinder', () => {
 
 describe('what stands before the manager for a cylinder', () => {
   it('is a fill past its limit, by how much, until it is under it again', () => {
-    const limited = cylinderRegister('C1', { limitMicrograms: g(9_000) });
+    const limited = cylinderRegister('C1', { collar: { ...BLANK_COLLAR, stampedLimitMicrograms: g(9_000) } });
     const over = replayCylinder(limited, [filledWith('C1', 9_500)]);
     expect(codes(over)).toEqual([['cylinderOverLimit', g(500)]]);
     const used = group('a', 2, { masses: [moved('C1 -> U', 600)] });
     expect(codes(replayCylinder(limited, [filledWith('C1', 9_500), used]))).toEqual([]);
+  });
+  it('is a fill past the limit of what is in it, not of what the cylinder is meant for', () => {
+    const collar = { ...BLANK_COLLAR, waterCapacityMicrograms: g(21_636.356) };
+    const meantForR134a = cylinderRegister('R1', { refrigerant: 'R-134a', collar });
+    const into = (id: string, onDay: number, massG: number, refrigerant: string) =>
+      group(id, onDay, { masses: [moved('U -> R1', massG, { refrigerant })] });
+    // R-410A alone 18,328.59 g; with R-32 in it 0.8 x 21,636.356 x 0.96101 = 16,634.204 g.
+    const r410a = into('a', 2, 19_000, 'R-410A');
+    expect(codes(replayCylinder(meantForR134a, [r410a]))).toEqual([['cylinderOverLimit', g(671.41)]]);
+    const mixed = [into('a', 2, 17_000, 'R-410A'), into('b', 3, 100, 'R-32')];
+    expect(codes(replayCylinder(meantForR134a, mixed.slice(0, 1)))).toEqual([]);
+    expect(codes(replayCylinder(meantForR134a, mixed))).toEqual([
+      ['cylinderMixed', null],
+      ['cylinderOverLimit', g(465.796)],
+    ]);
+  });
+  it('is what its service pressure does not bear at 55 °C, as long as it is in it', () => {
+    const collar = { ...BLANK_COLLAR, servicePressureKPaGauge: 1_793, jurisdiction: 'US' as const };
+    const low = cylinderRegister('R1', { refrigerant: 'R-134a', collar });
+    const filled = group('a', 2, { masses: [moved('U -> R1', 500)] });
+    const weighedAgain = group('b', 3, { readings: [read('R1', 'only', 500)] });
+    const step = replayCylinder(low, [filled, weighedAgain]);
+    expect(step.state.standing).toMatchObject([
+      { code: 'cylinderPressureTooHigh', refrigerant: 'R-410A', groupId: 'a' },
+    ]);
+    const sent = group('c', 4, { masses: [moved('R1 -> reclaimer', 500)] });
+    expect(codes(replayCylinder(low, [filled, weighedAgain, sent]))).toEqual([]);
+    expect(codes(replayCylinder(low, [filledWith('R1', 500, 'R-134a')]))).toEqual([]);
+  });
+  /** Source: 49 CFR 180.205(c): what was filled before its re-test was due stays in service until it is empty. */
+  it('is a fill after the month in which its re-test was due, until it is empty', () => {
+    const collar = { ...BLANK_COLLAR, retestOverdueFrom: day(3) };
+    const due = cylinderRegister('R1', { collar });
+    const inTime = group('a', 2, { masses: [moved('U -> R1', 500)] });
+    const used = group('u', 4, { masses: [moved('R1 -> U', 100)] });
+    const late = group('b', 5, { masses: [moved('U -> R1', 200)] });
+    const sent = group('c', 6, { masses: [moved('R1 -> reclaimer', 600)] });
+    expect(codes(replayCylinder(due, [inTime, used]))).toEqual([]);
+    expect(replayCylinder(due, [inTime, used, late]).state.standing).toMatchObject([
+      { code: 'cylinderFilledPastRetest', groupId: 'b' },
+    ]);
+    expect(codes(replayCylinder(due, [inTime, used, late, sent]))).toEqual([]);
+    const bought = group('p', 5, { masses: [moved('supplier -> R1', 500)] });
+    expect(codes(replayCylinder(due, [bought]))).toEqual([]);
+    expect(codes(replayCylinder(due, [inTime, bought]))).toEqual([['cylinderFilledPastRetest', null]]);
   });
   it('is a non-refillable cylinder filled from anything but its supplier', () => {
     const disposable = cylinderRegister('N1', { nonRefillable: true });

@@ -18,7 +18,7 @@ import {
   splitByBook,
   totalOf,
 } from './mass-by-refrigerant.ts';
-import { cylinderPlace, type SinglePlaceKind, singlePlace } from './place.ts';
+import { cylinderPlace, type PlaceKind, type SinglePlaceKind, samePlace, singlePlace } from './place.ts';
 import { grossVarianceG2, isBeyond } from './scale.ts';
 
 export interface CylinderStep {
@@ -166,7 +166,7 @@ class CylinderJudging {
       if (goesIn && from.place === 'supplier') this.boughtUnweighed = true;
       if (goesIn && from.place === 'missing') this.missing -= massMicrograms;
       if (goesOut && to.place === 'missing') this.missing += massMicrograms;
-      if (goesIn && this.register.nonRefillable && !FIRST_FILLS.has(from.place)) {
+      if (goesIn && this.register.nonRefillable && isFill(from.place)) {
         this.flag('nonRefillableRefilled', massMicrograms);
       }
     }
@@ -180,15 +180,25 @@ class CylinderJudging {
       .map(([code, massMicrograms]): LedgerFlag => {
         return { code, place, groupId: this.group.id, refrigerant: null, massMicrograms, standing: false, figures: {} };
       });
+    const stands = { book: this.book, missingMicrograms: this.missing, filledAt: this.filledAtNow() };
     const state: CylinderState = {
       lastPosition: { occurredAt: this.group.occurredAt, sequence: this.group.sequence },
-      book: this.book,
       opened: this.opened,
       boughtUnweighed: this.boughtUnweighed,
-      missingMicrograms: this.missing,
-      standing: cylinderStandingFlags(this.register, this.before, this.book, this.missing, this.group.id),
+      ...stands,
+      standing: cylinderStandingFlags(this.register, this.before, stands, this.group.id),
     };
     return { state, added: netted(this.added), flags };
+  }
+
+  /** When something was last put in, by this group or before it, as long as anything is left of it. */
+  private filledAtNow(): number | null {
+    if (totalOf(this.book) <= 0n) return null;
+    const place = cylinderPlace(this.register.cylinderId);
+    const fills = this.group.masses.some(
+      ({ from, to }) => samePlace(to, place) && fillsAgain(from.place, this.before.opened),
+    );
+    return fills ? this.group.occurredAt : this.before.filledAt;
   }
 
   bookNow(): MassByRefrigerant {
@@ -201,8 +211,12 @@ class CylinderJudging {
   }
 }
 
-/** What fills a cylinder for the first time, or finds it again. Anything else into a non-refillable one is a refill. */
-const FIRST_FILLS: ReadonlySet<string> = new Set(['supplier', 'opening', 'missing']);
+/** What a cylinder comes with, or is found again with. Anything else is put into it here: into a non-refillable one, a refill. */
+const COMES_WITH: ReadonlySet<string> = new Set(['supplier', 'opening', 'missing']);
+export const isFill = (from: PlaceKind): boolean => !COMES_WITH.has(from);
+/** Filled on a day that is known: a supplier's first filling may be older than its pick-up, a refill of a known cylinder is not. */
+export const fillsAgain = (from: PlaceKind, opened: boolean): boolean =>
+  isFill(from) || (from === 'supplier' && opened);
 
 /**
  * What a reading of the whole says of each refrigerant: split by the book. Where the group takes out more of one that

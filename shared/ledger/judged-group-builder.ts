@@ -1,4 +1,4 @@
-import type { CylinderRegister } from './cylinder-state.ts';
+import { BLANK_COLLAR, type CylinderRegister } from './cylinder-state.ts';
 import type { EmptyBy, HowKnown, UnitCondition } from './entry-group.schema.ts';
 import type { JudgedGroup, JudgedMass, JudgedReading, JudgedStatement } from './judged-group.ts';
 import { cylinderPlace, type Place, type PlaceFields, toPlace, unitPlace } from './place.ts';
@@ -62,7 +62,7 @@ export const cylinderRegister = (cylinderId: string, over: Partial<CylinderRegis
   cylinderId,
   refrigerant: R410A,
   nonRefillable: false,
-  limitMicrograms: null,
+  collar: BLANK_COLLAR,
   tares: [{ validFrom: day(0) - 90 * DAY_MS, tareMicrograms: g(TARE_G) }],
   ...over,
 });

@@ -61,13 +61,16 @@ class Played {
     }
     const grams = (mass: bigint) => ({ value: gramsText(mass), unit: 'g' });
     for (const register of cylinderRegisters) {
-      const { cylinderId, refrigerant, nonRefillable, limitMicrograms } = register;
+      const { cylinderId, refrigerant, nonRefillable, collar } = register;
       await ledger.made('/cylinders', {
         id: this.idOf(cylinderId),
         tag: cylinderId,
         kind: nonRefillable ? 'nonRefillable' : 'refillable',
         refrigerant,
-        stampedLimit: grams(limitMicrograms ?? 0n),
+        stampedLimit: collar.stampedLimitMicrograms === null ? null : grams(collar.stampedLimitMicrograms),
+        waterCapacity: grams(collar.waterCapacityMicrograms ?? 0n),
+        servicePressureKPaGauge: collar.servicePressureKPaGauge,
+        retestDue: collar.retestOverdueFrom === null ? null : '1970-01-15',
         tare: { id: uuid(), mass: grams(TARE), validFrom: SINCE },
       });
       memory.registerCylinder({ ...register, cylinderId: this.idOf(cylinderId) });

@@ -23,7 +23,14 @@ export const cylinderRegisters: CylinderRegister[] = [
   cylinderId,
   refrigerant,
   nonRefillable: cylinderId === 'C3',
-  limitMicrograms: g(9_000),
+  collar: {
+    // Two with a stamped limit, the others by what is in them: a mixture then takes less.
+    stampedLimitMicrograms: cylinderId === 'C3' || cylinderId === 'C1' ? g(9_000) : null,
+    waterCapacityMicrograms: g(10_600),
+    servicePressureKPaGauge: cylinderId === 'R1' ? 1_793 : 4_200,
+    jurisdiction: 'US' as const,
+    retestOverdueFrom: cylinderId === 'R2' ? Date.UTC(1970, 1, 1) : null,
+  },
   tares: [{ validFrom: 0, tareMicrograms: TARE }],
 }));
 const FILLED: Record<string, string> = { C1: 'R-410A', C2: 'R-410A', C3: 'R-32' };

@@ -1,6 +1,6 @@
 import type { BookEntry } from '../book-entry.ts';
 import { countedAdditions, fullChargeRises } from '../counted-additions.ts';
-import type { CylinderRegister } from '../cylinder-state.ts';
+import { BLANK_COLLAR, type CylinderRegister } from '../cylinder-state.ts';
 import { emissions } from '../emissions.ts';
 import { entryGroupRequest } from '../entry-group.schema.ts';
 import { gramsText } from '../grams-text.ts';
@@ -37,7 +37,7 @@ export class ScenarioRun {
     for (const [symbol, { refrigerant, tareG, nonRefillable }] of Object.entries(start.cylinders)) {
       const cylinderId = this.ids.idOf(symbol);
       const tares = [{ validFrom: startAt, tareMicrograms: microgramsOf(tareG) }];
-      const register = { cylinderId, refrigerant, nonRefillable, limitMicrograms: null, tares };
+      const register = { cylinderId, refrigerant, nonRefillable, collar: BLANK_COLLAR, tares };
       this.cylinders.set(cylinderId, register);
       this.ledger.registerCylinder(register);
     }

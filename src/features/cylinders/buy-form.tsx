@@ -3,6 +3,7 @@ import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import { entryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
 import { usePostGroup } from '../../api/entries.ts';
 import { answerErrors, errorAt, type FormError, schemaErrors } from '../../api/form-errors.ts';
+import { useSession } from '../../api/session.ts';
 import { useDraft } from '../../lib/draft.ts';
 import { useFormat } from '../../lib/format.ts';
 import { deviceNow, toDayInput, toLocalInput } from '../../lib/local-time.ts';
@@ -39,7 +40,9 @@ export function BuyForm({
   const mass = readQuantity('mass', draft.mass, { locale: preferences.locale });
   const addedG = mass.is === 'read' ? mass.base : 0;
   const used = cylinder.contentG > 0 || cylinder.lastWeighedAt !== null;
-  const dangers = addedG > 0 ? fillDangers({ ...cylinder, used }, addedG, cylinder.refrigerant) : [];
+  const jurisdiction = useSession()?.firm.jurisdiction ?? null;
+  const fill = { addedG, refrigerant: cylinder.refrigerant, day: draft.at.slice(0, 10), jurisdiction };
+  const dangers = addedG > 0 ? fillDangers({ ...cylinder, used }, fill) : [];
   const set = (change: Partial<PurchaseDraft>) => setDraft((now) => ({ ...now, ...change }));
   const send = () => {
     const body = purchaseRequest(draft, cylinder, mass, deviceNow().toISOString());

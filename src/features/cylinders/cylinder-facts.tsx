@@ -1,5 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
+import { allowedPressureKPaGauge } from '../../../shared/cylinder-fill/cylinder-limits.ts';
+import { pressureRule } from '../../../shared/cylinder-fill/filling-table.ts';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+import { isRetestOverdue } from '../../../shared/cylinders/retest.ts';
 import { formatQuantity } from '../../../shared/units/format-quantity.ts';
 import { customerQueries } from '../../api/customers.ts';
 import { partyQueries } from '../../api/parties.ts';
@@ -42,8 +45,8 @@ export function CylinderFacts({ cylinder, figures }: { cylinder: Cylinder; figur
         <Pressure cylinder={cylinder} figures={figures} />
       </Fact>
       <Fact name={t('cylinders.retest')}>
-        {cylinder.retestDue === null ? t('cylinders.notGiven') : format.day(cylinder.retestDue)}
-        {cylinder.retestDue !== null && cylinder.retestDue < toDayInput(deviceNow()) ? (
+        {cylinder.retestDue === null ? t('cylinders.notGiven') : format.month(cylinder.retestDue.slice(0, 7))}
+        {isRetestOverdue(cylinder.retestDue, toDayInput(deviceNow())) ? (
           <strong className="font-[650]">, {t('cylinders.mark.retestOverdue')}</strong>
         ) : null}
       </Fact>
@@ -89,7 +92,7 @@ function Limit({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFig
     );
   }
   const { ruleLimitG, liquidDensityKgM3 } = figures;
-  const byRule = ruleLimitG !== null && Math.abs(ruleLimitG - limitG) < 0.01;
+  const byRule = cylinder.stampedLimitG === null;
   return (
     <>
       {t('cylinders.limit.net', { mass: format.massAbout(limitG), gross: format.massAbout(limitG + cylinder.tareG) })}
@@ -98,10 +101,13 @@ function Limit({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFig
           ? t('cylinders.limit.byRule', {
               capacity: format.massAbout(waterCapacityG),
               density: format.number(liquidDensityKgM3, 0),
+              refrigerant: figures.limitingRefrigerant,
             })
-          : ruleLimitG === null || byRule
-            ? t('cylinders.limit.stamped')
-            : t('cylinders.limit.stampedAgainstRule', { rule: format.massAbout(ruleLimitG) })}
+          : byRule
+            ? t('cylinders.limit.rule')
+            : ruleLimitG === null || Math.abs(ruleLimitG - limitG) < 0.01
+              ? t('cylinders.limit.stamped')
+              : t('cylinders.limit.stampedAgainstRule', { rule: format.massAbout(ruleLimitG) })}
       </Why>
       {figures.cautions.map(({ code, message }) => (
         <Why key={code}>{message}</Why>
@@ -113,8 +119,10 @@ function Limit({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFig
 function Pressure({ cylinder, figures }: { cylinder: Cylinder; figures: CylinderFigures }) {
   const t = useMessages();
   const shown = usePressure();
-  const { servicePressureKPaGauge, pressureRatingHolds, refrigerant } = cylinder;
-  const needed = figures.pressureAt55KPaGauge;
+  const { servicePressureKPaGauge, pressureRatingHolds } = cylinder;
+  const { pressureAt55KPaGauge: needed, hottest } = figures;
+  const { jurisdiction } = useSession()?.firm ?? { jurisdiction: null };
+  const { clause } = pressureRule(jurisdiction);
   return (
     <>
       {servicePressureKPaGauge === null ? t('cylinders.notGiven') : shown(servicePressureKPaGauge)}
@@ -125,7 +133,21 @@ function Pressure({ cylinder, figures }: { cylinder: Cylinder; figures: Cylinder
         </strong>
       )}
       {needed === null ? null : (
-        <Why>{t('cylinders.pressure.needs', { refrigerant, pressure: shown(needed), temperature: RATING_TEMP_C })}</Why>
+        <Why>
+          {t('cylinders.pressure.needs', {
+            refrigerant: hottest,
+            pressure: shown(needed),
+            temperature: RATING_TEMP_C,
+          })}
+        </Why>
+      )}
+      {clause === null || servicePressureKPaGauge === null || pressureRatingHolds === null ? null : (
+        <Why>
+          {t('cylinders.pressure.allowed', {
+            pressure: shown(allowedPressureKPaGauge(servicePressureKPaGauge, jurisdiction)),
+            clause,
+          })}
+        </Why>
       )}
     </>
   );

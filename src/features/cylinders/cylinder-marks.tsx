@@ -1,4 +1,5 @@
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+import { isRetestOverdue } from '../../../shared/cylinders/retest.ts';
 import { deviceNow, toDayInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { SignalWord } from '../../ui/caution.tsx';
@@ -46,7 +47,7 @@ export function marksOf(cylinder: Cylinder, today: string): string[] {
   return [
     ...(cylinder.openWeighInGroupId ? ['openWeighIn'] : []),
     ...(isNearLimit(cylinder) ? ['nearLimit'] : []),
-    ...(cylinder.retestDue !== null && cylinder.retestDue < today ? ['retestOverdue'] : []),
+    ...(isRetestOverdue(cylinder.retestDue, today) ? ['retestOverdue'] : []),
     ...(cylinder.lastWeighedAt === null && cylinder.contentG > 0 ? ['neverWeighed'] : []),
   ];
 }

@@ -106,7 +106,11 @@ export function DangerGate({
               })
             : danger.is === 'otherRefrigerant'
               ? t('cylinders.danger.otherRefrigerant', { holds: danger.holds })
-              : t(`cylinders.danger.${danger.is}`)}
+              : danger.is === 'pressure'
+                ? t('cylinders.danger.pressure', { comes: danger.comes })
+                : danger.is === 'retest'
+                  ? t('cylinders.danger.retest', { month: format.month(danger.due.slice(0, 7)) })
+                  : t('cylinders.danger.refill')}
         </Caution>
       ))}
       {dangers.length > 0 ? (

@@ -1,11 +1,12 @@
 import { useState } from 'react';
 import { type LoaderFunctionArgs, useNavigate } from 'react-router-dom';
+import { pressureRatingHolds } from '../../../shared/cylinder-fill/cylinder-limits.ts';
 import { createCylinderRequest } from '../../../shared/cylinders/cylinder.schema.ts';
 import { entryGroupRequest } from '../../../shared/ledger/entry-group.schema.ts';
 import { useCreateCylinder } from '../../api/cylinders.ts';
 import { usePostGroup } from '../../api/entries.ts';
 import { answerErrors, errorAt, type FormError, schemaErrors } from '../../api/form-errors.ts';
-import { requireSession } from '../../api/session.ts';
+import { requireSession, useSession } from '../../api/session.ts';
 import { useDraft } from '../../lib/draft.ts';
 import { useFormat } from '../../lib/format.ts';
 import { deviceNow, toDayInput, toLocalInput } from '../../lib/local-time.ts';
@@ -79,8 +80,8 @@ export function Component() {
   const tareG = massOf(read.tare);
   const grossG = massOf(read.gross);
   const serviceKPa = read.servicePressure.is === 'read' ? read.servicePressure.base : null;
-  const holds =
-    serviceKPa === null || figures.pressureAt55KPaGauge === null ? null : figures.pressureAt55KPaGauge <= serviceKPa;
+  const jurisdiction = useSession()?.firm.jurisdiction ?? null;
+  const holds = pressureRatingHolds(serviceKPa, [draft.refrigerant], jurisdiction);
   const contentG =
     draft.begins === 'empty'
       ? 0
@@ -92,9 +93,18 @@ export function Component() {
   const dangers =
     contentG !== null && contentG > 0
       ? fillDangers(
-          { kind: draft.kind, contentG: 0, limitG, pressureRatingHolds: holds, byRefrigerant: [], used: false },
-          contentG,
-          draft.refrigerant,
+          {
+            kind: draft.kind,
+            refrigerant: draft.refrigerant,
+            contentG: 0,
+            stampedLimitG: massOf(read.stampedLimit),
+            waterCapacityG: massOf(read.waterCapacity),
+            servicePressureKPaGauge: serviceKPa,
+            retestDue: draft.retestDue || null,
+            byRefrigerant: [],
+            used: false,
+          },
+          { addedG: contentG, refrigerant: draft.refrigerant, day: toDayInput(deviceNow()), jurisdiction },
         )
       : [];
 

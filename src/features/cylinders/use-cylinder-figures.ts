@@ -1,5 +1,11 @@
 import { useQuery } from '@tanstack/react-query';
-import { STANDARD_ATMOSPHERE_KPA } from '../../../shared/units/factors.ts';
+import {
+  heldOrMeant,
+  limitingRefrigerant,
+  pressingMost,
+  ratingPressureKPaGauge,
+} from '../../../shared/cylinder-fill/cylinder-limits.ts';
+import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
 import { calculationQueries } from '../../api/calculations.ts';
 
 /** A pressure rating is held against the refrigerant's pressure at this temperature. */
@@ -13,7 +19,11 @@ export interface CylinderFigures {
   /** By the published rule; null without a water capacity, or where there is no rule. */
   ruleLimitG: number | null;
   liquidDensityKgM3: number | null;
-  /** What the refrigerant presses at 55 °C, gauge; null while it is not known. */
+  /** The lightest of what is in it, which the limit follows; while it is empty what it is meant for. */
+  limitingRefrigerant: string;
+  /** What in it presses most at 55 °C. */
+  hottest: string;
+  /** What that presses there, gauge; null where it is not known. */
   pressureAt55KPaGauge: number | null;
   /** What stays as vapour when the last liquid is gone; null without a water capacity. */
   heelG: number | null;
@@ -25,16 +35,16 @@ export function useCylinderFigures(cylinder: {
   kind: string;
   refrigerant: string;
   waterCapacityG: number | null;
+  byRefrigerant?: Cylinder['byRefrigerant'];
 }): CylinderFigures {
-  const { kind, refrigerant, waterCapacityG } = cylinder;
+  const { kind, waterCapacityG } = cylinder;
+  const held = (cylinder.byRefrigerant ?? []).filter(({ massG }) => massG > 0).map((each) => each.refrigerant);
+  const refrigerant = limitingRefrigerant(cylinder.refrigerant, held) ?? cylinder.refrigerant;
+  const hottest = pressingMost(heldOrMeant(cylinder.refrigerant, held));
   const hasRule = kind !== 'nonRefillable' && waterCapacityG !== null && waterCapacityG > 0 && refrigerant !== '';
   const fill = useQuery({
     ...calculationQueries.cylinderFill({ refrigerant, waterCapacityG: waterCapacityG ?? 1, tareG: 0 }),
     enabled: hasRule,
-  }).data;
-  const hot = useQuery({
-    ...calculationQueries.saturationAt(refrigerant, RATING_TEMP_C),
-    enabled: refrigerant !== '',
   }).data;
   const shop = useQuery({
     ...calculationQueries.saturationAt(refrigerant, HEEL_TEMP_C),
@@ -43,7 +53,9 @@ export function useCylinderFigures(cylinder: {
   return {
     ruleLimitG: hasRule ? (fill?.maxNetG ?? null) : null,
     liquidDensityKgM3: fill?.liquidDensityKgM3 ?? null,
-    pressureAt55KPaGauge: hot ? hot.bubbleKPaAbs - STANDARD_ATMOSPHERE_KPA : null,
+    limitingRefrigerant: refrigerant,
+    hottest,
+    pressureAt55KPaGauge: ratingPressureKPaGauge(hottest),
     heelG: shop && waterCapacityG !== null ? (waterCapacityG / 1000 / WATER_KG_PER_L) * shop.vapourDensityKgM3 : null,
     cautions: fill?.cautions ?? [],
   };

@@ -156,6 +156,9 @@ export interface FormContext {
   cylinder: (id: string) => KnownCylinder | undefined;
   /** A law's level is asked where that law holds. */
   jurisdiction: string | null;
+  /** Whose rule a cylinder's pressure is judged by: the firm's own. */
+  firmJurisdiction: 'US' | 'EU' | null;
+  today: string;
   /** Day on which the chosen recovery machine was made; null: not known. */
   machineMadeOn: string | null;
   /** The pick-up that an invoice is for. */
@@ -171,13 +174,15 @@ export type KnownCylinder = Pick<
   | 'kind'
   | 'refrigerant'
   | 'contentG'
-  | 'limitG'
+  | 'stampedLimitG'
+  | 'waterCapacityG'
+  | 'servicePressureKPaGauge'
+  | 'retestDue'
   | 'tareG'
   | 'tareTyped'
   | 'byRefrigerant'
   | 'mixed'
   | 'owner'
-  | 'pressureRatingHolds'
   | 'lastWeighedAt'
 >;
 

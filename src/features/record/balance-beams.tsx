@@ -1,4 +1,5 @@
 import { useMemo } from 'react';
+import { judgeFill } from '../../../shared/cylinder-fill/fill-judgement.ts';
 import type { PreviewedBalance } from '../../../shared/entry-previews/entry-preview.schema.ts';
 import { placeWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
@@ -26,7 +27,11 @@ function BalanceBeam({ balance, context }: { balance: PreviewedBalance; context:
   const { place, refrigerant, beforeG, afterG, known } = balance;
   const isUnit = place.place === 'unit';
   const fullG = isUnit && context.unit?.id === place.id ? (context.unit?.fullCharge?.massG ?? null) : null;
-  const limitG = isUnit ? fullG : (context.cylinder(place.id ?? '')?.limitG ?? null);
+  const cylinder = isUnit ? undefined : context.cylinder(place.id ?? '');
+  const cylinderLimitG = cylinder
+    ? judgeFill(cylinder, afterG > 0 ? [refrigerant] : [], context.firmJurisdiction).limitG
+    : null;
+  const limitG = isUnit ? fullG : cylinderLimitG;
   const words = t('record.beam.of', { place: placeWords(t, place), refrigerant });
   const change = t(known ? 'record.beam.change' : 'record.beam.sum', {
     before: format.mass(beforeG),

@@ -65,7 +65,7 @@ describe('What must not be done', () => {
       ...context,
       cylinder: (id: string) => {
         const known = context.cylinder(id);
-        return known && { ...known, limitG: 500, pressureRatingHolds: false };
+        return known && { ...known, stampedLimitG: 500, servicePressureKPaGauge: 1793 };
       },
     };
     expect(
@@ -74,6 +74,64 @@ describe('What must not be done', () => {
     expect(
       rowDangers(rowsOf(recovery), answersOf({ rows: [weighed('R1', 0, 500)] }), weak).map(({ is }) => is),
     ).toEqual(['pressure']);
+  });
+
+  /** R-410A presses 3,339 kPa at 55 °C; 0.8 x 47.7 lb x 1.0589 = 40.41 lb. */
+  it('judges what goes in, not what the cylinder is meant for: 19 kg of R-410A into a low-pressure one for R-134a', () => {
+    const context = contextOf('S13.1');
+    const meantForR134a = {
+      ...context,
+      firmJurisdiction: 'US' as const,
+      cylinder: (id: string) => {
+        const known = context.cylinder(id);
+        const collar = { refrigerant: 'R-134a', waterCapacityG: 21_636.356, servicePressureKPaGauge: 1793 };
+        return known && { ...known, ...collar, contentG: 0, byRefrigerant: [] };
+      },
+    };
+    const into = (unit: string | null, massG: number | null) =>
+      rowDangers(rowsOf(recovery), answersOf({ rows: [weighed('R1', 0, massG)] }), {
+        ...meantForR134a,
+        unit: unit === null ? null : ({ ...context.unit, refrigerant: unit } as typeof context.unit),
+      });
+    expect(into('R-410A', 19_000)).toMatchObject([
+      { is: 'pressure', comes: 'R-410A' },
+      { is: 'overLimit', wouldHoldG: 19_000, limitG: 18_328.59 },
+    ]);
+    expect(into('R-410A', null).map(({ is }) => is)).toEqual(['pressure']);
+    expect(into('R-134a', 19_000)).toEqual([]);
+    expect(into(null, 19_000)).toEqual([]);
+  });
+
+  /** Source: 49 CFR 173.301a(d): 5/4 of the service pressure in the US. */
+  it('takes R-410A into the trade’s 400 psig cylinder in the US, not elsewhere', () => {
+    const context = contextOf('S13.1');
+    const at = (firmJurisdiction: 'US' | 'EU') => ({
+      ...context,
+      firmJurisdiction,
+      cylinder: (id: string) => {
+        const known = context.cylinder(id);
+        return known && { ...known, servicePressureKPaGauge: 2757.9 };
+      },
+    });
+    const answers = answersOf({ rows: [weighed('R1', 0, 500)] });
+    expect(rowDangers(rowsOf(recovery), answers, at('US'))).toEqual([]);
+    expect(rowDangers(rowsOf(recovery), answers, at('EU')).map(({ is }) => is)).toEqual(['pressure']);
+  });
+
+  /** Source: 49 CFR 180.205(c): due by month and year. */
+  it('includes a fill after the month in which the re-test was due, by the day on which it was done', () => {
+    const context = contextOf('S13.1');
+    const due = {
+      ...context,
+      cylinder: (id: string) => {
+        const known = context.cylinder(id);
+        return known && { ...known, retestDue: '2026-02-28' };
+      },
+    };
+    const filled = (at: string) => rowDangers(rowsOf(recovery), answersOf({ at, rows: [weighed('R1', 0, 500)] }), due);
+    expect(filled('2026-02-28T23:59')).toEqual([]);
+    expect(filled('2026-03-01T00:00')).toMatchObject([{ is: 'retest', due: '2026-02-28' }]);
+    expect(filled('')).toMatchObject([{ is: 'retest' }]);
   });
 });
 

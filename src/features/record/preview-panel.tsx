@@ -10,7 +10,13 @@ import { BalanceBeams } from './balance-beams.tsx';
 import { FULL_ANSWERS } from './questions/plain-questions.tsx';
 import { RadioLines } from './radio-lines.tsx';
 
-const DANGERS = new Set(['cylinderMixed', 'nonRefillableRefilled', 'cylinderOverLimit']);
+const DANGERS = new Set([
+  'cylinderMixed',
+  'nonRefillableRefilled',
+  'cylinderOverLimit',
+  'cylinderPressureTooHigh',
+  'cylinderFilledPastRetest',
+]);
 
 /** What would be posted, in words and on beams, the question it asks and the reason it needs; nothing of it is stored. */
 export function PreviewPanel({

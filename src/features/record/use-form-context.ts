@@ -2,10 +2,11 @@ import { useQueries, useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { entryQueries } from '../../api/entries.ts';
+import { useSession } from '../../api/session.ts';
 import { siteQueries } from '../../api/sites.ts';
 import { toolQueries } from '../../api/tools.ts';
 import { unitQueries } from '../../api/units.ts';
-import { instantOfLocal } from '../../lib/local-time.ts';
+import { deviceNow, instantOfLocal, toDayInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import type { Answers, FormContext } from './answers.ts';
@@ -29,6 +30,7 @@ export function useFormContext(answers: Answers): FormContext {
   });
   const machines = useQuery(toolQueries.choice('recoveryMachine')).data;
   const group = useQuery({ ...entryQueries.group(aboutGroupId), enabled: aboutGroupId !== '' }).data;
+  const firmJurisdiction = useSession()?.firm.jurisdiction ?? null;
   return useMemo(() => {
     const byId = new Map([...(cylinders ?? []), ...chosen].map((cylinder) => [cylinder.id, cylinder]));
     const bought = group?.entries.find(({ from, to }) => from.place === 'supplier' && to.place === 'cylinder');
@@ -36,6 +38,8 @@ export function useFormContext(answers: Answers): FormContext {
       locale,
       unit,
       jurisdiction: site?.jurisdiction ?? null,
+      firmJurisdiction,
+      today: toDayInput(deviceNow()),
       cylinder: (id) => byId.get(id),
       machineMadeOn: machines?.find(({ id }) => id === machineId)?.madeOn ?? null,
       purchase:
@@ -51,7 +55,7 @@ export function useFormContext(answers: Answers): FormContext {
       instant: (local) => instantOfLocal(local) ?? '',
       say: t,
     };
-  }, [locale, unit, site, cylinders, chosen, machines, machineId, group, t]);
+  }, [locale, unit, site, cylinders, chosen, machines, machineId, group, t, firmJurisdiction]);
 }
 
 /** Whether everything that was chosen has been read: before that a form would build a request with holes. */

@@ -91,7 +91,9 @@ function Tag({ cylinder, address }: { cylinder: Cylinder; address: string }) {
             </>
           )}
         </Line>
-        <Line name={t('tag.retest')}>{retestDue === null ? t('tag.notGiven') : format.day(retestDue)}</Line>
+        <Line name={t('tag.retest')}>
+          {retestDue === null ? t('tag.notGiven') : format.month(retestDue.slice(0, 7))}
+        </Line>
         <Line name={t('tag.owner')}>{owner}</Line>
       </dl>
       <div className="mt-auto flex items-end gap-[3mm] pt-[2mm]">

@@ -24,7 +24,7 @@ export function DueList({ due }: { due: Today['due'] }) {
                 </span>
               </span>
               <span className={`shrink-0 text-right leading-tight ${item.overdue ? 'font-[650]' : 'text-ink-soft'}`}>
-                {format.day(item.on)}
+                {item.kind === 'retest' ? format.month(item.on.slice(0, 7)) : format.day(item.on)}
                 {item.overdue ? (
                   <span className="type-label block text-[0.875rem]">{t('today.due.overdue')}</span>
                 ) : null}

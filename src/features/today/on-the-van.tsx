@@ -1,5 +1,6 @@
 import { Link } from 'react-router-dom';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+import { isRetestOverdue } from '../../../shared/cylinders/retest.ts';
 import { useFormat } from '../../lib/format.ts';
 import { deviceNow, toDayInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -55,10 +56,10 @@ function CylinderOnVan({ cylinder }: { cylinder: Cylinder }) {
   const tare = said('today.beam.tare', tareG);
   const contents = said('today.beam.contents', contentG);
   const limit = limitG === null ? null : said('today.beam.limit', tareG + limitG);
-  const retestPast = retestDue !== null && retestDue < toDayInput(deviceNow());
+  const retestPast = retestDue !== null && isRetestOverdue(retestDue, toDayInput(deviceNow()));
   const words = [
     ...(mixed ? [t('today.cylinder.mixed')] : []),
-    ...(retestPast ? [t('today.cylinder.retest', { date: format.day(retestDue) })] : []),
+    ...(retestPast ? [t('today.cylinder.retest', { month: format.month(retestDue.slice(0, 7)) })] : []),
     ...(cylinder.openWeighInGroupId ? [t('today.cylinder.open')] : []),
   ];
   return (

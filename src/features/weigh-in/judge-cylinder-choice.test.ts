@@ -16,6 +16,7 @@ function cylinder(change: Partial<Cylinder> = {}): Cylinder {
     tareTyped: { value: '4680', unit: 'g' },
     waterCapacityG: null,
     limitG: null,
+    stampedLimitG: null,
     servicePressureKPaGauge: 4200,
     pressureRatingHolds: true,
     retestDue: '2031-01-01',
@@ -32,8 +33,8 @@ function cylinder(change: Partial<Cylinder> = {}): Cylinder {
     ...change,
   };
 }
-const judge = (...cylinders: Cylinder[]) =>
-  judgeCylinders(cylinders, { refrigerant: 'R-32', wantedG: 90, myId: ME, today: '2026-11-30' });
+const unit = { refrigerant: 'R-32', wantedG: 90, myId: ME, today: '2026-11-30', jurisdiction: 'US' as const };
+const judge = (...cylinders: Cylinder[]) => judgeCylinders(cylinders, unit);
 const stopperOf = (change: Partial<Cylinder>) => judge(cylinder(change))[0]?.stopper;
 const doubtsOf = (change: Partial<Cylinder>) => judge(cylinder(change))[0]?.doubts;
 
@@ -50,9 +51,29 @@ describe('Choosing a cylinder', () => {
   it('goes on with a doubt where there is too little, a re-test due or no figure for the rating', () => {
     expect(doubtsOf({})).toEqual([]);
     expect(doubtsOf({ contentG: 60 })).toEqual(['tooLittle']);
-    expect(doubtsOf({ retestDue: '2026-11-29', pressureRatingHolds: null })).toEqual(['retestDue', 'ratingNotKnown']);
-    expect(doubtsOf({ retestDue: '2026-11-30' })).toEqual([]);
+    expect(doubtsOf({ retestDue: '2026-10-31', pressureRatingHolds: null })).toEqual(['retestDue', 'ratingNotKnown']);
+    // Due by month and year (49 CFR 180.205(c)): all of November is in time.
+    expect(doubtsOf({ retestDue: '2026-11-01' })).toEqual([]);
     expect(doubtsOf({ contentG: 0, lastWeighedAt: null })).toEqual(['neverWeighed']);
+  });
+  /** Source: Regulation (EU) 2024/573, Article 8(6), case F22; 40 CFR 82.154(d), 82.156(h). */
+  it('is stopped in the EU by recovered refrigerant that nobody has cleaned, and in the US a doubt of whose it is', () => {
+    const recovered = cylinder({ contentState: 'recovered' });
+    const at = (jurisdiction: 'US' | 'EU' | null, one = recovered) =>
+      judgeCylinders([one], { ...unit, refrigerant: one.refrigerant, jurisdiction }).map(({ stopper, doubts }) => [
+        stopper,
+        ...doubts,
+      ])[0];
+    expect(at('EU')).toEqual(['notReclaimed']);
+    expect(at('US')).toEqual([null, 'sameOwner']);
+    expect(at(null)).toEqual([null, 'notCleaned']);
+    expect(at('EU', cylinder({ contentState: 'recycled' }))).toEqual([null]);
+    const byRefrigerant = [{ refrigerant: 'R-290', massG: 3825 }];
+    const propane = cylinder({ contentState: 'recovered', refrigerant: 'R-290', byRefrigerant });
+    expect([at('EU', propane), at('US', propane)]).toEqual([
+      [null, 'notCleaned'],
+      [null, 'notCleaned'],
+    ]);
   });
   it('shows what fits first, the own van before others, and what is stopped last', () => {
     const order = judge(

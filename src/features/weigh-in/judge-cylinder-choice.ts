@@ -1,9 +1,17 @@
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
+import { isRetestOverdue } from '../../../shared/cylinders/retest.ts';
 
 /** Why this cylinder cannot be planned with. What has happened is another matter: the log takes it, with its reason. */
-export type Stopper = 'otherRefrigerant' | 'pressureRating' | 'mixed' | 'customersOwn' | 'empty' | 'openWeighIn';
+export type Stopper =
+  | 'otherRefrigerant'
+  | 'pressureRating'
+  | 'mixed'
+  | 'customersOwn'
+  | 'notReclaimed'
+  | 'empty'
+  | 'openWeighIn';
 /** What speaks against it and does not stop the work. */
-export type Doubt = 'tooLittle' | 'retestDue' | 'ratingNotKnown' | 'notVirgin' | 'neverWeighed';
+export type Doubt = 'tooLittle' | 'retestDue' | 'ratingNotKnown' | 'sameOwner' | 'notCleaned' | 'neverWeighed';
 
 export interface JudgedCylinder {
   cylinder: Cylinder;
@@ -26,15 +34,23 @@ export function judgeCylinders(
     wantedG,
     myId,
     today,
-  }: { refrigerant: string; wantedG: number | null; myId: string | null; today: string },
+    jurisdiction,
+  }: {
+    refrigerant: string;
+    wantedG: number | null;
+    myId: string | null;
+    today: string;
+    /** Of the unit's site. */
+    jurisdiction: 'US' | 'EU' | null;
+  },
 ): JudgedCylinder[] {
   return cylinders
     .filter((cylinder) => !isEmptyRecovery(cylinder))
     .map((cylinder) => ({
       cylinder,
       onVan: myId !== null && cylinder.heldBy === myId,
-      stopper: stopperOf(cylinder, refrigerant),
-      doubts: doubtsOf(cylinder, wantedG, today),
+      stopper: stopperOf(cylinder, refrigerant, jurisdiction),
+      doubts: doubtsOf(cylinder, wantedG, today, jurisdiction),
     }))
     .sort(
       (a, b) =>
@@ -48,24 +64,45 @@ export function judgeCylinders(
 /** Nobody looks for a charge in a recovery cylinder that nothing has gone into. */
 const isEmptyRecovery = ({ kind, contentG }: Cylinder) => kind === 'recovery' && contentG <= 0;
 
-function stopperOf(cylinder: Cylinder, refrigerant: string): Stopper | null {
+/** Neither fluorinated gases (EU) nor under the US ban in every use. */
+const NATURAL: ReadonlySet<string> = new Set(['R-290', 'R-600a', 'R-1270', 'R-717', 'R-744']);
+
+/**
+ * What the law says of recovered refrigerant that nobody has cleaned: in the EU it goes into no equipment before it is
+ * recycled or reclaimed (Regulation (EU) 2024/573, Article 8(6)); in the US only into the same owner's (40 CFR
+ * 82.154(d), 82.156(h)). Neither speaks of natural refrigerants.
+ */
+function recoveredIs({ contentState, refrigerant }: Cylinder, jurisdiction: 'US' | 'EU' | null) {
+  if (contentState !== 'recovered') return null;
+  if (NATURAL.has(refrigerant) || jurisdiction === null) return 'notCleaned';
+  return jurisdiction === 'EU' ? 'notReclaimed' : 'sameOwner';
+}
+
+function stopperOf(cylinder: Cylinder, refrigerant: string, jurisdiction: 'US' | 'EU' | null): Stopper | null {
   if (cylinder.mixed) return 'mixed';
   if (cylinder.refrigerant !== refrigerant) return 'otherRefrigerant';
   if (cylinder.byRefrigerant.some((part) => part.refrigerant !== refrigerant && part.massG > 0))
     return 'otherRefrigerant';
   if (cylinder.pressureRatingHolds === false) return 'pressureRating';
   if (cylinder.owner.kind === 'customer') return 'customersOwn';
+  if (recoveredIs(cylinder, jurisdiction) === 'notReclaimed') return 'notReclaimed';
   if (cylinder.openWeighInGroupId !== null) return 'openWeighIn';
   // A cylinder that nobody has weighed yet may hold anything: its first reading says.
   return cylinder.contentG <= 0 && cylinder.lastWeighedAt !== null ? 'empty' : null;
 }
 
-function doubtsOf(cylinder: Cylinder, wantedG: number | null, today: string): Doubt[] {
+function doubtsOf(
+  cylinder: Cylinder,
+  wantedG: number | null,
+  today: string,
+  jurisdiction: 'US' | 'EU' | null,
+): Doubt[] {
   const doubts: Doubt[] = [];
   if (cylinder.lastWeighedAt === null && cylinder.contentG <= 0) doubts.push('neverWeighed');
   else if (wantedG !== null && cylinder.contentG < wantedG) doubts.push('tooLittle');
-  if (cylinder.retestDue !== null && cylinder.retestDue < today) doubts.push('retestDue');
+  if (isRetestOverdue(cylinder.retestDue, today)) doubts.push('retestDue');
   if (cylinder.pressureRatingHolds === null) doubts.push('ratingNotKnown');
-  if (cylinder.contentState === 'recovered') doubts.push('notVirgin');
+  const recovered = recoveredIs(cylinder, jurisdiction);
+  if (recovered === 'sameOwner' || recovered === 'notCleaned') doubts.push(recovered);
   return doubts;
 }

@@ -8,6 +8,7 @@ import type { Tool } from '../../../shared/tools/tools.schema.ts';
 import type { Unit } from '../../../shared/unit-register/unit.schema.ts';
 import { cylinderQueries } from '../../api/cylinders.ts';
 import { useSession } from '../../api/session.ts';
+import { siteQueries } from '../../api/sites.ts';
 import { toolQueries } from '../../api/tools.ts';
 import { referenceData } from './refrigerant-facts.ts';
 import type { Purpose, WeighIn, WeighInStart } from './weigh-in-state.ts';
@@ -24,6 +25,8 @@ export interface WeighInData {
   /** Of the first thing that could not be loaded. */
   failed: { error: unknown; retry: () => void } | null;
   myId: string | null;
+  /** Of the unit's site; the firm's own until that has come. */
+  jurisdiction: 'US' | 'EU' | null;
   scaleOf: (toolId: string | null) => Scale;
   cylinderOf: (cylinderId: string | null) => Cylinder | null;
 }
@@ -45,6 +48,7 @@ export function useLoadedData(
   const session = useSession();
   const cylinders = useQuery(cylinderQueries.choice());
   const scales = useQuery(toolQueries.choice('scale'));
+  const site = useQuery(siteQueries.one(unit.siteId)).data?.jurisdiction;
   const failing = [cylinders, scales].find((query) => query.isError && query.data === undefined);
   return useMemo(() => {
     const all = cylinders.data?.items ?? null;
@@ -57,10 +61,11 @@ export function useLoadedData(
       scales: known,
       failed: failing ? { error: failing.error, retry: () => void failing.refetch() } : null,
       myId: session?.person.id ?? null,
+      jurisdiction: site ?? session?.firm.jurisdiction ?? null,
       scaleOf: (toolId) => known?.find((tool) => tool.id === toolId)?.scale ?? ASSUMED_SCALE,
       cylinderOf: (cylinderId) => all?.find((cylinder) => cylinder.id === cylinderId) ?? null,
     };
-  }, [unit, sheet, preferredCylinderId, cylinders.data, scales.data, failing, session]);
+  }, [unit, sheet, preferredCylinderId, cylinders.data, scales.data, failing, session, site]);
 }
 
 /** What a charge sheet asks for; null where there is nothing to weigh in. */

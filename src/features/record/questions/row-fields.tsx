@@ -17,12 +17,14 @@ interface Props {
   row: WeighedRow;
   index: number;
   context: FormContext;
+  /** Of what will then be in it, where it is filled. */
+  limitG: number | null;
   error: (field: string) => string | undefined;
   onChange: (part: Partial<WeighedRow>) => void;
 }
 
 /** One cylinder: which, how it is weighed, what the scale shows, and what that makes. */
-export function RowFields({ question, row, index, context, error, onChange }: Props) {
+export function RowFields({ question, row, index, context, limitG, error, onChange }: Props) {
   const t = useMessages();
   const format = useFormat();
   const { direction } = question;
@@ -49,12 +51,12 @@ export function RowFields({ question, row, index, context, error, onChange }: Pr
             refrigerant: refrigerantIn(cylinder) ?? t('record.rows.mixed'),
             mass: format.mass(cylinder.contentG),
           })}
-          {cylinder.limitG !== null && (direction === 'into' || (direction === 'transfer' && index === 1)) ? (
+          {limitG !== null ? (
             <>
               {' '}
-              {cylinder.limitG >= cylinder.contentG
-                ? t('record.rows.room', { mass: format.mass(cylinder.limitG - cylinder.contentG) })
-                : t('record.rows.noRoom', { mass: format.mass(cylinder.contentG - cylinder.limitG) })}
+              {limitG >= cylinder.contentG
+                ? t('record.rows.room', { mass: format.mass(limitG - cylinder.contentG) })
+                : t('record.rows.noRoom', { mass: format.mass(cylinder.contentG - limitG) })}
             </>
           ) : null}
         </p>
@@ -140,7 +142,7 @@ function Hose({
   context,
   error,
   onChange,
-}: Omit<Props, 'question'> & { direction: Props['question']['direction'] }) {
+}: Omit<Props, 'question' | 'limitG'> & { direction: Props['question']['direction'] }) {
   const t = useMessages();
   const at = `rows.${index}`;
   const ends = direction === 'transfer' ? (['lost', 'emptied'] as const) : (['emptied', 'lost', 'recovered'] as const);

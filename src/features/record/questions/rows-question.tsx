@@ -7,7 +7,7 @@ import { FieldError, TextField } from '../../../ui/field.tsx';
 import { emptyRow, type MassUnit, type WeighedRow } from '../answers.ts';
 import type { Of } from '../question-props.ts';
 import { RadioLines } from '../radio-lines.tsx';
-import { type RowDanger, rowDangers } from '../row-dangers.ts';
+import { limitOfRow, type RowDanger, rowDangers } from '../row-dangers.ts';
 import { RowFields } from './row-fields.tsx';
 
 /** The cylinders of a form, each with its readings. What must not go into one stands in the way at once. */
@@ -40,6 +40,7 @@ export function RowsQuestion({ question, answers, context, change, error }: Of<'
             row={row}
             index={index}
             context={context}
+            limitG={limitOfRow(question, answers, context, index)}
             error={error}
             onChange={(part) => set(index, part)}
           />
@@ -109,6 +110,10 @@ function DangerWords({ danger }: { danger: RowDanger }) {
         })
       : danger.is === 'otherRefrigerant'
         ? t('record.danger.otherRefrigerant', { tag: danger.tag, holds: danger.holds, comes: danger.comes })
-        : t(`record.danger.${danger.is}`, { tag: danger.tag });
+        : danger.is === 'pressure'
+          ? t('record.danger.pressure', { tag: danger.tag, comes: danger.comes })
+          : danger.is === 'retest'
+            ? t('record.danger.retest', { tag: danger.tag, month: format.month(danger.due.slice(0, 7)) })
+            : t('record.danger.refill', { tag: danger.tag });
   return <Caution signal="danger">{words}</Caution>;
 }

@@ -2,7 +2,7 @@ import { useMemo } from 'react';
 import { Link } from 'react-router-dom';
 import { microgramsOfTyped } from '../../../../shared/units/mass.ts';
 import { type Formats, useFormat } from '../../../lib/format.ts';
-import { deviceNow } from '../../../lib/local-time.ts';
+import { deviceNow, toDayInput } from '../../../lib/local-time.ts';
 import { type Translate, useMessages } from '../../../lib/messages.ts';
 import { Beam } from '../../../ui/beam/beam.tsx';
 import { cylinderBeam } from '../../../ui/beam/presets.ts';
@@ -21,7 +21,7 @@ import { useWeighInData } from '../weigh-in-data.ts';
 export function CylinderStep({ weighIn, dispatch }: StepProps) {
   const t = useMessages();
   const format = useFormat();
-  const { unit, cylinders, failed, myId, preferredCylinderId } = useWeighInData();
+  const { unit, cylinders, failed, myId, preferredCylinderId, jurisdiction } = useWeighInData();
   const used = useMemo(
     () => new Set((weighIn.adding ? weighIn.legs : weighIn.legs.slice(0, -1)).map((leg) => leg.cylinderId)),
     [weighIn],
@@ -34,9 +34,9 @@ export function CylinderStep({ weighIn, dispatch }: StepProps) {
     () =>
       judgeCylinders(
         (cylinders ?? []).filter((cylinder) => !used.has(cylinder.id)),
-        { refrigerant: unit.refrigerant, wantedG, myId, today: deviceNow().toISOString().slice(0, 10) },
+        { refrigerant: unit.refrigerant, wantedG, myId, today: toDayInput(deviceNow()), jurisdiction },
       ),
-    [cylinders, used, unit.refrigerant, wantedG, myId],
+    [cylinders, used, unit.refrigerant, wantedG, myId, jurisdiction],
   );
   const fitting = judged.filter((one) => one.stopper === null);
   // What was chosen on the charge screen stands first, marked; it is still a question.
@@ -142,7 +142,7 @@ function doubtText(
 ) {
   return t(`weighIn.doubt.${doubt}`, {
     mass: format.massAbout(cylinder.contentG),
-    date: cylinder.retestDue ? format.day(cylinder.retestDue) : '',
+    month: cylinder.retestDue ? format.month(cylinder.retestDue.slice(0, 7)) : '',
   });
 }
 
