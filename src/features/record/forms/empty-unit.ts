@@ -1,5 +1,6 @@
 import type { RecordForm } from '../form.ts';
 import { GroupDraft } from '../group-draft.ts';
+import { noVenting } from '../no-venting.ts';
 
 /** S11, S14.4: what the book still holds is lost. */
 export const foundEmpty: RecordForm = {
@@ -29,8 +30,8 @@ export const vacuum: RecordForm = {
   about: 'unit',
   rows: 0,
   permission: 'entries:post',
-  questions: () => [
-    { is: 'unit', id: 'unit', cautions: [{ signal: 'warning', key: 'record.caution.noVenting' }] },
+  questions: (_, context) => [
+    { is: 'unit', id: 'unit', cautions: noVenting(context) },
     {
       is: 'choice',
       id: 'vacuumOn',

@@ -4,12 +4,10 @@ import type { Answers, FormContext } from '../answers.ts';
 import type { Question, RecordForm, SaidCaution } from '../form.ts';
 import { type BuiltGroup, GroupDraft } from '../group-draft.ts';
 import { isCompleted, levelAsked, levelOf } from '../level.ts';
+import { noVenting } from '../no-venting.ts';
 import { massInto } from '../weighed-rows.ts';
 
-const IN_FRONT: readonly SaidCaution[] = [
-  { signal: 'danger', key: 'record.caution.noPumpDown' },
-  { signal: 'warning', key: 'record.caution.noVenting' },
-];
+const NO_PUMP_DOWN: SaidCaution = { signal: 'danger', key: 'record.caution.noPumpDown' };
 const AT_THE_CYLINDERS: readonly SaidCaution[] = [
   { signal: 'danger', key: 'record.caution.recoveryLimit' },
   { signal: 'warning', key: 'record.caution.asphyxiation' },
@@ -69,7 +67,7 @@ export const recovery: RecordForm = {
   rows: 1,
   permission: 'entries:post',
   questions: (answers, context) => [
-    { is: 'unit', id: 'unit', cautions: IN_FRONT },
+    { is: 'unit', id: 'unit', cautions: [NO_PUMP_DOWN, ...noVenting(context)] },
     { is: 'rows', id: 'recoveredInto', direction: 'into', many: true, hose: false, cautions: AT_THE_CYLINDERS },
     { is: 'choice', id: 'completed', options: ['completed', 'notCompleted'] },
     ...(isCompleted(answers) && (!context.unit || levelAsked(answers, context)) ? [level] : []),
@@ -87,8 +85,8 @@ const withoutStatement = (
   about: 'unit',
   rows: 1,
   permission: 'entries:post',
-  questions: () => [
-    { is: 'unit', id: 'unit', cautions: IN_FRONT.slice(1) },
+  questions: (_, context) => [
+    { is: 'unit', id: 'unit', cautions: noVenting(context) },
     { is: 'rows', id: 'recoveredInto', direction: 'into', many: true, hose: false, cautions: AT_THE_CYLINDERS },
     ...more,
     moment,
