@@ -325,6 +325,22 @@ describe('A finished export', () => {
     },
   );
 
+  it('holds of a cylinder the stamped fill limit apart from the one that counts', async () => {
+    await startWorker();
+    // 0.8 x 47.7 lb x 1.0589.
+    const ruled = await ledger.cylinder(null, { kind: 'recovery', waterCapacity: { value: '47.7', unit: 'lb' } });
+    const stamped = await ledger.cylinder(null, { kind: 'recovery', stampedLimit: { value: '9', unit: 'kg' } });
+    const { id } = await asked('cylinders');
+    await ended(id);
+    const { lines } = readCsv((await download(id)).bytes.toString());
+    const limitsOf = (tag: string) => {
+      const line = lines.find((each) => Object.values(each).includes(tag));
+      return [line?.['stamped fill limit (g)'], line?.['fill limit that counts (g)']];
+    };
+    expect(limitsOf(ruled.tag)).toEqual(['', '18328.59']);
+    expect(limitsOf(stamped.tag)).toEqual(['9000', '9000']);
+  });
+
   it('is refused as XLSX above 100,000 rows, with the way out, and made as CSV', async () => {
     const big = await startLedger(app);
     const { default: pg } = await import('pg');
