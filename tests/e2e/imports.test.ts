@@ -78,7 +78,11 @@ describe.each([
     await read('stock', WRONG);
     await picture('read');
     await walk.button(say('imports.check')).click();
-    await page.getByText(say('imports.wrong_other', { count: 2 })).waitFor();
+    const wrong = page.getByText(say('imports.wrong_other', { count: 2 }));
+    await wrong.waitFor();
+    // The button was at the end of a long form: what it came to stands where the eye is, and nothing hangs over the edge.
+    expect(await wrong.evaluate((element) => element.getBoundingClientRect().top)).toBeGreaterThan(0);
+    expect(await page.evaluate(() => document.documentElement.scrollWidth <= innerWidth)).toBe(true);
     await picture('wrong');
     const download = page.waitForEvent('download');
     await walk.link(say('imports.errorsFile')).click();

@@ -8,8 +8,27 @@ import { FieldError } from '../../ui/field.tsx';
 import { type LedgerColumn, LedgerTable } from '../../ui/ledger-table.tsx';
 import { Done, Notice } from '../../ui/notice.tsx';
 
-/** What the check or the import came to: progress, errors by row and column, or the way on. */
+/**
+ * Beside the columns or under them, and in view whenever it says something new: the button that asked for it stands at
+ * the end of a long form.
+ */
 export function Outcome({ file }: { file: ImportView }) {
+  const region = useRef<HTMLDivElement>(null);
+  const said = useRef(file.state);
+  useEffect(() => {
+    if (said.current === file.state) return;
+    said.current = file.state;
+    region.current?.scrollIntoView?.({ block: 'nearest' });
+  }, [file.state]);
+  return (
+    <div ref={region} className="min-w-0 scroll-mt-24 scroll-mb-24 lg:sticky lg:top-24 lg:self-start">
+      <Said file={file} />
+    </div>
+  );
+}
+
+/** What the check or the import came to: progress, errors by row and column, or the way on. */
+function Said({ file }: { file: ImportView }) {
   const t = useMessages();
   const run = useRunImport(file.id);
   const refresh = useRefreshAfterImport();
@@ -90,9 +109,13 @@ function Errors({ file }: { file: ImportView }) {
   const t = useMessages();
   const columns: LedgerColumn<ImportError & { id: string }>[] = [
     { id: 'row', head: t('imports.row'), cell: ({ row }) => row, figure: true },
-    { id: 'column', head: t('imports.column'), cell: ({ column }) => column ?? t('imports.wholeRow') },
-    { id: 'given', head: t('imports.given'), cell: ({ given }) => given ?? '' },
-    { id: 'what', head: t('imports.what'), cell: ({ message }) => message },
+    {
+      id: 'column',
+      head: t('imports.column'),
+      cell: ({ column }) => <Wrapped>{column ?? t('imports.wholeRow')}</Wrapped>,
+    },
+    { id: 'given', head: t('imports.given'), cell: ({ given }) => <Wrapped>{given ?? ''}</Wrapped> },
+    { id: 'what', head: t('imports.what'), cell: ({ message }) => <Wrapped wide>{message}</Wrapped> },
   ];
   const rows = file.errors.map((error, at) => ({ ...error, id: `${error.row} ${error.column} ${at}` }));
   return (
@@ -105,5 +128,14 @@ function Errors({ file }: { file: ImportView }) {
       </a>
       <LedgerTable caption={t('imports.what')} columns={columns} rows={rows} rowId={({ id }) => id} />
     </div>
+  );
+}
+
+/** A sentence needs more than the one line of a ledger, and a cell of somebody's table may hold anything. */
+function Wrapped({ wide = false, children }: { wide?: boolean; children: string }) {
+  return (
+    <span className={`block whitespace-normal [overflow-wrap:anywhere] ${wide ? 'min-w-56' : 'min-w-16'}`}>
+      {children}
+    </span>
   );
 }
