@@ -240,11 +240,9 @@ export function reasonRefusals(
     const isFilled = fills.some(({ from }) => isFill(from.place));
     if (nonRefillable && isFilled) refusals.push({ code: 'reasonForRefill', path, params: tag });
     const { servicePressureKPaGauge, jurisdiction, retestOverdueFrom } = collar;
-    // What is put in each time, and what a reading shows for the first time.
-    const pressing = arriving.filter(
-      (refrigerant) => massOf(before, refrigerant) <= 0n || fills.some((mass) => mass.refrigerant === refrigerant),
-    );
-    for (const refrigerant of new Set(pressing)) {
+    // Who only says what is in it has put nothing in: that is flagged and not asked.
+    const putIn = fills.filter(({ from }) => from.place !== 'opening' && from.place !== 'missing');
+    for (const refrigerant of new Set(putIn.map((mass) => mass.refrigerant))) {
       if (pressureRatingHolds(servicePressureKPaGauge, [refrigerant], jurisdiction) !== false) continue;
       refusals.push({ code: 'reasonForPressure', path, given: refrigerant, params: tag });
     }

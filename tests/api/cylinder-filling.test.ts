@@ -55,13 +55,18 @@ describe('A low-pressure recovery cylinder, meant for R-134a, 260 psig, WC 47.7 
     expect((await ledger.post(await recovered(cylinder.id, '19000', 'R-134a'))).status).toBe(201);
   });
 
-  it('asks for every further fill, not for a reading of what is in it already', async () => {
+  it('asks for every further fill, not for what is only said to be in it', async () => {
     const cylinder = await meantForR134a();
     await posted(ledger.client, { ...(await recovered(cylinder.id, '500')), reason: 'nothing else on the roof' });
     expect((await ledger.post(await recovered(cylinder.id, '500'))).body.code).toBe('reasonRequired');
     const reading = readingOf(cylinder.id, ledger.scale.id, 'only', 520);
     const weighed = groupOf('weighing', '2026-03-04T10:00:00Z', { readings: [reading] });
     expect((await ledger.post(weighed)).status).toBe(201);
+    const opening = groupOf('opening', '2026-03-04T10:00:00Z', {
+      entries: [massOf('500', { place: 'opening' }, inCylinder((await meantForR134a()).id), { howKnown: 'estimated' })],
+    });
+    const said = await posted(ledger.client, opening);
+    expect(codes(said.body.flags)).toEqual(['cylinderPressureTooHigh']);
   });
 });
 

@@ -56,5 +56,6 @@ export function CylinderChoice({
   );
 }
 
-/** A recovery cylinder or a mixed one is nothing to charge from. */
-const canCharge = (cylinder: Cylinder) => cylinder.kind !== 'recovery' && !cylinder.mixed && cylinder.contentG > 0;
+/** A recovery cylinder, a mixed one or one that does not bear what is in it is nothing to charge from. */
+const canCharge = (cylinder: Cylinder) =>
+  cylinder.kind !== 'recovery' && !cylinder.mixed && cylinder.pressureRatingHolds !== false && cylinder.contentG > 0;

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { Cylinder } from '../../../shared/cylinders/cylinder.schema.ts';
-import { judgeCylinders } from './judge-cylinder-choice.ts';
+import { judgeCylinders, mayTakeHose } from './judge-cylinder-choice.ts';
 import { idOf } from './weigh-in.fixture.ts';
 
 const ME = idOf(90);
@@ -83,5 +83,19 @@ describe('Choosing a cylinder', () => {
       cylinder({ tag: 'mine' }),
     );
     expect(order.map((one) => one.cylinder.tag)).toEqual(['mine', 'little', 'other', 'stopped']);
+  });
+});
+
+describe('A recovery cylinder for what is left in the hose', () => {
+  const takes = (change: Partial<Cylinder>) =>
+    mayTakeHose(cylinder({ kind: 'recovery', ...change }), 'R-32', '2026-11-30');
+
+  it('holds nothing else, bears it and is not past its re-test', () => {
+    expect(takes({})).toBe(true);
+    expect(takes({ kind: 'refillable' })).toBe(false);
+    expect(takes({ refrigerant: 'R-410A' })).toBe(false);
+    expect(takes({ byRefrigerant: [{ refrigerant: 'R-22', massG: 100 }] })).toBe(false);
+    expect(takes({ pressureRatingHolds: false })).toBe(false);
+    expect([takes({ retestDue: '2026-11-01' }), takes({ retestDue: '2026-10-31' })]).toEqual([true, false]);
   });
 });

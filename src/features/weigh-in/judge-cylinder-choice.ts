@@ -61,6 +61,14 @@ export function judgeCylinders(
     );
 }
 
+/** May what is left in the hose be recovered into this cylinder: meant for it, holding nothing else, borne by it, tested. */
+export const mayTakeHose = (cylinder: Cylinder, refrigerant: string, today: string): boolean =>
+  cylinder.kind === 'recovery' &&
+  cylinder.refrigerant === refrigerant &&
+  cylinder.byRefrigerant.every((part) => part.massG <= 0 || part.refrigerant === refrigerant) &&
+  cylinder.pressureRatingHolds !== false &&
+  !isRetestOverdue(cylinder.retestDue, today);
+
 /** Nobody looks for a charge in a recovery cylinder that nothing has gone into. */
 const isEmptyRecovery = ({ kind, contentG }: Cylinder) => kind === 'recovery' && contentG <= 0;
 

@@ -1,10 +1,12 @@
 import { useState } from 'react';
 import { Link } from 'react-router-dom';
+import { deviceNow, toDayInput } from '../../../lib/local-time.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
 import { Button } from '../../../ui/button.tsx';
 import { FieldError, SelectField } from '../../../ui/field.tsx';
 import { ChoiceList, ChoiceRow } from '../choice-list.tsx';
+import { mayTakeHose } from '../judge-cylinder-choice.ts';
 import { faultOfEnd } from '../leg-figures.ts';
 import { onScale } from '../scale-reading.ts';
 import { StepPage } from '../step-page.tsx';
@@ -98,14 +100,8 @@ export function HoseEndStep({ weighIn, dispatch }: StepProps) {
 /** Recovery cylinders for this refrigerant that may take it, one's own first. */
 export function useRecoveryCylinders(refrigerant: string, exceptId: string | null) {
   const { cylinders, myId } = useWeighInData();
+  const today = toDayInput(deviceNow());
   return (cylinders ?? [])
-    .filter(
-      (cylinder) =>
-        cylinder.kind === 'recovery' &&
-        cylinder.id !== exceptId &&
-        cylinder.refrigerant === refrigerant &&
-        !cylinder.mixed &&
-        cylinder.pressureRatingHolds !== false,
-    )
+    .filter((cylinder) => cylinder.id !== exceptId && mayTakeHose(cylinder, refrigerant, today))
     .sort((a, b) => Number(b.heldBy === myId) - Number(a.heldBy === myId));
 }
