@@ -20,6 +20,7 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
   const t = useMessages();
   const format = useFormat();
   const phone = !useMedia('(width >= 48rem)');
+  const narrow = !useMedia('(width >= 90rem)');
   return useMemo(() => {
     const number: LedgerColumn<EntryRow> = {
       id: 'number',
@@ -55,7 +56,7 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            <span className="block whitespace-normal">
+            <span className="block min-w-52 whitespace-normal">
               {placeWords(t, row.from)} <Arrow /> {placeWords(t, row.to)}
             </span>
             <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">
@@ -66,15 +67,37 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
       };
       return [number, mass, moved, why, who];
     }
+    const when: LedgerColumn<EntryRow> = {
+      id: 'when',
+      head: t('log.when'),
+      sort: 'occurredAt',
+      firstDown: true,
+      cell: (row) => <When row={row} zone={zone} />,
+    };
+    if (beside && narrow) {
+      // Two lines a row, or the sheet would cover why and who.
+      const moved: LedgerColumn<EntryRow> = {
+        id: 'moved',
+        head: `${t('log.from')} \u2192 ${t('log.to')}`,
+        keep: true,
+        cell: (row) => (
+          <>
+            <span
+              className={`block min-w-36 whitespace-normal ${row.reversedByGroupId === null ? '' : 'line-through decoration-1'}`}
+            >
+              {placeWords(t, row.from)} <Arrow /> {placeWords(t, row.to)}
+            </span>
+            <span className="type-label block text-[0.875rem] text-ink-soft">
+              <Why row={row} rows={rows} ties={ties} marks={false} />
+            </span>
+          </>
+        ),
+      };
+      return [number, when, mass, moved, who];
+    }
     return [
       number,
-      {
-        id: 'when',
-        head: t('log.when'),
-        sort: 'occurredAt',
-        firstDown: true,
-        cell: (row) => <When row={row} zone={zone} />,
-      },
+      when,
       mass,
       ...(beside ? [] : [refrigerant]),
       { id: 'from', head: t('log.from'), cell: (row) => <Place t={t} place={row.from} /> },
@@ -83,7 +106,7 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
       why,
       who,
     ];
-  }, [t, format, rows, ties, zone, phone, beside]);
+  }, [t, format, rows, ties, zone, phone, narrow, beside]);
 }
 
 /** Mass on the move: the one place for copper in a row. */
