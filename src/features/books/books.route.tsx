@@ -68,7 +68,8 @@ function Books({ periods, usual }: { periods: PeriodsResponse; usual: string }) 
   const isOld = books.isPlaceholderData || differences.isPlaceholderData;
   return (
     <Page
-      title={title}
+      title={<span className="desk:whitespace-nowrap">{title}</span>}
+      tabTitle={title}
       {...(differences.data ? { lead: leadOf(t, format, differences.data) } : {})}
       actions={<Ways periods={periods} period={period} />}
     >
