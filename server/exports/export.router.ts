@@ -11,7 +11,7 @@ export function exportRoutes(parts: Parts): ApiRoutes {
     {
       method: 'post',
       path: '/exports',
-      summary: 'Asks for a file: a table as CSV or XLSX, a document as PDF',
+      summary: 'Asks for a file: a table as CSV or XLSX, a document as PDF, a proof package as zip',
       description:
         `${REPEATABLE} The file is made in the background; finished, it can be downloaded for 24 hours by who asked for ` +
         'it. Filters are those of the list of the same name. XLSX up to 100,000 rows, CSV without a limit. Each file ' +

@@ -4,6 +4,7 @@ import type { EntityManager } from 'typeorm';
 import {
   type CreateExportRequest,
   type ExportView,
+  PROOF_PACKAGE,
   UNFINISHED_A_PERSON,
   XLSX_LARGEST_ROWS,
 } from '../../shared/exports/export.schema.ts';
@@ -13,6 +14,7 @@ import { type Actor, mayActor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { canonicalText } from '../journal/canonical-text.ts';
+import { requireSubject } from '../proof/subject.repository.ts';
 import { exportsRepository } from './export.repository.ts';
 import { exportFolder } from './export-folder.ts';
 import { enqueueExport } from './export-queue.ts';
@@ -24,7 +26,7 @@ const viewerOf = (parts: Parts, actor: Actor) => ({ actor, now: parts.now() });
 
 /**
  * Puts an export into the queue, once: the same request again answers with what became of it.
- * @throws Problem 403; 409 when the id was used for something else; 422 `tooManyRowsForXlsx`; 429
+ * @throws Problem 403; 409 when the id was used for something else; 422 `tooManyRowsForXlsx`, `notKnownHere`; 429
  */
 export function requestExport(
   parts: Parts,
@@ -47,6 +49,7 @@ export function requestExport(
     if ((await exports.countUnfinished(personId)) >= UNFINISHED_A_PERSON)
       throw new Problem('tooManyExports', { params: { limit: UNFINISHED_A_PERSON } });
     await refuseTooManyRows(manager, request);
+    if (request.what === PROOF_PACKAGE) await requireSubject(manager, request.filters);
     await exports.insert({ firmId, id, what, format, filters, locale, requestedBy: personId, at: parts.now() });
     await enqueueExport(manager, { firmId, exportId: id });
     return { isNew: true, view: await requireView(parts, actor, manager, id) };
@@ -102,6 +105,7 @@ const MEDIA_TYPES = {
   csv: 'text/csv; charset=utf-8',
   xlsx: 'application/vnd.openxmlformats-officedocument.spreadsheetml.sheet',
   pdf: 'application/pdf',
+  zip: 'application/zip',
 } as const;
 
 /**

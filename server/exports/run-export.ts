@@ -1,12 +1,18 @@
 import type { Writable } from 'node:stream';
 import type { DataSource, EntityManager } from 'typeorm';
-import { type CreateExportRequest, FILE_KEPT_HOURS, XLSX_LARGEST_ROWS } from '../../shared/exports/export.schema.ts';
+import {
+  type CreateExportRequest,
+  FILE_KEPT_HOURS,
+  PROOF_PACKAGE,
+  XLSX_LARGEST_ROWS,
+} from '../../shared/exports/export.schema.ts';
 import { THE_PROGRAM } from '../../shared/proof/seal-record.schema.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem } from '../http/problem.ts';
 import { journalExport } from '../journal/journal-export.ts';
+import { beginPackage, writePackage } from '../proof/package.service.ts';
 import type { ExportRow, FinishedFile } from './export.repository.ts';
 import { exportsRepository } from './export.repository.ts';
 import { exportFolder, FolderRefusal, type WrittenFile } from './export-folder.ts';
@@ -17,18 +23,31 @@ import { isTable, type TableRequest, tableRows } from './tables/tables.ts';
 import { writeCsv } from './write-csv.ts';
 import { writeXlsx } from './write-xlsx.ts';
 
-export type ExportParts = Pick<Parts, 'settings' | 'log' | 'now' | 'newId' | 'reference'>;
+export type ExportParts = Pick<
+  Parts,
+  'settings' | 'log' | 'now' | 'newId' | 'reference' | 'mailer' | 'background' | 'dataSource'
+>;
+
+type ProofPackageRequest = Extract<CreateExportRequest, { what: typeof PROOF_PACKAGE }>;
 
 /** Writes a document as PDF to the stream and ends it. @returns how many lines of the log it shows; null: no such subject */
 export type WriteDocument = (
-  parts: ExportParts & Pick<Parts, 'dataSource'>,
+  parts: ExportParts,
   manager: EntityManager,
-  request: Exclude<CreateExportRequest, TableRequest>,
+  request: Exclude<CreateExportRequest, TableRequest | ProofPackageRequest>,
   actor: Actor,
   stream: Writable,
 ) => Promise<number | null>;
 
-type Failure = 'noRights' | 'noSubject' | 'tooManyRows' | 'statementTooLong' | 'folder' | 'interrupted' | 'fault';
+type Failure =
+  | 'noRights'
+  | 'noSubject'
+  | 'tooManyRows'
+  | 'statementTooLong'
+  | 'sealKeyLost'
+  | 'folder'
+  | 'interrupted'
+  | 'fault';
 
 /** A reason to give up that is no fault of the server: the code of its sentence, `export.problem.<code>`. */
 export class ExportRefusal extends Error {
@@ -69,11 +88,11 @@ export async function runExport(
   const folder = exportFolder(parts.settings.home);
   try {
     const actor = await requireActor(jobs, row);
-    const { file, value: rows } = await folder.write(own, (stream) =>
+    const { file, value: filled } = await folder.write(own, (stream) =>
       fill(parts, jobs, row, actor, writeDocument, stream, watch),
     );
     watch.throwIfEnded();
-    await finishPatiently(watch, () => finish(parts, jobs, row, rows, file));
+    await patiently(watch, () => finish(parts, jobs, row, filled, file));
     return 'done';
   } catch (error) {
     await folder.remove(own);
@@ -91,10 +110,10 @@ export async function runExport(
 }
 
 /** Where somebody else holds the head of the log for long (an import): asks again for as long as the file is wanted. */
-async function finishPatiently(watch: Watch, finish: () => Promise<void>): Promise<void> {
+async function patiently<T>(watch: Watch, record: () => Promise<T>): Promise<T> {
   for (;;) {
     try {
-      return await finish();
+      return await record();
     } catch (error) {
       if (!isLockTimeout(error)) throw error;
       watch.throwIfEnded();
@@ -107,6 +126,7 @@ const codeOf = (error: unknown): Failure => {
   if (error instanceof ExportRefusal) return error.code;
   if (error instanceof Problem && error.errors.some(({ code }) => code === 'statementTooLong'))
     return 'statementTooLong';
+  if (error instanceof Problem && error.code === 'sealKeyLost') return 'sealKeyLost';
   return error instanceof FolderRefusal ? 'folder' : 'fault';
 };
 
@@ -181,7 +201,11 @@ async function requireActor(jobs: DataSource, row: ExportRow): Promise<Actor> {
   return actor;
 }
 
-/** @returns the number of rows, or of lines of a document */
+/** What is in the file: rows, or lines of a document; the record that it is, where it had to be one before it was made. */
+interface Filled {
+  rows: number;
+  record: number | null;
+}
 async function fill(
   parts: ExportParts,
   jobs: DataSource,
@@ -190,8 +214,15 @@ async function fill(
   writeDocument: WriteDocument,
   stream: Writable,
   watch: Watch,
-): Promise<number> {
+): Promise<Filled> {
   const request = row as CreateExportRequest;
+  if (request.what === PROOF_PACKAGE) {
+    // It holds its own record, and the seal over it.
+    const packing = await patiently(watch, () => beginPackage(parts, jobs, actor, request.filters, row.id));
+    watch.counted(packing.sealSequence);
+    const rows = await writePackage(parts, jobs, actor, packing, stream, (count) => watch.reached(count));
+    return { rows, record: packing.exportSequence };
+  }
   const work = async (manager: EntityManager): Promise<number> => {
     if (!isTable(request)) {
       const lines = await writeDocument({ ...parts, dataSource: jobs }, manager, request, actor, stream);
@@ -207,20 +238,26 @@ async function fill(
     return writeXlsx(manager, request.what, rows, stream, (count) => watch.reached(count));
   };
   try {
-    return await inFirm(jobs, actor, work, 'REPEATABLE READ');
+    return { rows: await inFirm(jobs, actor, work, 'REPEATABLE READ'), record: null };
   } finally {
     watch.running(null);
   }
 }
 
 /** The record and the end of the job stand or fall together: no file without its record. */
-function finish(parts: ExportParts, jobs: DataSource, row: ExportRow, rows: number, file: WrittenFile): Promise<void> {
+function finish(
+  parts: ExportParts,
+  jobs: DataSource,
+  row: ExportRow,
+  { rows, record: made }: Filled,
+  file: WrittenFile,
+): Promise<void> {
   const { firmId, id, what, format, filters, requestedBy: personId, attempts } = row;
   const at = parts.now();
   const fileName = `${FILE_NAMES[what] ?? what}-${at.toISOString().slice(0, 10)}.${format}`;
   return inFirm(jobs, { firmId, personId, siteIds: null }, async (manager) => {
     const about = { exportId: id, filters, rows: String(rows), sha256: file.sha256, sizeBytes: String(file.sizeBytes) };
-    const record = await journalExport(parts, manager, { personId }, { document: what, format, about });
+    const record = made ?? (await journalExport(parts, manager, { personId }, { document: what, format, about }));
     const finished: FinishedFile = {
       rows,
       fileName,
@@ -241,6 +278,7 @@ const FILE_NAMES: Readonly<Record<string, string>> = {
   disposalReport: 'disposal-report',
   jobRecord: 'job-record',
   chargeLabel: 'charge-label',
+  proofPackage: 'proof',
 };
 
 /** Whether an export that nobody works on any more is tried once more. */

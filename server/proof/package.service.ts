@@ -1,9 +1,10 @@
 import { createHash } from 'node:crypto';
-import { type PassThrough, Readable } from 'node:stream';
+import { type PassThrough, Readable, type Writable } from 'node:stream';
 import { finished, pipeline } from 'node:stream/promises';
 import type { Response } from 'express';
-import type { EntityManager } from 'typeorm';
+import type { DataSource, EntityManager } from 'typeorm';
 import { ZipFile } from 'yazl';
+import { PROOF_PACKAGE } from '../../shared/exports/export.schema.ts';
 import type { ProofPackageQuery } from '../../shared/proof/proof.schema.ts';
 import type { SealRecord } from '../../shared/proof/seal-record.schema.ts';
 import type { ProofManifest } from '../../shared/proof/verify.mjs';
@@ -13,8 +14,9 @@ import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { journalExport } from '../journal/journal-export.ts';
 import { messageFor } from '../messages/translate.ts';
-import { readVerifier } from '../seals/seal.service.ts';
+import { mailSeals, readVerifier } from '../seals/seal.service.ts';
 import { sealChain } from '../seals/seal-chain.ts';
+import { addSealMails } from '../seals/seal-mail.repository.ts';
 import {
   type PackedWords,
   readFirm,
@@ -28,12 +30,15 @@ import { type ProofSubject, requireSubject } from './subject.repository.ts';
 import { summaryPdf } from './summary-pdf.ts';
 import { planForRanges } from './verification.repository.ts';
 
+type PackageParts = Pick<Parts, 'settings' | 'now' | 'newId' | 'log' | 'mailer' | 'background' | 'dataSource'>;
+
 /** Records read and written at a time: what is held in memory, whatever the length of the log. */
 const AT_ONCE = 1_000;
 /** Entries that the PDF shows; the package holds them all. */
 const SHOWN_ENTRIES = 400;
 
-interface Packing {
+export interface Packing {
+  query: ProofPackageQuery;
   subject: ProofSubject;
   /** The record of this very export, and the seal over it that the package ends with. */
   exportSequence: number;
@@ -42,8 +47,7 @@ interface Packing {
 }
 
 /**
- * Journals who takes out what, seals the log with that, and streams the package: in constant memory, from one snapshot,
- * up to that seal.
+ * A package at once, as an answer: for programs, and where somebody waits for it.
  * @throws Problem 422 `notKnownHere`, 409 `sealKeyLost`, before the first byte
  */
 export async function sendProofPackage(
@@ -52,49 +56,83 @@ export async function sendProofPackage(
   query: ProofPackageQuery,
   res: Response,
 ): Promise<void> {
-  const packing = await inFirm(parts.dataSource, actor, async (manager): Promise<Packing> => {
-    const subject = await requireSubject(manager, query);
-    const { kind, id, from, to } = subject.about;
-    const about = { kind, id, from, to, words: query.words };
-    const exportSequence = await journalExport(parts, manager, actor, {
-      document: 'proofPackage',
-      format: 'zip',
-      about,
-    });
-    const { record } = await sealChain(parts, manager, actor);
-    return { subject, exportSequence, sealSequence: record, withWords: query.words };
-  });
+  const packing = await beginPackage(parts, parts.dataSource, actor, query, null);
   const fileName = `proof-${packing.subject.about.kind}-${parts.now().toISOString().slice(0, 10)}.zip`;
   res.attachment(fileName).type('application/zip');
-  await inFirm(
-    parts.dataSource,
+  await writePackage(parts, parts.dataSource, actor, packing, res);
+}
+
+/**
+ * Journals who takes out what, seals the log with that, and has the head mailed.
+ * @param exportId the job that makes it; null: it is sent at once
+ * @throws Problem 422 `notKnownHere`, 409 `sealKeyLost`
+ */
+export async function beginPackage(
+  parts: PackageParts,
+  dataSource: DataSource,
+  actor: Actor,
+  query: ProofPackageQuery,
+  exportId: string | null,
+): Promise<Packing> {
+  const { packing, isNew } = await inFirm(dataSource, actor, async (manager) => {
+    const subject = await requireSubject(manager, query);
+    const { kind, id, from, to } = subject.about;
+    const about = { kind, id, from, to, words: query.words, ...(exportId === null ? {} : { exportId }) };
+    const what = { document: PROOF_PACKAGE, format: 'zip', about };
+    const exportSequence = await journalExport(parts, manager, actor, what);
+    const { record, isNew } = await sealChain(parts, manager, actor);
+    if (isNew) await addSealMails(manager, actor.firmId, record, parts.now());
+    const packing = { query, subject, exportSequence, sealSequence: record, withWords: query.words };
+    return { packing, isNew };
+  });
+  if (isNew) mailSeals(parts, parts.dataSource, actor);
+  return packing;
+}
+
+/**
+ * Writes the package to the stream and ends it: in constant memory, from one snapshot, up to the seal over its record.
+ * @param progress told how many records are written; throws to stop
+ * @returns how many records it holds, whole or as hashes
+ */
+export function writePackage(
+  parts: PackageParts,
+  dataSource: DataSource,
+  actor: Actor,
+  packing: Packing,
+  stream: Writable,
+  progress: (records: number) => void = () => undefined,
+): Promise<number> {
+  return inFirm(
+    dataSource,
     actor,
     async (manager) => {
       await planForRanges(manager);
       const zip = new ZipFile();
-      const filled = fillZip(parts, actor, manager, packing, query, zip).catch((error: Error) => {
+      const filled = fillZip(parts, actor, manager, packing, zip, progress).catch((error: Error) => {
         (zip.outputStream as PassThrough).destroy(error);
         throw error;
       });
       // Both are waited for, also when one failed: nothing may still read when the transaction ends.
-      const ends = await Promise.allSettled([filled, pipeline(zip.outputStream, res)]);
-      for (const end of ends) if (end.status === 'rejected') throw end.reason;
+      const [records, sent] = await Promise.allSettled([filled, pipeline(zip.outputStream, stream)]);
+      if (records.status === 'rejected') throw records.reason;
+      if (sent.status === 'rejected') throw sent.reason;
+      return records.value;
     },
     'REPEATABLE READ',
   );
 }
 
 async function fillZip(
-  parts: Parts,
+  parts: PackageParts,
   actor: Actor,
   manager: EntityManager,
   packing: Packing,
-  query: ProofPackageQuery,
   zip: ZipFile,
-): Promise<void> {
+  progress: (records: number) => void,
+): Promise<number> {
   const mtime = parts.now();
   const counts = { records: 0, whole: 0, hash: '' };
-  const lines = recordLines(manager, packing, counts);
+  const lines = recordLines(manager, packing, counts, progress);
   const records = Readable.from(lines, { objectMode: false });
   zip.outputStream.once('close', () => records.destroy());
   zip.addReadStream(records, 'records.jsonl', { mtime });
@@ -128,7 +166,7 @@ async function fillZip(
     verifierSha256: createHash('sha256').update(verifier).digest('hex'),
     timeZone: firm.timeZone,
     locale: actor.locale,
-    paper: query.paper ?? (firm.jurisdiction === 'US' ? 'Letter' : 'A4'),
+    paper: packing.query.paper ?? (firm.jurisdiction === 'US' ? 'Letter' : 'A4'),
     entries: await entriesToShow(manager, packing, actor),
     shownAtMost: SHOWN_ENTRIES,
   });
@@ -141,6 +179,7 @@ async function fillZip(
   add('README.txt', `${messageFor('proof.readme', 'en-GB')}\n\n\n${messageFor('proof.readme', 'es-ES')}\n`);
   add('summary.pdf', summary);
   zip.end();
+  return counts.records;
 }
 
 /** One line a record, and after it the words beside it, in the form that `verify.mjs` describes. */
@@ -148,11 +187,13 @@ async function* recordLines(
   manager: EntityManager,
   { subject, exportSequence, sealSequence, withWords }: Packing,
   counts: { records: number; whole: number; hash: string },
+  progress: (records: number) => void,
 ): AsyncGenerator<Buffer> {
   for (let after = 0; after < sealSequence; ) {
     const range = { after, upTo: sealSequence, limit: AT_ONCE, exportSequence };
     const rows = await readPacked(manager, subject, range);
     if (rows.length === 0) return;
+    progress(counts.records);
     const whole = rows.filter(({ isWhole }) => isWhole).map(({ recordId }) => recordId);
     const words = withWords ? await readWords(manager, whole) : new Map<string, PackedWords[]>();
     const lines: string[] = [];

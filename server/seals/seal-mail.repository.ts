@@ -26,7 +26,7 @@ const CLAIM_MINUTES = 10;
 /** A head that could not be mailed for so long is followed by newer ones, which say more. */
 const GIVE_UP_DAYS = 7;
 
-/** Takes the mails that nobody else is sending. Sent outside of any transaction; `markSealMailSent` says that it was. */
+/** Takes the mails that nobody else is sending, to who is still an owner. Sent outside of any transaction; `markSealMailSent` says that it was. */
 export async function claimSealMails(manager: EntityManager, now: Date): Promise<DueMail[]> {
   const rows = await manager.query<[(Omit<DueMail, 'sequence'> & { sequence: string })[], number]>(
     `with claimed as (
@@ -34,7 +34,10 @@ export async function claimSealMails(manager: EntityManager, now: Date): Promise
          where (firm_id, sequence, person_id) in (
            select firm_id, sequence, person_id from seal_mail
              where sent_at is null and due_since > $1::timestamptz - interval '${GIVE_UP_DAYS} days'
-               and (claimed_until is null or claimed_until < $1) for update skip locked)
+               and (claimed_until is null or claimed_until < $1)
+               and exists (select from membership m where m.firm_id = seal_mail.firm_id
+                 and m.person_id = seal_mail.person_id and m.active and 'owner' = any (m.roles))
+             for update of seal_mail skip locked)
          returning firm_id, sequence, person_id)
      select c.sequence, c.person_id as "personId", p.name, p.email,
          coalesce(p.preferences ->> 'locale', f.locale) as locale, f.name as "firmName"

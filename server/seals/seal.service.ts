@@ -105,7 +105,11 @@ export async function sealWhatIsDue(parts: Parts, jobs: DataSource): Promise<voi
       // One firm's lost key must not keep the others from being sealed.
       parts.log.error({ err: error, firmId }, 'could not be sealed');
     }
-    await sendSealMails(parts, jobs, program);
+    try {
+      await sendSealMails(parts, jobs, program);
+    } catch (error) {
+      parts.log.error({ err: error, firmId }, 'the head could not be mailed');
+    }
   }
 }
 
@@ -118,15 +122,21 @@ async function sealFirm(parts: Parts, jobs: DataSource, program: Actorless): Pro
   });
 }
 
+type MailParts = Pick<Parts, 'settings' | 'now' | 'mailer' | 'background'>;
 type Actorless = { firmId: string; personId: string; siteIds: null };
 
-function mailSeals(parts: Parts, dataSource: DataSource, { firmId }: Pick<Actor, 'firmId'>): void {
+/** Behind the answer; what cannot be sent now is tried again by the daily round. */
+export function mailSeals(parts: MailParts, dataSource: DataSource, { firmId }: Pick<Actor, 'firmId'>): void {
   const program = { firmId, personId: THE_PROGRAM, siteIds: null };
   parts.background.run('mail a sealed head', () => sendSealMails(parts, dataSource, program));
 }
 
 /** After the commit and outside of any transaction. A crash between the mail server's yes and ours mails it once more. */
-async function sendSealMails(parts: Parts, dataSource: DataSource, program: Actorless): Promise<void> {
+async function sendSealMails(
+  parts: Omit<MailParts, 'background'>,
+  dataSource: DataSource,
+  program: Actorless,
+): Promise<void> {
   const mails = await inFirm(dataSource, program, (manager) => claimSealMails(manager, parts.now()));
   for (const mail of mails) {
     const seal = await inFirm(dataSource, program, (manager) => findSealRow(manager, mail.sequence));

@@ -5,6 +5,7 @@ import { entryExportQuery, flagListQuery } from '../entries/entry.schema.ts';
 import { day, id, instant, month, pageOf, pageQuery } from '../lists/list.schema.ts';
 import { partyListQuery } from '../parties/parties.schema.ts';
 import { listPeopleQuery } from '../people/people.schema.ts';
+import { proofPackageFilters } from '../proof/proof.schema.ts';
 import { siteListQuery } from '../sites/sites.schema.ts';
 import { STATEMENT_LIMITS } from '../statements/cylinder-statement.schema.ts';
 import { toolListQuery } from '../tools/tools.schema.ts';
@@ -32,7 +33,10 @@ export const EXPORT_DOCUMENTS = [
   'chargeLabel',
 ] as const;
 export type ExportDocument = (typeof EXPORT_DOCUMENTS)[number];
-export type ExportWhat = ExportTable | ExportDocument;
+/** A package of the proof, as a zip. */
+export const PROOF_PACKAGE = 'proofPackage';
+export const EXPORT_WHATS = [...EXPORT_TABLES, ...EXPORT_DOCUMENTS, PROOF_PACKAGE] as const;
+export type ExportWhat = (typeof EXPORT_WHATS)[number];
 
 /** Above it a spreadsheet is refused: the same rows as CSV have no limit. */
 export const XLSX_LARGEST_ROWS = 100_000;
@@ -80,6 +84,7 @@ export const createExportRequest = z.discriminatedUnion('what', [
   document('disposalReport', months),
   document('jobRecord', z.strictObject({ jobId: id })),
   document('chargeLabel', z.strictObject({ unitId: id })),
+  z.strictObject({ id, what: z.literal(PROOF_PACKAGE), format: z.literal('zip'), filters: proofPackageFilters }),
 ]);
 export type CreateExportRequest = z.output<typeof createExportRequest>;
 export type FiltersOf<W extends ExportWhat> = Extract<CreateExportRequest, { what: W }>['filters'];
@@ -90,8 +95,8 @@ export const EXPORT_STATES = ['queued', 'running', 'done', 'cancelled', 'failed'
 
 export const exportView = z.strictObject({
   id,
-  what: z.enum([...EXPORT_TABLES, ...EXPORT_DOCUMENTS]),
-  format: z.enum(['csv', 'xlsx', 'pdf']),
+  what: z.enum(EXPORT_WHATS),
+  format: z.enum(['csv', 'xlsx', 'pdf', 'zip']),
   filters: z.record(z.string(), z.unknown()),
   state: z.enum(EXPORT_STATES),
   rowsDone: z.int(),

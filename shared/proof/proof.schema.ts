@@ -129,22 +129,30 @@ const flag = z.enum(['true', 'false']).transform((text) => text === 'true');
 export const PAPERS = ['A4', 'Letter'] as const;
 
 /** One of: a unit, a customer, a period (days in the firm's zone, both included; by when it happened). */
+const packageFields = {
+  unitId: id.optional(),
+  customerId: id.optional(),
+  from: day.optional(),
+  to: day.optional(),
+  paper: z.enum(PAPERS).optional(),
+};
+/** `words`: with the words beside the records, which may name people. In an address it is text. */
 export const proofPackageQuery = z
-  .strictObject({
-    unitId: id.optional(),
-    customerId: id.optional(),
-    from: day.optional(),
-    to: day.optional(),
-    /** With the words beside the records, which may name people. */
-    words: flag.default(false),
-    paper: z.enum(PAPERS).optional(),
-  })
-  .superRefine(({ unitId, customerId, from, to }, context) => {
-    const subjects = [unitId, customerId, from ?? to].filter((subject) => subject !== undefined);
-    if (subjects.length !== 1) context.addIssue({ code: 'custom', path: [], params: { code: 'proofSubject' } });
-    else if ((from === undefined) !== (to === undefined))
-      context.addIssue({ code: 'custom', path: [from === undefined ? 'from' : 'to'], params: { code: 'required' } });
-    else if (from !== undefined && to !== undefined && from > to)
-      context.addIssue({ code: 'custom', path: ['to'], params: { code: 'periodBackwards', allowed: from } });
-  });
+  .strictObject({ ...packageFields, words: flag.default(false) })
+  .superRefine(refuseOtherThanOneSubject);
+export const proofPackageFilters = z
+  .strictObject({ ...packageFields, words: z.boolean().default(false) })
+  .superRefine(refuseOtherThanOneSubject);
 export type ProofPackageQuery = z.output<typeof proofPackageQuery>;
+
+function refuseOtherThanOneSubject(
+  { unitId, customerId, from, to }: { unitId?: string; customerId?: string; from?: string; to?: string },
+  context: z.RefinementCtx,
+): void {
+  const subjects = [unitId, customerId, from ?? to].filter((subject) => subject !== undefined);
+  if (subjects.length !== 1) context.addIssue({ code: 'custom', path: [], params: { code: 'proofSubject' } });
+  else if ((from === undefined) !== (to === undefined))
+    context.addIssue({ code: 'custom', path: [from === undefined ? 'from' : 'to'], params: { code: 'required' } });
+  else if (from !== undefined && to !== undefined && from > to)
+    context.addIssue({ code: 'custom', path: ['to'], params: { code: 'periodBackwards', allowed: from } });
+}

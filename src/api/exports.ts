@@ -71,7 +71,7 @@ export function useExportPath(...[what, filters, format]: Parameters<typeof expo
   const { permissions, roles } = session;
   const may =
     permissions.includes('exports:make') ||
-    (roles.includes('reader') && FOR_READERS.has(what)) ||
+    (roles.every((role) => role === 'reader') && FOR_READERS.has(what)) ||
     (roles.includes('technician') && FOR_TECHNICIANS.has(what));
   return may ? exportPath(what, filters, format) : null;
 }

@@ -52,18 +52,6 @@ export function useChangeKey() {
   });
 }
 
-export interface PackageRequest {
-  unitId?: string | undefined;
-  customerId?: string | undefined;
-  from?: string | undefined;
-  to?: string | undefined;
-  words: boolean;
-  paper?: string | undefined;
-}
-/** Address of a proof package; opening it makes one. */
-export const packagePath = (request: PackageRequest): string =>
-  `/api/v1/proof-packages${queryString({ ...request, words: request.words ? 'true' : undefined })}`;
-
 /**
  * Has the server check the whole log; `onProgress` hears how far it is.
  * @throws Problem, NetworkError

@@ -134,6 +134,9 @@ export const bench: Bench = {
         now: () => new Date(),
         newId: () => uuid(),
         reference: loadReferenceData(),
+        dataSource: app,
+        mailer: { send: async () => ({ sent: false, reason: 'no mail here' }), close: async () => undefined },
+        background: { run: () => undefined, settled: async () => undefined },
       };
       const firmId = uuid();
       const owner = {

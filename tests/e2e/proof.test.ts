@@ -2,6 +2,8 @@ import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, afterEach, beforeAll, describe, expect, inject, it } from 'vitest';
+import { writeDocument } from '../../server/documents/write-document.ts';
+import { type ExportWorker, startExportWorker } from '../../server/exports/export-worker.ts';
 import { type History, startHistory } from '../proof/history.ts';
 import { bench, editFile, pack, runVerifier, unpack } from '../proof/packages.ts';
 import { startTestApp, type TestApp } from '../support/app.ts';
@@ -14,16 +16,19 @@ const pictures = process.env.PICTURE_FOLDER;
 let app: TestApp;
 let browser: TestBrowser;
 let history: History;
+let worker: ExportWorker | undefined;
 beforeAll(async () => {
   app = await startTestApp({ environment: { TAREWRIGHT_HOME: home }, parts: { clientFolder: inject('clientFolder') } });
   browser = await startBrowser(app);
   history = await startHistory(app);
+  worker = await startExportWorker({ parts: app.parts, jobsUrl: app.database.urls.jobs, writeDocument });
 });
 afterEach(async ({ task }) => {
   expect(await browser.endVisits(task)).toEqual([]);
 });
 afterAll(async () => {
   await browser?.close();
+  await worker?.stop();
   await app?.close();
   rmSync(home, { recursive: true, force: true });
   rmSync(bench, { recursive: true, force: true });
@@ -61,16 +66,23 @@ describe.each(['en-GB', 'es-ES'] as const)('The page of the proof, in %s', (loca
     await button('log.check').click();
     await page.getByRole('status').getByText(verdict('intact')).waitFor();
 
-    const [download] = await Promise.all([
-      page.waitForEvent('download'),
-      page.getByRole('link', { name: say('proof.make.download'), exact: true }).click(),
-    ]);
+    await button('make.start').click();
+    await page.waitForURL('**/exports');
+    const made = page
+      .getByRole('row')
+      .filter({ hasText: say('exports.what.proofPackage') })
+      .first()
+      .getByRole('link');
+    await made.waitFor();
+    await picture('made');
+    const [download] = await Promise.all([page.waitForEvent('download'), made.click()]);
     const zip = path.join(home, `package-${locale}.zip`);
     await download.saveAs(zip);
     expect((await runVerifier(zip)).status).toBe(0);
     const { about } = JSON.parse(readFileSync(path.join(await unpack(zip), 'proof.json'), 'utf8'));
     expect(about).toMatchObject({ kind: 'unit', id: history.unit.id });
 
+    await page.goto(`${app.url}/log/proof`);
     const file = page.locator('input[type=file]');
     await file.setInputFiles(zip);
     await page.getByText(about.label).waitFor();

@@ -1,13 +1,18 @@
-import { useQuery, useQueryClient } from '@tanstack/react-query';
-import { useState } from 'react';
+import { useQuery } from '@tanstack/react-query';
+import { useRef, useState } from 'react';
+import { useNavigate } from 'react-router-dom';
+import type { PAPERS } from '../../../shared/proof/proof.schema.ts';
 import { customerQueries } from '../../api/customers.ts';
-import { journalQueries, packagePath } from '../../api/journal.ts';
+import { useStartExport } from '../../api/exports.ts';
 import { unitQueries } from '../../api/units.ts';
 import { deviceNow, toDayInput } from '../../lib/local-time.ts';
 import { useMessages } from '../../lib/messages.ts';
+import { newId } from '../../lib/new-id.ts';
+import { Button } from '../../ui/button.tsx';
 import { CheckField, ChoiceField, SelectField, TextField } from '../../ui/field.tsx';
-import { Notice } from '../../ui/notice.tsx';
+import { Failed, Notice } from '../../ui/notice.tsx';
 
+type Paper = (typeof PAPERS)[number];
 type Subject = 'period' | 'unit' | 'customer';
 
 /** The subject that a link asked for: `/log/proof?unitId=...`, `?customerId=...` or `?from=2026-11-01&to=2026-11-30`. */
@@ -18,10 +23,21 @@ export interface Asked {
   to: string | null;
 }
 
-/** A package for somebody else, streamed straight to the disk. `held`: the server can seal, without which there is none. */
+/** The same id for the same request: sent once more after its answer was lost, it is still the one package. */
+function useIdOf(): (request: string) => string {
+  const last = useRef<{ request: string; id: string } | null>(null);
+  return (request) => {
+    if (last.current?.request !== request) last.current = { request, id: newId() };
+    return last.current.id;
+  };
+}
+
+/** A package for somebody else, made among the exports. `held`: the server can seal, without which there is none. */
 export function MakePackage({ asked, held }: { asked: Asked; held: boolean }) {
   const t = useMessages();
-  const client = useQueryClient();
+  const navigate = useNavigate();
+  const start = useStartExport();
+  const newIdOf = useIdOf();
   const [kind, setKind] = useState<Subject>(asked.unitId ? 'unit' : asked.customerId ? 'customer' : 'period');
   const [unitId, setUnitId] = useState(asked.unitId ?? '');
   const [customerId, setCustomerId] = useState(asked.customerId ?? '');
@@ -37,6 +53,12 @@ export function MakePackage({ asked, held }: { asked: Asked; held: boolean }) {
     customer: customerId !== '',
   }[kind];
   const subject = { period: days, unit: { unitId }, customer: { customerId } }[kind];
+  const filters = { ...subject, words, ...(paper === '' ? {} : { paper: paper as Paper }) };
+  const send = () =>
+    start.mutate(
+      { id: newIdOf(JSON.stringify(filters)), what: 'proofPackage', format: 'zip', filters },
+      { onSuccess: () => void navigate('/exports') },
+    );
   return (
     <section className="flex max-w-prose flex-col gap-3" aria-labelledby="proof-make">
       <h2 id="proof-make" className="type-title text-[1.25rem]">
@@ -84,16 +106,11 @@ export function MakePackage({ asked, held }: { asked: Asked; held: boolean }) {
         checked={words}
         onChange={(event) => setWords(event.target.checked)}
       />
+      {start.isError ? <Failed title={t('proof.make.notStarted')} error={start.error} /> : null}
       {isChosen && held ? (
-        <a
-          href={packagePath({ ...subject, words, paper: paper || undefined })}
-          download
-          className="type-narrow inline-flex min-h-12 items-center justify-center self-start bg-rest px-5 py-2 leading-tight font-[600] text-on-rest no-underline hover:bg-rest-strong"
-          // The export and its seal are records of their own: what stands above is read again once they are written.
-          onClick={() => setTimeout(() => void client.invalidateQueries({ queryKey: journalQueries.all() }), 2_000)}
-        >
-          {t('proof.make.download')}
-        </a>
+        <Button kind="act" className="self-start" busy={start.isPending} onClick={send}>
+          {t('proof.make.start')}
+        </Button>
       ) : (
         <Notice>{t(held ? 'proof.make.choose' : 'proof.make.cannotSeal')}</Notice>
       )}
