@@ -218,12 +218,14 @@ export const MONTH_SUM_DIFFERS = `
   select concat_ws(' ', month, from_kind, to_kind) as place, refrigerant
     from (select booking_month::text as month, refrigerant::text as refrigerant,
           from_place || coalesce(':' || from_as, '') as from_kind, to_place || coalesce(':' || to_as, '') as to_kind,
-          sum(mass_micrograms) as mass, count(*) as entries
+          sum(mass_micrograms) as mass, count(*) as entries,
+          coalesce(sum(mass_micrograms) filter (where reverses_entry_id is not null), 0) as reversals
         from entry group by 1, 2, 3, 4) fresh
-    full join (select month::text as month, refrigerant::text as refrigerant, from_kind, to_kind, mass_micrograms, entry_count
-        from month_sum) kept using (month, refrigerant, from_kind, to_kind)
+    full join (select month::text as month, refrigerant::text as refrigerant, from_kind, to_kind, mass_micrograms, entry_count,
+          reversal_micrograms from month_sum) kept using (month, refrigerant, from_kind, to_kind)
     where coalesce(fresh.mass, 0) <> coalesce(kept.mass_micrograms, 0)
-      or coalesce(fresh.entries, 0) <> coalesce(kept.entry_count, 0) order by 1, 2 limit 1`;
+      or coalesce(fresh.entries, 0) <> coalesce(kept.entry_count, 0)
+      or coalesce(fresh.reversals, 0) <> coalesce(kept.reversal_micrograms, 0) order by 1, 2 limit 1`;
 
 /** Words beside the records of a range whose salted hash is not theirs, or does not stand in their record. */
 export const WORDS_DIFFER = `

@@ -65,7 +65,7 @@ async function findInRegister(manager: EntityManager, noun: string, metadata: En
       const id = String(row[subject]);
       const record = records.get(id);
       if (!record) return { sequence: null, table, column: '', id };
-      const column = firstDifferent(row, record, words.get(id) ?? [], metadata);
+      const column = firstDifferent(noun, row, record, words.get(id) ?? [], metadata);
       if (column !== null) return { sequence: Number(record.sequence), table, column, id };
     }
   }
@@ -80,11 +80,17 @@ async function findInRegister(manager: EntityManager, noun: string, metadata: En
   return gone ? { sequence: Number(gone.sequence), table, column: '', id: gone.id } : null;
 }
 
-function firstDifferent(row: Row, record: LatestRecord, words: readonly Words[], metadata: EntityMetadata) {
+function firstDifferent(
+  noun: string,
+  row: Row,
+  record: LatestRecord,
+  words: readonly Words[],
+  metadata: EntityMetadata,
+) {
   if ('version' in row && row.version !== record.version) return 'version';
   const { after } = JSON.parse(record.content) as { after: Row };
   const names = new Set(metadata.columns.map(({ propertyName }) => propertyName));
-  for (const [name, said] of factsOf(after, names)) {
+  for (const [name, said] of factsOf(noun, after, names)) {
     const ofWords = name.endsWith('Hash') ? name.slice(0, -4) : null;
     if (ofWords !== null && names.has(ofWords)) {
       if (!isSameWords(row[ofWords], said, words)) return columnOf(metadata, ofWords);
@@ -94,12 +100,16 @@ function firstDifferent(row: Row, record: LatestRecord, words: readonly Words[],
 }
 
 /** What a record holds under one name and the table in several columns counts by its parts: a tool's `scale`. */
-const factsOf = (after: Row, names: ReadonlySet<string>): [string, unknown][] =>
+const factsOf = (noun: string, after: Row, names: ReadonlySet<string>): [string, unknown][] =>
   Object.entries(after).flatMap(([name, said]) =>
     !names.has(name) && said !== null && typeof said === 'object' && !Array.isArray(said)
-      ? Object.entries(said)
+      ? Object.entries(said).map(([part, fact]) => [columnsOf(noun, name)[part] ?? part, fact] as [string, unknown])
       : [[name, said] as [string, unknown]],
   );
+
+/** Where a part has another name than its column: what a difference was settled to is a place, and no id of the row. */
+const columnsOf = (noun: string, name: string): Readonly<Record<string, string>> =>
+  noun === 'settlement' && name === 'to' ? { place: 'settledTo', id: 'settledToId' } : {};
 
 const columnOf = (metadata: EntityMetadata, name: string): string =>
   metadata.findColumnWithPropertyName(name)?.databaseName ?? name;

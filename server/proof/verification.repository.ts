@@ -8,6 +8,8 @@ import {
   ROWS_TOLD,
   WORDS_DIFFER,
 } from './column-checks.ts';
+import { HOLDER_DIFFERS, STATE_DIFFERS, UNDO_DIFFERS } from './derived-checks.ts';
+import type { RegisterDifference } from './register-checks.ts';
 
 export interface ChainedRow {
   sequence: string;
@@ -78,13 +80,20 @@ export async function findRowWithoutRecord(
   return null;
 }
 
-/** A book that is not the sum of its entries. */
+/** A book that is not the sum of its entries, or that is told otherwise where postings and month close go by it. */
 export async function findOtherBook(manager: EntityManager): Promise<{ place: string; refrigerant: string } | null> {
-  for (const sql of [BALANCE_DIFFERS, MONTH_SUM_DIFFERS]) {
+  for (const sql of [BALANCE_DIFFERS, MONTH_SUM_DIFFERS, UNDO_DIFFERS, STATE_DIFFERS]) {
     const [row] = await manager.query<{ place: string; refrigerant: string }[]>(sql);
     if (row) return row;
   }
   return null;
+}
+
+/** Who held a cylinder, told otherwise than the records of its register; as `findOtherRegisterRow` tells it. */
+export async function findOtherHolder(manager: EntityManager): Promise<RegisterDifference | null> {
+  const [row] = await manager.query<{ sequence: string | null; id: string; column: string }[]>(HOLDER_DIFFERS);
+  if (!row) return null;
+  return { ...row, sequence: row.sequence === null ? null : Number(row.sequence), table: 'cylinder_holder' };
 }
 
 export async function countRecords(manager: EntityManager): Promise<number> {

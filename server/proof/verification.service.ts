@@ -13,6 +13,7 @@ import {
   countRowsTold,
   findDifference,
   findOtherBook,
+  findOtherHolder,
   findOtherWords,
   findRowWithoutRecord,
   NO_ROWS,
@@ -138,7 +139,7 @@ class Verification {
     if (row) throw new LogFault('rowWithoutRecord', null, row);
     const book = await findOtherBook(manager);
     if (book) throw new LogFault('booksDiffer', null, book);
-    const register = await findOtherRegisterRow(manager);
+    const register = (await findOtherRegisterRow(manager)) ?? (await findOtherHolder(manager));
     if (!register) return;
     const { sequence, table, column, id } = register;
     if (sequence === null) throw new LogFault('rowWithoutRecord', null, { table, id });
