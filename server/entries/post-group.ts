@@ -48,7 +48,7 @@ export interface JudgedBody {
 
 /**
  * Judges the body of a group that stands for itself and writes it down for posting.
- * @param beforeReading what has to reach the log before anything is read from it
+ * @param beforeReading what has to reach the log before the timelines of these places are read from it; null: anything
  * @throws Problem 422
  */
 export async function judgeBody(
@@ -58,13 +58,14 @@ export async function judgeBody(
   facts: PostingFacts,
   body: EntryGroupRequest,
   requestHash: string,
-  beforeReading?: () => Promise<void>,
+  beforeReading?: (placeIds: readonly string[] | null) => Promise<void>,
 ): Promise<JudgedBody> {
-  if (body.closesGroupId) await beforeReading?.();
+  if (body.closesGroupId) await beforeReading?.(null);
   const opening = body.closesGroupId ? await findGroup(manager, body.closesGroupId) : null;
   const added = enter(parts, facts, body, { at: '', opening, place: 1 });
   const posting: Posting = { recordId: body.groupId, added };
-  if (placesToReplay(posting, facts).length > 0) await beforeReading?.();
+  const replayed = placesToReplay(posting, facts);
+  if (replayed.length > 0) await beforeReading?.(replayed);
   const { judged, stored } = await judge(manager, posting, facts);
   refuseWithoutReason(reasonRefusals(posting, judged, facts, body.reason));
   const request = { body, requestHash, replacesGroupId: null };

@@ -34,14 +34,20 @@ export async function postGroupsWithin(
   const hashes = await findEarlierHashes(manager, [...stepped.facts.earlierGroupIds]);
   let waiting: PostingRecords[] = [];
   let isSending = false;
+  /** Cylinders and units whose timelines the waiting ones make longer. */
+  const touched = new Set<string>();
   const send = async (): Promise<void> => {
     const sent = waiting;
     waiting = [];
+    touched.clear();
     if (sent.length === 0) return;
     isSending = true;
     const records = sent.flatMap((each) => each.records);
     await postRecords(manager, records, together(sent.map(({ derived }) => derived)));
     isSending = false;
+  };
+  const sendWhatTouches = async (placeIds: readonly string[] | null): Promise<void> => {
+    if (placeIds === null || placeIds.some((id) => touched.has(id))) await send();
   };
   const outcomes: NewOrRefused[] = [];
   for (const body of bodies) {
@@ -52,9 +58,10 @@ export async function postGroupsWithin(
       continue;
     }
     try {
-      const { judged, written } = await judgeBody(manager, parts, author, stepped.facts, body, hash, send);
+      const { judged, written } = await judgeBody(manager, parts, author, stepped.facts, body, hash, sendWhatTouches);
       stepped.step(judged, written);
       waiting.push(written);
+      for (const { place } of judged.places) if ('id' in place) touched.add(place.id);
       hashes.set(body.groupId, hash);
       outcomes.push(true);
     } catch (error) {

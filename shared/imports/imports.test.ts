@@ -74,9 +74,13 @@ describe('A date in a cell', () => {
   });
 
   it('is refused where the calendar has no such day', () => {
-    for (const text of ['31/02/2025', '2025-13-01', '3/4/25', 'yesterday', '45021', '2025-04-03 25:00']) {
+    for (const text of ['31/02/2025', '2025-13-01', '3/4/25', 'yesterday', '2025-04-03 25:00']) {
       expect(when(text)).toBe('importDate');
     }
+  });
+
+  it('is refused as what it is where a spreadsheet left its number', () => {
+    expect([when('45021'), when('45021.5'), when('45021,25')]).toEqual(Array(3).fill('importDateSerial'));
   });
 });
 

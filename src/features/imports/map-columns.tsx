@@ -41,7 +41,6 @@ export function MapColumns({ file }: { file: ImportView }) {
       return { ...now, columns: value === '' ? others : { ...others, [name]: Number(value) } };
     });
   const atWork = isAtWork(file);
-  const locked = atWork || file.state === 'done';
   const send = () => {
     const missing = file.fields
       .filter(({ name, required }) => required && draft.columns[name] === undefined)
@@ -55,6 +54,15 @@ export function MapColumns({ file }: { file: ImportView }) {
     if (found.length > 0) return;
     check.mutate(draft, { onError: (error) => setErrors(answerErrors(error)) });
   };
+  // Nothing is left to choose.
+  if (file.state === 'done') {
+    return (
+      <div className="flex flex-col gap-6">
+        <Understood file={file} />
+        <Outcome file={file} />
+      </div>
+    );
+  }
   const shown = ['/since', ...file.fields.map(({ name }) => `/columns/${name}`)];
   return (
     <div className="grid gap-x-12 gap-y-8 lg:grid-cols-[minmax(0,30rem)_minmax(0,1fr)]">
@@ -67,7 +75,7 @@ export function MapColumns({ file }: { file: ImportView }) {
         }}
       >
         <Understood file={file} />
-        <fieldset disabled={locked} className="min-w-0">
+        <fieldset disabled={atWork} className="min-w-0">
           <legend className="type-title pb-1 text-[1.25rem]">{t('imports.columns')}</legend>
           <div className="border-t border-rule">
             {file.fields.map(({ name, required }) => {
@@ -94,7 +102,7 @@ export function MapColumns({ file }: { file: ImportView }) {
             })}
           </div>
         </fieldset>
-        <fieldset disabled={locked} className="min-w-0">
+        <fieldset disabled={atWork} className="min-w-0">
           <legend className="type-title pb-1 text-[1.25rem]">{t('imports.how')}</legend>
           <SelectField
             layout="row"
@@ -131,16 +139,14 @@ export function MapColumns({ file }: { file: ImportView }) {
         {errorsElsewhere(errors, shown).map((message) => (
           <FieldError key={message}>{message}</FieldError>
         ))}
-        {file.state === 'done' ? null : (
-          <Button
-            kind={file.state === 'checked' && file.wrongRows === 0 ? 'plain' : 'act'}
-            wide
-            type="submit"
-            busy={atWork || check.isPending}
-          >
-            {t(file.state === 'read' ? 'imports.check' : 'imports.checkAgain')}
-          </Button>
-        )}
+        <Button
+          kind={file.state === 'checked' && file.wrongRows === 0 ? 'plain' : 'act'}
+          wide
+          type="submit"
+          busy={atWork || check.isPending}
+        >
+          {t(file.state === 'read' ? 'imports.check' : 'imports.checkAgain')}
+        </Button>
       </form>
       <Outcome file={file} />
     </div>
