@@ -1,10 +1,11 @@
 import { useQuery } from '@tanstack/react-query';
+import { pressureRule } from '../../../shared/cylinder-fill/filling-table.ts';
 import { CONTENT_STATES, CYLINDER_KINDS } from '../../../shared/cylinders/cylinder.schema.ts';
 import { customerQueries } from '../../api/customers.ts';
 import { errorAt, type FormError } from '../../api/form-errors.ts';
 import { partyQueries } from '../../api/parties.ts';
 import { peopleQueries } from '../../api/people.ts';
-import { usePermission } from '../../api/session.ts';
+import { usePermission, useSession } from '../../api/session.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { useRefrigerantNames } from '../../lib/refrigerant-names.ts';
@@ -117,6 +118,7 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
   const t = useMessages();
   const format = useFormat();
   const pressure = usePressure();
+  const { clause } = pressureRule(useSession()?.firm.jurisdiction ?? null);
   return (
     <>
       <h2 className="type-title pt-6 pb-1 text-[1.25rem]">{t('cylinders.new.collar')}</h2>
@@ -167,9 +169,10 @@ export function CollarFields({ draft, errors, figures, onChange }: Props & { fig
         hint={
           figures.pressureAt55KPaGauge === null
             ? undefined
-            : t('cylinders.pressure.needs', {
+            : t(clause === null ? 'cylinders.pressure.needs' : 'cylinders.pressure.needsStamped', {
                 refrigerant: draft.refrigerant,
                 pressure: pressure(figures.pressureAt55KPaGauge),
+                clause: clause ?? '',
                 temperature: RATING_TEMP_C,
               })
         }
