@@ -191,7 +191,9 @@ export async function readSupplierSums(
            and e.booking_month between $1 and $2 and ($3::text is null or e.refrigerant = $3)
          group by 1)
      select y.id as "supplierId", y.name, coalesce(sum(m.signed) filter (where m.bought), 0)::text as bought,
-         count(distinct m.group_id) filter (where m.from_place = 'supplier')::integer as "purchaseCount",
+         count(distinct m.group_id) filter (where m.from_place = 'supplier' and m.reverses_entry_id is null
+           and not exists (select from entry r where r.firm_id = m.firm_id and r.reverses_entry_id = m.id
+             and r.booking_month <= $2))::integer as "purchaseCount",
          coalesce(sum(m.signed) filter (where not m.bought), 0)::text as returned,
          coalesce(max(s.mass), 0)::text as "shortFill",
          coalesce(sum(m.signed) filter (where m.bought and m.micros_per_kg is null), 0)::text as "withoutPrice",

@@ -51,7 +51,7 @@ export function listPeople(parts: BooksParts, actor: Actor, query: BooksQuery): 
         return {
           ...person,
           chargedG: standing(alone),
-          chargedBeyondCount: alone.filter(({ verdict }) => verdict !== 'withinScales').length,
+          chargedBeyondCount: alone.filter(({ verdict }) => verdict === 'notExplained').length,
           sharedG: standing(held.filter(({ hands }) => hands.size > 1)),
         };
       }),

@@ -12,10 +12,13 @@ export interface DifferenceRow {
   refrigerant: string;
   /** Above zero: missing from the place, so that it stands in the difference. */
   mass: string;
+  /** Of all refrigerants together: what the statement shows. A mixed cylinder's is only split by its book. */
+  whole: string;
   settled: string;
   bookingMonth: string;
   occurredAt: Date;
   timeZone: string;
+  firmTimeZone: string;
   recordedBy: string;
   recordedByName: string;
   /** The judge says of a unit that the scales do not explain it. */
@@ -42,8 +45,7 @@ const SHOWN = `select e.firm_id, coalesce(e.corrects_group_id, e.group_id) as gr
   from entry e
   where (e.from_place = any (${KINDS}) or e.to_place = any (${KINDS}))
     and (e.from_place in ('cylinder', 'unit', 'reclaimer') or e.to_place in ('cylinder', 'unit', 'reclaimer'))
-    and ($1::text is null or e.booking_month >= $1) and e.booking_month <= $2
-    and ($3::text is null or e.refrigerant = $3)`;
+    and ($1::text is null or e.booking_month >= $1) and e.booking_month <= $2`;
 
 /** What was settled in these months and stands: not reversed, and less what was undone since. */
 const SETTLED = `select s.judged_group_id as group_id, s.judged_place_id as subject_id, s.difference as kind, s.refrigerant,
@@ -56,21 +58,21 @@ const SETTLED = `select s.judged_group_id as group_id, s.judged_place_id as subj
   group by 1, 2, 3, 4`;
 
 const ITEMS = `select d.group_id as "groupId", d.kind, d.subject_kind as "subjectKind", d.subject_id as "subjectId",
-    coalesce(c.tag, u.tag, y.name, '') as label, d.refrigerant, d.mass::text, d.settled::text,
+    coalesce(c.tag, u.tag, y.name, '') as label, d.refrigerant, d.mass::text, d.whole::text, d.settled::text,
     d.booking_month as "bookingMonth", g.occurred_at as "occurredAt",
-    coalesce(s.time_zone, f.time_zone) as "timeZone", g.recorded_by as "recordedBy",
+    coalesce(s.time_zone, f.time_zone) as "timeZone", f.time_zone as "firmTimeZone", g.recorded_by as "recordedBy",
     coalesce(p.name, '') as "recordedByName",
     exists (select from flag x where x.firm_id = d.firm_id and x.subject_id = d.subject_id and x.group_id = d.group_id
       and x.closed_at is null and x.code in ('moreCameOutThanWentIn', 'moreThanFullChargeCameOut')) as flagged
   from (
-    select n.firm_id, n.group_id, n.kind, n.subject_kind, n.subject_id, n.refrigerant, n.booking_month, n.mass,
+    select n.firm_id, n.group_id, n.kind, n.subject_kind, n.subject_id, n.refrigerant, n.booking_month, n.mass, n.whole,
         coalesce(t.mass, 0) as settled
       from (select firm_id, group_id, kind, subject_kind, subject_id, refrigerant, min(booking_month) as booking_month,
-          sum(mass) as mass
+          sum(mass) as mass, sum(sum(mass)) over (partition by group_id, kind, subject_kind, subject_id) as whole
         from (${SHOWN}) x group by 1, 2, 3, 4, 5, 6 having sum(mass) <> 0) n
       left join (${SETTLED}) t on t.group_id = n.group_id and t.subject_id = n.subject_id and t.kind = n.kind
         and t.refrigerant = n.refrigerant
-      where not $4::boolean or n.mass <> coalesce(t.mass, 0)) d
+      where (not $4::boolean or n.mass <> coalesce(t.mass, 0)) and ($3::text is null or n.refrigerant = $3)) d
   join entry_group g on g.firm_id = d.firm_id and g.id = d.group_id
   join firm f on f.id = d.firm_id
   left join site s on s.firm_id = g.firm_id and s.id = ${siteThen('g')}

@@ -5,6 +5,7 @@ import { differenceKey } from '../../shared/periods/item-key.ts';
 import { verdictOf as sizeVerdict } from '../../shared/scale/reconcile.ts';
 import { statementFigures } from '../../shared/statements/statement-figures.ts';
 import type { ReadingCheck } from '../../shared/statements/walk-cylinder.ts';
+import { dayInZone } from '../../shared/units/calendar.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { roundTo } from '../../shared/units/round.ts';
 import { type Holders, readHolders } from '../statements/cylinder-holder.repository.ts';
@@ -67,6 +68,7 @@ function itemOf(
   averages: ReadonlyMap<string, number> | undefined,
 ): DifferenceItem {
   const mass = BigInt(row.mass);
+  const whole = BigInt(row.whole);
   const settled = BigInt(row.settled);
   const standsG = -gramsOfMicrograms(mass - settled);
   const perKg = averages ? averageIn(averages, row.bookingMonth) : null;
@@ -82,24 +84,30 @@ function itemOf(
     timeZone: row.timeZone,
     bookingMonth: row.bookingMonth,
     differenceG: -gramsOfMicrograms(mass),
+    readingDifferenceG: -gramsOfMicrograms(whole),
     settledG: -gramsOfMicrograms(settled),
     standsG,
-    bookG: scaleG === null ? null : gramsOfMicrograms((check as ReadingCheck).contentMicrograms + mass),
+    bookG: scaleG === null ? null : gramsOfMicrograms((check as ReadingCheck).contentMicrograms + whole),
     scaleG,
     standardUncertaintyG: check ? rounded(check.uncertainty.standardG) : null,
     twoUG: check ? twoU(check.uncertainty.standardG) : null,
-    verdict: verdictOf(row, check, mass),
+    verdict: verdictOf(row, check, whole),
+    statement: check && {
+      from: dayInZone(check.previousAt ?? check.at, row.firmTimeZone),
+      to: dayInZone(check.at, row.firmTimeZone),
+    },
     previousAt: check?.previousAt ? new Date(check.previousAt).toISOString() : null,
     heldBetween: check
       ? holders.between(row.subjectId, check.previousAt, check.at)
       : [{ personId: row.recordedBy, name: row.recordedByName, van: null, from: at, to: at }],
     recordedByName: row.recordedByName,
-    cost: perKg === null ? null : roundTo(Math.abs(worthOf(standsG, perKg)), 2),
+    cost: perKg === null ? null : roundTo(0 - worthOf(standsG, perKg), 2),
   };
 }
 
-function verdictOf(row: DifferenceRow, check: ReadingCheck | null, mass: bigint): DifferenceItem['verdict'] {
+/** A cylinder's reading is of the whole, and so is what the scales make of it, whatever it is split into. */
+function verdictOf(row: DifferenceRow, check: ReadingCheck | null, whole: bigint): DifferenceItem['verdict'] {
   if (row.kind === 'reclaimerDifference') return null;
-  if (check) return sizeVerdict(Math.abs(gramsOfMicrograms(mass)), check.uncertainty.standardG);
+  if (check) return sizeVerdict(Math.abs(gramsOfMicrograms(whole)), check.uncertainty.standardG);
   return row.flagged ? 'notExplained' : 'withinScales';
 }

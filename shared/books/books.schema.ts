@@ -102,6 +102,8 @@ export const differenceItem = z.strictObject({
   bookingMonth: month,
   /** Reading less book: below zero, refrigerant is missing. What was explained since is taken off. */
   differenceG: z.number(),
+  /** Of all refrigerants in the cylinder together, as it was weighed: the verdict is of this. */
+  readingDifferenceG: z.number(),
   /** Made something else by month close: lost, the supplier's, missing. */
   settledG: z.number(),
   /** What still stands as a difference. */
@@ -114,10 +116,12 @@ export const differenceItem = z.strictObject({
   /** Null: named by a certificate, and no scale of ours was asked. */
   verdict: verdict.nullable(),
   previousAt: instant.nullable(),
+  /** A cylinder's statement over the two readings: first and last day, by the firm's clock as statements have them. */
+  statement: z.strictObject({ from: day, to: day }).nullable(),
   /** A cylinder: who held it between the two readings. Else whoever recorded the group. */
   heldBetween: z.array(holder),
   recordedByName: z.string(),
-  /** At the average price of the booking month; null: no price is known. */
+  /** Of what stands, at the average price of the booking month; below zero for a surplus; null: no price is known. */
   cost: z.number().nullable(),
 });
 export type DifferenceItem = z.output<typeof differenceItem>;

@@ -1,6 +1,5 @@
 import type { DifferenceItem } from '../../../shared/books/books.schema.ts';
 import type { Holder } from '../../../shared/statements/cylinder-statement.schema.ts';
-import { dayInZone } from '../../../shared/units/calendar.ts';
 import { roundTo } from '../../../shared/units/round.ts';
 import type { Formats } from '../../lib/format.ts';
 import type { Translate } from '../../lib/messages.ts';
@@ -54,11 +53,8 @@ export const subjectWords = (t: Translate, { subject }: Pick<DifferenceItem, 'su
   t(`log.placeNamed.${subject.kind}`, { label: subject.label });
 
 /** Where a difference is looked into: a cylinder's statement over the two readings, else what was recorded. */
-export function differencePath({ subject, groupId, at, previousAt, timeZone }: DifferenceItem): string {
-  if (subject.kind !== 'cylinder') return `/log/${groupId}`;
-  const day = (instant: string) => dayInZone(Date.parse(instant), timeZone);
-  return `/cylinders/${subject.id}/statement?from=${day(previousAt ?? at)}&to=${day(at)}`;
-}
+export const differencePath = ({ subject, groupId, statement }: DifferenceItem): string =>
+  statement ? `/cylinders/${subject.id}/statement?from=${statement.from}&to=${statement.to}` : `/log/${groupId}`;
 
 /** Names of those in whose hands it was, `S. Brandt, van 3`. */
 export const handsWords = (t: Translate, held: readonly Holder[]): string =>

@@ -19,6 +19,7 @@ export const differenceItem: DifferenceItem = {
   timeZone: 'Europe/Madrid',
   bookingMonth: '2026-11',
   differenceG: -130,
+  readingDifferenceG: -130,
   settledG: 0,
   standsG: -130,
   bookG: 4310,
@@ -26,6 +27,7 @@ export const differenceItem: DifferenceItem = {
   standardUncertaintyG: 6,
   twoUG: 12,
   verdict: 'notExplained',
+  statement: { from: '2026-11-03', to: '2026-11-20' },
   previousAt: '2026-11-02T23:30:00.000Z',
   heldBetween: [
     { personId: HOLDER_ID, name: 'S. Brandt', van: 'van 3', from: '2026-11-02T23:30:00Z', to: '2026-11-20T08:00:00Z' },
@@ -43,6 +45,7 @@ export const differences: DifferencesResponse = {
         key: `within ${number}`,
         subject: { kind: 'cylinder', id: CYLINDER_ID, label: `80${number}` },
         differenceG: number,
+        readingDifferenceG: number,
         standsG: number,
         verdict: 'withinScales',
       }),

@@ -144,9 +144,8 @@ describe('The books', () => {
     expect(within4.closest('details')?.open).toBe(false);
   });
 
-  it('lead from a difference to the statement over the two readings, on the days of the place', async () => {
+  it('lead from a difference to the statement over the two readings, on the days that it says', async () => {
     await openBooks();
-    // The earlier reading was taken at half past midnight in Madrid: the 3rd there, the 2nd in UTC.
     expect(await screen.findByRole('link', { name: 'cyl. 7702' })).toHaveAttribute(
       'href',
       `/cylinders/${CYLINDER_ID}/statement?from=2026-11-03&to=2026-11-20`,

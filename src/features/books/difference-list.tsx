@@ -138,7 +138,7 @@ function useColumns({ currency, items }: DifferencesResponse): LedgerColumn<Diff
             },
           ]
         : []),
-      { id: 'verdict', head: t('books.col.verdict'), cell: (item) => <Verdict verdict={item.verdict} /> },
+      { id: 'verdict', head: t('books.col.verdict'), cell: (item) => <Judged item={item} /> },
       { id: 'hands', head: t('books.col.hands'), cell: (item) => handsOf(item) },
       ...(priced
         ? [
@@ -164,6 +164,24 @@ function useColumns({ currency, items }: DifferencesResponse): LedgerColumn<Diff
   }, [t, format, priced, settled, currency]);
 }
 
+/** The verdict; where the difference is one refrigerant's share, with what the reading shows and the verdict is of. */
+function Judged({ item }: { item: DifferenceItem }) {
+  const t = useMessages();
+  const format = useFormat();
+  const isShare = item.readingDifferenceG !== item.differenceG;
+  return (
+    <span>
+      <Verdict verdict={item.verdict} />
+      {isShare ? (
+        <span className="text-ink-soft">
+          {' '}
+          {t('books.ofReading', { mass: signed(format, item.readingDifferenceG) })}
+        </span>
+      ) : null}
+    </span>
+  );
+}
+
 /** One difference on a phone: what, how much, the verdict, and in whose hands it was. */
 function PhoneLine({ item, currency }: { item: DifferenceItem; currency: string }) {
   const t = useMessages();
@@ -183,7 +201,7 @@ function PhoneLine({ item, currency }: { item: DifferenceItem; currency: string 
           </span>
         </span>
         <span className="flex flex-wrap items-baseline justify-between gap-x-3">
-          <Verdict verdict={item.verdict} />
+          <Judged item={item} />
           <span className="text-ink-soft">
             {isSettled
               ? t('books.settled')
