@@ -92,6 +92,39 @@ describe('A database as the first release left it, with three years of two firms
     expect(wrong).toEqual([]);
   });
 
+  it('tells who held each cylinder from when on, as the records of its register do', async () => {
+    const records = await read<{ cylinderId: string; version: number; at: Date; content: string }>(
+      `select subject_id as "cylinderId", version, recorded_at as at, content from journal_record
+        where noun = 'cylinder' order by subject_id, version`,
+    );
+    const lastOf = new Map<string, string | null>();
+    const told = records.flatMap(({ cylinderId, version, at, content }) => {
+      const heldBy: string | null = JSON.parse(content).after.heldBy ?? null;
+      const isSame = lastOf.has(cylinderId) && lastOf.get(cylinderId) === heldBy;
+      lastOf.set(cylinderId, heldBy);
+      return isSame ? [] : [{ cylinderId, version, heldBy, from: at }];
+    });
+    expect(told.filter(({ heldBy }) => heldBy !== null).length).toBeGreaterThan(0);
+    expect(
+      await read(`select cylinder_id as "cylinderId", version, held_by as "heldBy", valid_from as "from"
+        from cylinder_holder order by cylinder_id, version`),
+    ).toEqual(told);
+  });
+
+  it('tells of each sum by month how much of it is reversals', async () => {
+    const entries = await read<{ key: string; mass: string }>(`
+      select concat_ws(' ', e.firm_id, e.booking_month, e.refrigerant, e.from_place || coalesce(':' || e.from_as, ''),
+          e.to_place || coalesce(':' || e.to_as, '')) as key, e.mass_micrograms::text as mass
+        from entry e where e.reverses_entry_id is not null`);
+    expect(entries.length).toBeGreaterThan(0);
+    const sums = new Map<string, bigint>();
+    for (const { key, mass } of entries) sums.set(key, (sums.get(key) ?? 0n) + BigInt(mass));
+    const kept = await read<{ key: string; mass: string }>(`
+      select concat_ws(' ', firm_id, month, refrigerant, from_kind, to_kind) as key, reversal_micrograms::text as mass
+        from month_sum where reversal_micrograms <> 0`);
+    expect(new Map(kept.map(({ key, mass }) => [key, BigInt(mass)]))).toEqual(sums);
+  });
+
   it('takes a new posting', async () => {
     const [cylinder] = await read<{ firmId: string; id: string; grossG: string; at: Date; personId: string }>(`
       select c.firm_id as "firmId", c.id, (r.mass_micrograms / 1000000)::text as "grossG", now() as at, m.person_id as "personId"
