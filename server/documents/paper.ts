@@ -134,7 +134,8 @@ export class Paper {
 
   /** Kept together with the first lines below it. */
   heading(text: string): void {
-    this.ensure(64);
+    // With the head and the first row of a table under it.
+    this.ensure(90);
     this.space(14);
     this.line(text, this.left, this.y, { face: 'strong', size: 11 });
     this.y += 17;

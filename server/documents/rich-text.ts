@@ -26,6 +26,7 @@ export function runsOf(text: string): Run[] {
   return text
     .replaceAll(/[≤≥Δ\u00a0\u202f‑]/gu, (sign) => SPELLED[sign] ?? sign)
     .replaceAll(/[\r\n\t]+/g, ' ')
+    .replaceAll('CO2', 'CO₂')
     .split(DRAWN)
     .filter((part) => part !== '')
     .map((part): Run => {
@@ -48,7 +49,10 @@ export function wrapText(text: string, width: number, widthOf: (text: string) =>
   const lines: string[] = [];
   let line = '';
   // A no-break space keeps a figure with its unit.
-  for (const word of text.split(/[^\S\u00a0\u202f]+/).filter(Boolean)) {
+  for (const word of text
+    .replaceAll(/(\d) (?=°)/g, '$1\u00a0')
+    .split(/[^\S\u00a0\u202f]+/)
+    .filter(Boolean)) {
     const longer = line === '' ? word : `${line} ${word}`;
     if (widthOf(longer) <= width) {
       line = longer;

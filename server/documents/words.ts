@@ -112,7 +112,10 @@ export function wordsOf(
       return writtenLines(steps, own, writer).flatMap((line, index) => {
         const [label, same] = [steps[index]?.label ?? '', si[index] ?? []];
         const row = [label, ...cells(line)];
-        return line.join() === same.join() ? [row] : [row, ['', ...cells(same)]];
+        const step = steps[index];
+        // A rounding names its grams itself; carbon dioxide and density are in metric units for everybody.
+        const isOwn = (step?.unit === 'm' || step?.unit === 'g') && !/^(round|ceil|floor)\(/.test(step.expression);
+        return !isOwn || line.join() === same.join() ? [row] : [row, ['', ...cells(same)]];
       });
     },
     month: (month) =>

@@ -59,6 +59,10 @@ describe('The arithmetic of a charge, as a reader writes it', () => {
   it('says a rounding in words, in ounces where the step is one of ounces', () => {
     const rounding = { toG: OZ / 10, direction: 'up' as const };
     expect(lines(POUNDS, { ...typed[0], rounding }, typed[1])[2]).toBe('line.round.up(3.36 oz; 0.1 oz) = 3.4 oz');
+    const kept = { toG: 2.835, direction: 'nearest' as const };
+    expect(lines(POUNDS, { ...typed[0], rounding: kept }, typed[1])[2]).toBe(
+      'line.round.nearest(3.36 oz; 0.1 oz) = 3.4 oz',
+    );
     // 12.301 m - 7.5 m at 20 g/m are 96.02 g: cut to 96 g the line would say that 96 g goes up to 97 g.
     const up = { toG: 1, direction: 'up' as const };
     expect(lines(SI_LINES, { rounding: up }, [pipe(12.30001)])[2]).toBe('line.round.up(96.0002 g; 1 g) = 97 g');

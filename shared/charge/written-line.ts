@@ -42,6 +42,8 @@ const DECIMALS: Record<ShownUnit, number> = {
   '': 6,
 };
 const MOST_DECIMALS = 6;
+/** A tenth of an ounce that was kept as 2.835 g is one of 0.1 oz. */
+const NEARLY = 1e-4;
 /** Half of the last decimal that a step's value keeps. */
 const CUT = 0.00050001;
 
@@ -160,7 +162,7 @@ function roundingLine(match: RegExpExecArray, value: number, units: LineUnits, w
   const stepG = Number(stepText);
   const key = `line.round.${name === 'ceil' ? 'up' : name === 'floor' ? 'down' : 'nearest'}`;
   const inOunces = stepG / per('oz');
-  const isOunceStep = hasOwnMass(units) && Math.abs(roundTo(inOunces, 2) - inOunces) < 1e-6;
+  const isOunceStep = hasOwnMass(units) && Math.abs(roundTo(inOunces, 2) - inOunces) < NEARLY;
   const as = isOunceStep ? 'oz' : 'g';
   const step = shown(stepG / per(as), as, 3, writer);
   const figure = massG / per(as);
