@@ -1,4 +1,5 @@
 import type { GroupView } from '../../shared/entries/entry.schema.ts';
+import type { RecoveryLevel } from '../../shared/ledger/recovery-level.schema.ts';
 import { chargeSheetsRepository } from '../charge-sheets/charge-sheet.repository.ts';
 import { findGroupView } from '../entries/group-view.repository.ts';
 import { jobsRepository } from '../jobs/job.repository.ts';
@@ -6,6 +7,7 @@ import { type DocumentFrame, openPaper } from './document-frame.ts';
 import { entryColumns, entryTableRow } from './entry-rows.ts';
 import type { Paper } from './paper.ts';
 import { findUnit, siteOf, unitFacts } from './unit-papers.ts';
+import type { Words } from './words.ts';
 
 /** What was done in one job: the charge as it was worked out, each reading of the scale, each mass, each statement. */
 export async function jobRecord(frame: DocumentFrame, jobId: string): Promise<number | null> {
@@ -138,9 +140,21 @@ function statementsOf({ words }: DocumentFrame, paper: Paper, groups: readonly G
     paper.paragraph(
       `${words.instant(group.occurredAt, group.timeZone)}: ${words.say(`is.${statement.is}`)}${by} (${group.recordedByName})`,
     );
+    if (group.recoveryLevel) paper.paragraph(levelWords(words, group.recoveryLevel));
   }
   for (const { occurredAt, timeZone, reason, note, recordedByName } of remarks)
     paper.paragraph(
       `${words.instant(occurredAt, timeZone)}: ${[reason, note].filter(Boolean).join(' / ')} (${recordedByName})`,
     );
+}
+
+/** What was reached, what was required, by which clause; an exception in its own words. */
+function levelWords(words: Words, { required, reached, exception, clause }: RecoveryLevel): string {
+  const of = (level: RecoveryLevel['required']) => words.say(`level.${level.unit}`, { value: level.value });
+  const said = words.say('jobRecord.level', {
+    reached: reached ? of(reached) : words.say('level.notTold'),
+    required: of(required),
+    clause,
+  });
+  return exception ? `${said} ${words.say(`level.exception.${exception}`)}` : said;
 }

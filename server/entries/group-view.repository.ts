@@ -24,6 +24,7 @@ const GROUP = `select g.id, g.sequence::text, g.kind, g.occurred_at as "occurred
     (select x.id from entry_group x where x.firm_id = g.firm_id and x.replaces_group_id = g.id) as "replacedByGroupId",
     (select t.content from personal_text t where t.firm_id = g.firm_id and t.record_id = g.id and t.field = 'note'
       limit 1) as note,
+    j.content::jsonb -> 'recoveryLevel' as "recoveryLevel",
     encode(j.hash, 'hex') as hash, encode(b.hash, 'hex') as "previousHash",
     (select coalesce(json_agg(json_build_object('id', r.id, 'cylinderId', r.cylinder_id, 'cylinderTag', coalesce(c.tag, ''),
         'toolId', r.tool_id, 'toolName', t.name, 'moment', r.moment, 'mode', r.mode, 'value', r.typed_value, 'unit', r.typed_unit,

@@ -8,7 +8,7 @@ import { saltText } from '../journal/canonical-text.ts';
 import { derivedRows } from './derived-rows.ts';
 import type { JudgedPosting, Posting } from './judge-posting.ts';
 import type { PostingFacts, RegulatoryPlace, StoredGroup } from './posting-facts.ts';
-import { documentRecord, placeRecord, readingRecord, statementRecord } from './record-parts.ts';
+import { documentRecord, placeRecord, readingRecord, recoveryLevelRecord, statementRecord } from './record-parts.ts';
 
 export interface Author {
   personId: string;
@@ -178,6 +178,7 @@ class RecordWriter {
       readings: (body.readings ?? []).map((reading) => readingRecord(reading, this.facts.scales)),
       statements: (body.statements ?? []).map(statementRecord),
       documents: (body.documents ?? []).map(documentRecord),
+      ...recoveryLevelRecord(body.recoveryLevel),
       reason: body.reason ?? null,
       noteHash,
       entryIds: entries.map(({ id }) => id),

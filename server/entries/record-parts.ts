@@ -37,6 +37,13 @@ export function documentRecord(
   };
 }
 
+/** Nothing where none was told. */
+export const recoveryLevelRecord = (told: EntryGroupRequest['recoveryLevel']): Pick<GroupRecord, 'recoveryLevel'> => {
+  if (!told) return {};
+  const { required, reached = null, exception = null, clause } = told;
+  return { recoveryLevel: { required, reached, exception, clause } };
+};
+
 /** A reading with the accuracy of the very scale on that day; without a tool none. */
 export function readingRecord(
   reading: NonNullable<EntryGroupRequest['readings']>[number],

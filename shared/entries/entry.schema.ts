@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { GROUP_KINDS, READING_MODES, READING_MOMENTS } from '../ledger/entry-group.schema.ts';
 import { FLAG_CODES } from '../ledger/flag.ts';
 import { PLACE_KINDS } from '../ledger/place.ts';
+import { recoveryLevel } from '../ledger/recovery-level.schema.ts';
 import { flagText, id, instant, month, pageOf, pageQuery } from '../lists/list.schema.ts';
 
 /** One end of an entry as lists show it: the place and the words a person knows it by. */
@@ -109,6 +110,8 @@ export const groupView = z.strictObject({
   ),
   statements: z.array(z.strictObject({ about: z.string(), id, is: z.string(), by: z.string().nullable() })),
   documents: z.array(z.record(z.string(), z.unknown())),
+  /** From the group's own record; null where none was told, and for a reader of some sites, who does not see the journal. */
+  recoveryLevel: recoveryLevel.nullable(),
   reason: z.string().nullable(),
   note: z.string().nullable(),
   entries: z.array(entryRow),

@@ -9,6 +9,7 @@ import {
   UNIT_CONDITIONS,
 } from '../ledger/entry-group.schema.ts';
 import { ATMOSPHERE_KINDS, PLACE_KINDS } from '../ledger/place.ts';
+import { recoveryLevel } from '../ledger/recovery-level.schema.ts';
 import { decimalText, id, month } from '../lists/list.schema.ts';
 import { exportRecord, sealKeyRecord, sealRecord } from '../proof/seal-record.schema.ts';
 import { massUnit } from '../units/mass.ts';
@@ -102,6 +103,8 @@ export const groupRecord = z.strictObject({
       typed: typed.nullable(),
     }),
   ),
+  /** Only where one was told; records from before it was asked for have no such key. */
+  recoveryLevel: recoveryLevel.optional(),
   reason: z.string().nullable(),
   /** SHA-256 of salt and note; the words stand beside the chain and can be erased. */
   noteHash: sha256Hex.nullable(),

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { typedMass, typedSignedMass } from '../units/mass.ts';
 import { ATMOSPHERE_KINDS, kindNeedsId, PLACE_KINDS, type PlaceKind } from './place.ts';
+import { recoveryLevelRequest } from './recovery-level.schema.ts';
 
 /** What a group is called. A label for people: it changes no balance. */
 export const GROUP_KINDS = [
@@ -173,6 +174,8 @@ export const entryGroupRequest = z
     entries: z.array(enteredMassSchema).max(GROUP_LIMITS.entries).nullish(),
     statements: z.array(statementSchema).max(GROUP_LIMITS.statements).nullish(),
     documents: z.array(documentSchema).max(GROUP_LIMITS.documents).nullish(),
+    /** Told once, with the recovery that is completed. */
+    recoveryLevel: recoveryLevelRequest.nullish(),
     reason: storableText(1_000).nullish(),
     note: storableText(4_000).nullish(),
   })
@@ -192,6 +195,9 @@ export const entryGroupRequest = z
     }
     if (group.closesGroupId && !readings.some((reading) => reading.moment === 'after')) {
       refuse(ctx, 'closingReadingRequired', ['readings'], 'What closes a weigh-in holds its after reading');
+    }
+    if (group.recoveryLevel && !statements.some(({ is, by }) => is === 'empty' && by === 'recovery')) {
+      refuse(ctx, 'levelOfCompletedRecovery', ['recoveryLevel'], 'With a unit that is empty by recovery');
     }
     entries.forEach((entry, index) => {
       const { from, to } = entry;

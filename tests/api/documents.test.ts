@@ -119,6 +119,39 @@ describe('A paper', () => {
   });
 });
 
+describe('A job record', () => {
+  /** Source: 40 CFR 82.156(a), Table 1. */
+  it('says to which level the unit was evacuated, which was required and by which clause', async () => {
+    const clause = '40 CFR 82.156(a), Table 1';
+    const required = { value: '10', unit: 'inHgVacuum' };
+    const recordOf = async (locale: 'en-US' | 'es-ES', level: object) => {
+      const ledger = await startLedger(app, { locale });
+      const unit = await ledger.unit('1340', '1340');
+      const into = await ledger.cylinder(null, { kind: 'recovery' });
+      const job = { id: uuid(), unitId: unit.id, kind: 'recovery', openedAt: '2026-03-02T08:00:00Z' };
+      await ledger.made('/jobs', job);
+      await posted(
+        ledger.client,
+        groupOf('recovery', '2026-03-02T10:00:00Z', {
+          unitId: unit.id,
+          jobId: job.id,
+          entries: [massOf('1340', inUnit(unit.id), inCylinder(into.id))],
+          statements: [{ about: 'unit', id: unit.id, is: 'empty', by: 'recovery' }],
+          recoveryLevel: { required, clause, ...level },
+        }),
+      );
+      const { pages } = await paper(ledger.client, 'jobRecord', { jobId: job.id });
+      return pages.map(({ text }) => text).join(' ');
+    };
+    expect(await recordOf('en-US', { reached: { value: '10.5', unit: 'inHgVacuum' } })).toContain(
+      `Evacuation: reached 10.5 in Hg vacuum; required 10 in Hg vacuum (${clause}).`,
+    );
+    expect(await recordOf('es-ES', { exception: 'leaking' })).toContain(
+      `Evacuación: alcanzado no indicado; exigido 10 in Hg de vacío (${clause}). Rige otro nivel: tiene fugas.`,
+    );
+  });
+});
+
 describe('A unit log', () => {
   it('names the unit, each entry with its mass and both ends, and the last seal', async () => {
     const { pages } = await paper(us.client, 'unitLog', { unitId: ids.us.unit });

@@ -53,6 +53,7 @@ export function GroupDetails({ group, main }: { group: GroupView; main: EntryRow
         {group.reason ? <Fact name={t('log.group.reason')}>{group.reason}</Fact> : null}
         {group.note ? <Fact name={t('log.group.note')}>{group.note}</Fact> : null}
         <UnitLeft group={group} />
+        <Evacuated level={group.recoveryLevel} />
         <Documents group={group} />
         <Fact name={t('log.group.who')}>{group.recordedByName}</Fact>
         {group.supervisedByName ? <Fact name={t('log.group.supervised')}>{group.supervisedByName}</Fact> : null}
@@ -112,6 +113,25 @@ function UnitLeft({ group }: { group: GroupView }) {
 
 function stateWords(t: Translate, { is, by }: GroupView['statements'][number]): string {
   return t(`log.group.state.${by ? `${is}.${by}` : is}`);
+}
+
+/** The level reached before the unit was opened, beside the one that the law asks for. */
+function Evacuated({ level }: { level: GroupView['recoveryLevel'] }) {
+  const t = useMessages();
+  if (!level) return null;
+  const { required, reached, exception, clause } = level;
+  return (
+    <Fact name={t('log.group.level')}>
+      {reached ? t(`log.group.level.${reached.unit}`, { value: reached.value }) : t('log.group.level.notTold')}
+      {exception ? <span className="block">{t(`log.group.level.exception.${exception}`)}</span> : null}
+      <span className="type-label block text-[0.875rem] text-ink-soft">
+        {t('log.group.level.required', {
+          level: t(`log.group.level.${required.unit}`, { value: required.value }),
+          clause,
+        })}
+      </span>
+    </Fact>
+  );
 }
 
 interface GroupDocument {

@@ -199,15 +199,29 @@ describe('The level of a recovery that is completed', () => {
     expect(said(3, { levelReached: 'deep' })).toEqual(['record.wrong.level']);
   });
 
-  it('stands in the note with its clause, as required and as reached', () => {
+  it('stands in the group with its clause, as required and as reached', () => {
     const answers = answersOf({
       rows: [weighed('R1', 0, 900)],
       choice: 'completed',
-      levelReached: '10',
+      levelReached: '10,5',
       machineAge: 'newer',
     });
-    expect(recovery.build(answers, us(250)).body.note).toContain('40 CFR 82.156(a), Table 1');
-    expect(recovery.build({ ...answers, choice: 'notCompleted' }, us(250)).body.note).toBeNull();
+    const told = (over: Parameters<typeof answersOf>[0]) =>
+      recovery.build({ ...answers, ...over }, us(250)).body.recoveryLevel;
+    const required = { value: '10', unit: 'inHgVacuum' };
+    expect(told({})).toEqual({
+      required,
+      reached: { value: '10.5', unit: 'inHgVacuum' },
+      exception: null,
+      clause: '40 CFR 82.156(a), Table 1',
+    });
+    expect(told({ levelReached: '', levelException: 'leaking' })).toMatchObject({
+      required,
+      reached: null,
+      exception: 'leaking',
+      clause: expect.stringMatching(/^40 CFR 82\.156\(a\), Table 1; .*82\.156/),
+    });
+    expect(told({ choice: 'notCompleted' })).toBeNull();
   });
 
   it('is asked of a completed recovery under that law alone', () => {

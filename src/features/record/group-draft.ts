@@ -14,6 +14,7 @@ import { isBelowZero, isZero } from './typed-mass.ts';
 export type Readings = NonNullable<EntryGroupRequest['readings']>;
 export type Entries = NonNullable<EntryGroupRequest['entries']>;
 type Documents = NonNullable<EntryGroupRequest['documents']>;
+export type RecoveryLevelRequest = NonNullable<EntryGroupRequest['recoveryLevel']>;
 
 /** A request, and which blank of the form stands behind each of its places, so that a refusal is shown at its blank. */
 export interface BuiltGroup {
@@ -42,6 +43,7 @@ export class GroupDraft {
   readonly #documents: Documents = [];
   #statements: NonNullable<EntryGroupRequest['statements']> = [];
   readonly #places: [string, string][] = [];
+  #level: RecoveryLevelRequest | null = null;
   #note: string[] = [];
 
   constructor(kind: GroupKind, answers: Answers, context: FormContext) {
@@ -100,6 +102,12 @@ export class GroupDraft {
     return this;
   }
 
+  level(told: RecoveryLevelRequest | null): this {
+    this.#level = told;
+    this.#places.push(['/recoveryLevel', 'levelReached']);
+    return this;
+  }
+
   document(kind: Documents[number]['kind'], of: { refrigerant?: string; mass?: TypedMass } = {}): this {
     const { documentNumber, documentDate } = this.#answers;
     this.#places.push([`/documents/${this.#documents.length}/date`, 'documentDate']);
@@ -128,6 +136,7 @@ export class GroupDraft {
         entries: this.#entries,
         statements: this.#statements,
         documents: this.#documents,
+        recoveryLevel: this.#level,
         reason: reason.trim() || null,
         note: said || null,
       },

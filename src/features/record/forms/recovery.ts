@@ -2,7 +2,7 @@ import type { GroupKind } from '../../../../shared/ledger/entry-group.schema.ts'
 import { clauseOfException } from '../../../../shared/reference/evacuation-level.ts';
 import type { Answers, FormContext } from '../answers.ts';
 import type { Question, RecordForm, SaidCaution } from '../form.ts';
-import { type BuiltGroup, GroupDraft } from '../group-draft.ts';
+import { type BuiltGroup, GroupDraft, type RecoveryLevelRequest } from '../group-draft.ts';
 import { isCompleted, levelAsked, levelOf } from '../level.ts';
 import { noVenting } from '../no-venting.ts';
 import { massInto } from '../weighed-rows.ts';
@@ -31,29 +31,25 @@ function outOfUnit(kind: GroupKind, answers: Answers, context: FormContext): Gro
   return draft;
 }
 
-function levelNote(answers: Answers, context: FormContext): string {
+/** What the law asks for, with its clause, and what was reached or why another level applies. */
+function levelTold(answers: Answers, context: FormContext): RecoveryLevelRequest | null {
   const required = levelAsked(answers, context);
   const reached = levelOf(answers);
-  if (!required || (reached === null && answers.levelException === '')) return '';
-  const { say } = context;
-  const exception = answers.levelException;
-  return say('record.note.level', {
-    required: say(`record.level.${required.unit}`, { value: required.value }),
-    clause: required.clause,
-    reached: reached === null ? say('record.level.notTold') : say(`record.level.${required.unit}`, { value: reached }),
-    exception:
-      exception === '' || exception === 'other'
-        ? ''
-        : say('record.note.exception', {
-            name: say(`record.exception.${exception}`),
-            clause: clauseOfException(exception),
-          }),
-  });
+  const exception = answers.levelException || null;
+  if (!required || (reached === null && exception === null)) return null;
+  const { unit, clause } = required;
+  const other = exception === null || exception === 'other' ? '' : clauseOfException(exception);
+  return {
+    required: { value: String(required.value), unit },
+    reached: reached === null ? null : { value: String(reached), unit },
+    exception,
+    clause: other ? `${clause}; ${other}` : clause,
+  };
 }
 
 export function buildRecovery(answers: Answers, context: FormContext): BuiltGroup {
   const draft = outOfUnit('recovery', answers, context);
-  if (isCompleted(answers)) draft.states('empty', 'recovery').note(levelNote(answers, context));
+  if (isCompleted(answers)) draft.states('empty', 'recovery').level(levelTold(answers, context));
   return draft.built();
 }
 
