@@ -2,7 +2,7 @@ import { useState } from 'react';
 import { useNavigate } from 'react-router-dom';
 import { useMedia } from '../../lib/media.ts';
 import { useMessages } from '../../lib/messages.ts';
-import { Button } from '../../ui/button.tsx';
+import { Button, ButtonLink } from '../../ui/button.tsx';
 import { FieldError } from '../../ui/field.tsx';
 import { useFocusFirstError } from '../../ui/focus-first-error.ts';
 import { Notice, RowsSkeleton } from '../../ui/notice.tsx';
@@ -35,7 +35,9 @@ export function RecordSheet({ form, begin, onPosted }: Props) {
     );
   };
   const props = { form, record, post };
-  return isDesk ? <OneSheet {...props} /> : <OneByOne {...props} />;
+  // Started over, it begins at the first question, and nothing has been tried yet.
+  const key = record.answers.ids.group;
+  return isDesk ? <OneSheet key={key} {...props} /> : <OneByOne key={key} {...props} />;
 }
 
 interface Parts {
@@ -207,11 +209,30 @@ function Review({ form, record, tried }: { form: RecordForm; record: RecordState
           reasonError={record.errorAt('reason') ?? (tried && !hasReason(record) ? t('record.need.reason') : undefined)}
         />
       ) : null}
+      {record.standing ? <Standing groupId={record.standing} startOver={record.startOver} /> : null}
       {elsewhere.map((message) => (
         <FieldError key={message}>{message}</FieldError>
       ))}
       {form.kind === 'invoice' && record.built.reverses ? <Notice>{t('record.invoice.differs')}</Notice> : null}
     </section>
+  );
+}
+
+/** An earlier try was recorded although its answer got lost: what was typed since is in no log. */
+function Standing({ groupId, startOver }: { groupId: string; startOver: () => void }) {
+  const t = useMessages();
+  return (
+    <Notice role="alert" title={t('record.standing')}>
+      <p>{t('record.standing.text')}</p>
+      <div className="flex flex-wrap gap-x-6">
+        <ButtonLink kind="quiet" to={`/log/${groupId}`}>
+          {t('record.standing.show')}
+        </ButtonLink>
+        <Button kind="quiet" onClick={startOver}>
+          {t('record.standing.startOver')}
+        </Button>
+      </div>
+    </Notice>
   );
 }
 

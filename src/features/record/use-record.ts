@@ -3,6 +3,7 @@ import { useCallback, useEffect, useMemo, useState } from 'react';
 import { usePostGroup, useReverseGroup } from '../../api/entries.ts';
 import { previewQueries, type ToPreview } from '../../api/entry-previews.ts';
 import { answerErrors, type FormError } from '../../api/form-errors.ts';
+import { Problem } from '../../api/http.ts';
 import { useChangeUnit, useRefreshUnits } from '../../api/units.ts';
 import { useDraft } from '../../lib/draft.ts';
 import { deviceNow, toDayInput, toLocalInput } from '../../lib/local-time.ts';
@@ -51,6 +52,7 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
   const asked = useSettled(useMemo(() => (toAsk ? toPreview(built) : null), [toAsk, built]));
   const preview = useQuery(previewQueries.of(asked));
   const [refused, setRefused] = useState<Refused[]>([]);
+  const [standing, setStanding] = useState<string | null>(null);
   const change = useCallback(
     (part: Partial<Answers>) => {
       setRefused([]);
@@ -72,6 +74,7 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
     built.places.find(([place]) => pointer === place || pointer.startsWith(`${place}/`))?.[1];
   const inBlanks = (errors: readonly FormError[]): Refused[] =>
     errors.map(({ pointer, message }) => ({ field: fieldOf(pointer), message }));
+  const groupId = built.reverses?.reversalId ?? built.body.groupId;
   /** One after the other: what went through is not recorded again by the next try, and the group comes last. */
   const send = async (onDone: () => void): Promise<void> => {
     for (const change of changes) {
@@ -88,14 +91,17 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
       if (built.reverses) await reverse.mutateAsync({ ...reversalOf(built), deviceSentAt });
       else if (!onlyRegister) await post.mutateAsync({ ...built.body, deviceSentAt });
     } catch (error) {
-      setRefused(inBlanks(answerErrors(error)));
+      if (isReused(error)) setStanding(groupId);
+      else setRefused(inBlanks(answerErrors(error)));
       return;
     }
     if (changes.length > 0) await refreshUnits();
     clear();
     onDone();
   };
-  const serverErrors = refused.length > 0 ? refused : preview.isError ? inBlanks(answerErrors(preview.error)) : [];
+  const isOther = preview.isError && isReused(preview.error);
+  const serverErrors =
+    refused.length > 0 ? refused : preview.isError && !isOther ? inBlanks(answerErrors(preview.error)) : [];
   const isPreviewed = asked !== null && sameBody(asked, built);
   return {
     answers,
@@ -114,13 +120,21 @@ export function useRecord(form: RecordForm, begin: { unitId: string; cylinderId:
     isShown: onlyRegister ? isWhole : isPreviewed && preview.data !== undefined,
     send,
     isSending: changeUnit.isPending || post.isPending || reverse.isPending,
-    startOver: clear,
+    /** The group that an earlier try recorded, whose answer got lost, and that says something else than is typed now. */
+    standing: isOther ? groupId : standing,
+    startOver: () => {
+      setStanding(null);
+      setRefused([]);
+      clear();
+    },
     errorAt: (field: string): string | undefined => serverErrors.find((refusal) => refusal.field === field)?.message,
     errorsElsewhere: [...new Set(serverErrors.filter(({ field }) => !field).map(({ message }) => message))],
     words: ({ key, params }: Complaint): string => (key ? t(key, params) : ''),
   };
 }
 export type RecordState = ReturnType<typeof useRecord>;
+
+const isReused = (error: unknown): boolean => error instanceof Problem && error.code === 'idReused';
 
 const reversalOf = ({ body, reverses }: BuiltGroup) => ({
   groupId: reverses?.reversalId ?? '',
