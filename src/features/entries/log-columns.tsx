@@ -56,7 +56,7 @@ export function useLogColumns({ rows, ties, zone, beside }: Shown & { beside: bo
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            <span className="block min-w-52 whitespace-normal">
+            <span className="block min-w-42 whitespace-normal">
               {placeWords(t, row.from)} <Arrow /> {placeWords(t, row.to)}
             </span>
             <span className="type-label block whitespace-normal text-[0.875rem] text-ink-soft">

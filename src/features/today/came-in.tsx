@@ -40,7 +40,7 @@ export function CameIn({ rows }: { rows: readonly EntryRow[] }) {
         head: `${t('log.from')} \u2192 ${t('log.to')}`,
         cell: (row) => (
           <>
-            <span className={phone ? 'block min-w-52 whitespace-normal' : 'block'}>
+            <span className={phone ? 'block min-w-42 whitespace-normal' : 'block'}>
               {placeWords(t, row.from)} <span className="text-move">{'\u2192'}</span> {placeWords(t, row.to)}
             </span>
             {phone ? (
