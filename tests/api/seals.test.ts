@@ -317,6 +317,37 @@ describe('The daily round', () => {
     expect(await sealedMails()).toHaveLength(2);
   });
 
+  it('mails nobody who is no owner any more when the mail can be sent', async () => {
+    const leaving = await app.addPerson(['owner', 'technician'], { firmId });
+    const parts = {
+      ...app.parts,
+      mailer: { ...app.parts.mailer, send: async () => ({ sent: false as const, reason: 'down' }) },
+    };
+    await sealWhatIsDue(parts, jobs);
+    const { body } = await client.get(`/people/${leaving.id}`);
+    expect((await client.patch(`/people/${leaving.id}`, body.version, { roles: ['technician'] })).status).toBe(200);
+    await daily();
+    expect(await sealedMails(leaving.email)).toEqual([]);
+    expect(await sealedMails()).not.toEqual([]);
+  });
+
+  it('goes on with the other firms when the mails of one cannot be sent', async () => {
+    await client.post('/journal/seals');
+    await sealedMails();
+    await app.database.query(
+      'superuser',
+      'update seal_mail set sent_at = null, claimed_until = null where firm_id = $1',
+      [firmId],
+    );
+    const other = await app.addFirm();
+    const send: typeof app.parts.mailer.send = (mail) =>
+      mail.to === owner.email ? Promise.reject(new Error('a fault of the mailer')) : app.parts.mailer.send(mail);
+    nextDay();
+    await sealWhatIsDue({ ...app.parts, mailer: { ...app.parts.mailer, send } }, jobs);
+    expect((await (await app.signIn(other.owner)).get('/journal/seals')).body.items).toHaveLength(1);
+    expect(app.logLines().join('\n')).toContain('could not be mailed');
+  });
+
   it('goes on with the other firms when one has lost its key', async () => {
     await client.post('/journal/seals');
     await app.database.query(
