@@ -133,4 +133,11 @@ describe('A quantity field', () => {
     rerender(<Stored kind="mass" unit="g" units={['g', 'kg']} max={10_000} error="The scale says otherwise." />);
     expect(screen.getByRole('alert')).toHaveTextContent('The scale says otherwise.');
   });
+
+  it('tells a stored value beside its unit without decimals that nobody reads', () => {
+    // 62 lb of water: 28,122.72694 g.
+    render(<Stored kind="mass" unit="lb" units={['lb', 'g']} start={quantityOf('mass', 28122.72694, 'lb', 'en-GB')} />);
+    expect(field()).toHaveAccessibleDescription('= 28,122.73\u00a0g');
+    expect(stored()).toBe(28122.72694);
+  });
 });

@@ -242,7 +242,11 @@ function understoodText<Kind extends QuantityKind>(
     .join(' ');
   const base = QUANTITIES[kind].base as UnitOf<Kind>;
   const single = reading.understoodAs.length === 1 && reading.understoodAs[0]?.unit === base;
-  if (single) return fieldUnit === base ? `= ${parts}` : `= ${parts}`;
+  // Shown in another unit than it is stored in: two decimals of g or m are more than anybody reads off.
+  if (single && fieldUnit !== base) {
+    return `= ${formatNumber(locale as 'en-US', reading.base, 2)}${NBSP}${unitSymbol(kind, base, locale)}`;
+  }
+  if (single) return `= ${parts}`;
   return `${parts} = ${formatQuantity(kind, reading.base, base as never, { locale })}`;
 }
 
