@@ -49,17 +49,27 @@ const DENSITY = `
   grant execute on function filling_density(text) to tarewright_app, tarewright_jobs;
 `;
 
-/** 0.8 x water capacity x density, to the milligram as the server says it. What is not known counts as what the cylinder is meant for. */
+/**
+ * 0.8 x water capacity x density, to the milligram as the server says it. What is not known counts as what the cylinder
+ * is meant for. In plpgsql, which keeps its plans: every posting into a cylinder asks.
+ */
 const LIMIT = `
-  create function cylinder_limit(p_cylinder cylinder) returns bigint language sql stable as $$
-  select case
-    when p_cylinder.stamped_limit_micrograms is not null then p_cylinder.stamped_limit_micrograms
-    when p_cylinder.kind = 'nonRefillable' or p_cylinder.water_capacity_micrograms is null then p_cylinder.limit_micrograms
-    else (select case when bool_and(h.density is not null) is not false
-        then (round(0.8 * p_cylinder.water_capacity_micrograms * coalesce(min(h.density), filling_density(p_cylinder.refrigerant)) / 1000000) * 1000)::bigint end
-      from (select coalesce(filling_density(b.refrigerant), filling_density(p_cylinder.refrigerant)) as density
+  create function cylinder_limit(p_cylinder cylinder) returns bigint language plpgsql stable as $$
+  declare
+    v_meant numeric := filling_density(p_cylinder.refrigerant);
+    v_known boolean;
+    v_lightest numeric;
+  begin
+    if p_cylinder.stamped_limit_micrograms is not null then return p_cylinder.stamped_limit_micrograms; end if;
+    if p_cylinder.kind = 'nonRefillable' or p_cylinder.water_capacity_micrograms is null then
+      return p_cylinder.limit_micrograms;
+    end if;
+    select bool_and(h.density is not null), min(h.density) into v_known, v_lightest
+      from (select coalesce(filling_density(b.refrigerant), v_meant) as density
         from balance b where b.firm_id = p_cylinder.firm_id and b.place_key = 'cylinder:' || p_cylinder.id
-          and b.mass_micrograms > 0 offset 0) h)
+          and b.mass_micrograms > 0 offset 0) h;
+    if not v_known then return null; end if;
+    return (round(0.8 * p_cylinder.water_capacity_micrograms * coalesce(v_lightest, v_meant) / 1000000) * 1000)::bigint;
   end $$;
   revoke all on function cylinder_limit(cylinder) from public;
   grant execute on function cylinder_limit(cylinder) to tarewright_app, tarewright_jobs;
