@@ -232,7 +232,9 @@ describe('The compliance manager', () => {
     await page.getByRole('main').getByRole('link', { name: 'Proof', exact: true }).click();
     await atRest();
     const zip = path.join(home, 'package.zip');
-    writeFileSync(zip, await fileOf(page, page.getByRole('link', { name: 'Download the package' })));
+    await page.getByRole('button', { name: 'Make the package' }).click();
+    const row = page.getByRole('row').filter({ hasText: 'Proof package' });
+    writeFileSync(zip, await fileOf(page, row.getByRole('link', { name: /^Download / })));
     const folder = await unpack(zip);
     for (const name of FILES) expect(readFileSync(path.join(folder, name)).length, name).toBeGreaterThan(0);
     const { about } = JSON.parse(readFileSync(path.join(folder, 'proof.json'), 'utf8'));
@@ -252,9 +254,13 @@ describe('The compliance manager', () => {
     await page.goto(app.url + from());
     await page.getByRole('main').getByRole('link', { name, exact: true }).first().click();
     await atRest();
-    const href = await page.getByRole('link', { name: 'Download the package' }).getAttribute('href');
-    expect(href).toContain(
-      kind === 'customer' ? `customerId=${world.ledger.customer.id}` : 'from=2026-11-01&to=2026-11-30',
+    const [asked] = await Promise.all([
+      page.waitForRequest((request) => request.method() === 'POST' && request.url().endsWith('/api/v1/exports')),
+      page.getByRole('button', { name: 'Make the package' }).click(),
+    ]);
+    await page.getByRole('heading', { name: 'Exports' }).waitFor();
+    expect(asked.postDataJSON().filters).toMatchObject(
+      kind === 'customer' ? { customerId: world.ledger.customer.id } : { from: '2026-11-01', to: '2026-11-30' },
     );
   });
 });
