@@ -18,8 +18,8 @@ export function inWords(sql: string, locale: Locale): string {
   return `case when ${sql} then ${pg.escapeLiteral(yes)} when not (${sql}) then ${pg.escapeLiteral(no)} end`;
 }
 
-const place = (end: 'from' | 'to'): string =>
-  `coalesce(${plain(`${end}_label.label`)}, e.${end}_place || coalesce(' (' || e.${end}_as || ')', ''))`;
+const place = (end: 'from' | 'to', asText: (sql: string) => string): string =>
+  `coalesce(${asText(`${end}_label.label`)}, e.${end}_place || coalesce(' (' || e.${end}_as || ')', ''))`;
 
 const label = (end: 'from' | 'to'): string => `left join lateral (
     select tag as label from cylinder c where c.firm_id = e.firm_id and c.id = e.${end}_id
@@ -29,7 +29,7 @@ const label = (end: 'from' | 'to'): string => `left join lateral (
     limit 1) ${end}_label on true`;
 
 /** Names of the columns, whose words are `column.<name>` of the catalogue. */
-export const ENTRY_COLUMNS: readonly (readonly [name: string, sql: string])[] = [
+const entryColumns = (asText: (sql: string) => string): readonly (readonly [name: string, sql: string])[] => [
   ['sequence', 'e.sequence'],
   ['occurredAt', `to_char(e.occurred_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`],
   ['recordedAt', `to_char(e.recorded_at at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`],
@@ -41,22 +41,25 @@ export const ENTRY_COLUMNS: readonly (readonly [name: string, sql: string])[] = 
   ['typedValue', 'e.typed_value'],
   ['typedUnit', 'e.typed_unit'],
   ['fromPlace', 'e.from_place'],
-  ['from', place('from')],
+  ['from', place('from', asText)],
   ['toPlace', 'e.to_place'],
-  ['to', place('to')],
+  ['to', place('to', asText)],
   ['howKnown', 'e.how_known'],
   ['addedByServer', 'e.added_by_server'],
   ['atLeast', 'e.at_least'],
-  ['recordedBy', plain('p.name')],
-  ['reason', plain('g.reason')],
-  ['unit', plain('un.tag')],
-  ['site', plain('s.name')],
+  ['recordedBy', asText('p.name')],
+  ['reason', asText('g.reason')],
+  ['unit', asText('un.tag')],
+  ['site', asText('s.name')],
   ['entryId', 'e.id'],
   ['groupId', 'e.group_id'],
   ['correctsGroupId', 'e.corrects_group_id'],
   ['reversedByGroupId', 'r.id'],
   ['reversesGroupId', 'g.reverses_group_id'],
 ];
+export const ENTRY_COLUMNS = entryColumns(plain);
+/** For a spreadsheet, whose texts never run. */
+export const ENTRY_COLUMNS_AS_TYPED = entryColumns((sql) => sql);
 
 /** COPY takes no values, so they are written into the statement, each quoted by the driver. */
 export const withValues = ({ sql, values }: Pick<Conditions, 'sql' | 'values'>): string =>

@@ -9,6 +9,8 @@ const FOR_READERS: ReadonlySet<string> = new Set([
   'flags',
   'customers',
   'sites',
+  'jobs',
+  'chargeSheets',
   'unitLog',
   'jobRecord',
   'chargeLabel',

@@ -6,6 +6,9 @@ const ROWS_A_FETCH = 1_000;
 const WIDTH: Readonly<Record<CellKind, number>> = { text: 18, number: 13, boolean: 8, instant: 19, day: 12 };
 const FORM: Readonly<Partial<Record<CellKind, string>>> = { instant: 'yyyy-mm-dd hh:mm:ss', day: 'yyyy-mm-dd' };
 
+/** Of a spreadsheet: a longer text (a long record of the journal) is cut there, and whole in CSV. */
+const LONGEST_CELL = 32_767;
+
 /** XML 1.0 holds none of these, and a spreadsheet that meets one refuses the file. */
 // biome-ignore lint/suspicious/noControlCharactersInRegex: these are the ones
 const NOT_IN_XML = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]/g;
@@ -15,7 +18,8 @@ function cellOf(value: unknown, kind: CellKind): string | number | Date | null {
   if (kind === 'number') return Number(value);
   if (kind === 'instant') return new Date(String(value));
   if (kind === 'day') return new Date(`${String(value).slice(0, 10)}T00:00:00Z`);
-  return String(value).replaceAll(NOT_IN_XML, '');
+  const text = String(value).replaceAll(NOT_IN_XML, '');
+  return text.length > LONGEST_CELL ? `${text.slice(0, LONGEST_CELL - 1)}…` : text;
 }
 
 /**
@@ -45,7 +49,7 @@ export async function writeXlsx(
   head.commit();
   const asText = {
     ...rows,
-    columns: rows.columns.map(([column, sql, kind]) => [column, dayAsText(sql, kind)] as const),
+    columns: rows.columns.map(([column, sql, kind, asTyped = sql]) => [column, dayAsText(asTyped, kind)] as const),
   };
   await manager.query(`declare export_rows no scroll cursor for ${selectOf(asText)}`);
   let count = 0;

@@ -2,10 +2,11 @@ import { z } from 'zod';
 import { customerListQuery } from '../customers/customers.schema.ts';
 import { cylinderListQuery } from '../cylinders/cylinder.schema.ts';
 import { entryExportQuery, flagListQuery } from '../entries/entry.schema.ts';
+import { jobListQuery } from '../jobs/jobs.schema.ts';
 import { day, id, instant, month, pageOf, pageQuery } from '../lists/list.schema.ts';
 import { partyListQuery } from '../parties/parties.schema.ts';
 import { listPeopleQuery } from '../people/people.schema.ts';
-import { proofPackageFilters } from '../proof/proof.schema.ts';
+import { journalQuery, proofPackageFilters } from '../proof/proof.schema.ts';
 import { siteListQuery } from '../sites/sites.schema.ts';
 import { STATEMENT_LIMITS } from '../statements/cylinder-statement.schema.ts';
 import { toolListQuery } from '../tools/tools.schema.ts';
@@ -22,6 +23,10 @@ export const EXPORT_TABLES = [
   'tools',
   'customers',
   'sites',
+  'jobs',
+  'chargeSheets',
+  'journal',
+  'periods',
 ] as const;
 export type ExportTable = (typeof EXPORT_TABLES)[number];
 export const EXPORT_DOCUMENTS = [
@@ -78,6 +83,10 @@ export const createExportRequest = z.discriminatedUnion('what', [
   table('tools', toolListQuery.omit(withoutPages)),
   table('customers', customerListQuery.omit(withoutPages)),
   table('sites', siteListQuery.omit(withoutPages)),
+  table('jobs', jobListQuery.omit(withoutPages)),
+  table('chargeSheets', z.strictObject({ unitId: id.optional() })),
+  table('journal', journalQuery.omit(withoutPages)),
+  table('periods', z.strictObject({})),
   document('unitLog', z.strictObject({ unitId: id })),
   document('cylinderStatement', days),
   document('periodReport', months),

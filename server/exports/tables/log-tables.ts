@@ -1,4 +1,4 @@
-import { ENTRIES_WITH_LABELS, ENTRY_COLUMNS } from '../../entries/entry-csv.ts';
+import { ENTRIES_WITH_LABELS, ENTRY_COLUMNS, ENTRY_COLUMNS_AS_TYPED } from '../../entries/entry-csv.ts';
 import { ENTRY_SORT, entryConditions } from '../../entries/entry-list.repository.ts';
 import { Conditions } from '../../lists/list-query.ts';
 import { type CellKind, type Column, grams, instant, orderOf, type TableOf, typed } from './table.ts';
@@ -14,7 +14,9 @@ const ENTRY_KINDS: Readonly<Record<string, CellKind>> = {
 };
 
 export const entries: TableOf<'entries'> = (filters) => ({
-  columns: ENTRY_COLUMNS.map(([name, sql]): Column => [name, sql, ENTRY_KINDS[name] ?? 'text']),
+  columns: ENTRY_COLUMNS.map(
+    ([name, sql], index): Column => [name, sql, ENTRY_KINDS[name] ?? 'text', ENTRY_COLUMNS_AS_TYPED[index]?.[1]],
+  ),
   from: ENTRIES_WITH_LABELS,
   countFrom: 'entry e',
   conditions: entryConditions(filters),

@@ -6,8 +6,11 @@ import { columnHead } from '../../messages/column-heads.ts';
 
 /** How a spreadsheet takes a cell; CSV takes the text as it is. */
 export type CellKind = 'text' | 'number' | 'boolean' | 'instant' | 'day';
-/** `sql` of a text that a person may have typed goes through `typed`. */
-export type Column = readonly [name: string, sql: string, kind?: CellKind];
+/**
+ * `sql` of a text that a person may have typed goes through `typed`. `asTyped`: the same text for a spreadsheet, whose texts
+ * never run, so that it needs no apostrophe.
+ */
+export type Column = readonly [name: string, sql: string, kind?: CellKind, asTyped?: string];
 
 /** The rows of one table as filtered. */
 export interface TableRows {
@@ -23,7 +26,7 @@ export type TableOf<W extends ExportTable> = (
 ) => TableRows;
 
 /** What a person typed, defused where a spreadsheet would run it as a formula. */
-export const typed = (name: string, sql: string): Column => [name, plain(sql), 'text'];
+export const typed = (name: string, sql: string): Column => [name, plain(sql), 'text', sql];
 export const instant = (name: string, sql: string): Column => [
   name,
   `to_char(${sql} at time zone 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS"Z"')`,
@@ -39,7 +42,12 @@ export function orderOf(sort: string, columns: readonly string[]): string {
 /** As who takes it out reads it in a spreadsheet: heads in words with their unit, yes and no instead of true and false. */
 export function inWordsOf(rows: TableRows, locale: Locale): TableRows {
   const columns = rows.columns.map(
-    ([name, sql, kind]): Column => [columnHead(name, locale), kind === 'boolean' ? inWords(sql, locale) : sql, kind],
+    ([name, sql, kind, asTyped]): Column => [
+      columnHead(name, locale),
+      kind === 'boolean' ? inWords(sql, locale) : sql,
+      kind,
+      asTyped,
+    ],
   );
   return { ...rows, columns };
 }

@@ -2,6 +2,7 @@ import { type CreateExportRequest, EXPORT_TABLES, type ExportTable } from '../..
 import { cylinders, tools, units } from './equipment-tables.ts';
 import { entries, flags, readings } from './log-tables.ts';
 import { customers, parties, people, sites } from './people-tables.ts';
+import { chargeSheets, jobs, journal, periods } from './record-tables.ts';
 import type { TableOf, TableRows } from './table.ts';
 
 const TABLES: { [W in ExportTable]: TableOf<W> } = {
@@ -15,6 +16,10 @@ const TABLES: { [W in ExportTable]: TableOf<W> } = {
   tools,
   customers,
   sites,
+  jobs,
+  chargeSheets,
+  journal,
+  periods,
 };
 
 export type TableRequest = Extract<CreateExportRequest, { what: ExportTable }>;
