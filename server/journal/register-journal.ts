@@ -154,9 +154,11 @@ export async function whichWereMade(
   rows: readonly RegisterRow[],
 ): Promise<Map<RegisterRow, boolean | Problem>> {
   const firsts = await manager.query<{ noun: string; subject: string; recordId: string; content: string }[]>(
-    `select j.noun, j.subject_id as subject, j.record_id as "recordId", j.content
+    // One look-up by key for each: `offset 0` keeps the planner from reading the whole log of a noun for all of them.
+    `select w.noun, w.subject_id as subject, j.record_id as "recordId", j.content
       from unnest($1::text[], $2::uuid[]) w(noun, subject_id)
-      join journal_record j on j.noun = w.noun and j.subject_id = w.subject_id and j.version = 1`,
+      cross join lateral (select x.record_id, x.content from journal_record x
+        where x.noun = w.noun and x.subject_id = w.subject_id and x.version = 1 offset 0) j`,
     [rows.map(({ noun }) => noun), rows.map(({ subjectId }) => subjectId)],
   );
   const firstOf = new Map(firsts.map((first) => [`${first.noun} ${first.subject}`, first]));
