@@ -39,6 +39,8 @@ interface GroupRow {
     gross: string;
     hose: string | null;
     scale: Scale | null;
+    toolId: string | null;
+    at: string;
   }[];
   entries: {
     id: string;
@@ -65,7 +67,7 @@ const GROUP = `select g.id, g.sequence::text, g.kind, g.unit_id as "unitId", g.s
     (select c.id from entry_group c where c.firm_id = g.firm_id and c.closes_group_id = g.id and not exists (
       select from entry_group r where r.firm_id = c.firm_id and r.reverses_group_id = c.id) limit 1) as "closedBy",
     (select coalesce(json_agg(json_build_object('cylinderId', r.cylinder_id, 'moment', r.moment, 'mode', r.mode,
-        'gross', r.mass_micrograms::text, 'hose', case when r.hose_full then r.hose_micrograms::text end,
+        'toolId', r.tool_id, 'at', r.read_at, 'gross', r.mass_micrograms::text, 'hose', case when r.hose_full then r.hose_micrograms::text end,
         'scale', case when r.resolution_g is not null then json_build_object('resolutionG', r.resolution_g,
           'repeatabilityG', r.repeatability_g, 'spanErrorRelative', r.span_error_relative, 'offsetG', r.offset_g) end)
         order by r.id), '[]')
@@ -168,6 +170,8 @@ function storedGroup(row: GroupRow): StoredGroup {
     grossMicrograms: BigInt(reading.gross),
     hoseFullMicrograms: BigInt(reading.hose ?? 0),
     scale: reading.scale ?? ASSUMED_SCALE,
+    toolId: reading.toolId,
+    at: Date.parse(reading.at),
   }));
   const scaleAt = (place: PlaceFields): Scale | null =>
     place.place === 'cylinder' ? (readings.find(({ cylinderId }) => cylinderId === place.id)?.scale ?? null) : null;

@@ -1,5 +1,6 @@
 import { cylinderLimit } from '../cylinder-fill/cylinder-limits.ts';
 import type { FillJurisdiction } from '../cylinder-fill/filling-table.ts';
+import { type BookBasis, basisOn, type ScaleReading } from './book-basis.ts';
 import type { LedgerFlag } from './flag.ts';
 import type { TimelinePosition } from './judged-group.ts';
 import { type MassByRefrigerant, massOf, refrigerantsOf } from './mass-by-refrigerant.ts';
@@ -39,6 +40,10 @@ export interface CylinderState {
   readonly book: MassByRefrigerant;
   /** An entry or a reading has said what it holds: a later gap is a difference, not an opening. */
   readonly opened: boolean;
+  /** What the book rests on since a reading last set it: how uncertain the next difference is. */
+  readonly basis: BookBasis;
+  /** Start readings of weigh-ins that are not closed, by their group. */
+  readonly openStarts: Readonly<Record<string, ScaleReading>>;
   /** Bought, and not weighed since. */
   readonly boughtUnweighed: boolean;
   /** Stolen, burst or lost and not found again. */
@@ -52,6 +57,8 @@ export const emptyCylinderState: CylinderState = {
   lastPosition: null,
   book: {},
   opened: false,
+  basis: basisOn(null),
+  openStarts: {},
   boughtUnweighed: false,
   missingMicrograms: 0n,
   filledAt: null,

@@ -1,4 +1,7 @@
+import { verdictOf } from '../scale/reconcile.ts';
 import { type AddedEntry, netted } from './added-entry.ts';
+import { type BookBasis, basisOn, type ScaleReading, setsBook, uncertaintyOf, withIssues } from './book-basis.ts';
+import { issuesOf, scaleReading } from './cylinder-issues.ts';
 import { cylinderStandingFlags } from './cylinder-standing.ts';
 import { type CylinderRegister, type CylinderState, emptyCylinderState, tareAt } from './cylinder-state.ts';
 import type { FlagCode, LedgerFlag } from './flag.ts';
@@ -9,6 +12,7 @@ import {
   timelineOf,
   touchesCylinder,
 } from './judged-group.ts';
+import { openStartsAfter, stepReadingOf, weighedGroupOf } from './judged-weighing.ts';
 import {
   type MassByRefrigerant,
   massOf,
@@ -84,6 +88,7 @@ class CylinderJudging {
   private opened: boolean;
   private boughtUnweighed: boolean;
   private missing: bigint;
+  private basis: BookBasis;
   private readonly added: AddedEntry[] = [];
   private readonly found = new Map<FlagCode, bigint>();
   private readonly register: CylinderRegister;
@@ -96,26 +101,39 @@ class CylinderJudging {
     this.group = group;
     this.book = state.book;
     this.opened = state.opened;
+    this.basis = state.basis;
     this.boughtUnweighed = state.boughtUnweighed;
     this.missing = state.missingMicrograms;
   }
 
-  /** The whole gap is posted if it is beyond the scales, or if the group would take the book below zero. */
+  /**
+   * The whole gap is posted if it is beyond the scales for one reading against the book, or if the group would take the
+   * book below zero: a rule of two readings, so that the book follows the scale closely. What is then said of it is
+   * another question: by everything that the book rests on, as in a statement and the books.
+   */
   judgeReading(reading: JudgedReading, flow: Flow): void {
     const stated = this.contentStated(reading);
     const gap = stated - totalOf(this.book);
     const variance = grossVarianceG2(reading.scale, stated);
+    const end = scaleReading(stepReadingOf(this.group, reading));
+    let posted = 0n;
     const wouldFall = Object.values(plusAll(this.book, flow.net)).some((mass) => mass < 0n);
     if (isBeyond(gap, variance) || wouldFall) {
+      posted = gap;
       this.postGap(stated, flow);
-      if (this.opened && isBeyond(gap, variance)) {
-        const difference = isBeyond(gap, variance, 3) ? 'cylinderNotExplained' : 'cylinderLookAgain';
-        const code = this.boughtUnweighed ? 'supplierShortFill' : difference;
-        this.flag(code, gap);
-      }
+      if (this.opened && isBeyond(gap, variance)) this.flagGap(gap, end, stated);
     }
+    if (setsBook(posted, gap, this.basis.start === null)) this.basis = basisOn(end);
     this.opened = true;
     this.boughtUnweighed = false;
+  }
+
+  private flagGap(gap: bigint, end: ScaleReading, stated: bigint): void {
+    const { standardG } = uncertaintyOf(this.basis, end, Number(stated) / 1e6);
+    const verdict = verdictOf(Math.abs(Number(gap)) / 1e6, standardG);
+    if (verdict === 'withinScales') return;
+    const difference = verdict === 'notExplained' ? 'cylinderNotExplained' : 'cylinderLookAgain';
+    this.flag(this.boughtUnweighed ? 'supplierShortFill' : difference, gap);
   }
 
   /**
@@ -160,6 +178,8 @@ class CylinderJudging {
     const { cylinderId } = this.register;
     if (flow.takenMicrograms > 0n && !this.opened) this.flag('lateBeforeOpening', flow.takenMicrograms);
     this.book = plusAll(this.book, flow.net);
+    const starts = new Map(Object.entries(this.before.openStarts));
+    this.basis = withIssues(this.basis, issuesOf(weighedGroupOf(this.group, cylinderId), starts));
     for (const { from, to, massMicrograms } of this.group.masses) {
       const goesIn = to.place === 'cylinder' && to.id === cylinderId;
       const goesOut = from.place === 'cylinder' && from.id === cylinderId;
@@ -184,6 +204,8 @@ class CylinderJudging {
     const state: CylinderState = {
       lastPosition: { occurredAt: this.group.occurredAt, sequence: this.group.sequence },
       opened: this.opened,
+      basis: this.basis,
+      openStarts: openStartsAfter(this.before.openStarts, this.group, this.register.cylinderId),
       boughtUnweighed: this.boughtUnweighed,
       ...stands,
       standing: cylinderStandingFlags(this.register, this.before, stands, this.group.id),

@@ -91,5 +91,5 @@ export const openedAt = (unitId: string, massG: number): JudgedGroup =>
 export const filledWith = (cylinderId: string, massG: number, refrigerant = R410A): JudgedGroup =>
   group(`opening-${cylinderId}`, 1, {
     kind: 'opening',
-    masses: [moved(`opening -> ${cylinderId}`, massG, { refrigerant })],
+    masses: [moved(`opening -> ${cylinderId}`, massG, { refrigerant, howKnown: 'estimated' })],
   });

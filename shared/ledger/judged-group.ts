@@ -13,6 +13,10 @@ export interface JudgedReading {
   /** What the hose held if it was full at this reading, else 0. */
   readonly hoseFullMicrograms: bigint;
   readonly scale: Scale;
+  /** Absent: nobody named the scale. */
+  readonly toolId?: string | null;
+  /** Milliseconds since 1970, UTC; absent: when its group occurred. */
+  readonly at?: number;
 }
 
 export interface JudgedMass {
@@ -42,6 +46,8 @@ export interface JudgedGroup {
   readonly kind: GroupKind;
   readonly jobId: string | null;
   readonly chargeSheetId: string | null;
+  /** The weigh-in that it closes: its start reading belongs to these masses. */
+  readonly closesGroupId?: string | null;
   /** Reversed by a later group. It and the reversal are left out of every timeline: their masses cancel. */
   readonly reversed?: boolean;
   readonly readings: readonly JudgedReading[];
@@ -111,6 +117,7 @@ export function enteredGroup(
     kind: request.kind,
     jobId: request.jobId ?? null,
     chargeSheetId: request.chargeSheetId ?? null,
+    closesGroupId: request.closesGroupId ?? null,
     readings: requested.map((reading) => ({
       cylinderId: reading.cylinderId,
       moment: reading.moment,
@@ -118,6 +125,8 @@ export function enteredGroup(
       grossMicrograms: microgramsOfTyped({ value: reading.value, unit: reading.unit }),
       hoseFullMicrograms: reading.hoseFull && reading.hose ? microgramsOfTyped(reading.hose) : 0n,
       scale: known.scaleOf(reading.toolId ?? null),
+      toolId: reading.toolId ?? null,
+      at: Date.parse(reading.at ?? request.occurredAt),
     })),
     masses: (request.entries ?? []).map((entry) => {
       const from = toPlace(entry.from);

@@ -3,7 +3,7 @@ import { compareInTimeline, type TimelinePosition } from './judged-group.ts';
 import type { UnitState } from './unit-state.ts';
 
 /** Raised when a state's shape or the rules change: an older snapshot is then thrown away and replayed. */
-export const SNAPSHOT_VERSION = 2;
+export const SNAPSHOT_VERSION = 3;
 
 export interface Snapshot {
   readonly version: number;

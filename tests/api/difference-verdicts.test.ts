@@ -54,6 +54,40 @@ describe('The reading of a mixed cylinder', () => {
   });
 });
 
+describe('One reading', () => {
+  it('is called the same today, in the books and in the statement', async () => {
+    const ledger = await startLedger(app);
+    const cylinder = await ledger.cylinder(null);
+    const unit = await ledger.unit('500', '5000');
+    await weigh(ledger, cylinder.id, 9_500, '2026-03-01T08:00:00Z');
+    for (let issue = 0; issue < 8; issue++) {
+      const at = `2026-03-${String(issue + 2).padStart(2, '0')}T10:00:00Z`;
+      const parts = {
+        cylinderId: cylinder.id,
+        unitId: unit.id,
+        beforeG: 9_500 - issue * 100,
+        afterG: 9_400 - issue * 100,
+      };
+      await posted(ledger.client, weighIn(ledger, parts, {}, at));
+    }
+    await weigh(ledger, cylinder.id, 8_696, '2026-03-20T08:00:00Z');
+    const low = await weigh(ledger, cylinder.id, 8_692, '2026-04-03T08:00:00Z');
+    // Within 2 u of what the book rests on, sqrt(18) readings of 5 g; beyond that of two, so that the book follows it.
+    const figures = { differenceG: -8, twoUG: 12.247, verdict: 'withinScales' };
+    expect(low.body.flags).toEqual([]);
+    expect((await differences(ledger)).items).toMatchObject([figures]);
+    const april = await get<CylinderStatement>(
+      ledger,
+      `/cylinders/${cylinder.id}/statement?from=2026-04-01&to=2026-04-30`,
+    );
+    expect(april.difference).toMatchObject({ ...figures, independentReadings: 18 });
+    expect(april.differences).toMatchObject([{ ...figures, posted: true }]);
+    const lower = await weigh(ledger, cylinder.id, 8_684, '2026-04-04T08:00:00Z');
+    expect(lower.body.flags).toMatchObject([{ code: 'cylinderNotExplained', massG: -8 }]);
+    expect((await differences(ledger)).items[0]).toMatchObject({ differenceG: -8, verdict: 'notExplained' });
+  });
+});
+
 describe('The statement of a difference', () => {
   it('holds it, wherever the site’s clock stands: its days are the firm’s', async () => {
     const ledger = await startLedger(app, { timeZone: 'America/New_York' });
