@@ -272,7 +272,7 @@ class Played {
 }
 
 describe('Random timelines through HTTP', () => {
-  it('are taken and refused, and end in the books and open flags, as the log in memory says', async () => {
+  it('are answered and end, in books and open flags, as the log in memory says', async () => {
     await fc.assert(
       fc.asyncProperty(randomTimeline, keys, async (events, order) => {
         const played = await Played.start();
