@@ -25,9 +25,6 @@ export async function readHead(manager: EntityManager): Promise<Head> {
   return headOf(await manager.query(`select ${HEAD} from firm_head`));
 }
 
-/** The new head, after records were posted in this transaction. */
-export const headAfterPosting = readHead;
-
 async function newest<T>(manager: EntityManager, type: string): Promise<{ record: number; content: T } | null> {
   const [row] = await manager.query<{ sequence: string; content: string }[]>(
     `select sequence, content from journal_record where type = $1 and type in ('seal', 'sealKey')

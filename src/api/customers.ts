@@ -1,10 +1,6 @@
 import { infiniteQueryOptions, queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type { z } from 'zod';
-import type {
-  Customer,
-  createCustomerRequest,
-  updateCustomerRequest,
-} from '../../shared/customers/customers.schema.ts';
+import type { Customer, createCustomerRequest } from '../../shared/customers/customers.schema.ts';
 import { http, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 
@@ -42,17 +38,5 @@ export function useCreateCustomer() {
   return useMutation({
     mutationFn: (body: z.input<typeof createCustomerRequest>) => http.post<Customer>('/customers', body),
     onSuccess: () => client.invalidateQueries({ queryKey: customerQueries.all() }),
-  });
-}
-
-export function useUpdateCustomer({ id, version }: { id: string; version: number }) {
-  const client = useQueryClient();
-  return useMutation({
-    mutationFn: (body: z.input<typeof updateCustomerRequest>) =>
-      http.patch<Customer>(`/customers/${id}`, body, { version }),
-    onSuccess: () =>
-      Promise.all(
-        [customerQueries.all(), ['sites'], ['units']].map((queryKey) => client.invalidateQueries({ queryKey })),
-      ),
   });
 }
