@@ -85,6 +85,9 @@ describe('The application, with plain SQL', () => {
       'create_firm',
       'current_firm_id',
       'current_person_id',
+      // What a cylinder takes, for the files taken out: it reads as the application, under its policies.
+      'cylinder_limit',
+      'filling_density',
       'firm_ids_of_person',
       'invitation_by_token_hash',
       'lock_head',
