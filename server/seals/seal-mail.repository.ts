@@ -11,12 +11,17 @@ export interface DueMail {
   firmName: string;
 }
 
-/** For every owner of the firm at this moment. */
+/**
+ * For every owner of the firm at this moment. A number that was mailed before is mailed again: then somebody cut the log
+ * off and sealed another one, and who holds the earlier mail sees it.
+ */
 export async function addSealMails(manager: EntityManager, firmId: string, sequence: number, at: Date): Promise<void> {
   await manager.query(
     `insert into seal_mail (firm_id, sequence, person_id, due_since)
        select m.firm_id, $2, m.person_id, $3 from membership m
-       where m.firm_id = $1 and m.active and 'owner' = any (m.roles)`,
+       where m.firm_id = $1 and m.active and 'owner' = any (m.roles)
+       on conflict (firm_id, sequence, person_id)
+         do update set due_since = excluded.due_since, sent_at = null, claimed_until = null`,
     [firmId, sequence, at],
   );
 }

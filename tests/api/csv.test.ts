@@ -116,10 +116,14 @@ describe('The log as CSV', () => {
     };
     for (let index = 0; index < 12; index++) await hangUp();
     expect((await ledger.client.get('/entries.csv')).status).toBe(200);
-    const open = await app.database.query<{ n: number }>(
-      'superuser',
-      `SELECT count(*)::int AS n FROM pg_stat_activity WHERE datname = current_database() AND state LIKE 'idle in transaction%'`,
-    );
-    expect(open[0]?.n).toBe(0);
+    const open = async () =>
+      (
+        await app.database.query<{ n: number }>(
+          'superuser',
+          `SELECT count(*)::int AS n FROM pg_stat_activity WHERE datname = current_database() AND state LIKE 'idle in transaction%'`,
+        )
+      )[0]?.n;
+    // What was hung up on ends behind the last answer.
+    await expect.poll(open).toBe(0);
   });
 });
