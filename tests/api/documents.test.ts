@@ -119,7 +119,7 @@ describe('A paper', () => {
   });
 });
 
-describe('A job record', () => {
+describe('A job record of a recovery', () => {
   /** Source: 40 CFR 82.156(a), Table 1. */
   it('says to which level the unit was evacuated, which was required and by which clause', async () => {
     const clause = '40 CFR 82.156(a), Table 1';

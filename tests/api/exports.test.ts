@@ -28,7 +28,13 @@ beforeAll(async () => {
   const group = weighIn(ledger, { cylinderId, unitId, beforeG: 9500, afterG: 9410 });
   const answer = await ledger.post({ ...group, reason: '+1+1' });
   if (answer.status !== 201) throw new Error(JSON.stringify(answer.body));
-  await ledger.made('/jobs', { id: uuid(), unitId, kind: 'serviceWithLeak', title: '=1+1', openedAt: '2026-03-02T10:00:00Z' });
+  await ledger.made('/jobs', {
+    id: uuid(),
+    unitId,
+    kind: 'serviceWithLeak',
+    title: '=1+1',
+    openedAt: '2026-03-02T10:00:00Z',
+  });
   const { default: pg } = await import('pg');
   const loader = new pg.Client({ connectionString: app.database.urls.superuser });
   await loader.connect();
