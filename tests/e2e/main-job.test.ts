@@ -6,6 +6,7 @@ import { startBrowser, type TestBrowser } from '../support/browser.ts';
 import { walkOf } from '../support/browser-walk.ts';
 import { wordsIn } from '../support/browser-words.ts';
 import { CONTENT_G, startWorld, type World } from '../support/browser-world.ts';
+import { linesByName } from '../support/read-csv.ts';
 
 let app: TestApp;
 let browser: TestBrowser;
@@ -97,7 +98,7 @@ describe.each(['en-GB', 'es-ES'] as const)('The main job in %s', (locale) => {
     await page.getByRole('link', { name: say('log.export') }).click();
     const csv = readFileSync(await (await download).path(), 'utf8');
     const charged = { kind: 'extraCharge', refrigerant: 'R-32', from: '7741', recordedBy: 'M. Oduya', reason: '' };
-    expect(asObjects(csv).filter(({ kind }) => kind === 'extraCharge')).toMatchObject([
+    expect(linesByName(csv).filter(({ kind }) => kind === 'extraCharge')).toMatchObject([
       { ...charged, massG: '28', to: 'atmosphere (hose)', howKnown: 'estimated' },
       { ...charged, massG: '90', to: '0412', howKnown: 'weighed', typedValue: '90', typedUnit: 'g' },
     ]);
@@ -144,15 +145,6 @@ describe.each(['en-GB', 'es-ES'] as const)('The main job in %s', (locale) => {
       expect([table, (await insert(table)).code]).toEqual([table, '42501']);
   });
 });
-
-/** No cell of this file is quoted. */
-function asObjects(csv: string): Record<string, string>[] {
-  const [head = [], ...lines] = csv
-    .trim()
-    .split('\n')
-    .map((line) => line.split(','));
-  return lines.map((line) => Object.fromEntries(head.map((name, column) => [name, line[column] ?? ''])));
-}
 
 /** No-break spaces as plain ones. */
 const plain = (text: string | null): string => (text ?? '').replace(/\s/g, ' ').trim();
