@@ -98,7 +98,7 @@ async function plantError(page: Page): Promise<void> {
   await page.route('**/assets/*.js', async (route) => {
     const answer = await route.fetch();
     const body = (await answer.text()).replace(
-      /(export\s*\{[^}]*?)\b([\w$]+) as Component\b/,
+      /(export\s*\{[^}]*?)(?<![\w$])([\w$]+) as Component\b/,
       (_all, before: string, name: string) =>
         `function Planted(__props){if(sessionStorage.getItem('planted'))throw new Error('planted in the page');return ${name}(__props)}` +
         `${before}Planted as Component`,
