@@ -12,7 +12,7 @@ import { inFirm } from '../../server/database/firm-scope.ts';
 import { writeDocument } from '../../server/documents/write-document.ts';
 import { exportsRepository } from '../../server/exports/export.repository.ts';
 import { type ExportParts, runExport } from '../../server/exports/run-export.ts';
-import { selectOf } from '../../server/exports/tables/table.ts';
+import { inWordsOf, selectOf } from '../../server/exports/tables/table.ts';
 import { tableRows } from '../../server/exports/tables/tables.ts';
 import { foundFirm } from '../../server/people/found-firm.ts';
 import { loadReferenceData } from '../../server/reference/load-reference-data.ts';
@@ -22,6 +22,7 @@ import type { Bench } from './bench.ts';
 
 const ROWS = 1_000_000;
 const RUNS = 3;
+const LOCALE = 'en-US';
 const REQUEST = { what: 'entries', format: 'csv', filters: { sort: 'sequence' } } as const;
 
 /**
@@ -99,7 +100,7 @@ async function sha256Of(file: string): Promise<string> {
 /** The same rows, as the same role under the same policies, by PostgreSQL's own client. @returns seconds */
 async function copyByPsql(database: ClonedDatabase, firmId: string, personId: string, file: string): Promise<number> {
   const psql = findPsql();
-  const sql = selectOf(tableRows(REQUEST)).replaceAll(/\s+/g, ' ');
+  const sql = selectOf(inWordsOf(tableRows(REQUEST), LOCALE)).replaceAll(/\s+/g, ' ');
   const start = performance.now();
   await new Promise<void>((resolve, reject) => {
     const child = spawn(psql, ['-q', '-v', 'ON_ERROR_STOP=1', database.urls.jobs, '-f', '-'], {
@@ -150,7 +151,7 @@ export const bench: Bench = {
         name: 'Bench',
         jurisdiction: 'US',
         timeZone: 'UTC',
-        locale: 'en-US',
+        locale: LOCALE,
         gwpSet: 'US-AIM',
       } as const;
       await foundFirm({ ...parts, dataSource: app } as Parameters<typeof foundFirm>[0], firm, owner);
@@ -168,7 +169,7 @@ export const bench: Bench = {
             ...REQUEST,
             firmId,
             id,
-            locale: 'en-US',
+            locale: LOCALE,
             requestedBy: owner.id,
             at: parts.now(),
           }),
@@ -191,7 +192,7 @@ export const bench: Bench = {
         clearInterval(watch);
         growth = Math.max(growth, (most - before) / 2 ** 20);
         if (outcome !== 'done') throw new Error(`the export was ${outcome}`);
-        const file = path.join(home, 'exports', firmId, id);
+        const file = path.join(home, 'exports', firmId, `${id}.1`); // the first attempt
         if ((await sha256Of(file)) !== (await sha256Of(bare))) throw new Error('the two files differ');
         rmSync(file);
         say(
