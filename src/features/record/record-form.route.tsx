@@ -31,7 +31,7 @@ export function Component() {
     return (
       <Page field title={t(`record.form.${kind}`)}>
         <div className="page-gutter pt-6">
-          <Notice title={t('record.notPermitted')} />
+          <Notice title={t(form.permission === 'registers:correct' ? 'record.forManagers' : 'record.notPermitted')} />
         </div>
       </Page>
     );
