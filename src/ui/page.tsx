@@ -43,7 +43,7 @@ export function Page({
     <div className={`flex flex-1 flex-col ${field ? 'field-screen' : ''} ${fill ? 'min-h-0 min-w-0' : ''}`}>
       <title>{inTab ? `${inTab} · Tarewright` : 'Tarewright'}</title>
       <div className="sticky top-0 z-10 border-b-2 border-ink bg-ground page-gutter desk:static desk:border-0 desk:bg-transparent">
-        <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:items-end desk:gap-x-8 desk:pt-6">
+        <div className="flex min-h-14 items-center justify-between gap-4 desk:min-h-0 desk:flex-wrap desk:items-end desk:gap-x-8 desk:gap-y-1 desk:pt-6">
           {back ? (
             <button
               type="button"
