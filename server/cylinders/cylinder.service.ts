@@ -17,8 +17,8 @@ import { Problem } from '../http/problem.ts';
 import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { orThrow, wasMade } from '../journal/register-journal.ts';
+import { refuseFuture } from '../registers/refuse-future.ts';
 import { changeRow, type Made, taken } from '../registers/register-rows.ts';
-import { refuseFuture } from '../units/unit-history.service.ts';
 import { type CylinderRow, cylindersRepository, presentCylinder } from './cylinder.repository.ts';
 import {
   factsOf,

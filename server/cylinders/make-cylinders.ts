@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { cylinderLimit } from '../../shared/cylinder-fill/cylinder-limits.ts';
 import type { CreateCylinderRequest } from '../../shared/cylinders/cylinder.schema.ts';
+import { requireRefrigerant } from '../../shared/reference/require-row.ts';
 import { microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
 import type { PostingParts } from '../entries/post-group.ts';
 import type { Actor } from '../http/actor.ts';
@@ -63,10 +64,8 @@ async function insert(manager: EntityManager, plans: readonly CylinderPlan[]): P
 
 function planOf(parts: PostingParts, firmId: string, request: CreateCylinderRequest): CylinderPlan | Problem {
   const { id, refrigerant, tare } = request;
-  if (!parts.reference.findRefrigerant(refrigerant)) {
-    const given = { given: refrigerant, params: { given: refrigerant } };
-    return problemOfRefusals([{ code: 'unknownRefrigerant', path: '/refrigerant', ...given }]);
-  }
+  const known = requireRefrigerant(parts.reference, refrigerant);
+  if (!known.ok) return problemOfRefusals(known.refusals);
   const row = newRow(firmId, request);
   const tareRow = tareRowOf(firmId, id, { ...tare, reason: null });
   const registers: CylinderPlan['registers'] = [

@@ -9,6 +9,7 @@ import { cylinderPlace, type PlaceFields, type PlaceKind, samePlace } from '../.
 import { CALENDAR, isInCalendar } from '../../shared/lists/list.schema.ts';
 import type { Refusal } from '../../shared/problems/outcome.ts';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
+import { requireRefrigerant } from '../../shared/reference/require-row.ts';
 import { LARGEST_MICROGRAMS, microgramsOfTyped, type TypedMass } from '../../shared/units/mass.ts';
 import { isStoredMassUnit, STORED_MASS_UNITS } from '../../shared/units/stored-mass.ts';
 import { belongsRefusal } from '../jobs/job-of-unit.ts';
@@ -114,9 +115,9 @@ function referenceRefusals({ body, at, facts, reference }: Asked): Refusal[] {
       if (id) need(placeExists(entry[end], facts), `/entries/${index}/${end}/id`, id);
     }
     const { refrigerant } = entry;
-    if (refrigerant && !reference.findRefrigerant(refrigerant)) {
-      const path = `${at}/entries/${index}/refrigerant`;
-      refusals.push({ code: 'unknownRefrigerant', path, given: refrigerant, params: { given: refrigerant } });
+    if (refrigerant) {
+      const known = requireRefrigerant(reference, refrigerant, `${at}/entries/${index}/refrigerant`);
+      if (!known.ok) refusals.push(...known.refusals);
     }
   });
   return refusals;

@@ -1,6 +1,7 @@
-import { TZDate } from '@date-fns/tz';
 import type { EntityManager } from 'typeorm';
 import type { EntryGroupRequest } from '../../shared/ledger/entry-group.schema.ts';
+import { startOfDay } from '../../shared/periods/month.ts';
+import { requireRefrigerant } from '../../shared/reference/require-row.ts';
 import type { CreateUnitRequest } from '../../shared/unit-register/unit.schema.ts';
 import { microgramsOfTyped } from '../../shared/units/mass.ts';
 import type { PostingParts } from '../entries/post-group.ts';
@@ -85,11 +86,11 @@ function planOf(
   request: CreateUnitRequest,
   zones: ReadonlyMap<string, string>,
 ): UnitPlan | Problem {
-  const unknown = refrigerantRefusal(parts, request.refrigerant, '/refrigerant');
-  if (unknown) return unknown;
+  const known = requireRefrigerant(parts.reference, request.refrigerant);
+  if (!known.ok) return problemOfRefusals(known.refusals);
   const zone = zones.get(request.siteId);
   if (zone === undefined) return problemOfRefusals([{ code: 'notKnownHere', path: '/siteId', given: request.siteId }]);
-  const rows = rowsOf(request, firmId, startOfDay(request.refrigerantFrom, zone));
+  const rows = rowsOf(request, firmId, new Date(startOfDay(request.refrigerantFrom, zone)));
   return { request, rows, initial: initialGroup(request) };
 }
 
@@ -125,27 +126,6 @@ async function whichWereMadeAlike(
       return [plan, isAlike || new Problem('idReused')];
     }),
   );
-}
-
-/** Of a refrigerant that nobody knows. */
-function refrigerantRefusal(
-  { reference }: Pick<PostingParts, 'reference'>,
-  refrigerant: string,
-  path: string,
-): Problem | null {
-  if (reference.findRefrigerant(refrigerant)) return null;
-  return problemOfRefusals([{ code: 'unknownRefrigerant', path, given: refrigerant, params: { given: refrigerant } }]);
-}
-
-export function refuseRefrigerant(parts: Pick<PostingParts, 'reference'>, refrigerant: string, path: string): void {
-  const refusal = refrigerantRefusal(parts, refrigerant, path);
-  if (refusal) throw refusal;
-}
-
-/** Midnight at the site, where the day begins. */
-function startOfDay(day: string, timeZone: string): Date {
-  const [year = 0, month = 1, date = 1] = day.split('-').map(Number);
-  return new Date(new TZDate(year, month - 1, date, timeZone).getTime());
 }
 
 function rowsOf(request: CreateUnitRequest, firmId: string, since: Date) {

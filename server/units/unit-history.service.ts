@@ -3,6 +3,7 @@ import type { z } from 'zod';
 import type { addChargeBasisRequest } from '../../shared/charge-sheets/charge-sheet.schema.ts';
 import type { EntryGroupResponse } from '../../shared/ledger/entry-group-response.schema.ts';
 import type { PageQuery } from '../../shared/lists/list.schema.ts';
+import { requireRefrigerant } from '../../shared/reference/require-row.ts';
 import type {
   addFullChargeRequest,
   addLineSetRequest,
@@ -12,15 +13,15 @@ import { microgramsOfTyped } from '../../shared/units/mass.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import { journalAndJudgeAgain, outcomeOfRevision } from '../entries/judge-again.ts';
 import { presentOutcome } from '../entries/posting-answer.ts';
-import { CLOCK_ALLOWANCE_MS } from '../entries/posting-refusals.ts';
 import type { Actor } from '../http/actor.ts';
-import { Problem, problemOfRefusals } from '../http/problem.ts';
+import { Problem, valueOrProblem } from '../http/problem.ts';
 import { requireJobOfUnit } from '../jobs/job-of-unit.ts';
 import { requestHash } from '../journal/canonical-text.ts';
 import { lockHead } from '../journal/post-records.ts';
 import { journalChange, type RegisterRow, wasMade } from '../journal/register-journal.ts';
+import { refuseFuture } from '../registers/refuse-future.ts';
 import { type Made, makeOnce } from '../registers/register-rows.ts';
-import { datedFacts, refuseRefrigerant } from './make-units.ts';
+import { datedFacts, PERSONAL } from './make-units.ts';
 import { unitsRepository } from './unit.repository.ts';
 import type { UnitParts } from './unit.service.ts';
 import { unitHistoryRepository } from './unit-history.repository.ts';
@@ -64,7 +65,7 @@ export function addRefrigerant(
   unitId: string,
   request: z.output<typeof addUnitRefrigerantRequest>,
 ): Promise<Made<EntryGroupResponse>> {
-  refuseRefrigerant(parts, request.refrigerant, '/refrigerant');
+  valueOrProblem(requireRefrigerant(parts.reference, request.refrigerant));
   return reviseUnit(parts, actor, unitId, request, null, async (manager) => {
     await requireUnit(manager, unitId);
     const { id, refrigerant, jobId = null } = request;
@@ -107,7 +108,7 @@ export function addChargeBasis(
   request: z.output<typeof addChargeBasisRequest>,
 ) {
   const { id, basis, manual, note = null } = request;
-  refuseRefrigerant(parts, basis.refrigerant, '/basis/refrigerant');
+  valueOrProblem(requireRefrigerant(parts.reference, basis.refrigerant, '/basis/refrigerant'));
   const row = {
     firmId: actor.firmId,
     id,
@@ -187,13 +188,6 @@ function reviseUnit(
   });
 }
 
-/** What holds from later on is entered when it holds. */
-export function refuseFuture({ now }: Pick<UnitParts, 'now'>, validFrom: string): void {
-  if (Date.parse(validFrom) <= now().getTime() + CLOCK_ALLOWANCE_MS) return;
-  const figures = { given: validFrom, allowed: now().toISOString() };
-  throw problemOfRefusals([{ code: 'inFuture', path: '/validFrom', ...figures }]);
-}
-
 async function requireUnit(manager: EntityManager, unitId: string) {
   const unit = await unitsRepository(manager).find(unitId);
   if (!unit) throw new Problem('notFound');
@@ -217,6 +211,6 @@ async function showLatestRefrigerant(parts: UnitParts, actor: Actor, manager: En
   if (refrigerant === undefined || refrigerant === unit.refrigerant) return;
   const { firmId: _firm, id, version, ...facts } = unit;
   await unitsRepository(manager).update({ ...unit, refrigerant });
-  const row: RegisterRow = { noun: 'unit', subjectId: id, facts: { ...facts, refrigerant }, personal: ['name'] };
+  const row: RegisterRow = { noun: 'unit', subjectId: id, facts: { ...facts, refrigerant }, personal: PERSONAL };
   await journalChange({ ...parts, personId: actor.personId }, manager, row, version + 1, facts);
 }

@@ -6,10 +6,11 @@ import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
 import { journalChange } from '../journal/register-journal.ts';
+import { refuseFuture } from '../registers/refuse-future.ts';
 import { type Made, makeOnce } from '../registers/register-rows.ts';
+import { PERSONAL } from './make-units.ts';
 import { unitsRepository } from './unit.repository.ts';
 import type { UnitParts } from './unit.service.ts';
-import { refuseFuture } from './unit-history.service.ts';
 import { unitSiteRepository } from './unit-site.repository.ts';
 
 const REFERENCES = { unit_site_site_fkey: '/siteId' };
@@ -74,7 +75,7 @@ async function showLatest(parts: UnitParts, actor: Actor, manager: EntityManager
   await journalChange(
     { ...parts, personId: actor.personId },
     manager,
-    { noun: 'unit', subjectId: id, facts, personal: ['name'] },
+    { noun: 'unit', subjectId: id, facts, personal: PERSONAL },
     version + 1,
     before,
   );
