@@ -1,5 +1,6 @@
 import type { BooksCsvQuery, BooksPageQuery } from '../../shared/books/books.schema.ts';
 import type { Actor } from '../http/actor.ts';
+import { columnHead } from '../messages/column-heads.ts';
 import { listCylinders, listJobs, listPeople, listPurchases, listSuppliers } from './book-lines.service.ts';
 import { type BooksParts, getBooks, getDifferences } from './books.service.ts';
 import { getCost } from './cost.service.ts';
@@ -107,7 +108,7 @@ export async function booksCsv(parts: BooksParts, actor: Actor, query: BooksCsvQ
   const { rows, currency } = await tableOf(parts, actor, table, period);
   const money = WITH_CURRENCY.has(table) ? ['currency'] : [];
   return csvText(
-    [...COLUMNS[table], ...money],
+    [...COLUMNS[table], ...money].map((name) => columnHead(name, actor.locale)),
     rows.map((row) => [...COLUMNS[table].map((column) => cellOf(row, column)), ...money.map(() => currency ?? '')]),
   );
 }

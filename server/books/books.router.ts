@@ -16,7 +16,6 @@ import {
 import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import { withHeads } from '../messages/column-heads.ts';
 import { madeOrFound, REPEATABLE } from '../registers/register-routes.ts';
 import { listCylinders, listJobs, listPeople, listPurchases, listSuppliers } from './book-lines.service.ts';
 import { getBooks, getDifferences } from './books.service.ts';
@@ -135,7 +134,7 @@ export function bookRoutes(parts: Parts): ApiRoutes {
     },
     async ({ req, actor, query, res }) => {
       refuseUnasked(req);
-      const text = withHeads(await booksCsv(parts, actor, query), actor.locale);
+      const text = await booksCsv(parts, actor, query);
       const fileName = `books-${query.table}-${query.from}-${query.to}.csv`;
       await sendJournalledCsv(parts, actor, res, { document: 'books', filters: query, fileName, text });
       return undefined;

@@ -3,7 +3,6 @@ import { CSV_ANSWER } from '../books/csv-table.ts';
 import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import { withHeads } from '../messages/column-heads.ts';
 import { emissionsCsv, getEmissions } from './emission.service.ts';
 
 export function emissionRoutes(parts: Parts): ApiRoutes {
@@ -32,7 +31,7 @@ export function emissionRoutes(parts: Parts): ApiRoutes {
     },
     async ({ req, actor, query, res }) => {
       refuseUnasked(req);
-      const text = withHeads(emissionsCsv(await getEmissions(parts, actor, query)), actor.locale);
+      const text = emissionsCsv(await getEmissions(parts, actor, query), actor.locale);
       const fileName = `emissions-by-${query.by}.csv`;
       await sendJournalledCsv(parts, actor, res, { document: 'emissions', filters: query, fileName, text });
       return undefined;

@@ -11,11 +11,13 @@ import { asReturned } from '../../shared/calculations/decimals.ts';
 import { tonnesCo2e } from '../../shared/co2e/co2e.ts';
 import type { GwpSet } from '../../shared/reference/gwp.ts';
 import { citationOf, type Gwp, gwpOfRefrigerant } from '../../shared/reference/gwp-of-blend.ts';
+import type { Locale } from '../../shared/session/session.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
 import { csvGrams, csvText } from '../books/csv-table.ts';
 import { inFirm } from '../database/firm-scope.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
+import { columnHead } from '../messages/column-heads.ts';
 import { readFirmMonths } from '../periods/firm-months.repository.ts';
 import { type EmissionRow, readEmissions } from './emission.repository.ts';
 
@@ -144,9 +146,9 @@ const COLUMNS = [
   'beforeOurCareCo2eT',
 ] as const;
 
-export function emissionsCsv({ by, lines, gwpSet }: EmissionsResponse): string {
+export function emissionsCsv({ by, lines, gwpSet }: EmissionsResponse, locale: Locale): string {
   return csvText(
-    [by, ...COLUMNS.slice(1), 'gwpSet'],
+    [by, ...COLUMNS.slice(1), 'gwpSet'].map((name) => columnHead(name, locale)),
     lines.map((line) => [
       ...COLUMNS.map((column) => {
         const cell = line[column];

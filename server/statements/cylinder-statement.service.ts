@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
 import { ASSUMED_SCALE } from '../../shared/ledger/scale.ts';
 import { dayAfter, startOfDay } from '../../shared/periods/month.ts';
+import type { Locale } from '../../shared/session/session.schema.ts';
 import {
   type CylinderStatement,
   STATEMENT_CSV_COLUMNS,
@@ -18,6 +19,7 @@ import { readLabels } from '../entries/place-labels.ts';
 import type { Actor } from '../http/actor.ts';
 import type { Parts } from '../http/parts.ts';
 import { Problem, problemOfRefusals } from '../http/problem.ts';
+import { columnHead } from '../messages/column-heads.ts';
 import { readFirmMonths } from '../periods/firm-months.repository.ts';
 import { type Holders, readHolders } from './cylinder-holder.repository.ts';
 import { readStatementFacts, type StatementFacts } from './cylinder-statement.repository.ts';
@@ -178,8 +180,11 @@ function differenceOf(
 
 const utcOrNull = (at: number | null): string | null => (at === null ? null : new Date(at).toISOString());
 
-export function statementCsv({ lines }: CylinderStatement): string {
-  return csvText(STATEMENT_CSV_COLUMNS, lines.map(csvRow));
+export function statementCsv({ lines }: CylinderStatement, locale: Locale): string {
+  return csvText(
+    STATEMENT_CSV_COLUMNS.map((name) => columnHead(name, locale)),
+    lines.map(csvRow),
+  );
 }
 
 function csvRow(line: StatementLine): CsvCell[] {

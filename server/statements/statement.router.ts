@@ -3,7 +3,6 @@ import { CSV_ANSWER } from '../books/csv-table.ts';
 import { JOURNALLED, JOURNALLED_GET_PROBLEMS, refuseUnasked, sendJournalledCsv } from '../exports/send-csv.ts';
 import { type ApiRoutes, apiRoutes, ok } from '../http/api-routes.ts';
 import type { Parts } from '../http/parts.ts';
-import { withHeads } from '../messages/column-heads.ts';
 import { getStatement, statementCsv } from './cylinder-statement.service.ts';
 
 export function statementRoutes(parts: Parts): ApiRoutes {
@@ -41,7 +40,7 @@ export function statementRoutes(parts: Parts): ApiRoutes {
         document: 'cylinderStatement',
         filters: { cylinderId: params.id, from, to },
         fileName: `statement-${from}-${to}.csv`,
-        text: withHeads(statementCsv(statement), actor.locale),
+        text: statementCsv(statement, actor.locale),
       });
       return undefined;
     },

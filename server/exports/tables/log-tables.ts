@@ -1,27 +1,5 @@
-import { ENTRIES_WITH_LABELS, ENTRY_COLUMNS, ENTRY_COLUMNS_AS_TYPED } from '../../entries/entry-csv.ts';
-import { ENTRY_SORT, entryConditions } from '../../entries/entry-list.repository.ts';
 import { Conditions } from '../../lists/list-query.ts';
-import { type CellKind, type Column, grams, instant, orderOf, type TableOf, typed } from './table.ts';
-
-const ENTRY_KINDS: Readonly<Record<string, CellKind>> = {
-  sequence: 'number',
-  massG: 'number',
-  late: 'boolean',
-  addedByServer: 'boolean',
-  atLeast: 'boolean',
-  occurredAt: 'instant',
-  recordedAt: 'instant',
-};
-
-export const entries: TableOf<'entries'> = (filters) => ({
-  columns: ENTRY_COLUMNS.map(
-    ([name, sql], index): Column => [name, sql, ENTRY_KINDS[name] ?? 'text', ENTRY_COLUMNS_AS_TYPED[index]?.[1]],
-  ),
-  from: ENTRIES_WITH_LABELS,
-  countFrom: 'entry e',
-  conditions: entryConditions(filters),
-  order: ENTRY_SORT[filters.sort].columns.map(({ sql }) => `${sql} ${ENTRY_SORT[filters.sort].direction}`).join(', '),
-});
+import { grams, instant, orderOf, type TableOf, typed } from './table.ts';
 
 export const readings: TableOf<'readings'> = ({ cylinderId, unitId }) => ({
   columns: [

@@ -1,8 +1,8 @@
+import pg from 'pg';
 import type { CreateExportRequest, ExportTable } from '../../../shared/exports/export.schema.ts';
 import type { Locale } from '../../../shared/session/session.schema.ts';
-import { inWords, plain, withValues } from '../../entries/entry-csv.ts';
 import type { Conditions } from '../../lists/list-query.ts';
-import { columnHead } from '../../messages/column-heads.ts';
+import { columnHead, yesOrNo } from '../../messages/column-heads.ts';
 
 /** How a spreadsheet takes a cell; CSV takes the text as it is. */
 export type CellKind = 'text' | 'number' | 'boolean' | 'instant' | 'day';
@@ -25,6 +25,9 @@ export type TableOf<W extends ExportTable> = (
   filters: Extract<CreateExportRequest, { what: W }>['filters'],
 ) => TableRows;
 
+/** A cell that a spreadsheet would run as a formula is made plain text by an apostrophe before it. */
+export const plain = (sql: string): string => `case when ${sql} ~ '^[=+@\\t\\r-]' then '''' || ${sql} else ${sql} end`;
+
 /** What a person typed, defused where a spreadsheet would run it as a formula. */
 export const typed = (name: string, sql: string): Column => [name, plain(sql), 'text', sql];
 export const instant = (name: string, sql: string): Column => [
@@ -39,6 +42,12 @@ export function orderOf(sort: string, columns: readonly string[]): string {
   return columns.map((column) => `${column} ${sort.startsWith('-') ? 'desc' : 'asc'}`).join(', ');
 }
 
+/** Yes or no in words; what is not known stays empty. */
+function inWords(sql: string, locale: Locale): string {
+  const { yes, no } = yesOrNo(locale);
+  return `case when ${sql} then ${pg.escapeLiteral(yes)} when not (${sql}) then ${pg.escapeLiteral(no)} end`;
+}
+
 /** As who takes it out reads it in a spreadsheet: heads in words with their unit, yes and no instead of true and false. */
 export function inWordsOf(rows: TableRows, locale: Locale): TableRows {
   const columns = rows.columns.map(
@@ -51,6 +60,10 @@ export function inWordsOf(rows: TableRows, locale: Locale): TableRows {
   );
   return { ...rows, columns };
 }
+
+/** COPY takes no values, so they are written into the statement, each quoted by the driver. */
+const withValues = ({ sql, values }: Pick<Conditions, 'sql' | 'values'>): string =>
+  sql.replaceAll(/\$(\d+)/g, (_, index) => pg.escapeLiteral(String(values[Number(index) - 1])));
 
 export function selectOf({ columns, from, conditions, order }: TableRows): string {
   const select = columns.map(([name, sql]) => `${sql} as "${name}"`).join(', ');

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { EXPORT_TABLES } from '../../../shared/exports/export.schema.ts';
 import { STATEMENT_CSV_COLUMNS } from '../../../shared/statements/cylinder-statement.schema.ts';
-import { columnHead, withHeads } from '../../messages/column-heads.ts';
+import { columnHead } from '../../messages/column-heads.ts';
 import { inWordsOf } from './table.ts';
 import { tableRows } from './tables.ts';
 
@@ -23,8 +23,7 @@ describe.each(['en-US', 'es-ES'] as const)('The heads of a table in %s', (locale
   it('name the unit of what is measured, and are words in a statement too', () => {
     for (const name of ['massG', 'tareG', 'grossG', 'differenceG', 'twoUG'])
       expect(columnHead(name, locale)).toMatch(/ \(g\)$/);
-    const [head = '', line] = withHeads(`${STATEMENT_CSV_COLUMNS.join(',')}\r\n1,2`, locale).split('\r\n');
-    expect(head.split(',').filter((each) => /[a-z][A-Z]/.test(each))).toEqual([]);
-    expect(line).toBe('1,2');
+    const heads = STATEMENT_CSV_COLUMNS.map((name) => columnHead(name, locale));
+    expect(heads.filter((each) => /[a-z][A-Z]/.test(each))).toEqual([]);
   });
 });

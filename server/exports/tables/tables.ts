@@ -1,6 +1,7 @@
 import { type CreateExportRequest, EXPORT_TABLES, type ExportTable } from '../../../shared/exports/export.schema.ts';
+import { entries } from './entry-table.ts';
 import { cylinders, tools, units } from './equipment-tables.ts';
-import { entries, flags, readings } from './log-tables.ts';
+import { flags, readings } from './log-tables.ts';
 import { customers, parties, people, sites } from './people-tables.ts';
 import { chargeSheets, jobs, journal, periods } from './record-tables.ts';
 import type { TableOf, TableRows } from './table.ts';
