@@ -1,17 +1,9 @@
-import {
-  type BookKind,
-  balancesOf,
-  type Flow,
-  flowsOf,
-  isDifference,
-  type MonthSum,
-} from '../../shared/books/flows.ts';
+import { type BookKind, balancesOf, type Flow, flowsOf, isDifference } from '../../shared/books/flows.ts';
 import type { FiltersOf } from '../../shared/exports/export.schema.ts';
 import { gramsOfMicrograms } from '../../shared/units/mass.ts';
+import { readPeriodSums } from '../books/month-sum.repository.ts';
 import { getEmissions } from '../emissions/emission.service.ts';
 import { type DocumentFrame, openPaper } from './document-frame.ts';
-
-type Sum = MonthSum & { refrigerant: string; isBefore: boolean };
 
 /** The books of some months: for each refrigerant what was on hand, what moved, where to, and what nobody can explain. */
 export async function periodReport(
@@ -20,7 +12,7 @@ export async function periodReport(
 ): Promise<number | null> {
   const { words, manager, parts, actor, firm } = frame;
   const emissions = await getEmissions(parts, actor, { from, to, by: 'refrigerant' });
-  const sums = await readSums(frame, to, from);
+  const books = await readBooks(frame, { from, to });
   const closed = await manager.query<{ month: string; closedAt: Date; name: string | null }[]>(
     `select p.month, p.closed_at as "closedAt", n.name from period p left join person n on n.id = p.closed_by
        where p.month between $1 and $2 order by p.month`,
@@ -37,13 +29,11 @@ export async function periodReport(
         by: name ?? '',
       }),
     );
-  const refrigerants = [...new Set(sums.map(({ refrigerant }) => refrigerant))].sort();
-  if (refrigerants.length === 0) paper.paragraph(words.say('period.nothing'));
+  if (books.length === 0) paper.paragraph(words.say('period.nothing'));
   let lines = 0;
-  for (const refrigerant of refrigerants) {
-    const own = sums.filter((sum) => sum.refrigerant === refrigerant);
-    const flows = flowsOf(own.filter(({ isBefore }) => !isBefore));
-    const [before, after] = [balancesOf(own.filter(({ isBefore }) => isBefore)), balancesOf(own)];
+  for (const { refrigerant, ...sums } of books) {
+    const flows = flowsOf(sums.during);
+    const [before, after] = [balancesOf(sums.before), balancesOf([...sums.before, ...sums.during])];
     const emitted = emissions.lines.find((line) => line.refrigerant === refrigerant);
     const gwp = emitted?.gwp ?? null;
     const tonnes = (co2eT: number | null | undefined) =>
@@ -105,25 +95,15 @@ export async function periodReport(
   return lines;
 }
 
-async function readSums({ manager }: DocumentFrame, to: string, from: string): Promise<Sum[]> {
-  const rows = await manager.query<
-    (Omit<Sum, 'massMicrograms' | 'reversalMicrograms' | 'entryCount'> & {
-      mass: string;
-      reversal: string;
-      entryCount: string;
-    })[]
-  >(
-    `select refrigerant, from_kind as "fromKind", to_kind as "toKind", month < $2 as "isBefore",
-        sum(mass_micrograms)::text as mass, sum(reversal_micrograms)::text as reversal, sum(entry_count)::text as "entryCount"
-      from month_sum where month <= $1 group by 1, 2, 3, 4`,
-    [to, from],
-  );
-  return rows.map(({ mass, reversal, entryCount, ...row }) => ({
-    ...row,
-    massMicrograms: BigInt(mass),
-    reversalMicrograms: BigInt(reversal),
-    entryCount: Number(entryCount),
-  }));
+/** The books of each refrigerant that anything was posted of until the end of the months, in their order of name. */
+async function readBooks({ manager }: DocumentFrame, period: { from: string; to: string }) {
+  const { refrigerants } = await readPeriodSums(manager, period);
+  const books = [];
+  for (const refrigerant of refrigerants.sort()) {
+    const { before, during } = await readPeriodSums(manager, { ...period, refrigerant });
+    if (before.length + during.length > 0) books.push({ refrigerant, before, during });
+  }
+  return books;
 }
 
 /** What is looked at first. */

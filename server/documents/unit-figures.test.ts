@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import type { EntryRow } from '../../shared/entries/entry.schema.ts';
 import type { Unit } from '../../shared/unit-register/unit.schema.ts';
 import { loadReferenceData } from '../reference/load-reference-data.ts';
-import { factoryChargeG, isFluorinatedGas, isGwpFromMemory } from './unit-figures.ts';
+import { factoryChargeG, findGwp, isFluorinatedGas } from './unit-figures.ts';
 
 const reference = loadReferenceData();
 const unit = { id: 'u', refrigerant: 'R-454B' } as Unit;
@@ -36,7 +36,7 @@ describe('A fluorinated greenhouse gas', () => {
 
 describe('A GWP', () => {
   it('says where a component of it is from memory', () => {
-    expect(isGwpFromMemory(reference, 'R-454B', 'AR4')).toBe(true);
-    expect(isGwpFromMemory(reference, 'R-410A', 'AR4')).toBe(false);
+    expect(findGwp(reference, 'R-454B', 'AR4')?.isFromMemory).toBe(true);
+    expect(findGwp(reference, 'R-410A', 'AR4')?.isFromMemory).toBe(false);
   });
 });

@@ -1,27 +1,27 @@
-import { co2e } from '../../shared/co2e/co2e.ts';
+import { asReturned } from '../../shared/calculations/decimals.ts';
+import { tonnesCo2e } from '../../shared/co2e/co2e.ts';
 import type { EntryRow } from '../../shared/entries/entry.schema.ts';
 import type { GwpSet } from '../../shared/reference/gwp.ts';
 import { gwpOfRefrigerant } from '../../shared/reference/gwp-of-blend.ts';
 import type { ReferenceData } from '../../shared/reference/reference-data.ts';
 import type { Unit } from '../../shared/unit-register/unit.schema.ts';
 
-/** Null where the set gives this refrigerant no value. */
-export function findGwp(reference: ReferenceData, refrigerant: string, gwpSet: GwpSet): number | null {
-  const outcome = co2e({ refrigerant, massG: 1000, gwpSet }, reference);
-  return outcome.ok ? outcome.value.gwpValue : null;
-}
-
-/** Whether a component's value that the GWP rests on is from memory, still to be confirmed. */
-export function isGwpFromMemory(reference: ReferenceData, refrigerant: string, gwpSet: GwpSet): boolean {
+/** Null where the set gives this refrigerant no value. `isFromMemory`: a component's value that it rests on is still to be confirmed. */
+export function findGwp(
+  reference: ReferenceData,
+  refrigerant: string,
+  gwpSet: GwpSet,
+): { value: number; isFromMemory: boolean } | null {
   const found = gwpOfRefrigerant(reference, refrigerant, gwpSet);
-  return found.ok && found.value.status === 'memory';
+  if (!found.ok) return null;
+  return { value: asReturned(found.value.gwp, 'GWP'), isFromMemory: found.value.status === 'memory' };
 }
 
 /** t CO2 equivalent of the full charge, else of a known book. */
 export function tonnesOfUnit(reference: ReferenceData, unit: Unit, gwpSet: GwpSet): number | null {
   const massG = unit.fullCharge?.massG ?? (unit.book.known ? unit.book.massG : null);
-  const gwp = findGwp(reference, unit.refrigerant, gwpSet);
-  return massG === null || gwp === null ? null : (massG * gwp) / 1e6;
+  const gwp = findGwp(reference, unit.refrigerant, gwpSet)?.value ?? null;
+  return massG === null || gwp === null ? null : tonnesCo2e(massG, gwp);
 }
 
 /** Of the types that Regulation (EU) 2024/573, Annexes I and II, lists; R-22 and R-123 fall under (EU) 2024/590. */

@@ -6,7 +6,7 @@ import { getUnit } from '../units/unit.service.ts';
 import { type DocumentFrame, openPaper } from './document-frame.ts';
 import { entryColumns, entryTableRow } from './entry-rows.ts';
 import type { Paper } from './paper.ts';
-import { factoryChargeG, findGwp, isFluorinatedGas, isGwpFromMemory, tonnesOfUnit } from './unit-figures.ts';
+import { factoryChargeG, findGwp, isFluorinatedGas, tonnesOfUnit } from './unit-figures.ts';
 
 const PAGE = 200;
 
@@ -119,7 +119,8 @@ export async function chargeLabel(frame: DocumentFrame, unitId: string): Promise
   const last = entries.findLast(({ to, addedByServer }) => to.id === unitId && !addedByServer);
   // The label's GWP is that of Regulation (EU) 2024/573 where the machine stands under it.
   const gwpSet = site?.jurisdiction === 'EU' ? 'EU-2024-573' : firm.gwpSet;
-  const gwp = findGwp(parts.reference, unit.refrigerant, gwpSet);
+  const found = findGwp(parts.reference, unit.refrigerant, gwpSet);
+  const gwp = found?.value ?? null;
   const kilograms = (massG: number | null) => (massG === null ? null : `${words.number(massG / 1000, 3)} kg`);
   const subject = `${unit.tag}, ${unit.name}, ${unit.siteName}`;
   const paper = await openPaper(frame, { title: words.say('label.title'), subject, link: `/units/${unitId}` });
@@ -154,7 +155,7 @@ export async function chargeLabel(frame: DocumentFrame, unitId: string): Promise
   });
   paper.line(`CO₂e  ${tonnes ?? '________ t'}`, at(170), paper.y, { face: 'strong', size: 13 });
   paper.y += 24;
-  const gwpNote = isGwpFromMemory(parts.reference, unit.refrigerant, gwpSet) ? 'label.gwpFromMemory' : 'label.gwpSet';
+  const gwpNote = found?.isFromMemory ? 'label.gwpFromMemory' : 'label.gwpSet';
   paper.line(words.say(gwpNote, { set: gwpSet }), at(0), paper.y, { size: 9 });
   paper.y += 20;
   paper.line(
