@@ -1,6 +1,7 @@
 import { infiniteQueryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import type { z } from 'zod';
 import type { createExportRequest, ExportFormat, ExportView, ExportWhat } from '../../shared/exports/export.schema.ts';
+import { isExportOfRoles } from '../../shared/permissions/export-rights.ts';
 import { http, queryString } from './http.ts';
 import { keysetPages, type PageOf } from './page.ts';
 import { useSession } from './session.ts';
@@ -52,27 +53,12 @@ export function exportPath(what: ExportWhat, filters: object = {}, format?: Expo
   return `/exports${queryString({ what, format, ...set })}`;
 }
 
-/** Tables and papers that who only reads may take out; the server holds it besides. */
-const FOR_READERS: ReadonlySet<ExportWhat> = new Set([
-  'entries',
-  'units',
-  'sites',
-  'customers',
-  'unitLog',
-  'jobRecord',
-]);
-/** Papers of the work in hand. */
-const FOR_TECHNICIANS: ReadonlySet<ExportWhat> = new Set(['unitLog', 'jobRecord', 'cylinderStatement']);
-
 /** `exportPath` for who may take this out; null for everybody else, who is not led there. */
 export function useExportPath(...[what, filters, format]: Parameters<typeof exportPath>): string | null {
   const session = useSession();
   if (!session) return null;
   const { permissions, roles } = session;
-  const may =
-    permissions.includes('exports:make') ||
-    (roles.every((role) => role === 'reader') && FOR_READERS.has(what)) ||
-    (roles.includes('technician') && FOR_TECHNICIANS.has(what));
+  const may = permissions.includes('exports:make') || isExportOfRoles(roles, what);
   return may ? exportPath(what, filters, format) : null;
 }
 
