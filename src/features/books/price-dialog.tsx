@@ -2,17 +2,15 @@ import { useState } from 'react';
 import { addPriceRequest, type PurchaseRow } from '../../../shared/books/books.schema.ts';
 import { MASS_FACTORS } from '../../../shared/units/factors.ts';
 import { useAddPrice } from '../../api/books.ts';
-import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../api/form-errors.ts';
+import { answerErrors, errorAt, type FormError, schemaErrors } from '../../api/form-errors.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
 import { newId } from '../../lib/new-id.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { AmountInput, amountDraft, readAmount } from '../../ui/amount-input.tsx';
-import { Button } from '../../ui/button.tsx';
-import { Dialog } from '../../ui/dialog.tsx';
-import { ChoiceField, FieldError, TextField } from '../../ui/field.tsx';
+import { ChoiceField, TextField } from '../../ui/field.tsx';
 import { money } from './book-words.ts';
-import { useOpens } from './use-opens.ts';
+import { DialogForm } from './dialog-form.tsx';
 
 const SHOWN = ['/price/value', '/currency'];
 
@@ -30,7 +28,6 @@ export function PriceDialog({
   const format = useFormat();
   const { locale, mass } = usePreferences();
   const add = useAddPrice();
-  const opens = useOpens();
   const [id] = useState(newId);
   const [draft, setDraft] = useState(() => amountDraft(purchase.price?.value, locale));
   const [per, setPer] = useState<'kg' | 'lb'>(purchase.price?.per ?? (mass === 'lbOz' || mass === 'oz' ? 'lb' : 'kg'));
@@ -52,67 +49,51 @@ export function PriceDialog({
     add.mutate(body, { onSuccess: onClose, onError: (error) => setErrors(answerErrors(error)) });
   };
   return (
-    <Dialog
-      open={opens}
-      onClose={onClose}
+    <DialogForm
       title={t('books.price.title', { refrigerant: purchase.refrigerant, supplier: purchase.supplierName })}
-      actions={
-        <>
-          <Button kind="act" busy={add.isPending} onClick={send}>
-            {value === null
-              ? t('books.price.keep')
-              : t('books.price.keepOf', {
-                  cost: money(locale, Number(value) * massOf, currencyOf(currencyText, currency)),
-                })}
-          </Button>
-          <Button onClick={onClose}>{t('books.cancel')}</Button>
-        </>
+      act={
+        value === null
+          ? t('books.price.keep')
+          : t('books.price.keepOf', { cost: money(locale, Number(value) * massOf, currencyOf(currencyText, currency)) })
       }
+      busy={add.isPending}
+      errors={errors}
+      shown={SHOWN}
+      onSend={send}
+      onClose={onClose}
     >
-      <form
-        noValidate
-        className="flex flex-col gap-4"
-        onSubmit={(event) => {
-          event.preventDefault();
-          send();
-        }}
-      >
-        <p className="text-ink-soft">
-          {t('books.price.lead', {
-            mass: format.mass(purchase.massG),
-            paper: purchase.documentNumber ?? t('books.price.noPaper'),
-          })}
-        </p>
-        <AmountInput
-          label={t('books.price.value')}
-          draft={draft}
-          error={errorAt(errors, '/price/value') ? t('books.price.valueNeeded') : undefined}
-          onChange={setDraft}
-        />
-        <ChoiceField
-          label={t('books.price.per')}
-          name="per"
-          value={per}
-          choices={[
-            { value: 'kg', label: t('books.price.per.kg') },
-            { value: 'lb', label: t('books.price.per.lb') },
-          ]}
-          onChange={(unit) => setPer(unit === 'lb' ? 'lb' : 'kg')}
-        />
-        <TextField
-          label={t('books.price.currency')}
-          hint={t('books.price.currency.hint')}
-          autoComplete="off"
-          maxLength={3}
-          value={currencyText}
-          error={errorAt(errors, '/currency')}
-          onChange={({ target }) => setCurrencyText(target.value)}
-        />
-        {errorsElsewhere(errors, SHOWN).map((message) => (
-          <FieldError key={message}>{message}</FieldError>
-        ))}
-      </form>
-    </Dialog>
+      <p className="text-ink-soft">
+        {t('books.price.lead', {
+          mass: format.mass(purchase.massG),
+          paper: purchase.documentNumber ?? t('books.price.noPaper'),
+        })}
+      </p>
+      <AmountInput
+        label={t('books.price.value')}
+        draft={draft}
+        error={errorAt(errors, '/price/value') ? t('books.price.valueNeeded') : undefined}
+        onChange={setDraft}
+      />
+      <ChoiceField
+        label={t('books.price.per')}
+        name="per"
+        value={per}
+        choices={[
+          { value: 'kg', label: t('books.price.per.kg') },
+          { value: 'lb', label: t('books.price.per.lb') },
+        ]}
+        onChange={(unit) => setPer(unit === 'lb' ? 'lb' : 'kg')}
+      />
+      <TextField
+        label={t('books.price.currency')}
+        hint={t('books.price.currency.hint')}
+        autoComplete="off"
+        maxLength={3}
+        value={currencyText}
+        error={errorAt(errors, '/currency')}
+        onChange={({ target }) => setCurrencyText(target.value)}
+      />
+    </DialogForm>
   );
 }
 

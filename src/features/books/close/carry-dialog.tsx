@@ -1,18 +1,15 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { carryRequest, type OpenItem } from '../../../../shared/periods/periods.schema.ts';
-import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../../api/form-errors.ts';
+import { answerErrors, errorAt, type FormError, schemaErrors } from '../../../api/form-errors.ts';
 import { peopleQueries } from '../../../api/people.ts';
 import { useCarryItems } from '../../../api/periods.ts';
 import { usePermission, useSession } from '../../../api/session.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { newId } from '../../../lib/new-id.ts';
-import { Button } from '../../../ui/button.tsx';
-import { Dialog } from '../../../ui/dialog.tsx';
-import { FieldError, SelectField, TextField } from '../../../ui/field.tsx';
-import { useFocusFirstError } from '../../../ui/focus-first-error.ts';
-import { useOpens } from '../use-opens.ts';
+import { SelectField, TextField } from '../../../ui/field.tsx';
+import { DialogForm } from '../dialog-form.tsx';
 import { itemTitle } from './item-words.ts';
 
 const SHOWN = ['/carriedBy', '/reason'];
@@ -33,12 +30,10 @@ export function CarryDialog({
   const seesPeople = usePermission('people:read');
   const people = useQuery({ ...peopleQueries.everybody(), enabled: seesPeople });
   const carry = useCarryItems();
-  const opens = useOpens();
   const [ids] = useState(() => items.map(newId));
   const [carriedBy, setCarriedBy] = useState(() => lastHands(items) ?? session?.person.id ?? '');
   const [reason, setReason] = useState('');
   const [errors, setErrors] = useState<FormError[]>([]);
-  useFocusFirstError(errors);
   const known = people.data?.filter(({ active, id }) => active || id === carriedBy) ?? [];
   const choices =
     known.length > 0
@@ -60,54 +55,38 @@ export function CarryDialog({
     carry.mutate(body, { onSuccess: onClose, onError: (error) => setErrors(answerErrors(error)) });
   };
   return (
-    <Dialog
-      open={opens}
-      onClose={onClose}
+    <DialogForm
       title={t('books.carry.title', { count: items.length })}
-      actions={
-        <>
-          <Button kind="act" busy={carry.isPending} onClick={send}>
-            {t('books.carry.act', { who: name })}
-          </Button>
-          <Button onClick={onClose}>{t('books.cancel')}</Button>
-        </>
-      }
+      act={t('books.carry.act', { who: name })}
+      busy={carry.isPending}
+      errors={errors}
+      shown={SHOWN}
+      onSend={send}
+      onClose={onClose}
     >
-      <form
-        noValidate
-        className="flex flex-col gap-4"
-        onSubmit={(event) => {
-          event.preventDefault();
-          send();
-        }}
-      >
-        <ul className="max-h-48 overflow-y-auto border-y border-rule">
-          {items.map((item) => (
-            <li key={item.key} className="border-b border-rule-faint py-1.5 last:border-0">
-              {itemTitle(t, format, item)}
-            </li>
-          ))}
-        </ul>
-        <p className="text-[0.9375rem] text-ink-soft">{t('books.carry.lead')}</p>
-        <SelectField
-          label={t('books.carry.who')}
-          value={carriedBy}
-          choices={choices}
-          error={errorAt(errors, '/carriedBy')}
-          onChange={({ target }) => setCarriedBy(target.value)}
-        />
-        <TextField
-          label={t('books.carry.reason')}
-          maxLength={500}
-          value={reason}
-          error={errorAt(errors, '/reason') ? t('books.reasonNeeded') : undefined}
-          onChange={({ target }) => setReason(target.value)}
-        />
-        {errorsElsewhere(errors, SHOWN).map((message) => (
-          <FieldError key={message}>{message}</FieldError>
+      <ul className="max-h-48 overflow-y-auto border-y border-rule">
+        {items.map((item) => (
+          <li key={item.key} className="border-b border-rule-faint py-1.5 last:border-0">
+            {itemTitle(t, format, item)}
+          </li>
         ))}
-      </form>
-    </Dialog>
+      </ul>
+      <p className="text-[0.9375rem] text-ink-soft">{t('books.carry.lead')}</p>
+      <SelectField
+        label={t('books.carry.who')}
+        value={carriedBy}
+        choices={choices}
+        error={errorAt(errors, '/carriedBy')}
+        onChange={({ target }) => setCarriedBy(target.value)}
+      />
+      <TextField
+        label={t('books.carry.reason')}
+        maxLength={500}
+        value={reason}
+        error={errorAt(errors, '/reason') ? t('books.reasonNeeded') : undefined}
+        onChange={({ target }) => setReason(target.value)}
+      />
+    </DialogForm>
   );
 }
 

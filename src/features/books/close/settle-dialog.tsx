@@ -1,18 +1,16 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { type OpenItem, SETTLED_TO, settleRequest } from '../../../../shared/periods/periods.schema.ts';
-import { answerErrors, errorAt, errorsElsewhere, type FormError, schemaErrors } from '../../../api/form-errors.ts';
+import { answerErrors, errorAt, type FormError, schemaErrors } from '../../../api/form-errors.ts';
 import { partyQueries } from '../../../api/parties.ts';
 import { useSettleDifference } from '../../../api/periods.ts';
 import { useDraft } from '../../../lib/draft.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { newId } from '../../../lib/new-id.ts';
-import { Button, ButtonLink } from '../../../ui/button.tsx';
-import { Dialog } from '../../../ui/dialog.tsx';
-import { FieldError, SelectField, TextField } from '../../../ui/field.tsx';
-import { useFocusFirstError } from '../../../ui/focus-first-error.ts';
-import { useOpens } from '../use-opens.ts';
+import { ButtonLink } from '../../../ui/button.tsx';
+import { SelectField, TextField } from '../../../ui/field.tsx';
+import { DialogForm } from '../dialog-form.tsx';
 import { itemDetail, itemTitle } from './item-words.ts';
 import { RadioList } from './radio-list.tsx';
 
@@ -40,7 +38,6 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
     ...SETTLED_TO.filter((place) => !(isSurplus && place === 'atmosphere')),
     ...(difference.subject.kind === 'cylinder' ? (['wrongTare'] as const) : []),
   ];
-  const opens = useOpens();
   const [draft, setDraft, clear] = useDraft<Draft>(`settle.${month}.${item.key}`, () => ({
     id: newId(),
     answer: difference.kind === 'supplierShortFill' ? 'supplier' : '',
@@ -50,7 +47,6 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
   const set = (change: Partial<Draft>) => setDraft((now) => ({ ...now, ...change }));
   const { answer, supplierId } = draft;
   const [errors, setErrors] = useState<FormError[]>([]);
-  useFocusFirstError(errors);
   const suppliers = useQuery({ ...partyQueries.choice('supplier'), enabled: answer === 'supplier' });
   const mass = format.mass(Math.abs(difference.standsG));
   const send = () => {
@@ -72,72 +68,57 @@ export function SettleDialog({ month, item, onClose }: { month: string; item: Di
     });
   };
   return (
-    <Dialog
-      open={opens}
-      onClose={onClose}
+    <DialogForm
       title={itemTitle(t, format, item)}
-      actions={
+      act={answer === '' || answer === 'wrongTare' ? t('books.settle.act') : t(`books.settle.act.${answer}`, { mass })}
+      busy={settle.isPending}
+      instead={
         answer === 'wrongTare' ? (
           <ButtonLink kind="act" to={`/cylinders/${difference.subject.id}`}>
             {t('books.settle.toTare', { cylinder: difference.subject.label })}
           </ButtonLink>
-        ) : (
-          <>
-            <Button kind="act" busy={settle.isPending} onClick={send}>
-              {answer === '' ? t('books.settle.act') : t(`books.settle.act.${answer}`, { mass })}
-            </Button>
-            <Button onClick={onClose}>{t('books.cancel')}</Button>
-          </>
-        )
+        ) : null
       }
+      errors={errors}
+      shown={SHOWN}
+      onSend={send}
+      onClose={onClose}
     >
-      <form
-        noValidate
-        className="flex flex-col gap-4"
-        onSubmit={(event) => {
-          event.preventDefault();
-          send();
+      <p className="text-ink-soft">{itemDetail(t, format, item, difference.timeZone)}</p>
+      <RadioList
+        name="settled-to"
+        legend={t('books.settle.what')}
+        value={answer}
+        error={errorAt(errors, '/to/place') ?? errors.find(({ pointer }) => pointer === '/to')?.message}
+        choices={answers.map((value) => ({
+          value,
+          label: t(`books.settle.to.${value}`),
+          hint: t(`books.settle.to.${value}.hint`),
+        }))}
+        onChange={(value) => {
+          set({ answer: value as Answer });
+          setErrors([]);
         }}
-      >
-        <p className="text-ink-soft">{itemDetail(t, format, item, difference.timeZone)}</p>
-        <RadioList
-          name="settled-to"
-          legend={t('books.settle.what')}
-          value={answer}
-          error={errorAt(errors, '/to/place') ?? errors.find(({ pointer }) => pointer === '/to')?.message}
-          choices={answers.map((value) => ({
-            value,
-            label: t(`books.settle.to.${value}`),
-            hint: t(`books.settle.to.${value}.hint`),
-          }))}
-          onChange={(value) => {
-            set({ answer: value as Answer });
-            setErrors([]);
-          }}
+      />
+      {answer === 'supplier' ? (
+        <SelectField
+          label={t('books.settle.supplier')}
+          placeholder={t('books.settle.supplier.choose')}
+          value={supplierId}
+          choices={suppliers.data?.map((party) => ({ value: party.id, label: party.name })) ?? []}
+          error={errorAt(errors, '/to/id')}
+          onChange={({ target }) => set({ supplierId: target.value })}
         />
-        {answer === 'supplier' ? (
-          <SelectField
-            label={t('books.settle.supplier')}
-            placeholder={t('books.settle.supplier.choose')}
-            value={supplierId}
-            choices={suppliers.data?.map((party) => ({ value: party.id, label: party.name })) ?? []}
-            error={errorAt(errors, '/to/id')}
-            onChange={({ target }) => set({ supplierId: target.value })}
-          />
-        ) : null}
-        {answer === 'wrongTare' ? null : (
-          <TextField
-            label={t('books.settle.reason')}
-            maxLength={500}
-            value={draft.reason}
-            error={errorAt(errors, '/reason') ? t('books.reasonNeeded') : undefined}
-            onChange={({ target }) => set({ reason: target.value })}
-          />
-        )}
-        {errorsElsewhere(errors, SHOWN).map((message) => (
-          <FieldError key={message}>{message}</FieldError>
-        ))}
-      </form>
-    </Dialog>
+      ) : null}
+      {answer === 'wrongTare' ? null : (
+        <TextField
+          label={t('books.settle.reason')}
+          maxLength={500}
+          value={draft.reason}
+          error={errorAt(errors, '/reason') ? t('books.reasonNeeded') : undefined}
+          onChange={({ target }) => set({ reason: target.value })}
+        />
+      )}
+    </DialogForm>
   );
 }
