@@ -1,17 +1,18 @@
-import { type RefObject, useLayoutEffect, useMemo, useRef, useState } from 'react';
+import { useMemo, useRef, useState } from 'react';
 import type { BooksResponse } from '../../../shared/books/books.schema.ts';
 import { MASS_FACTORS } from '../../../shared/units/factors.ts';
 import { type Formats, useFormat } from '../../lib/format.ts';
 import { type Translate, useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
 import { textWidth } from '../../ui/beam/text-width.ts';
+import { DrawnPart } from '../../ui/drawn-part.tsx';
+import { Hatch } from '../../ui/hatch.tsx';
+import { useWidth } from '../../ui/use-width.ts';
 import { bookMass, partWords } from './book-words.ts';
 import { type FlowKind, type FlowPart, flowSides } from './flow-parts.ts';
 import { FlowReadout } from './flow-readout.tsx';
 import { type LaidFlow, type LaidRibbon, layOutFlow } from './lay-out-flow.ts';
 
-/** Before the place has been measured, and where nothing can be (tests). */
-const USUAL_WIDTH = 324;
 const NAME_PX = 14;
 
 /**
@@ -61,7 +62,7 @@ export function FlowPicture({ books }: { books: BooksResponse }) {
         className="block w-full overflow-visible"
         style={{ fontSize: NAME_PX, letterSpacing: '0.012em' }}
       >
-        <Hatch />
+        <Hatch id="flow-hatch" className="fill-ink-soft" />
         {layout.ribbons.map((ribbon) => (
           <Ribbon
             key={ribbon.part.key}
@@ -102,16 +103,6 @@ const FILL: Record<FlowKind, string> = {
   open: 'fill-ink',
 };
 
-function Hatch() {
-  return (
-    <defs>
-      <pattern id="flow-hatch" width="4" height="4" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
-        <rect width="1.6" height="4" className="fill-ink-soft" />
-      </pattern>
-    </defs>
-  );
-}
-
 interface RibbonProps {
   ribbon: LaidRibbon;
   layout: LaidFlow;
@@ -124,7 +115,7 @@ interface RibbonProps {
   onPin: () => void;
 }
 
-/** One flow with its words, read by pointing at it, by the Tab key, or with a press that keeps it. */
+/** One flow with its words. */
 function Ribbon({ ribbon, layout, dimmed, isPinned, words, figure, label, onPoint, onPin }: RibbonProps) {
   const { part, side, outer, labelY, path } = ribbon;
   const atLeft = side === 'left';
@@ -135,23 +126,11 @@ function Ribbon({ ribbon, layout, dimmed, isPinned, words, figure, label, onPoin
   const anchor = atLeft ? 'end' : 'start';
   const firstY = labelY - (lines.length - 1) * 8;
   return (
-    // biome-ignore lint/a11y/useSemanticElements: a part of a drawing; SVG has no button
-    <g
-      role="button"
-      tabIndex={0}
-      aria-label={label}
-      aria-pressed={isPinned}
-      className="group cursor-pointer outline-none"
-      onPointerEnter={() => onPoint(part.key)}
-      onPointerLeave={() => onPoint(null)}
-      onFocus={() => onPoint(part.key)}
-      onBlur={() => onPoint(null)}
-      onClick={onPin}
-      onKeyDown={(event) => {
-        if (event.key !== 'Enter' && event.key !== ' ') return;
-        event.preventDefault();
-        onPin();
-      }}
+    <DrawnPart
+      label={label}
+      isPinned={isPinned}
+      onPoint={(isPointed) => onPoint(isPointed ? part.key : null)}
+      onPin={onPin}
     >
       <path
         d={path}
@@ -184,7 +163,7 @@ function Ribbon({ ribbon, layout, dimmed, isPinned, words, figure, label, onPoin
           {line}
         </text>
       ))}
-    </g>
+    </DrawnPart>
   );
 }
 
@@ -243,18 +222,4 @@ function wrapped(text: string, width: number): string[] {
   const cuts = words.slice(1).map((_, cut) => [words.slice(0, cut + 1).join(' '), words.slice(cut + 1).join(' ')]);
   const widest = (lines: string[]) => Math.max(...lines.map((line) => textWidth(line, NAME_PX)));
   return cuts.sort((a, b) => widest(a) - widest(b))[0] ?? [text];
-}
-
-function useWidth(ref: RefObject<HTMLElement | null>): number {
-  const [width, setWidth] = useState(USUAL_WIDTH);
-  useLayoutEffect(() => {
-    const element = ref.current;
-    if (!element || typeof ResizeObserver === 'undefined') return;
-    const measure = () => setWidth(Math.floor(element.clientWidth) || USUAL_WIDTH);
-    measure();
-    const observer = new ResizeObserver(measure);
-    observer.observe(element);
-    return () => observer.disconnect();
-  }, [ref]);
-  return width;
 }

@@ -1,6 +1,7 @@
 import { memo, useLayoutEffect, useMemo, useRef, useState } from 'react';
 import { useMessages } from '../../lib/messages.ts';
 import { usePreferences } from '../../lib/preferences.ts';
+import { Hatch } from '../hatch.tsx';
 import type { BeamSegment, BeamSpec } from './beam-spec.ts';
 import { figureOf } from './figure-of.ts';
 import {
@@ -52,7 +53,7 @@ export const Beam = memo(function Beam({ spec, summary, className = '', inContro
         className={`block w-full overflow-visible ${moves ? '[&_.glide]:transition-transform [&_.glide]:duration-300 [&_.glide]:ease-beam' : ''}`}
         style={{ fontSize: FONT, fontStretch: '78%', fontWeight: 500, letterSpacing: '0.012em' }}
       >
-        <Hatch />
+        <Hatch id="beam-hatch" className="fill-ink-soft" />
         {layout.band ? <Band layout={layout} /> : null}
         <Ticks layout={layout} />
         <Body layout={layout} />
@@ -118,16 +119,6 @@ const FILL: Record<BeamSegment['kind'], string> = {
   gone: 'fill-[url(#beam-hatch)]',
   free: 'fill-transparent stroke-edge',
 };
-
-function Hatch() {
-  return (
-    <defs>
-      <pattern id="beam-hatch" width="4" height="4" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
-        <rect width="1.6" height="4" className="fill-ink-soft" />
-      </pattern>
-    </defs>
-  );
-}
 
 /** The beam itself: thicker at its fulcrum, thinner towards its end, as a steelyard is. */
 function Body({ layout: { left, right, beamY, zeroX } }: { layout: BeamLayout }) {

@@ -1,17 +1,18 @@
-import { useLayoutEffect, useMemo, useRef, useState } from 'react';
+import { useMemo, useRef, useState } from 'react';
 import type { EmissionsResponse } from '../../../../shared/books/emissions.schema.ts';
 import { MASS_FACTORS } from '../../../../shared/units/factors.ts';
 import { useFormat } from '../../../lib/format.ts';
 import { useMessages } from '../../../lib/messages.ts';
 import { usePreferences } from '../../../lib/preferences.ts';
+import { DrawnPart } from '../../../ui/drawn-part.tsx';
+import { Hatch } from '../../../ui/hatch.tsx';
+import { useWidth } from '../../../ui/use-width.ts';
 import { asTitle, bookMass, longMonth } from '../book-words.ts';
 import { type LaidBar, layOutBars, lossesByMonth, type MonthLoss } from './month-bars.ts';
 
 const HEIGHT = 190;
 const TOP = 16;
 const LEFT = 46;
-/** Before the place has been measured, and where nothing can be (tests). */
-const USUAL_WIDTH = 324;
 
 /** Losses by month on hairlines: hatched as all that is gone. Each month is read by pointing, by Tab or with a press. */
 export function EmissionChart({ emissions, from, to }: { emissions: EmissionsResponse; from: string; to: string }) {
@@ -20,16 +21,7 @@ export function EmissionChart({ emissions, from, to }: { emissions: EmissionsRes
   const { mass } = usePreferences();
   const unit = mass === 'lbOz' || mass === 'oz' ? 'lb' : 'kg';
   const ref = useRef<HTMLElement>(null);
-  const [width, setWidth] = useState(USUAL_WIDTH);
-  useLayoutEffect(() => {
-    const element = ref.current;
-    if (!element || typeof ResizeObserver === 'undefined') return;
-    const measure = () => setWidth(Math.floor(element.clientWidth) || USUAL_WIDTH);
-    measure();
-    const observer = new ResizeObserver(measure);
-    observer.observe(element);
-    return () => observer.disconnect();
-  }, []);
+  const width = useWidth(ref);
   const losses = useMemo(() => lossesByMonth(emissions.lines, from, to), [emissions.lines, from, to]);
   const layout = useMemo(
     () => layOutBars(losses, MASS_FACTORS[unit].perUnit.valueOf(), { left: LEFT, width, height: HEIGHT }),
@@ -58,11 +50,7 @@ export function EmissionChart({ emissions, from, to }: { emissions: EmissionsRes
         className="block w-full overflow-visible"
         style={{ fontSize: 13, fontStretch: '78%' }}
       >
-        <defs>
-          <pattern id="loss-hatch" width="4" height="4" patternUnits="userSpaceOnUse" patternTransform="rotate(45)">
-            <rect width="1.6" height="4" className="fill-ink" />
-          </pattern>
-        </defs>
+        <Hatch id="loss-hatch" className="fill-ink" />
         {layout.figures.map(({ value, y }) => (
           // biome-ignore lint/a11y/noAriaHiddenOnFocusable: a g takes no focus
           <g key={value} aria-hidden="true">
@@ -122,23 +110,11 @@ function Bar({
 }) {
   const middle = x + width / 2;
   return (
-    // biome-ignore lint/a11y/useSemanticElements: a part of a drawing; SVG has no button
-    <g
-      role="button"
-      tabIndex={0}
-      aria-label={label}
-      aria-pressed={isPinned}
-      className="group cursor-pointer outline-none"
-      onPointerEnter={() => onPoint(loss.month)}
-      onPointerLeave={() => onPoint(null)}
-      onFocus={() => onPoint(loss.month)}
-      onBlur={() => onPoint(null)}
-      onClick={onPin}
-      onKeyDown={(event) => {
-        if (event.key !== 'Enter' && event.key !== ' ') return;
-        event.preventDefault();
-        onPin();
-      }}
+    <DrawnPart
+      label={label}
+      isPinned={isPinned}
+      onPoint={(isPointed) => onPoint(isPointed ? loss.month : null)}
+      onPin={onPin}
     >
       {/* The whole slot is hit, however low the bar is. */}
       <rect
@@ -170,6 +146,6 @@ function Bar({
           {name}
         </text>
       ) : null}
-    </g>
+    </DrawnPart>
   );
 }
