@@ -1,4 +1,5 @@
 import type { EntryPreviewResponse } from '../../../shared/entry-previews/entry-preview.schema.ts';
+import { FLAG_LEVELS, type FlagCode } from '../../../shared/ledger/flag.ts';
 import { placeWords, reasonWords } from '../../lib/entry-words.ts';
 import { useFormat } from '../../lib/format.ts';
 import { useMessages } from '../../lib/messages.ts';
@@ -9,14 +10,6 @@ import type { Answers, FormContext, FullAnswer } from './answers.ts';
 import { BalanceBeams } from './balance-beams.tsx';
 import { FULL_ANSWERS } from './questions/plain-questions.tsx';
 import { RadioLines } from './radio-lines.tsx';
-
-const DANGERS = new Set([
-  'cylinderMixed',
-  'nonRefillableRefilled',
-  'cylinderOverLimit',
-  'cylinderPressureTooHigh',
-  'cylinderFilledPastRetest',
-]);
 
 /** What would be posted, in words and on beams, the question it asks and the reason it needs; nothing of it is stored. */
 export function PreviewPanel({
@@ -110,7 +103,7 @@ export function PreviewPanel({
         <section aria-label={t('record.preview.flags')} className="flex flex-col gap-2">
           <h3 className="type-label text-ink-soft">{t('record.preview.flags')}</h3>
           {flags.map((flag) =>
-            DANGERS.has(flag.code) ? (
+            FLAG_LEVELS[flag.code as FlagCode] === 'danger' ? (
               <Caution key={`${flag.code} ${flag.subject.id} ${flag.refrigerant}`} signal="danger">
                 {flag.message}
               </Caution>
