@@ -12,8 +12,10 @@ export interface PackedRow {
   isWhole: boolean;
 }
 
-/** `e` is an entry; $1 to $6 as `valuesOf` gives them. */
-/** Of a customer's units what happened at the customer's sites alone: before or after, they stood elsewhere. */
+/**
+ * `e` is an entry; $1 to $6 as `valuesOf` gives them. Of a customer's units what happened at the customer's sites alone:
+ * before or after, they stood elsewhere.
+ */
 const OWN_ENTRY = `((cardinality($2::uuid[]) = 0 and e.unit_id = any ($1::uuid[])) or ${siteThen('e')} = any ($2::uuid[])
   or e.from_id = any ($3::uuid[]) or e.to_id = any ($3::uuid[])
   or (e.occurred_at >= $5::timestamptz and e.occurred_at < $6::timestamptz))`;

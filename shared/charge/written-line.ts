@@ -70,7 +70,7 @@ export function writtenLines(steps: readonly Step[], units: LineUnits, writer: L
 }
 
 function isFormula({ expression }: Step): boolean {
-  if (/^(round|ceil|floor)\(-?[\d.]+ g \/|<=/.test(expression) || / <= /.test(expression)) return false;
+  if (/^(round|ceil|floor)\(-?[\d.]+ g \/|<=/.test(expression)) return false;
   const parts = readWorking(expression);
   return parts === null || !parts.some((part) => typeof part === 'object' && part.unit.startsWith('g'));
 }
