@@ -65,7 +65,7 @@ export async function jobRecord(frame: DocumentFrame, jobId: string): Promise<nu
       entryColumns(words),
       entries.map((entry) => entryTableRow(words, entry)),
     );
-  readingsOf(frame, paper, groups, await readTimes(frame, groups));
+  readingsOf(frame, paper, groups);
   statementsOf(frame, paper, groups);
   paper.heading(words.say('jobRecord.signed'));
   paper.facts([
@@ -89,21 +89,7 @@ async function sheetsOf({ manager }: DocumentFrame, jobId: string) {
   return sheets;
 }
 
-/** When each was read: a weigh-in that stayed open was read again hours later. */
-async function readTimes({ manager }: DocumentFrame, groups: readonly GroupView[]): Promise<Map<string, Date>> {
-  const rows = await manager.query<{ id: string; readAt: Date }[]>(
-    'select id, read_at as "readAt" from reading where group_id = any ($1)',
-    [groups.map(({ id }) => id)],
-  );
-  return new Map(rows.map(({ id, readAt }) => [id, readAt]));
-}
-
-function readingsOf(
-  { words }: DocumentFrame,
-  paper: Paper,
-  groups: readonly GroupView[],
-  times: ReadonlyMap<string, Date>,
-): void {
+function readingsOf({ words }: DocumentFrame, paper: Paper, groups: readonly GroupView[]): void {
   const readings = groups.flatMap((group) => group.readings.map((reading) => ({ group, reading })));
   if (readings.length === 0) return;
   paper.heading(words.say('jobRecord.readings'));
@@ -119,7 +105,7 @@ function readingsOf(
     readings.map(({ group, reading }) => ({
       struck: group.reversedByGroupId !== null,
       cells: [
-        words.instant(times.get(reading.id) ?? group.occurredAt, group.timeZone),
+        words.instant(reading.readAt, group.timeZone),
         reading.cylinderTag,
         words.say(`moment.${reading.moment}`),
         `${reading.value} ${reading.unit}`,

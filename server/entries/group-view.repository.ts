@@ -28,7 +28,7 @@ const GROUP = `select g.id, g.sequence::text, g.kind, g.occurred_at as "occurred
     encode(j.hash, 'hex') as hash, encode(b.hash, 'hex') as "previousHash",
     (select coalesce(json_agg(json_build_object('id', r.id, 'cylinderId', r.cylinder_id, 'cylinderTag', coalesce(c.tag, ''),
         'toolId', r.tool_id, 'toolName', t.name, 'moment', r.moment, 'mode', r.mode, 'value', r.typed_value, 'unit', r.typed_unit,
-        'mass', r.mass_micrograms::text, 'hoseFull', coalesce(r.hose_full, false), 'hose', r.hose_micrograms::text,
+        'readAt', r.read_at, 'mass', r.mass_micrograms::text, 'hoseFull', coalesce(r.hose_full, false), 'hose', r.hose_micrograms::text,
         'resolutionG', r.resolution_g, 'repeatabilityG', r.repeatability_g,
         'spanErrorRelative', r.span_error_relative, 'offsetG', r.offset_g) order by r.cylinder_id, r.moment = 'after', r.id), '[]')
       from reading r
@@ -69,6 +69,7 @@ export async function findGroupView(manager: EntityManager, id: string, locale: 
     recordedAt: row.recordedAt.toISOString(),
     readings: row.readings.map(({ mass, hose, ...reading }) => ({
       ...reading,
+      readAt: new Date(reading.readAt).toISOString(),
       massG: gramsOfMicrograms(BigInt(mass)),
       hoseG: hose === null ? null : gramsOfMicrograms(BigInt(hose)),
     })),

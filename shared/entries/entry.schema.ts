@@ -98,6 +98,8 @@ export const groupView = z.strictObject({
       mode: z.string(),
       value: z.string(),
       unit: z.string(),
+      /** A weigh-in that stays open is read again hours later. */
+      readAt: instant,
       massG: z.number(),
       hoseFull: z.boolean(),
       hoseG: z.number().nullable(),

@@ -204,6 +204,7 @@ describe('A group', () => {
       readings: [
         {
           moment: 'before',
+          readAt: '2026-05-01T10:00:00.000Z',
           massG: 17000,
           cylinderTag: 'C0001',
           toolId: ledger.scale.id,

@@ -52,6 +52,7 @@ export function groupView(change: Partial<GroupView> = {}): GroupView {
     mode: 'gross',
     value,
     unit: 'g',
+    readAt: '2026-11-30T21:12:00.000Z',
     massG: Number(value),
     hoseFull: false,
     hoseG: null,
