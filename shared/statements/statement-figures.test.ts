@@ -1,38 +1,11 @@
 import { describe, expect, it } from 'vitest';
-import type { StepReading } from '../ledger/cylinder-issues.ts';
 import { ASSUMED_SCALE, type Scale } from '../ledger/scale.ts';
+import { g, reading, step } from './cylinder-steps.fixture.ts';
 import { statementFigures } from './statement-figures.ts';
 import type { CylinderStep } from './walk-cylinder.ts';
 
-const g = (mass: number): bigint => BigInt(Math.round(mass * 1e6));
-const TARE_G = 7_700;
-let ids = 0;
-const reading = (
-  moment: StepReading['moment'],
-  netG: number,
-  at: number,
-  scale: Scale = ASSUMED_SCALE,
-): StepReading => {
-  ids += 1;
-  const grossMicrograms = g(netG + TARE_G);
-  return { id: `r${ids}`, at, toolId: 'scale 1', scale, moment, mode: 'gross', grossMicrograms, hoseMicrograms: 0n };
-};
-const step = (at: number, fields: Partial<CylinderStep>): CylinderStep => {
-  ids += 1;
-  return {
-    groupId: `g${ids}`,
-    closesGroupId: null,
-    occurredAt: at,
-    tareMicrograms: g(TARE_G),
-    readings: [],
-    masses: [],
-    postedMicrograms: 0n,
-    opens: false,
-    ...fields,
-  };
-};
 const weighed = (at: number, netG: number, postedG = 0, scale?: Scale) =>
-  step(at, { readings: [reading('only', netG, at, scale)], postedMicrograms: g(postedG) });
+  step(at, { readings: [reading('only', netG, at, scale && { scale })], postedMicrograms: g(postedG) });
 const opened = (at: number, netG: number) => ({ ...weighed(at, netG, netG), opens: true });
 /** Issues of 100 g, each with its own pair of readings, the book at `fromG` before them. */
 const issues = (count: number, firstAt: number, fromG: number): CylinderStep[] =>

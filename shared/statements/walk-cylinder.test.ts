@@ -1,44 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import type { StepReading } from '../ledger/cylinder-issues.ts';
 import { ASSUMED_SCALE, type Scale } from '../ledger/scale.ts';
-import { type CylinderStep, walkCylinder } from './walk-cylinder.ts';
+import { g, reading, step, TARE_G } from './cylinder-steps.fixture.ts';
+import { walkCylinder } from './walk-cylinder.ts';
 
-const g = (mass: number): bigint => BigInt(Math.round(mass * 1e6));
-const TARE_G = 7_700;
-let ids = 0;
-const reading = (
-  moment: StepReading['moment'],
-  netG: number,
-  at: number,
-  fields: Partial<StepReading> = {},
-): StepReading => {
-  ids += 1;
-  return {
-    id: `r${ids}`,
-    at,
-    toolId: 'scale 1',
-    scale: ASSUMED_SCALE,
-    moment,
-    mode: 'gross',
-    grossMicrograms: g(netG + TARE_G),
-    hoseMicrograms: 0n,
-    ...fields,
-  };
-};
-const step = (at: number, fields: Partial<CylinderStep>): CylinderStep => {
-  ids += 1;
-  return {
-    groupId: `g${ids}`,
-    closesGroupId: null,
-    occurredAt: at,
-    tareMicrograms: g(TARE_G),
-    readings: [],
-    masses: [],
-    postedMicrograms: 0n,
-    opens: false,
-    ...fields,
-  };
-};
 const out = (massG: number, weighed = true) => ({ massMicrograms: g(-massG), weighed, otherScale: null });
 /** Before and after, with what lies between taken out. */
 const issue = (at: number, beforeG: number, afterG: number, postedG = 0) =>
